@@ -1,0 +1,130 @@
+package geom
+
+import (
+	"cmp"
+	"math"
+	"slices"
+
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// leafSize is the most pieces that a leaf of the tree holds: a few distances
+// cost less than another box.
+const leafSize = 4
+
+// treeDepth bounds the stack of a search: a tree that halves its pieces at
+// each level holds 2^60 of them.
+const treeDepth = 64
+
+// tree is a hierarchy of boxes over the pieces. Children of node i are
+// node[i].left and the one after it.
+type tree struct {
+	nodes []node
+	order []int
+}
+
+type node struct {
+	box         Box
+	left        int // of an inner node; 0 for a leaf
+	first, last int // of a leaf, in order
+}
+
+func newTree(pieces []Piece) tree {
+	t := tree{order: make([]int, len(pieces))}
+	boxes := make([]Box, len(pieces))
+	for i := range pieces {
+		t.order[i], boxes[i] = i, pieces[i].Solid.Bounds()
+	}
+	if len(pieces) > 0 {
+		t.nodes = append(t.nodes, node{})
+		t.split(0, boxes, 0, len(pieces))
+	}
+	return t
+}
+
+// split makes node i of the pieces order[first:last], halving them along the
+// side where their middles lie widest apart.
+func (t *tree) split(i int, boxes []Box, first, last int) {
+	box := boxes[t.order[first]]
+	for _, k := range t.order[first:last] {
+		box = box.Union(boxes[k])
+	}
+	if last-first <= leafSize {
+		t.nodes[i] = node{box: box, first: first, last: last}
+		return
+	}
+	axis := widest(boxes, t.order[first:last])
+	slices.SortStableFunc(t.order[first:last], func(a, b int) int {
+		return cmp.Compare(middle(&boxes[a], axis), middle(&boxes[b], axis))
+	})
+	left := len(t.nodes)
+	t.nodes = append(t.nodes, node{}, node{})
+	t.nodes[i] = node{box: box, left: left}
+	half := (first + last) / 2
+	t.split(left, boxes, first, half)
+	t.split(left+1, boxes, half, last)
+}
+
+func widest(boxes []Box, order []int) int {
+	var best int
+	wide := -1.0
+	for axis := range 3 {
+		lo, hi := math.Inf(1), math.Inf(-1)
+		for _, k := range order {
+			m := middle(&boxes[k], axis)
+			lo, hi = math.Min(lo, m), math.Max(hi, m)
+		}
+		if hi-lo > wide {
+			best, wide = axis, hi-lo
+		}
+	}
+	return best
+}
+
+// middle gives the middle of a box along an axis; 0 where it is endless.
+func middle(b *Box, axis int) float64 {
+	lo, hi := b.Min.X, b.Max.X
+	switch axis {
+	case 1:
+		lo, hi = b.Min.Y, b.Max.Y
+	case 2:
+		lo, hi = b.Min.Z, b.Max.Z
+	}
+	if m := (lo + hi) / 2; !math.IsNaN(m) && !math.IsInf(m, 0) {
+		return m
+	}
+	return 0
+}
+
+// nearest gives the index of the piece nearest to p, the earlier of two at
+// the same distance, and the distance; -1 and infinity where there are none.
+func (t *tree) nearest(pieces []Piece, p r3.Vec) (int, float64) {
+	best, at := math.Inf(1), -1
+	if len(t.nodes) == 0 {
+		return at, best
+	}
+	var stack [treeDepth]int
+	top := 1
+	for top > 0 {
+		top--
+		n := &t.nodes[stack[top]]
+		if best >= 0 && n.box.Dist(p) > best || best < 0 && n.box.Dist(p) > 0 {
+			continue
+		}
+		if n.left == 0 {
+			for _, k := range t.order[n.first:n.last] {
+				if d := pieces[k].Solid.Dist(p); d < best || d == best && k < at {
+					best, at = d, k
+				}
+			}
+			continue
+		}
+		near, far := n.left, n.left+1
+		if t.nodes[far].box.Dist(p) < t.nodes[near].box.Dist(p) {
+			near, far = far, near
+		}
+		stack[top], stack[top+1] = far, near
+		top += 2
+	}
+	return at, best
+}
