@@ -1,0 +1,87 @@
+package table
+
+import (
+	"encoding/csv"
+	"io"
+	"math"
+	"strconv"
+	"strings"
+)
+
+// Exact writes a number with the fewest digits that give the same double
+// back. A missing value (NaN) is empty, and negative zero is zero. Infinities,
+// which no table should hold, are spelt inf and -inf.
+func Exact(x float64) string { return string(appendExact(nil, x)) }
+
+func appendExact(dst []byte, x float64) []byte {
+	switch {
+	case math.IsNaN(x):
+		return dst
+	case math.IsInf(x, 1):
+		return append(dst, "inf"...)
+	case math.IsInf(x, -1):
+		return append(dst, "-inf"...)
+	case x == 0:
+		return append(dst, '0')
+	}
+	return strconv.AppendFloat(dst, x, 'g', -1, 64)
+}
+
+// WriteCSV writes the table by RFC 4180: one header row, fields separated by
+// commas, lines ended by CR LF.
+func (t *Table) WriteCSV(w io.Writer) error {
+	out := csv.NewWriter(w)
+	out.UseCRLF = true
+	record := make([]string, len(t.Columns))
+	for i := range t.Columns {
+		record[i] = t.Columns[i].Name
+	}
+	if err := out.Write(record); err != nil {
+		return err
+	}
+	for _, row := range t.Rows {
+		for i := range row {
+			record[i] = t.Columns[i].field(row[i])
+		}
+		if err := out.Write(record); err != nil {
+			return err
+		}
+	}
+	out.Flush()
+	return out.Error()
+}
+
+func (c *Column) field(cell Cell) string {
+	if c.Kind == Text {
+		return guard(cell.Text)
+	}
+	return Exact(c.value(cell))
+}
+
+// guard keeps a text from being taken for a formula by a spreadsheet, which
+// starts one at = + - @, a tab or a line end: a name may come from someone
+// else's list. It puts an apostrophe before it, as spreadsheets do for text.
+// A text that is a number, or that only starts with a word such as "+axial
+// side", is none.
+func guard(s string) string {
+	if s == "" || !strings.ContainsRune("=+-@\t\r\n", rune(s[0])) {
+		return s
+	}
+	if s[0] == '+' || s[0] == '-' {
+		if rest := strings.TrimLeft(s, "+-"); isWords(rest) {
+			return s
+		}
+	}
+	return "'" + s
+}
+
+// isWords says whether a text holds letters, digits and spaces only, which no
+// spreadsheet makes a formula with effects of.
+func isWords(s string) bool {
+	for _, r := range s {
+		if !(r == ' ' || r >= '0' && r <= '9' || r >= 'a' && r <= 'z' || r >= 'A' && r <= 'Z') {
+			return false
+		}
+	}
+	return true
+}
