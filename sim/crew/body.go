@@ -1,0 +1,46 @@
+package crew
+
+import (
+	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/sim/frame"
+	"offplumb/sim/model"
+)
+
+// Point is the motion of a point of the body in habitat components.
+type Point struct {
+	frame.State
+	Acc r3.Vec // m/s^2, relative to the habitat
+}
+
+// Point gives the motion of the point at a height (m) above the feet, along
+// the body, and at a reach from that line in the local directions (m). The
+// body stands along the radius through the feet and turns with it:
+//
+//	p   = q e_out + s e_spin + z,  q = R - height
+//	p'  = (q' - s phi') e_out + q phi' e_spin + z'
+//	p'' = (q'' - q phi'^2 - s phi'') e_out + (2 q' phi' + q phi'' - s phi'^2) e_spin + z''
+//
+// (cylindrical components, Kleppner & Kolenkow, An Introduction to Mechanics,
+// section 1.9; from memory). q may be negative: beyond the axis.
+func (f *Feet) Point(reach model.Reach) Point {
+	l := frame.LocalAt(f.Phi)
+	q, s := f.R-reach.Height, reach.Spinward
+	return Point{
+		State: frame.State{
+			Pos: l.Vec(s, f.Z+reach.Axial, -q),
+			Vel: l.Vec(q*f.VPhi, f.VZ, -(f.VR - s*f.VPhi)),
+		},
+		Acc: l.Vec(2*f.VR*f.VPhi+q*f.APhi-s*f.VPhi*f.VPhi, f.AZ, -(f.AR - q*f.VPhi*f.VPhi - s*f.APhi)),
+	}
+}
+
+// Support gives the specific force, m/s^2 in habitat components, that the
+// structure must give to a point of the body for it to move so:
+//
+//	f = a' + 2 omega x v' + omega x (omega x r) + domega/dt x r
+//
+// (Taylor, Classical Mechanics, eq. 9.34, solved for the force; from memory).
+// Apparent gravity is -f.
+func Support(a *frame.Attitude, p Point) r3.Vec {
+	return r3.Sub(p.Acc, a.Apparent(p.State).Sum())
+}
