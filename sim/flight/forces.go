@@ -1,0 +1,67 @@
+package flight
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/sim/air"
+	"offplumb/sim/frame"
+	"offplumb/sim/model"
+)
+
+// Field is an ambient acceleration, beside drag.
+type Field interface {
+	// Accel gives the acceleration (m/s^2, inertial components) of a body at an
+	// inertial state, at habitat time t (s).
+	Accel(t float64, s frame.State) r3.Vec
+}
+
+// Forces are what acts on one body in flight: drag relative to the air, which
+// turns with the habitat like a solid, and ambient fields.
+type Forces struct {
+	motion  frame.Motion
+	drag    air.Drag
+	perMass float64 // 1/kg
+	fields  []Field
+}
+
+// NewForces gives the forces on a body. A nil law is the program's own for
+// spheres, or the body's own drag coefficient.
+func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forces {
+	f := &Forces{motion: m.Motion, fields: fields}
+	if b.Mass <= 0 {
+		return f
+	}
+	if law == nil && b.DragCoefficient > 0 {
+		law = air.Constant(b.DragCoefficient)
+	}
+	area := b.DragArea
+	if area == 0 {
+		area = air.SphereArea(b.Diameter)
+	}
+	// The Reynolds number is that of the disc of the same area.
+	f.drag = air.NewDrag(m.Air, law, math.Sqrt(4*area/math.Pi), area)
+	f.perMass = 1 / b.Mass
+	return f
+}
+
+// Drag gives the acceleration by drag, m/s^2 in inertial components, at an
+// inertial state and habitat time t (s). Air at rest in the habitat moves with
+// omega x r.
+func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
+	if f.drag.None() {
+		return r3.Vec{}
+	}
+	wind := r3.Cross(f.motion.Omega(t), s.Pos)
+	rel := r3.Sub(s.Vel, wind)
+	return r3.Scale(-f.perMass*f.drag.PerVelocity(r3.Norm(rel)), rel)
+}
+
+// Accel gives the whole acceleration, m/s^2 in inertial components.
+func (f *Forces) Accel(t float64, s frame.State) r3.Vec {
+	a := f.Drag(t, s)
+	for _, g := range f.fields {
+		a = r3.Add(a, g.Accel(t, s))
+	}
+	return a
+}
