@@ -1,0 +1,181 @@
+package measure
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+)
+
+// Evidence is what limits are judged by. A release or path that did not run
+// has none: Release and Path give false, and limits on it are skipped.
+type Evidence struct {
+	Landing func(release int) (*Landing, bool)
+	Track   func(release int) ([]Sample, bool)
+	Loads   func(path int) ([]Load, bool)
+	Decks   []DeckFigure
+}
+
+// Judge gives the verdict on a limit: that on its worst target, at its worst
+// instant. It is false where nothing that the limit judges has run.
+func (c *Criterion) Judge(e Evidence) (Verdict, bool) {
+	var worst Verdict
+	found := false
+	for _, t := range c.Targets {
+		v, ok := c.one(t, e)
+		if ok && (!found || v.badness.worse(worst.badness)) {
+			worst, found = v, true
+		}
+	}
+	return worst, found
+}
+
+func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
+	switch c.Table {
+	case "landings":
+		l, ok := e.Landing(t.Index)
+		if !ok {
+			return Verdict{}, false
+		}
+		return c.landing(t, l), true
+	case "tracks":
+		rows, ok := e.Track(t.Index)
+		return series(c, t, sampleColumns, rows, func(s *Sample) float64 { return s.Time }), ok
+	case "crew":
+		rows, ok := e.Loads(t.Index)
+		return series(c, t, crewColumns, rows, func(l *Load) float64 { return l.Time }), ok
+	}
+	return series(c, t, deckColumns, e.Decks, func(*DeckFigure) float64 { return math.NaN() }), true
+}
+
+// blank is the verdict without its finding.
+func (c *Criterion) blank(t Target) Verdict {
+	l := c.Limit
+	v := Verdict{Limit: l.Name, Of: t.String(), Measure: l.Measure, Unit: c.unit.name, Source: l.Source,
+		Value: math.NaN(), At: math.NaN(), Verdict: Held, badness: badness{over: math.Inf(-1)}}
+	v.Min, v.Max = si(l.Min)/c.unit.scale, si(l.Max)/c.unit.scale
+	if l.MaxAbs != nil {
+		bound := l.MaxAbs.SI / c.unit.scale
+		v.Min, v.Max = math.Max(-bound, orInf(v.Min, -1)), math.Min(bound, orInf(v.Max, 1))
+	}
+	return v
+}
+
+func orInf(x float64, sign int) float64 {
+	if math.IsNaN(x) {
+		return math.Inf(sign)
+	}
+	return x
+}
+
+// landing judges a landing, by its number or by what it touched.
+func (c *Criterion) landing(t Target, l *Landing) Verdict {
+	var v Verdict
+	if len(c.Limit.Bounds()) > 0 {
+		v = series(c, t, landingColumns, []Landing{*l}, func(l *Landing) float64 { return l.Time })
+	} else {
+		v = c.blank(t)
+		v.At = l.Time
+	}
+	if words := c.words(l); words != "" {
+		v.Verdict, v.badness, v.Found = Broken, badness{rank: 2, over: math.Inf(1)}, words
+	} else if v.Found == "" && l.Surface != "" && c.unit.si == "" {
+		v.Found = l.Surface
+	}
+	return v
+}
+
+// words says how a landing breaks a limit on surfaces or openings.
+func (c *Criterion) words(l *Landing) string {
+	in, out := c.Limit.SurfaceIn, c.Limit.SurfaceNotIn
+	switch {
+	case len(in) > 0 && !slices.Contains(in, l.Surface):
+		return touched(l) + ", not " + strings.Join(in, " or ")
+	case slices.Contains(out, l.Surface):
+		return touched(l)
+	}
+	for _, o := range c.Limit.FallsThroughNot {
+		if slices.Contains(l.FellThrough, o) {
+			return "fell through " + o
+		}
+	}
+	return ""
+}
+
+func touched(l *Landing) string {
+	if l.Surface == "" {
+		return "touched nothing"
+	}
+	return "touched " + l.Surface
+}
+
+// series judges a column at its worst row. A column without a value anywhere
+// breaks the limit: what has no value cannot be held.
+func series[T any](c *Criterion, t Target, cols []column[T], rows []T, time func(*T) float64) Verdict {
+	v := c.blank(t)
+	col := numberColumn(cols, c.Key, c.unit)
+	for i := range rows {
+		c.judge(&v, col.num(&rows[i])/c.unit.scale, time(&rows[i]))
+	}
+	if len(rows) == 0 {
+		v.Verdict, v.Found, v.badness = Broken, "no value", badness{rank: 2, over: math.Inf(1)}
+	}
+	return v
+}
+
+func numberColumn[T any](cols []column[T], key string, u unit) *column[T] {
+	for i := range cols {
+		if cols[i].key == key && cols[i].num != nil && cols[i].unit == u {
+			return &cols[i]
+		}
+	}
+	panic(fmt.Sprintf("measure: no column %q in %q", key, u.name))
+}
+
+// judge holds one value (in the column's unit) against the bounds and keeps
+// it if it is the worst so far.
+func (c *Criterion) judge(v *Verdict, x, at float64) {
+	now := badness{over: over(x, v.Min, v.Max)}
+	warn := over(x, si(c.Limit.WarnMin)/c.unit.scale, si(c.Limit.WarnMax)/c.unit.scale)
+	verdict, words := Held, ""
+	switch {
+	case math.IsNaN(x):
+		now, verdict, words = badness{rank: 2, over: math.Inf(1)}, Broken, "no value"
+	case now.over > 0:
+		now.rank, verdict = 2, Broken
+	case warn > 0:
+		now, verdict = badness{rank: 1, over: warn}, Near
+	case math.IsInf(now.over, -1):
+		now.over = warn
+	}
+	if v.seen && !now.worse(v.badness) {
+		return
+	}
+	v.badness, v.Value, v.At, v.Verdict, v.Found, v.seen = now, x, at, verdict, words, true
+}
+
+// badness orders values: by verdict, then by how far beyond the bound.
+type badness struct {
+	rank int
+	over float64
+}
+
+func (b badness) worse(than badness) bool {
+	if b.rank != than.rank {
+		return b.rank > than.rank
+	}
+	return b.over > than.over
+}
+
+// over is how far a value lies beyond its bounds, negative within; NaN stands
+// for no bound.
+func over(x, low, high float64) float64 {
+	out := math.Inf(-1)
+	if d := x - high; d > out {
+		out = d
+	}
+	if d := low - x; d > out {
+		out = d
+	}
+	return out
+}

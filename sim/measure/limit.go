@@ -1,0 +1,258 @@
+package measure
+
+import (
+	"fmt"
+	"math"
+	"path"
+	"strings"
+
+	"offplumb/sim/model"
+)
+
+// The verdicts.
+const (
+	Held   = "held"
+	Near   = "near"
+	Broken = "broken"
+)
+
+// Criterion is a limit matched with what it judges.
+type Criterion struct {
+	Limit   *model.Limit
+	Targets []Target
+	Table   string
+	Key     string // the column's name without its unit
+	unit    unit
+}
+
+// Target is one thing that a limit judges.
+type Target struct {
+	Kind  string // release, path or habitat
+	Index int
+	Name  string
+}
+
+// String names the target as a scenario does.
+func (t Target) String() string {
+	if t.Name == "" {
+		return t.Kind
+	}
+	return t.Kind + "." + t.Name
+}
+
+// Verdict is a limit judged. Value, Min and Max are in Unit; NaN: none.
+type Verdict struct {
+	Limit, Of, Measure string
+	Value, Min, Max    float64
+	Unit, Verdict      string
+	At                 float64 // s
+	Source             string
+	Found              string // in words, where the value is no number
+	badness            badness
+	seen               bool
+}
+
+// judged is one table that limits may name.
+type judged struct {
+	kind string
+	nums map[string]unit
+	text map[string]bool
+	keys []string
+}
+
+func judgedTable[T any](kind string, cols []column[T]) judged {
+	j := judged{kind: kind, nums: map[string]unit{}, text: map[string]bool{}}
+	for i := range cols {
+		c := &cols[i]
+		if c.text != nil {
+			j.text[c.key] = true
+		} else if _, taken := j.nums[c.key]; !taken {
+			j.nums[c.key] = c.unit
+		}
+		j.keys = append(j.keys, c.key)
+		if c.unit.suffix != "" && c.text == nil {
+			j.nums[c.key+c.unit.suffix] = c.unit
+		}
+	}
+	return j
+}
+
+// judgedTables are the tables that limits may name.
+func judgedTables() map[string]judged {
+	return map[string]judged{
+		"landings": judgedTable("release", landingColumns),
+		"tracks":   judgedTable("release", sampleColumns),
+		"crew":     judgedTable("path", crewColumns),
+		"decks":    judgedTable("habitat", deckColumns),
+	}
+}
+
+// Criteria matches the limits of a scenario with what they judge. A limit on
+// a name or a column that does not exist is a problem.
+func Criteria(m *model.Model) (out []Criterion, problems []model.Problem) {
+	tables := judgedTables()
+	for i := range m.Limits {
+		c, faults := criterion(m, &m.Limits[i], tables)
+		for _, f := range faults {
+			f.Key = fmt.Sprintf("limit[%d].%s", i, f.Key)
+			problems = append(problems, f)
+		}
+		out = append(out, c)
+	}
+	return out, problems
+}
+
+func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criterion, []model.Problem) {
+	c := Criterion{Limit: l}
+	var key string
+	c.Table, key, _ = strings.Cut(l.Measure, ".")
+	t, ok := tables[c.Table]
+	if !ok {
+		return c, fault("measure", "wants table.column, the table one of landings, tracks, crew, decks; got %q", l.Measure)
+	}
+	u, num := t.nums[key]
+	if !num && !t.text[key] {
+		return c, fault("measure", "table %s has no column %q that a limit can judge; it has %s", c.Table, key, strings.Join(t.keys, ", "))
+	}
+	c.Key, c.unit = strings.TrimSuffix(key, u.suffix), u
+	if c.Key == "" {
+		c.Key = key
+	}
+	problems := c.bounds(num)
+	problems = append(problems, c.surfaces(m)...)
+	for _, of := range l.Of {
+		found, msg := targets(m, of, t.kind)
+		if msg != "" {
+			problems = append(problems, fault("of", "%s", msg)...)
+		}
+		c.Targets = append(c.Targets, found...)
+	}
+	return c, problems
+}
+
+func fault(key, format string, args ...any) []model.Problem {
+	return []model.Problem{{Key: key, Msg: fmt.Sprintf(format, args...)}}
+}
+
+// bounds checks that a limit has something to hold the column against.
+func (c *Criterion) bounds(num bool) (out []model.Problem) {
+	l := c.Limit
+	numeric := false
+	for _, b := range l.Bounds() {
+		numeric = true
+		if !num {
+			out = append(out, fault(b.Key, "column %q is text: a limit on it takes surface_in or surface_not_in", c.Key)...)
+		} else if b.Unit != c.unit.si {
+			out = append(out, fault(b.Key, "wants a value in %s, as the column %s has, got one in %s", orPlain(c.unit.name), c.Key, orPlain(b.Unit))...)
+		}
+	}
+	words := len(l.SurfaceIn)+len(l.SurfaceNotIn)+len(l.FallsThroughNot) > 0
+	if words && c.Table != "landings" {
+		out = append(out, fault("measure", "surface_in, surface_not_in and falls_through_not judge landings, got %q", c.Limit.Measure)...)
+	}
+	if !numeric && !words {
+		out = append(out, fault("name", "wants something to hold against: min, max, max_abs, surface_in, surface_not_in or falls_through_not")...)
+	}
+	return out
+}
+
+func orPlain(u string) string {
+	if u == "" {
+		return "a bare number"
+	}
+	return u
+}
+
+// surfaces checks the names of surfaces and openings.
+func (c *Criterion) surfaces(m *model.Model) (out []model.Problem) {
+	known := map[string]bool{}
+	var names []string
+	for _, s := range m.Interior.Surfaces() {
+		known[s.Name] = true
+		names = append(names, s.Name)
+	}
+	check := func(key string, list []string) {
+		for _, s := range list {
+			if !known[s] {
+				out = append(out, fault(key, "no surface named %q; there are %s", s, strings.Join(names, ", "))...)
+			}
+		}
+	}
+	check("surface_in", c.Limit.SurfaceIn)
+	check("surface_not_in", c.Limit.SurfaceNotIn)
+	for _, s := range c.Limit.FallsThroughNot {
+		if !hasOpening(m, s) {
+			out = append(out, fault("falls_through_not", "no opening named %q", s)...)
+		}
+	}
+	return out
+}
+
+func hasOpening(m *model.Model, name string) bool {
+	for i := range m.Decks {
+		for j := range m.Decks[i].Openings {
+			if m.Decks[i].Openings[j].Name == name {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+// targets finds what a name or pattern of a limit stands for.
+func targets(m *model.Model, of, kind string) ([]Target, string) {
+	if of == "habitat" {
+		if kind != "habitat" {
+			return nil, "habitat has the table decks only"
+		}
+		return []Target{{Kind: "habitat"}}, ""
+	}
+	prefix, name, _ := strings.Cut(of, ".")
+	if prefix != "release" && prefix != "path" {
+		return nil, fmt.Sprintf("wants release.NAME, path.NAME or habitat, got %q", of)
+	}
+	if prefix != kind {
+		return nil, fmt.Sprintf("the measure's table belongs to %s, got %q", kind, of)
+	}
+	var out []Target
+	for i, n := range names(m, kind) {
+		if ok, err := path.Match(escape(name), escapeName(n)); n == name || ok && err == nil {
+			out = append(out, Target{Kind: kind, Index: i, Name: n})
+		}
+	}
+	if len(out) == 0 {
+		return nil, fmt.Sprintf("no %s named %q", kind, name)
+	}
+	return out, ""
+}
+
+// escape leaves * as the only character of a pattern with a meaning, and
+// keeps / from ending a match.
+func escape(pattern string) string {
+	r := strings.NewReplacer(`\`, `\\`, `?`, `\?`, `[`, `\[`, `]`, `\]`, `/`, "\x00")
+	return r.Replace(pattern)
+}
+
+func escapeName(name string) string { return strings.ReplaceAll(name, "/", "\x00") }
+
+func names(m *model.Model, kind string) []string {
+	var out []string
+	if kind == "path" {
+		for i := range m.Paths {
+			out = append(out, m.Paths[i].Name)
+		}
+		return out
+	}
+	for i := range m.Releases {
+		out = append(out, m.Releases[i].Name)
+	}
+	return out
+}
+
+// si is the value of a bound, NaN for one that a limit does not have.
+func si(q *model.Quantity) float64 {
+	if q == nil {
+		return math.NaN()
+	}
+	return q.SI
+}

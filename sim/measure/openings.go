@@ -1,0 +1,67 @@
+package measure
+
+import (
+	"slices"
+
+	"offplumb/sim/flight"
+	"offplumb/sim/frame"
+	"offplumb/sim/model"
+)
+
+// passParts is into how many parts an integration step is cut to look for
+// passings of a deck. In free flight the distance from the axis grows or
+// falls along a whole step but for one turning point, so that a passing is
+// missed only together with the return, when both lie in one part.
+const passParts = 8
+
+// FellThrough names the openings within which a track crossed the surface of
+// their deck outward, in the order of their passing, each once.
+func FellThrough(m *model.Model, t *flight.Track) []string {
+	var out []string
+	knots := t.Knots()
+	for i := range m.Decks {
+		if len(m.Decks[i].Openings) == 0 {
+			continue
+		}
+		for k := 1; k < len(knots); k++ {
+			out = passings(m, t, &m.Decks[i], knots[k-1], knots[k], out)
+		}
+	}
+	return out
+}
+
+func passings(m *model.Model, t *flight.Track, d *model.Deck, t0, t1 float64, out []string) []string {
+	before := t0
+	for k := 1.0; k <= passParts; k++ {
+		now := t0 + (t1-t0)*k/passParts
+		if where(m, t, before).R <= d.Radius && where(m, t, now).R > d.Radius {
+			p := where(m, t, crossing(m, t, d.Radius, before, now))
+			if o := d.OpeningAt(p.Phi, p.Z); o != nil && !slices.Contains(out, o.Name) {
+				out = append(out, o.Name)
+			}
+		}
+		before = now
+	}
+	return out
+}
+
+// crossing halves the stretch from a to b until it is one rounding wide.
+func crossing(m *model.Model, t *flight.Track, r, a, b float64) float64 {
+	for {
+		mid := a + (b-a)/2
+		if mid <= a || mid >= b {
+			return b
+		}
+		if where(m, t, mid).R > r {
+			b = mid
+		} else {
+			a = mid
+		}
+	}
+}
+
+// where gives the place of a track's centre in the habitat at a time.
+func where(m *model.Model, t *flight.Track, time float64) frame.Polar {
+	a := m.Motion.At(t.Begin + time)
+	return frame.PolarOf(a.In(t.At(time).Pos))
+}

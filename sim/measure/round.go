@@ -1,0 +1,78 @@
+package measure
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/sim/flight"
+	"offplumb/sim/frame"
+	"offplumb/sim/model"
+)
+
+// turnStep bounds how far, in rad, the habitat turns between two of the
+// instants at which the angle gone round is added up: an eighth of a turn,
+// well below the half turn at which an angle would be ambiguous.
+const turnStep = math.Pi / 4
+
+// stepParts is into how many parts, at the least, each integration step is
+// cut for adding up angles.
+const stepParts = 4
+
+// Winding follows the angle that a body has gone round in the habitat frame
+// since its release, without a jump.
+type Winding struct {
+	m   *model.Model
+	t   *flight.Track
+	at  float64 // s
+	att frame.Attitude
+	pos r3.Vec // inertial
+	sum float64
+	gap float64 // s, the longest stretch taken at once
+}
+
+// NewWinding begins at the release.
+func NewWinding(m *model.Model, t *flight.Track) *Winding {
+	omega, _ := m.Motion.Bounds(t.Begin, t.Begin+t.End)
+	w := &Winding{m: m, t: t, att: m.Motion.At(t.Begin), pos: t.First.Pos, gap: math.Inf(1)}
+	if omega > 0 {
+		w.gap = turnStep / omega
+	}
+	return w
+}
+
+// To moves on to a later time (s since the release) and gives the angle gone
+// round, rad, spinward positive. The way between this time and the last must
+// be smooth and short of half a turn seen in the inertial frame, which is so
+// within an integration step.
+func (w *Winding) To(time float64) float64 {
+	n := math.Max(1, math.Ceil((time-w.at)/w.gap))
+	from := w.at
+	for k := 1.0; k <= n; k++ {
+		w.hop(from + (time-from)*k/n)
+	}
+	return w.sum
+}
+
+// hop adds the angle of the inertial way, seen in the habitat as it stood at
+// its start, less the angle that the habitat has turned by meanwhile.
+func (w *Winding) hop(time float64) {
+	att, pos := w.m.Motion.At(w.t.Begin+time), w.t.At(time).Pos
+	q0, q1, now := w.att.In(w.pos), w.att.In(pos), att.In(pos)
+	w.sum += math.Atan2(q0.X*q1.Y-q0.Y*q1.X, q0.X*q1.X+q0.Y*q1.Y)
+	w.sum += math.Atan2(q1.X*now.Y-q1.Y*now.X, q1.X*now.X+q1.Y*now.Y)
+	w.at, w.att, w.pos = time, att, pos
+}
+
+// GoneRound gives the angle, rad, that a body has gone round in the habitat
+// frame from its release to a time (s since the release).
+func GoneRound(m *model.Model, t *flight.Track, time float64) float64 {
+	w := NewWinding(m, t)
+	knots := t.Knots()
+	for i := 1; i < len(knots); i++ {
+		from, to := knots[i-1], math.Min(knots[i], time)
+		for k := 1; k <= stepParts && to > from; k++ {
+			w.To(from + (to-from)*float64(k)/stepParts)
+		}
+	}
+	return w.sum
+}
