@@ -1,0 +1,90 @@
+package study
+
+import (
+	"context"
+	"fmt"
+	"sync"
+	"sync/atomic"
+
+	"offplumb/sim/flight"
+	"offplumb/sim/measure"
+)
+
+// Result is what one release did.
+type Result struct {
+	Track   *flight.Track // nil where only the landing is wanted
+	Landing measure.Landing
+	Work    flight.Work
+	done    bool
+}
+
+// Finished says whether the release was asked for and computed.
+func (r *Result) Finished() bool { return r.done }
+
+// Options say how a scenario is run.
+type Options struct {
+	Workers int                    // at least 1
+	Want    func(name string) bool // which releases; nil: all
+	Done    func(done, of int)     // progress, called from one worker at a time; may be nil
+}
+
+// Run flies every release. Result i belongs to release i. It stops early, with
+// the context's error, when the context ends, and with that of the first
+// release in file order that could not be computed.
+func (p *Prepared) Run(ctx context.Context, opt Options) ([]Result, error) {
+	results := make([]Result, len(p.Lets))
+	errs := make([]error, len(p.Lets))
+	var next, done atomic.Int64
+	var tell sync.Mutex
+	work := func() {
+		flier := flight.NewFlier(p.Model)
+		for {
+			i := int(next.Add(1)) - 1
+			if i >= len(p.Lets) || ctx.Err() != nil {
+				return
+			}
+			results[i], errs[i] = p.one(flier, i, opt.Want)
+			n := int(done.Add(1))
+			if opt.Done != nil {
+				tell.Lock()
+				opt.Done(n, len(p.Lets))
+				tell.Unlock()
+			}
+		}
+	}
+	spread(opt.Workers, work)
+	if err := ctx.Err(); err != nil {
+		return results, err
+	}
+	for i, err := range errs {
+		if err != nil {
+			return results, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
+		}
+	}
+	return results, nil
+}
+
+func (p *Prepared) one(flier *flight.Flier, i int, want func(string) bool) (Result, error) {
+	let := &p.Lets[i]
+	if want != nil && !want(let.Release.Name) {
+		return Result{}, nil
+	}
+	track, err := flier.Fly(let)
+	if err != nil {
+		return Result{}, err
+	}
+	res := Result{Track: track, Landing: measure.Land(p.Model, track), Work: track.Work, done: true}
+	if let.Release.NoTrack {
+		res.Track = nil
+	}
+	return res, nil
+}
+
+// spread runs the work on n workers and waits for them.
+func spread(n int, work func()) {
+	var all sync.WaitGroup
+	for range max(1, n) {
+		all.Go(work)
+	}
+	all.Wait()
+}
