@@ -1,0 +1,475 @@
+package scenarios
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strconv"
+	"strings"
+	"unicode"
+
+	"offplumb/sim/model"
+)
+
+func degrees(x float64) float64 { return x * math.Pi / 180 }
+
+// object is a table that was held against its section: values in SI.
+type object struct {
+	path string
+	node *node
+	vals map[string]*value
+}
+
+// value is what a key holds.
+type value struct {
+	node *node
+	quantity
+	text  string
+	flag  bool
+	texts []string
+	list  []quantity
+	sub   *object
+	subs  []*object
+}
+
+// Accessors: the zero value where a key is not given.
+
+func (o *object) has(k string) bool {
+	if o == nil {
+		return false
+	}
+	_, ok := o.vals[k]
+	return ok
+}
+
+func (o *object) get(k string) *value {
+	if o.has(k) {
+		return o.vals[k]
+	}
+	return &value{}
+}
+
+func (o *object) num(k string) float64     { return o.get(k).si }
+func (o *object) str(k string) string      { return o.get(k).text }
+func (o *object) flag(k string) bool       { return o.get(k).flag }
+func (o *object) sub(k string) *object     { return o.get(k).sub }
+func (o *object) subs(k string) []*object  { return o.get(k).subs }
+func (o *object) texts(k string) []string  { return o.get(k).texts }
+func (o *object) list(k string) []quantity { return o.get(k).list }
+
+// numOr gives a number or the default.
+func (o *object) numOr(k string, deflt float64) float64 {
+	if o.has(k) {
+		return o.num(k)
+	}
+	return deflt
+}
+
+func (o *object) arc(k string) model.Arc {
+	q := o.get(k).quantity
+	return model.Arc{Value: q.si, IsAngle: q.dim == angle}
+}
+
+// checker holds a tree against the format.
+type checker struct {
+	errs ErrorList
+}
+
+func (c *checker) fault(at place, key, hint, format string, args ...any) {
+	c.errs = append(c.errs, at.fault(key, hint, format, args...))
+}
+
+// join puts a key below a path.
+func join(path, key string) string {
+	if path == "" {
+		return key
+	}
+	return path + "." + key
+}
+
+func (c *checker) object(n *node, s *section, path string) *object {
+	o := &object{path: path, node: n, vals: map[string]*value{}}
+	for _, name := range n.names {
+		kid := n.kids[name]
+		k := s.find(name)
+		if k == nil {
+			c.unknown(kid, s, path, name)
+			continue
+		}
+		if v := c.value(kid, k, join(path, name)); v != nil {
+			o.vals[name] = v
+		}
+	}
+	c.missing(n, s, path)
+	c.groups(n, s, path)
+	return o
+}
+
+func (c *checker) unknown(kid *node, s *section, path, name string) {
+	hint := "the keys of " + s.name + " are " + strings.Join(s.names(), ", ")
+	if like := nearest(name, s.names()); like != "" {
+		hint = fmt.Sprintf("did you mean %s?", like)
+	}
+	c.fault(kid.key, join(path, printable(name)), hint, "unknown key")
+}
+
+func (c *checker) missing(n *node, s *section, path string) {
+	for i := range s.keys {
+		k := &s.keys[i]
+		if _, ok := n.kids[k.name]; k.required && !ok {
+			c.fault(n.key, path, k.example(), "%s wants the key %s: %s", s.name, k.name, k.doc)
+		}
+	}
+}
+
+func (c *checker) groups(n *node, s *section, path string) {
+	seen := map[string]string{}
+	for _, name := range n.names {
+		k := s.find(name)
+		if k == nil || k.group == "" || k.want == wantFlag && !n.kids[name].flag {
+			continue
+		}
+		if first, ok := seen[k.group]; ok {
+			c.fault(n.kids[name].key, join(path, name), "", "wants only one of %s, and %s is given too", orList(s.group(k.group)), first)
+			continue
+		}
+		seen[k.group] = name
+	}
+	for _, g := range s.exactly {
+		if _, ok := seen[g]; !ok {
+			c.fault(n.key, path, "", "%s wants one of %s", s.name, orList(s.group(g)))
+		}
+	}
+}
+
+func orList(words []string) string {
+	if len(words) < 2 {
+		return strings.Join(words, "")
+	}
+	return strings.Join(words[:len(words)-1], ", ") + " or " + words[len(words)-1]
+}
+
+// example shows how a key is written.
+func (k *key) example() string {
+	switch {
+	case k.want == wantQuantity:
+		return fmt.Sprintf("write %s = %q", k.name, k.dims[0].example)
+	case k.want == wantWord:
+		return "one of " + strings.Join(k.words, ", ")
+	}
+	return ""
+}
+
+// value reads what a key holds; nil after a fault.
+func (c *checker) value(n *node, k *key, path string) *value {
+	v := &value{node: n}
+	var ok bool
+	switch k.want {
+	case wantQuantity:
+		v.quantity, ok = c.quantity(n, k, path)
+	case wantNumber, wantInteger:
+		v.si, ok = c.number(n, k, path)
+	case wantText, wantName:
+		v.text, ok = c.text(n, k, path)
+	case wantWord:
+		v.text, ok = c.word(n, k, path)
+	case wantFlag:
+		v.flag, ok = n.flag, c.is(n, isBool, "true or false", path)
+	case wantTexts:
+		v.texts, ok = c.texts(n, k, path)
+	case wantList, wantBounds:
+		v.list, ok = c.list(n, k, path)
+	case wantTable:
+		if ok = c.is(n, isTable, "a table in braces or under its own header", path); ok {
+			v.sub = c.object(n, k.sub, path)
+		}
+	case wantTables:
+		v.subs, ok = c.tables(n, k, path)
+	case wantWordOrQuantity:
+		ok = c.wordOrQuantity(v, n, k, path)
+	case wantBound:
+		v.quantity, ok = c.bound(n, path)
+	case wantOpen:
+		ok = c.is(n, isTable, "a table", path)
+	}
+	if !ok {
+		return nil
+	}
+	return v
+}
+
+// found says what a node holds.
+func (n *node) found() string {
+	switch n.kind {
+	case isText:
+		return strconv.Quote(shorten(n.text))
+	case isNumber:
+		return "the bare number " + shorten(n.raw)
+	case isBool:
+		return strconv.FormatBool(n.flag)
+	}
+	return kindNames[n.kind]
+}
+
+// shorten keeps a text short enough for an error.
+func shorten(s string) string {
+	if r := []rune(s); len(r) > 60 {
+		return string(r[:57]) + "..."
+	}
+	return s
+}
+
+// printable replaces what a terminal should not see.
+func printable(s string) string {
+	return shorten(strings.Map(func(r rune) rune {
+		if unicode.IsPrint(r) {
+			return r
+		}
+		return '\uFFFD'
+	}, s))
+}
+
+func (c *checker) is(n *node, want kind, words, path string) bool {
+	if n.kind != want {
+		c.fault(n.at, path, "", "wants %s, got %s", words, n.found())
+		return false
+	}
+	return true
+}
+
+func (c *checker) quantity(n *node, k *key, path string) (quantity, bool) {
+	if n.kind == isNumber {
+		c.fault(n.at, path, fmt.Sprintf("write the unit: %q", example(k.dims)), "%s, got the bare number %s", wantedUnit(k.dims), shorten(n.raw))
+		return quantity{}, false
+	}
+	if n.kind != isText {
+		c.fault(n.at, path, "", "%s, got %s", wanted(k.dims), n.found())
+		return quantity{}, false
+	}
+	q, err := measureOf(n.text, k.dims...)
+	if err != nil {
+		c.fault(n.at, path, comma(n.text), "%v, got %s", err, n.found())
+		return quantity{}, false
+	}
+	return q, c.within(n, k, q.si, path)
+}
+
+func example(dims []*dimension) string { return dims[0].example }
+
+// comma explains a decimal comma.
+func comma(text string) string {
+	if strings.Contains(text, ",") {
+		return "decimals are written with a point"
+	}
+	return ""
+}
+
+// within checks the range of a value in SI.
+func (c *checker) within(n *node, k *key, x float64, path string) bool {
+	s := k.span
+	if x < s.low || s.open && x == s.low || x > s.high || math.IsNaN(x) {
+		c.fault(n.at, path, "", "wants %s, got %s", s.words(k), n.found())
+		return false
+	}
+	return true
+}
+
+// words describes a span.
+func (s span) words(k *key) string {
+	unit := ""
+	if len(k.dims) > 0 {
+		unit = " " + k.dims[0].si
+	}
+	switch {
+	case s.open && math.IsInf(s.high, 1):
+		return "more than " + strconv.FormatFloat(s.low, 'g', -1, 64) + unit
+	case math.IsInf(s.high, 1):
+		return strconv.FormatFloat(s.low, 'g', -1, 64) + unit + " or more"
+	case s.low == s.high:
+		return strconv.FormatFloat(s.low, 'g', -1, 64)
+	}
+	return fmt.Sprintf("a value from %.6g%s to %.6g%s", s.low, unit, s.high, unit)
+}
+
+func (c *checker) number(n *node, k *key, path string) (float64, bool) {
+	if n.kind != isNumber {
+		words := "a bare number"
+		if k.want == wantInteger {
+			words = "a whole number"
+		}
+		c.fault(n.at, path, "", "wants %s, got %s", words, n.found())
+		return 0, false
+	}
+	if math.IsNaN(n.num) || math.IsInf(n.num, 0) || math.Abs(n.num) > 1e15 {
+		c.fault(n.at, path, "", "wants a finite number, got %s", n.raw)
+		return 0, false
+	}
+	if k.want == wantInteger && n.num != math.Trunc(n.num) {
+		c.fault(n.at, path, "", "wants a whole number, got %s", n.raw)
+		return 0, false
+	}
+	return n.num, c.within(n, k, n.num, path)
+}
+
+// longestName bounds a name, in bytes: it stands in every table and figure.
+const longestName = 200
+
+func (c *checker) text(n *node, k *key, path string) (string, bool) {
+	if !c.is(n, isText, "a text in quotes", path) {
+		return "", false
+	}
+	if k.want != wantName {
+		return n.text, true
+	}
+	switch {
+	case strings.TrimSpace(n.text) == "":
+		c.fault(n.at, path, "", "wants a name, got an empty text")
+	case n.text != strings.TrimSpace(n.text):
+		c.fault(n.at, path, "", "wants a name without spaces at its ends, got %s", n.found())
+	case len(n.text) > longestName:
+		c.fault(n.at, path, "", "wants a name of at most %d bytes, got %s", longestName, n.found())
+	case strings.ContainsFunc(n.text, func(r rune) bool { return !unicode.IsPrint(r) }):
+		c.fault(n.at, path, "", "wants a name of printable characters, got %s", n.found())
+	default:
+		return n.text, true
+	}
+	return "", false
+}
+
+func (c *checker) word(n *node, k *key, path string) (string, bool) {
+	if n.kind == isText && slices.Contains(k.words, n.text) {
+		return n.text, true
+	}
+	c.fault(n.at, path, didYouMean(n, k.words), "wants one of %s, got %s", quoted(k.words), n.found())
+	return "", false
+}
+
+func didYouMean(n *node, words []string) string {
+	if like := nearest(n.text, words); n.kind == isText && like != "" {
+		return fmt.Sprintf("did you mean %q?", like)
+	}
+	return ""
+}
+
+func quoted(words []string) string {
+	out := make([]string, len(words))
+	for i, w := range words {
+		out[i] = strconv.Quote(w)
+	}
+	return strings.Join(out, ", ")
+}
+
+func (c *checker) texts(n *node, k *key, path string) ([]string, bool) {
+	items := []*node{n}
+	if n.kind == isArray {
+		items = n.items
+	}
+	var out []string
+	for _, item := range items {
+		if !c.is(item, isText, "a text or a list of texts", path) {
+			return nil, false
+		}
+		out = append(out, item.text)
+	}
+	if len(out) == 0 {
+		c.fault(n.at, path, "", "wants at least one text, got an empty list")
+	}
+	return out, len(out) > 0
+}
+
+func (c *checker) list(n *node, k *key, path string) ([]quantity, bool) {
+	if !c.is(n, isArray, "a list in brackets", path) {
+		return nil, false
+	}
+	if k.count > 0 && len(n.items) != k.count || len(n.items) == 0 {
+		c.fault(n.at, path, "", "wants %s, got %d", countWords(k.count), len(n.items))
+		return nil, false
+	}
+	out, good := make([]quantity, len(n.items)), true
+	for i, item := range n.items {
+		var ok bool
+		at := fmt.Sprintf("%s[%d]", path, i)
+		if k.want == wantBounds {
+			out[i], ok = c.bound(item, at)
+		} else {
+			out[i], ok = c.quantity(item, k, at)
+		}
+		good = good && ok
+	}
+	return out, good
+}
+
+func countWords(n int) string {
+	if n == 0 {
+		return "a list of values"
+	}
+	return fmt.Sprintf("a list of %d values", n)
+}
+
+func (c *checker) tables(n *node, k *key, path string) ([]*object, bool) {
+	if n.kind == isTable {
+		c.fault(n.key, path, fmt.Sprintf("write [[%s]]", k.name), "wants a list of tables, got one table")
+		return nil, false
+	}
+	if !c.is(n, isArray, "a list of tables", path) {
+		return nil, false
+	}
+	var out []*object
+	first := map[string]*node{}
+	for i, item := range n.items {
+		at := fmt.Sprintf("%s[%d]", path, i)
+		if !c.is(item, isTable, "a table", at) {
+			return nil, false
+		}
+		o := c.object(item, k.sub, at)
+		out = append(out, o)
+		c.unique(o, first, k)
+	}
+	return out, true
+}
+
+func (c *checker) unique(o *object, first map[string]*node, k *key) {
+	name := o.str("name")
+	if name == "" {
+		return
+	}
+	n := o.get("name").node
+	if old, ok := first[name]; ok {
+		c.fault(n.at, join(o.path, "name"), "", "%s named %q is there already, at line %d", k.sub.name, shorten(name), old.at.line)
+		return
+	}
+	first[name] = n
+}
+
+func (c *checker) wordOrQuantity(v *value, n *node, k *key, path string) (ok bool) {
+	if n.kind == isText && slices.Contains(k.words, n.text) {
+		v.text = n.text
+		return true
+	}
+	if n.kind == isText {
+		if _, _, err := split(n.text); err != nil {
+			c.fault(n.at, path, didYouMean(n, k.words), "wants one of %s or %s, got %s", quoted(k.words),
+				strings.TrimPrefix(wanted(k.dims), "wants "), n.found())
+			return false
+		}
+	}
+	v.quantity, ok = c.quantity(n, k, path)
+	return ok
+}
+
+func (c *checker) bound(n *node, path string) (quantity, bool) {
+	if n.kind == isNumber {
+		x, ok := c.number(n, &key{want: wantNumber, span: anything}, path)
+		return quantity{si: x}, ok
+	}
+	if n.kind != isText {
+		c.fault(n.at, path, "", "wants a number with its unit, or a bare number, got %s", n.found())
+		return quantity{}, false
+	}
+	q, err := measureOf(n.text, dimensions...)
+	if err != nil {
+		c.fault(n.at, path, comma(n.text), "%v, got %s", err, n.found())
+		return quantity{}, false
+	}
+	return q, true
+}

@@ -1,0 +1,18 @@
+// Package scenarios reads scenario files. It is the only package that knows
+// TOML: it decodes, keeps the position of every value, converts units to SI,
+// checks, and reports all errors of a file at once. The shipped scenarios are
+// embedded in it.
+//
+// The way of a file, each stage in a file of its own:
+//
+//	tree.go      TOML text -> a tree of nodes with their positions
+//	set.go       settings from the command line, put into the tree
+//	keys.go      the format as data: every key, its unit, range and meaning
+//	check.go     the tree held against the format -> typed values in SI
+//	units.go     quantities with units
+//	build.go     typed values -> model.Model
+//	list.go      release lists in CSV
+//	load.go      all of it in order, and the places of later problems
+//	reference.go the format as a table for the README; schema.go as JSON Schema
+//	examples.go  the shipped scenarios
+package scenarios

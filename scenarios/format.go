@@ -1,0 +1,344 @@
+package scenarios
+
+import "strconv"
+
+// The format, as data: it drives the checks, the JSON Schema and the table of
+// the README. Sections stand before those that use them.
+
+// Version is the version of the format that is read.
+const Version = 1
+
+var station = &section{name: "a station", doc: "A place in the habitat.",
+	keys: []key{
+		text("deck", "the deck that spinward and height count from").or(`"floor"`),
+		arc("spinward", "arc on that deck, or an angle").or(`"0 m"`),
+		qty("axial", length, anything, "along the axis, from the habitat's middle").or(`"0 m"`),
+		qty("height", length, anything, "above that deck; of a body's centre").or(`"0 m"; a release must say it`),
+		qty("radius", length, notNegative, "distance from the axis, in place of deck and height; the arc is then measured at it"),
+		text("room", "the cabin whose flat floor the station stands on").or("the habitat"),
+	}}
+
+var reach = &section{name: "a reach", doc: "A point carried along with a person, from the feet.",
+	keys: []key{
+		qty("spinward", length, anything, "spinward of the feet").or(`"0 m"`),
+		qty("axial", length, anything, "+axial of the feet").or(`"0 m"`),
+		qty("height", length, anything, "above the feet").or(`"0 m"`),
+	}}
+
+var room = []key{
+	word("shape", `"cylinder"`, "the form of the room", "cylinder", "torus", "sphere", "cabin"),
+	qty("length", length, positive, "between the two end bulkheads").or("no bulkheads"),
+	qty("ceiling_radius", length, positive, "distance of the ceiling from the axis").or("no ceiling"),
+	qty("tube_radius", length, positive, "of a torus"),
+	flag("flat_floor", "a torus with a flat floor"),
+	lengths("size", 3, positive, "of a cabin: spinward, axial, up"),
+}
+
+var habitat = &section{name: "the habitat", doc: "The habitat's own room and its spin.",
+	keys: append([]key{
+		qty("floor_radius", length, positive, `distance of the reference floor from the axis: the deck named "floor"`).need(),
+		qty("spin", turnRate, anything, "positive: the floor moves spinward").one("spin"),
+		qty("floor_gravity", accel, notNegative, "apparent gravity at rest on the reference floor; the spin is then positive").one("spin"),
+		qty("rim_speed", speed, anything, "speed of the reference floor, spinward positive").one("spin"),
+	}, room...),
+	exactly: []string{"spin"}}
+
+var furtherRoom = &section{name: "a room", doc: "A further room, beside the habitat's own.",
+	keys: append([]key{
+		title(),
+		qty("floor_radius", length, positive, "distance of its floor from the axis").need(),
+		arc("spinward", "where its middle stands").or(`"0 m"`),
+		qty("axial", length, anything, "where its middle stands").or(`"0 m"`),
+	}, room...)}
+
+var airKeys = &section{name: "the air", doc: "The air, which turns with the habitat.",
+	keys: []key{
+		qty("pressure", pressure, positive, "of the air").or(`"101.325 kPa"`).one("pressure"),
+		qty("temperature", temperature, span{low: 100, high: 1900}, "of the air").or(`"20 °C"`).one("temperature"),
+		qty("density", density, positive, "in place of pressure and temperature, with viscosity"),
+		qty("viscosity", viscosity, positive, "dynamic viscosity, with density"),
+		flag("none", "a vacuum"),
+	}}
+
+var body = &section{name: "a body", doc: "What is released: a sphere.",
+	keys: []key{
+		title(),
+		qty("mass", mass, positive, "its mass").need(),
+		qty("diameter", length, notNegative, `of its sphere: contact and drag. "0 m" is a point, without drag`).need(),
+		num("restitution", share, "of an impact along the normal").or("0.3"),
+		num("friction", notNegative, "Coulomb friction coefficient").or("0.4"),
+		flag("rolls", "it rolls instead of sliding"),
+		qty("drag_area", area, positive, "area across the motion").or("that of the sphere"),
+		num("drag_coefficient", positive, "a fixed one").or("the law for spheres"),
+	}}
+
+var throwKeys = &section{name: "a throw", doc: "A speed and its direction, relative to the habitat.",
+	keys: []key{
+		qty("speed", speed, notNegative, "relative to the habitat").need(),
+		qty("heading", angle, anything, "0 spinward, 90 deg toward +axial").or(`"0 deg"`),
+		qty("elevation", angle, span{low: -degrees(90), high: degrees(90)}, "above the deck").or(`"0 deg"`),
+	}}
+
+var velocityKeys = &section{name: "a velocity", doc: "Relative to the habitat.",
+	keys: []key{
+		qty("spinward", speed, anything, "spinward").or(`"0 m/s"`),
+		qty("axial", speed, anything, "toward +axial").or(`"0 m/s"`),
+		qty("up", speed, anything, "toward the axis").or(`"0 m/s"`),
+	}}
+
+var carriedKeys = &section{name: "a carried release", doc: "Let go by a crew member under way: it has the velocity of that point of the body.",
+	keys: []key{
+		text("path", "name of the crew path").need(),
+		qty("time", duration, notNegative, "from the start of the path").or(`"0 s"`),
+		table("reach", reach, "where it is held"),
+	}}
+
+// motion are the keys of how a release starts.
+var motion = []key{
+	table("throw", throwKeys, "thrown at a speed").one("motion"),
+	table("velocity", velocityKeys, "given a velocity").one("motion"),
+	flag("still", "at rest in the inertial frame: it does not turn with the habitat").one("motion"),
+}
+
+func until(deflt string) key {
+	return key{name: "until", want: wantWordOrQuantity, words: []string{"rest", "landing"}, dims: []*dimension{duration},
+		span: positive, deflt: deflt, doc: `"rest", "landing" or a duration`}
+}
+
+var release = &section{name: "a release", doc: "An object let go, dropped, thrown or set free.",
+	keys: append([]key{
+		title(),
+		text("body", "name of the body").or("a point, without drag"),
+		table("at", station, "where its centre is").one("place"),
+		table("carried", carriedKeys, "let go by a crew member under way").one("place"),
+		qty("time", duration, notNegative, "when it is let go").or(`"0 s"`),
+		until(`"rest"`),
+	}, motion...),
+	exactly: []string{"place"}}
+
+var releaseList = &section{name: "a release list", doc: "A spreadsheet of releases, one a row. The other keys are defaults for columns that it lacks.",
+	keys: append([]key{
+		text("file", "CSV file, beside the scenario").need(),
+		text("body", "name of the body"),
+		qty("mass", mass, positive, "of the body, in place of its own"),
+		qty("diameter", length, notNegative, "of the body, in place of its own"),
+		text("deck", "the deck that spinward and height count from").or(`"floor"`),
+		arc("spinward", "arc on that deck, or an angle").or(`"0 m"`),
+		qty("axial", length, anything, "along the axis").or(`"0 m"`),
+		qty("height", length, anything, "above that deck"),
+		qty("time", duration, notNegative, "when they are let go").or(`"0 s"`),
+		until(`"rest"`),
+		flag("tracks", "write their tracks too"),
+	}, motion...)}
+
+var opening = &section{name: "an opening", doc: "A hole in a deck.",
+	keys: []key{
+		title(),
+		arc("spinward", "of its middle").or(`"0 m"`),
+		qty("axial", length, anything, "of its middle").or(`"0 m"`),
+		lengths("size", 2, positive, "spinward, axial").need(),
+		qty("coaming", length, notNegative, "height of its rim above the deck").or("none"),
+		flag("closed", "a lid level with the deck"),
+	}}
+
+var deck = &section{name: "a deck", doc: `A floor above the reference floor. One named "floor", without radius and height, gives the reference floor its surface and its openings.`,
+	keys: []key{
+		title(),
+		qty("radius", length, positive, "distance of its surface from the axis").one("level"),
+		qty("height", length, positive, "above the reference floor").one("level"),
+		qty("thickness", length, positive, "outward from its surface").or(`"50 mm"`),
+		arc("from", "spinward extent").or("whole circle"),
+		arc("to", "spinward extent").or("whole circle"),
+		lengths("axial", 2, anything, "axial extent").or("whole length"),
+		num("friction", notNegative, "of its surface; wins over the body's"),
+		num("restitution", share, "of its surface; wins over the body's"),
+		tables("opening", opening, "its openings"),
+	}}
+
+var doorway = &section{name: "a doorway", doc: "A hole in a wall, from its foot up.",
+	keys: []key{
+		qty("at", length, notNegative, "along the wall, from its first station to the middle of the doorway").need(),
+		qty("width", length, positive, "of the doorway").need(),
+		qty("height", length, positive, "of the doorway").need(),
+	}}
+
+var fixture = &section{name: "a fixture", doc: "Something solid that stands in a room.",
+	keys: []key{
+		title(),
+		word("kind", "", "its form", "box", "post", "wall").need(),
+		table("at", station, "box: the middle of its underside"),
+		lengths("size", 3, positive, "box: spinward, axial, up"),
+		qty("turn", angle, anything, "box: about the vertical, from spinward toward +axial").or(`"0 deg"`),
+		table("from", station, "post, wall: one end"),
+		table("to", station, "post, wall: the other end"),
+		qty("diameter", length, positive, "post"),
+		qty("height", length, positive, "wall"),
+		qty("thickness", length, positive, "wall").or(`"50 mm"`),
+		table("doorway", doorway, "wall: a hole in it"),
+		num("friction", notNegative, "of its surface; wins over the body's"),
+		num("restitution", share, "of its surface; wins over the body's"),
+	}}
+
+var passage = &section{name: "a passage", doc: "A radial shaft: spoke, trunk, ladder well.",
+	keys: []key{
+		title(),
+		arc("spinward", "where it runs").or(`"0 deg"`),
+		qty("axial", length, anything, "where it runs").or(`"0 m"`),
+		qty("from_radius", length, positive, "its inner end").need(),
+		qty("to_radius", length, positive, "its outer end").need(),
+		qty("width", length, positive, "of a square section").one("section"),
+		qty("diameter", length, positive, "of a round section").one("section"),
+	},
+	exactly: []string{"section"}}
+
+var crew = &section{name: "a crew member", doc: "A person.",
+	keys: []key{
+		title(),
+		qty("mass", mass, positive, "with kit").need(),
+		qty("stature", length, span{low: 0.3, high: 3}, "height of the person").need(),
+		qty("breadth", length, positive, "shoulders and kit").or(`"0.5 m"`),
+		num("waist", share, "height of the waist as a share of stature").or("0.55"),
+		num("head", share, "height of the head as a share of stature").or("0.93"),
+	}}
+
+var walkTo = &section{name: "the end of a walk", doc: "Where a walk goes on the deck underfoot; what is left out stays as it is. Arcs are not wrapped.",
+	keys: []key{
+		arc("spinward", "arc on the deck underfoot, or an angle").one("round"),
+		num("laps", anything, "times round, spinward positive").one("round"),
+		qty("axial", length, anything, "along the axis"),
+	}}
+
+var leg = &section{name: "a leg", doc: "One piece of a crew path.",
+	keys: []key{
+		table("walk", walkTo, "walk or run to a place").one("leg"),
+		qty("stand", duration, positive, "stand still").one("leg"),
+		qty("climb", length, positive, "toward the axis; one that ends level with a deck joins it").one("leg"),
+		qty("descend", length, positive, "away from the axis; one that ends level with a deck joins it").one("leg"),
+		qty("turn_head", angle, anything, "turn the head by an angle").one("leg"),
+		qty("speed", speed, positive, "of walk, climb and descend"),
+		qty("ramp", duration, notNegative, "of the speed, at both ends").or(`"0.5 s"`),
+		qty("over", duration, positive, "of turn_head").or(`"1 s"`),
+		word("about", `"vertical"`, "axis of turn_head", "vertical", "spinward", "axial"),
+		word("facing", `"spinward"`, "where the person looks on a ladder", "spinward", "antispinward", "+axial", "-axial"),
+	},
+	exactly: []string{"leg"}}
+
+var crewPath = &section{name: "a crew path", doc: "A person's motion through stations.",
+	keys: []key{
+		title(),
+		text("crew", "name of the person").need(),
+		table("start", station, "where the feet are at the start").or("the reference floor's middle"),
+		tables("legs", leg, "its legs, in order").need(),
+		qty("time", duration, notNegative, "when it starts").or(`"0 s"`),
+	}}
+
+var limit = &section{name: "a limit", doc: "An acceptance criterion of the project.",
+	keys: []key{
+		title(),
+		texts("of", "release.NAME, path.NAME or habitat; * stands for anything; or a list").need(),
+		text("measure", "table.column, without the unit").need(),
+		bound("min", "least value"),
+		bound("max", "greatest value"),
+		bound("max_abs", "greatest magnitude"),
+		bound("warn_min", "below it the limit is near"),
+		bound("warn_max", "above it the limit is near"),
+		texts("surface_in", "surfaces that it may land on"),
+		texts("surface_not_in", "surfaces that it must not land on"),
+		texts("falls_through_not", "openings that it must not fall through"),
+		text("source", "where the limit comes from, in the project's words").or("none stated"),
+	}}
+
+var solver = &section{name: "the solver", doc: "Accuracy of the integration. The tolerances hold for the departure from uniform motion in the inertial frame, as norms of position and velocity.",
+	keys: []key{
+		num("relative_tolerance", span{low: 1e-13, high: 1e-3}, "of each step").or("1e-9"),
+		qty("position_tolerance", length, span{low: 1e-18, high: 1}, "of each step").or(`"1e-12 m"`),
+		qty("velocity_tolerance", speed, span{low: 1e-18, high: 1}, "of each step").or(`"1e-12 m/s"`),
+		qty("max_time", duration, positive, "of any release").or(`"1 h"`),
+	}}
+
+var output = &section{name: "the output", doc: "What is written.",
+	keys: []key{
+		qty("step", duration, span{low: 1e-6, high: 1e9}, "between the rows of a track").or(`"10 ms"`),
+	}}
+
+var scatter = &section{name: "a scatter", doc: "A release many times, its keys varied at random.",
+	keys: []key{
+		title(),
+		text("of", "name of the release").need(),
+		{name: "samples", want: wantInteger, span: span{low: 1, high: 1e8}, required: true, doc: "how many"},
+		word("sampling", `"random"`, "how they are spread", "random", "latin_hypercube", "halton"),
+		{name: "vary", want: wantOpen, required: true, doc: "keys of the release and how each varies"},
+	}}
+
+var sweep = &section{name: "a sweep", doc: "A key stepped through a range.",
+	keys: []key{
+		title(),
+		text("key", "the key that is stepped, as in --set").need(),
+		bound("from", "first value"), bound("to", "last value"),
+		{name: "count", want: wantInteger, span: span{low: 1, high: 1e6}, doc: "how many values"},
+		{name: "values", want: wantBounds, doc: "the values, in place of from, to and count"},
+		text("key2", "a second key"),
+		bound("from2", "its first value"), bound("to2", "its last value"),
+		{name: "count2", want: wantInteger, span: span{low: 1, high: 1e6}, doc: "how many of its values"},
+		texts("measures", "what is recorded: table.column").need(),
+	}}
+
+var target = &section{name: "a target", doc: "A station, or a point of a moving person.",
+	keys: append([]key{text("path", "name of a crew path"), table("reach", reach, "the point of the person")}, station.keys...)}
+
+var throwTo = &section{name: "a throw study", doc: "How to throw so as to reach a target.",
+	keys: []key{
+		title(),
+		table("from", station, "where it is thrown from").need(),
+		text("body", "name of the body").or("a point, without drag"),
+		table("target", target, "where it is to go").need(),
+		qty("speed", speed, positive, "of the throw").one("throw"),
+		qty("time", duration, positive, "of the flight").one("throw"),
+		flag("least_speed", "the slowest throw").one("throw"),
+	},
+	exactly: []string{"throw"}}
+
+var region = &section{name: "a region", doc: "A patch of a deck.",
+	keys: []key{
+		text("deck", "the deck").or(`"floor"`),
+		{name: "spinward", want: wantList, dims: []*dimension{length, angle}, count: 2, span: anything, doc: "extent"},
+		lengths("axial", 2, anything, "extent"),
+		texts("fixtures", "the tops of these fixtures, in place of a patch"),
+	}}
+
+var landingMap = &section{name: "a landing map", doc: "Where a body lands that is let go anywhere over a region.",
+	keys: []key{
+		title(),
+		text("body", "name of the body").or("a point, without drag"),
+		table("over", region, "where it is let go").need(),
+		{name: "heights", want: wantList, dims: []*dimension{length}, span: anything, required: true, doc: "where it is let go"},
+		qty("speed", speed, notNegative, "in all directions").or(`"0 m/s"`),
+		qty("step", length, positive, "between the places").need(),
+		qty("cell", length, positive, "of the map").need(),
+	}}
+
+// file is the whole format.
+var file = &section{name: "the file", doc: "The file itself.",
+	keys: []key{
+		{name: "format", want: wantInteger, span: span{low: Version, high: Version}, required: true, doc: "version of the format: " + strconv.Itoa(Version)},
+		text("title", "what the scenario is about").or("the file's name"),
+		text("notes", "the story behind it"),
+		table("habitat", habitat, "the habitat").need(),
+		table("air", airKeys, "the air"),
+		tables("body", body, "bodies"),
+		tables("release", release, "releases"),
+		tables("release_list", releaseList, "lists of releases"),
+		tables("deck", deck, "decks"),
+		tables("fixture", fixture, "fixtures"),
+		tables("room", furtherRoom, "further rooms"),
+		tables("passage", passage, "passages"),
+		tables("crew", crew, "persons"),
+		tables("crew_path", crewPath, "crew paths"),
+		tables("limit", limit, "limits"),
+		tables("scatter", scatter, "studies: scatter"),
+		tables("sweep", sweep, "studies: sweeps"),
+		tables("throw_to", throwTo, "studies: throws"),
+		tables("landing_map", landingMap, "studies: landing maps"),
+		table("solver", solver, "accuracy"),
+		table("output", output, "what is written"),
+	}}

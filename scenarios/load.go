@@ -1,0 +1,171 @@
+package scenarios
+
+import (
+	"crypto/sha256"
+	"encoding/hex"
+	"fmt"
+	"path"
+	"strconv"
+	"strings"
+
+	"offplumb/sim/model"
+)
+
+// Options say how a scenario is loaded.
+type Options struct {
+	Sets         []string                          // settings KEY=VALUE, in order
+	ReadFile     func(path string) ([]byte, error) // reads what the scenario names; nil: nothing
+	AllowOutside bool                              // permit files outside the scenario's folder
+}
+
+// Input is a file that a scenario was made of.
+type Input struct {
+	Name   string
+	SHA256 string // in hex
+}
+
+// Study is a declared study.
+type Study struct {
+	Kind string // scatter, sweep, throw_to or landing_map
+	Name string
+}
+
+// Scenario is a scenario file read and checked.
+type Scenario struct {
+	Name    string // of the file
+	Title   string
+	Notes   string
+	Model   *model.Model
+	Studies []Study // declared, in the order of the format and the file
+	Inputs  []Input // the file itself first
+
+	root *node
+	keys []string
+	rows []row
+}
+
+func input(name string, src []byte) Input {
+	sum := sha256.Sum256(src)
+	return Input{Name: name, SHA256: hex.EncodeToString(sum[:])}
+}
+
+// Load reads a scenario. The error is an [ErrorList] of all its faults.
+func Load(name string, src []byte, opt Options) (*Scenario, error) {
+	root, errs := parse(name, src)
+	if root == nil {
+		return nil, errs
+	}
+	errs = append(errs, apply(root, opt.Sets)...)
+	b := &builder{}
+	o := b.object(root, file, "")
+	if errs = append(errs, b.errs...); len(errs) > 0 {
+		return nil, errs.sorted()
+	}
+	sc := &Scenario{Name: name, Title: o.str("title"), Notes: o.str("notes"), Studies: studies(o), Inputs: []Input{input(name, src)}, root: root}
+	if sc.Title == "" {
+		sc.Title = strings.TrimSuffix(path.Base(name), ".toml")
+		b.in.Title = sc.Title
+	}
+	b.build(o, reading{read: readOrNot(opt.ReadFile), allowOutside: opt.AllowOutside, inputs: &sc.Inputs})
+	b.in.Title = sc.Title
+	if len(b.errs) > 0 {
+		return nil, b.errs.sorted()
+	}
+	sc.keys, sc.rows = b.keys, b.rows
+	m, problems := model.New(b.in)
+	if len(problems) > 0 {
+		return nil, sc.Problems(problems)
+	}
+	sc.Model = m
+	return sc, nil
+}
+
+func readOrNot(read func(string) ([]byte, error)) func(string) ([]byte, error) {
+	if read != nil {
+		return read
+	}
+	return func(string) ([]byte, error) { return nil, fmt.Errorf("no other files can be read here") }
+}
+
+func studies(o *object) (out []Study) {
+	for _, kind := range []string{"scatter", "sweep", "throw_to", "landing_map"} {
+		for _, s := range o.subs(kind) {
+			out = append(out, Study{Kind: kind, Name: s.str("name")})
+		}
+	}
+	return out
+}
+
+// Problems gives the faults that later stages found their places in the file.
+func (sc *Scenario) Problems(problems []model.Problem) error {
+	var errs ErrorList
+	for _, p := range problems {
+		at, key := sc.find(p.Key)
+		errs = append(errs, at.fault(key, p.Hint, "%s", p.Msg))
+	}
+	return errs.sorted()
+}
+
+// find gives the place of a key such as release[2].at.height: that of its
+// value, or of what is nearest above it.
+func (sc *Scenario) find(key string) (place, string) {
+	if rest, ok := strings.CutPrefix(key, "release["); ok {
+		num, tail, _ := strings.Cut(rest, "]")
+		if i, err := strconv.Atoi(num); err == nil && i < len(sc.keys) {
+			if sc.keys[i] == "" {
+				return sc.rows[i].find(strings.TrimPrefix(tail, "."))
+			}
+			key = sc.keys[i] + tail
+		}
+	}
+	n, depth := sc.root, 0
+	for _, p := range keyParts(key) {
+		kid := n.kids[p.name]
+		if kid == nil {
+			break
+		}
+		if p.index >= 0 {
+			if p.index >= len(kid.items) {
+				break
+			}
+			kid = kid.items[p.index]
+		}
+		n, depth = kid, depth+1
+	}
+	if depth == 0 {
+		return place{sc.root.at.file, 1, 1}, key
+	}
+	if n.kind == isTable && n.header {
+		return n.key, key
+	}
+	return n.at, key
+}
+
+// keyPart is a part of a key, with its index in brackets or -1.
+type keyPart struct {
+	name  string
+	index int
+}
+
+func keyParts(key string) (out []keyPart) {
+	for _, s := range strings.Split(key, ".") {
+		name, rest, ok := strings.Cut(s, "[")
+		i := -1
+		if ok {
+			i, _ = strconv.Atoi(strings.TrimSuffix(rest, "]"))
+		}
+		out = append(out, keyPart{name, i})
+	}
+	return out
+}
+
+// rowKeys maps the end of a release's key to the column that gives it.
+var rowKeys = map[string]string{"at.height": "height_m", "at.axial": "axial_m", "at.spinward": "spinward_m", "at.deck": "deck", "body": "body"}
+
+// find gives the place in a list of a key of its release.
+func (r *row) find(key string) (place, string) {
+	if col, ok := r.cols[rowKeys[key]]; ok {
+		return place{r.file, r.line, col}, rowKeys[key]
+	}
+	return place{r.file, r.line, 1}, ""
+}

@@ -1,0 +1,97 @@
+package scenarios
+
+import (
+	"fmt"
+	"strings"
+)
+
+// Reference gives the scenario format as a Markdown table, one row a key, from
+// the same data as the checks and the schema.
+func Reference() string {
+	var b strings.Builder
+	b.WriteString("| table | key | holds | default | meaning |\n| --- | --- | --- | --- | --- |\n")
+	write := func(head string, s *section) {
+		for i := range s.keys {
+			k := &s.keys[i]
+			if head == "" && k.sub != nil {
+				continue
+			}
+			deflt := k.deflt
+			if k.required {
+				deflt = "required"
+			}
+			fmt.Fprintf(&b, "| %s | `%s` | %s | %s | %s |\n", head, k.name, k.holds(), deflt, k.doc)
+			head = ""
+		}
+	}
+	write("", file)
+	for i := range file.keys {
+		k := &file.keys[i]
+		if k.sub == nil {
+			continue
+		}
+		write(k.header(k.name), k.sub)
+		for j := range k.sub.keys {
+			if nested := &k.sub.keys[j]; nested.want == wantTables && nested.name != "legs" {
+				write(nested.header(k.name+"."+nested.name), nested.sub)
+			}
+		}
+	}
+	for _, s := range []*section{leg, walkTo, station, throwKeys, velocityKeys, carriedKeys, reach, doorway, target, region} {
+		write("*"+s.name+"*", s)
+	}
+	return b.String()
+}
+
+// header is how a table is headed in a file.
+func (k *key) header(path string) string {
+	if k.want == wantTables {
+		return "`[[" + path + "]]`"
+	}
+	return "`[" + path + "]`"
+}
+
+// holds says what a key holds, in words.
+func (k *key) holds() string {
+	switch k.want {
+	case wantQuantity:
+		words := make([]string, len(k.dims))
+		for i, d := range k.dims {
+			words[i] = article(d.name)
+		}
+		return strings.Join(words, " or ")
+	case wantNumber:
+		return "number"
+	case wantInteger:
+		return "whole number"
+	case wantFlag:
+		return "true or false"
+	case wantWord:
+		return "`" + strings.Join(k.words, "`, `") + "`"
+	case wantTexts:
+		return "text or list"
+	case wantList:
+		if k.count == 0 {
+			return "list of lengths"
+		}
+		return fmt.Sprintf("list of %d lengths", k.count)
+	case wantBounds:
+		return "list"
+	case wantTable:
+		return "*" + k.sub.name + "*"
+	case wantTables:
+		if k.name == "legs" {
+			return "list of *legs*"
+		}
+		return "tables"
+	case wantWordOrQuantity:
+		return "`" + strings.Join(k.words, "`, `") + "` or " + article(k.dims[0].name)
+	case wantBound:
+		return "quantity or number"
+	case wantOpen:
+		return "table"
+	}
+	return "text"
+}
+
+func article(s string) string { return strings.TrimPrefix(strings.TrimPrefix(s, "a "), "an ") }

@@ -1,0 +1,119 @@
+package scenarios
+
+import (
+	"encoding/json"
+	"math"
+	"regexp"
+	"strings"
+)
+
+// Schema gives the JSON Schema (draft 2020-12) of the scenario format, for
+// editors that check TOML against one.
+func Schema() []byte {
+	root := objectSchema(file)
+	root["$schema"] = "https://json-schema.org/draft/2020-12/schema"
+	root["title"] = "offplumb scenario, format 1"
+	out, err := json.MarshalIndent(root, "", "  ")
+	if err != nil {
+		panic(err) // of strings, numbers, lists and maps only
+	}
+	return append(out, '\n')
+}
+
+type schema = map[string]any
+
+func objectSchema(s *section) schema {
+	props := schema{}
+	var required []string
+	for i := range s.keys {
+		k := &s.keys[i]
+		props[k.name] = keySchema(k)
+		if k.required {
+			required = append(required, k.name)
+		}
+	}
+	out := schema{"type": "object", "description": s.doc, "properties": props, "additionalProperties": false}
+	if required != nil {
+		out["required"] = required
+	}
+	return out
+}
+
+func keySchema(k *key) schema {
+	out := valueSchema(k)
+	out["description"] = k.describe()
+	return out
+}
+
+// describe is a key's meaning with its default.
+func (k *key) describe() string {
+	if k.deflt == "" {
+		return k.doc
+	}
+	return k.doc + "; default " + k.deflt
+}
+
+func valueSchema(k *key) schema {
+	switch k.want {
+	case wantQuantity:
+		return quantitySchema(k.dims)
+	case wantNumber:
+		return k.span.schema("number")
+	case wantInteger:
+		return k.span.schema("integer")
+	case wantFlag:
+		return schema{"type": "boolean"}
+	case wantWord:
+		return schema{"enum": k.words}
+	case wantTexts:
+		one := schema{"type": "string"}
+		return schema{"oneOf": []schema{one, {"type": "array", "items": one, "minItems": 1}}}
+	case wantList:
+		out := schema{"type": "array", "items": quantitySchema(k.dims), "minItems": 1}
+		if k.count > 0 {
+			out["minItems"], out["maxItems"] = k.count, k.count
+		}
+		return out
+	case wantBounds:
+		return schema{"type": "array", "items": boundSchema(), "minItems": 1}
+	case wantTable:
+		return objectSchema(k.sub)
+	case wantTables:
+		return schema{"type": "array", "items": objectSchema(k.sub)}
+	case wantWordOrQuantity:
+		return schema{"anyOf": []schema{{"enum": k.words}, quantitySchema(k.dims)}}
+	case wantBound:
+		return boundSchema()
+	case wantOpen:
+		return schema{"type": "object"}
+	}
+	return schema{"type": "string"}
+}
+
+func boundSchema() schema {
+	return schema{"oneOf": []schema{{"type": "number"}, quantitySchema(dimensions)}}
+}
+
+func (s span) schema(kind string) schema {
+	out := schema{"type": kind}
+	if s.open {
+		out["exclusiveMinimum"] = s.low
+	} else if !math.IsInf(s.low, -1) {
+		out["minimum"] = s.low
+	}
+	if !math.IsInf(s.high, 1) {
+		out["maximum"] = s.high
+	}
+	return out
+}
+
+func quantitySchema(dims []*dimension) schema {
+	var units []string
+	for _, d := range dims {
+		for _, u := range d.units {
+			units = append(units, regexp.QuoteMeta(u.name))
+		}
+	}
+	return schema{"type": "string", "examples": []string{dims[0].example},
+		"pattern": `^\s*[+-]?([0-9]+\.?[0-9]*|\.[0-9]+)([eE][+-]?[0-9]+)?\s*(` + strings.Join(units, "|") + `)\s*$`}
+}
