@@ -1,0 +1,256 @@
+package main
+
+import (
+	"fmt"
+	"io"
+	"math"
+	"strings"
+
+	"offplumb/plots"
+	"offplumb/sim/flight"
+	"offplumb/sim/frame"
+	"offplumb/sim/geom"
+	"offplumb/sim/measure"
+	"offplumb/sim/model"
+	"offplumb/sim/table"
+)
+
+// trackPoints is about how many points a drawn track has; figures thin them
+// further.
+const trackPoints = 400
+
+// drawing is a figure to be made, with its file name less the ending.
+type drawing struct {
+	file, of, name string
+	make           func() (*plots.Figure, error)
+}
+
+// figures lists the figures of the run, in each of the formats asked for.
+func (j *job) figures() ([]task, error) {
+	var all []drawing
+	var names table.Namer
+	for i := range j.results {
+		name := names.Name(j.Lets[i].Release.Name)
+		if r := &j.results[i]; r.Track != nil {
+			all = append(all,
+				drawing{name + "-side", "side view", r.Landing.Release, func() (*plots.Figure, error) { return j.sideView(i) }},
+				drawing{name + "-inertial", "inertial view", r.Landing.Release, func() (*plots.Figure, error) { return j.inertialView(i) }})
+		}
+	}
+	all = append(all, j.sharedFigures()...)
+	var paths table.Namer
+	for i := range j.paths {
+		name := paths.Name(j.paths[i].plan.Path.Name)
+		if !j.paths[i].skipped {
+			all = append(all, drawing{"loads-" + name, "loads", j.paths[i].plan.Path.Name, func() (*plots.Figure, error) { return j.loadsChart(i) }})
+		}
+	}
+	return j.drawn(all), nil
+}
+
+func (j *job) drawn(all []drawing) []task {
+	var out []task
+	for _, d := range all {
+		for _, format := range j.flags.formats {
+			out = append(out, task{entry: entry{File: d.file + "." + format, Of: d.of, Name: d.name},
+				write: func(w io.Writer) error {
+					f, err := d.make()
+					if err != nil {
+						return fmt.Errorf("%s of %q: %w", d.of, d.name, err)
+					}
+					return f.Write(w, format)
+				}})
+		}
+	}
+	return out
+}
+
+// described ends a figure's description with the caution.
+func described(format string, args ...any) string {
+	return fmt.Sprintf(format, args...) + " " + caution
+}
+
+// moments gives the times (s since the release) at which a track is drawn: its
+// ends, its knots and between them.
+func moments(t *flight.Track) []float64 {
+	knots := t.Knots()
+	if t.End == 0 {
+		return []float64{0}
+	}
+	out := []float64{knots[0]}
+	for i := 1; i < len(knots); i++ {
+		n := 1 + int(trackPoints*(knots[i]-knots[i-1])/t.End)
+		for k := 1; k <= n; k++ {
+			out = append(out, knots[i-1]+(knots[i]-knots[i-1])*float64(k)/float64(n))
+		}
+	}
+	return out
+}
+
+// seen is where a body is in the habitat at a moment.
+type seen struct {
+	t     float64
+	place frame.Polar // Phi counts from the release, and is not wrapped
+	phase string
+}
+
+func (j *job) seenFrom(t *flight.Track) []seen {
+	m := j.model()
+	w := measure.NewWinding(m, t)
+	var out []seen
+	for _, at := range moments(t) {
+		a := m.Motion.At(t.Begin + at)
+		p := frame.PolarOf(a.In(t.At(at).Pos))
+		p.Phi = w.To(at)
+		out = append(out, seen{at, p, t.Phases[t.PhaseAt(at)].Kind.String()})
+	}
+	return out
+}
+
+// onSide gives the place of a side view: x spinward and y up from the foot of
+// the plumb line on a deck of radius r (m); angle phi from the plumb line.
+func onSide(r, dist, phi float64) plots.Point {
+	sin, cos := math.Sincos(phi)
+	return plots.Point{X: dist * sin, Y: r - dist*cos}
+}
+
+func (j *job) sideView(i int) (*plots.Figure, error) {
+	m, r := j.model(), &j.results[i]
+	t, l := r.Track, &r.Landing
+	deck := &m.Decks[t.Start.Deck]
+	spec := plots.SideViewSpec{Title: sideTitle(l), Spin: m.Habitat.Spin, Deck: deck.Radius, Body: t.Body.Diameter / 2,
+		Outlines: j.section(t.Start.Z, -math.Pi/2-t.Start.Phi, plots.Point{Y: deck.Radius}), Surface: l.Surface, Offset: l.Offset, Deflection: l.Deflection,
+		Notes: j.sideNotes(l, deck)}
+	for _, s := range j.seenFrom(t) {
+		p := onSide(deck.Radius, s.place.R, s.place.Phi)
+		spec.Track = append(spec.Track, plots.TrackPoint{T: s.t, X: p.X, Y: p.Y, Phase: s.phase})
+	}
+	if u := &l.Uniform; u.Lands {
+		for k := 0.0; k <= trackPoints; k++ {
+			s, _, h := u.At(u.Time * k / trackPoints)
+			spec.Uniform = append(spec.Uniform, onSide(deck.Radius, deck.Radius-h, s/deck.Radius))
+		}
+	}
+	if l.Outcome == flight.Landed {
+		last := spec.Track[len(spec.Track)-1]
+		spec.Landing = &plots.Point{X: last.X, Y: last.Y}
+	}
+	spec.Desc = described("Side view in the habitat frame, seen from the +axial end: %s.", sentence(l))
+	return plots.SideView(spec)
+}
+
+func sideTitle(l *measure.Landing) string { return l.Release + ": " + outcomeWords(l) }
+
+// outcomeWords tells a landing in a few words.
+func outcomeWords(l *measure.Landing) string {
+	switch {
+	case l.Outcome == flight.Lost:
+		return "leaves the habitat after " + withUnit(l.Time, "s")
+	case l.Outcome == flight.TimeUp:
+		return "touches nothing in " + withUnit(l.Time, "s")
+	case math.IsNaN(l.Offset) || sigfig(l.Offset, 3) == "0":
+		return "lands on " + l.Surface + ", on the plumb line"
+	}
+	return "lands on " + l.Surface + ", " + way(l.Offset) + " off plumb"
+}
+
+// sentence tells a landing with its figures.
+func sentence(l *measure.Landing) string {
+	s := sideTitle(l) + ", after " + withUnit(l.Time, "s") + " at " + withUnit(l.Speed, "m/s")
+	if l.Outcome == flight.Landed && !math.IsNaN(l.Deflection) {
+		s += "; apparent deflection " + way(l.Deflection)
+	}
+	return s
+}
+
+func (j *job) sideNotes(l *measure.Landing, deck *model.Deck) string {
+	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on deck %q: %s g.", deck.Name, table.Round(j.model().Gravity(deck.Radius)/model.StandardGravity, 3))
+	if l.Uniform.Lands {
+		s += " Dashed: the same release under uniform gravity of that strength, without air."
+	}
+	return s
+}
+
+func (j *job) inertialView(i int) (*plots.Figure, error) {
+	m, r := j.model(), &j.results[i]
+	t, l := r.Track, &r.Landing
+	deck := &m.Decks[t.Start.Deck]
+	foot := frame.Polar{R: deck.Radius, Phi: t.Start.Phi}.Vec()
+	turned := m.Habitat.Spin
+	spec := plots.InertialViewSpec{Title: l.Release + ": the same motion from outside, in the inertial frame", Spin: m.Habitat.Spin,
+		Outlines: j.section(t.Start.Z, 0, plots.Point{}), Foot: plots.Point{X: foot.X, Y: foot.Y},
+		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + t.End), Body: t.Body.Diameter / 2,
+		Surface: l.Surface, Offset: l.Offset, Notes: j.inertialNotes(t, l)}
+	for _, at := range moments(t) {
+		p := t.At(at).Pos
+		spec.Path = append(spec.Path, plots.TrackPoint{T: at, X: p.X, Y: p.Y, Phase: t.Phases[t.PhaseAt(at)].Kind.String()})
+	}
+	if l.Outcome == flight.Landed {
+		spec.Landing = &plots.Point{X: t.Last.Pos.X, Y: t.Last.Pos.Y}
+	}
+	spec.Desc = described("View in the inertial frame from the +axial end: %s, while the habitat turns by %s deg.",
+		sentence(l), table.Round(math.Abs(turned*t.End)*180/math.Pi, 3))
+	return plots.InertialView(spec)
+}
+
+func (j *job) inertialNotes(t *flight.Track, l *measure.Landing) string {
+	path := "Without air the path is a straight line."
+	if !j.model().Air.Vacuum() && t.Body.Diameter > 0 {
+		path = "Air drag, of air that turns with the habitat, bends the path."
+	}
+	return fmt.Sprintf("Inertial frame, seen from the +axial end. %s The habitat turns by %s deg meanwhile.", path,
+		table.Round(math.Abs(j.model().Habitat.Spin*t.End)*180/math.Pi, 3))
+}
+
+// section gives the outlines of the structure at an axial place (m), turned
+// by an angle (rad) and moved by a vector (m).
+func (j *job) section(z, turn float64, by plots.Point) []plots.Outline {
+	m := j.model()
+	var out []plots.Outline
+	for _, o := range m.Interior.Section(z) {
+		name := m.Interior.Surface(o.Surface).Name
+		p := plots.Outline{Name: name, Kind: j.kindOf(name), Closed: true}
+		for _, s := range o.Segs {
+			p.Path = append(p.Path, carried(s, turn, by))
+		}
+		p.Path = sealed(p.Path, by)
+		out = append(out, p)
+	}
+	return out
+}
+
+// carried turns and moves a piece of an outline.
+func carried(s geom.Seg, turn float64, by plots.Point) plots.Segment {
+	sin, cos := math.Sincos(turn)
+	at := func(p [2]float64) plots.Point {
+		return plots.Point{X: cos*p[0] - sin*p[1] + by.X, Y: sin*p[0] + cos*p[1] + by.Y}
+	}
+	if s.Arc {
+		return plots.Arc(at(s.Centre), s.Radius, s.Phi0+turn, s.Phi1+turn)
+	}
+	return plots.Line(at(s.A), at(s.B))
+}
+
+// sealed joins the two circles of a whole ring by seams that are not drawn.
+func sealed(path []plots.Segment, centre plots.Point) []plots.Segment {
+	if len(path) != 2 || path[0].Radius == 0 || path[1].Radius == 0 {
+		return path
+	}
+	return plots.Sector(centre, path[1].Radius, path[0].Radius, path[0].Start, path[0].End)
+}
+
+// kindOf tells structure by the name of its first surface.
+func (j *job) kindOf(name string) plots.Kind {
+	m := j.model()
+	for i := range m.Fixtures {
+		if f := m.Fixtures[i].Name; name == f || strings.HasPrefix(name, f+" ") {
+			return plots.Fixture
+		}
+	}
+	for i := 1; i < len(m.Decks); i++ {
+		if d := m.Decks[i].Name; name == d || strings.HasPrefix(name, d+" ") {
+			return plots.Deck
+		}
+	}
+	return plots.Hull
+}

@@ -1,0 +1,201 @@
+package main
+
+import (
+	"fmt"
+	"math"
+
+	"offplumb/plots"
+	"offplumb/sim/flight"
+	"offplumb/sim/measure"
+	"offplumb/sim/model"
+	"offplumb/sim/table"
+)
+
+// seriesShown bounds the releases in one chart: as many as can be told apart.
+const seriesShown = 6
+
+// sharedFigures are those that show several releases.
+func (j *job) sharedFigures() []drawing {
+	var out []drawing
+	var shown []int
+	for i := range j.results {
+		if r := &j.results[i]; r.Track != nil && r.Landing.Uniform.Lands && r.Track.End > 0 {
+			shown = append(shown, i)
+		}
+	}
+	for n := 0; n*seriesShown < len(shown); n++ {
+		file := "deflection"
+		if n > 0 {
+			file = fmt.Sprintf("deflection-%d", n+1)
+		}
+		part := shown[n*seriesShown : min(len(shown), (n+1)*seriesShown)]
+		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart(part) }})
+	}
+	var names table.Namer
+	for d := range j.model().Decks {
+		name := names.Name(j.model().Decks[d].Name)
+		if over := j.over(d); len(over) > 0 {
+			out = append(out, drawing{"plan-" + name, "deck plan", j.model().Decks[d].Name, func() (*plots.Figure, error) { return j.deckPlan(d, over) }})
+		}
+	}
+	return out
+}
+
+// over lists the releases above a deck.
+func (j *job) over(deck int) []int {
+	var out []int
+	for i := range j.results {
+		if j.results[i].Finished() && j.Lets[i].Place.Deck == deck {
+			out = append(out, i)
+		}
+	}
+	return out
+}
+
+func (j *job) deflectionChart(which []int) (*plots.Figure, error) {
+	spec := plots.DeflectionChartSpec{Title: "Apparent deflection against height and time", Spin: j.model().Habitat.Spin,
+		Notes: "Deck offset less that of the uniform-gravity path, spinward positive."}
+	words := ""
+	for _, i := range which {
+		r := &j.results[i]
+		spec.Series = append(spec.Series, j.deflection(r.Track, &r.Landing))
+		words += " " + sentence(&r.Landing) + "."
+	}
+	if len(which) == 1 {
+		spec.Title = j.results[which[0]].Landing.Release + ": apparent deflection against height and time"
+	}
+	spec.Desc = described("Apparent deflection of each release as it falls.%s", words)
+	return plots.DeflectionChart(spec)
+}
+
+// deflection follows one release: the arc gone round, less that of the
+// uniform-gravity path at the same time and, after that has landed, at its
+// landing.
+func (j *job) deflection(t *flight.Track, l *measure.Landing) plots.DeflectionSeries {
+	deck := j.model().Decks[t.Start.Deck].Radius
+	out := plots.DeflectionSeries{Name: l.Release}
+	for _, s := range j.seenFrom(t) {
+		u, _, _ := l.Uniform.At(math.Min(s.t, l.Uniform.Time))
+		out.Time = append(out.Time, s.t)
+		out.Height = append(out.Height, deck-s.place.R)
+		out.Deflection = append(out.Deflection, deck*s.place.Phi-u)
+	}
+	return out
+}
+
+func (j *job) deckPlan(d int, which []int) (*plots.Figure, error) {
+	m := j.model()
+	deck := &m.Decks[d]
+	spec := plots.DeckPlanSpec{Title: fmt.Sprintf("Landings on the plan of deck %q", deck.Name), Spin: m.Habitat.Spin, Radius: deck.Radius,
+		Round: deck.Whole, Notes: "Deck unrolled, seen from above by someone who stands on it. Open mark: plumb under the release. Numbered mark: plumb under the landing."}
+	if !math.IsInf(deck.Axial[0], 0) {
+		spec.From.Y, spec.To.Y = deck.Axial[0], deck.Axial[1]
+	}
+	if !deck.Whole {
+		spec.From.X, spec.To.X = deck.Radius*deck.From.Angle(deck.Radius), deck.Radius*deck.To.Angle(deck.Radius)
+	}
+	for i := range deck.Openings {
+		o := &deck.Openings[i]
+		spec.Openings = append(spec.Openings, plots.PlanOpening{Name: o.Name, Centre: plots.Point{X: deck.Radius * o.Spinward.Angle(deck.Radius), Y: o.Axial},
+			Size: plots.Point{X: o.Size[0], Y: o.Size[1]}, Coaming: o.Coaming > 0, Closed: o.Closed})
+	}
+	spec.Fixtures = j.footprints(d)
+	words := ""
+	for _, i := range which {
+		spec.Releases = append(spec.Releases, j.planRelease(i, deck))
+		words += " " + sentence(&j.results[i].Landing) + "."
+	}
+	if len(which) > rowsShown {
+		words = fmt.Sprintf(" %d releases.", len(which))
+	}
+	spec.Desc = described("Plan of deck %q with the landings.%s", deck.Name, words)
+	return plots.DeckPlan(spec)
+}
+
+func (j *job) planRelease(i int, deck *model.Deck) plots.PlanRelease {
+	let, l := &j.Lets[i], &j.results[i].Landing
+	out := plots.PlanRelease{Name: l.Release, At: plots.Point{X: deck.Radius * let.Place.Phi, Y: let.Place.Z}, Surface: l.Surface}
+	if l.Outcome == flight.Landed && !math.IsNaN(l.Offset) {
+		out.Landing = &plots.Point{X: out.At.X + l.Offset, Y: out.At.Y + l.OffsetAxial}
+	}
+	return out
+}
+
+// footprints gives what stands on a deck.
+func (j *job) footprints(d int) []plots.PlanFixture {
+	m := j.model()
+	deck := m.Decks[d].Radius
+	var out []plots.PlanFixture
+	for i := range m.Fixtures {
+		f := &m.Fixtures[i]
+		if f.Kind != model.Box {
+			out = append(out, wallPrint(m, f, d)...)
+			continue
+		}
+		p, err := m.Resolve(f.At)
+		if err != nil || p.Deck != d {
+			continue
+		}
+		out = append(out, plots.PlanFixture{Name: f.Name, Path: boxPrint(f, p, deck)})
+	}
+	return out
+}
+
+// boxPrint gives the corners of a box, seen from the axis.
+func boxPrint(f *model.Fixture, p model.Place, deck float64) []plots.Point {
+	sin, cos := math.Sincos(f.Turn)
+	var path []plots.Point
+	for _, c := range [][2]float64{{1, 1}, {-1, 1}, {-1, -1}, {1, -1}} {
+		a, b := c[0]*f.Size[0]/2, c[1]*f.Size[1]/2
+		s, z := a*cos-b*sin, a*sin+b*cos
+		path = append(path, plots.Point{X: deck * (p.Phi + math.Atan2(s, p.R)), Y: p.Z + z})
+	}
+	return path
+}
+
+func wallPrint(m *model.Model, f *model.Fixture, d int) []plots.PlanFixture {
+	if f.Kind != model.Wall {
+		return nil
+	}
+	from, err := m.Resolve(f.From)
+	to, err2 := m.Resolve(f.To)
+	if err != nil || err2 != nil || from.Deck != d {
+		return nil
+	}
+	deck, half := m.Decks[d].Radius, f.Thickness/2
+	x0, x1 := deck*math.Min(from.Phi, to.Phi), deck*math.Max(from.Phi, to.Phi)
+	z0, z1 := math.Min(from.Z, to.Z), math.Max(from.Z, to.Z)
+	if x1-x0 > z1-z0 {
+		z0, z1 = z0-half, z1+half
+	} else {
+		x0, x1 = x0-half, x1+half
+	}
+	return []plots.PlanFixture{{Name: f.Name, Path: []plots.Point{{X: x0, Y: z0}, {X: x1, Y: z0}, {X: x1, Y: z1}, {X: x0, Y: z1}}}}
+}
+
+func (j *job) loadsChart(i int) (*plots.Figure, error) {
+	p := &j.paths[i]
+	name := p.plan.Path.Name
+	spec := plots.LoadsChartSpec{Title: name + ": loads on " + p.plan.Crew.Name + " along the crew path", Spin: j.model().Habitat.Spin,
+		Notes: "Loads are what the person exerts on the structure, at the waist. Spinward and +axial are positive."}
+	joints := p.plan.Joints()
+	for k := range p.plan.Legs() {
+		spec.Legs = append(spec.Legs, plots.LegSpan{Name: p.plan.LegName(k), From: joints[k], To: joints[k+1]})
+	}
+	for k := range p.loads {
+		l := &p.loads[k]
+		spec.Time = append(spec.Time, l.Time)
+		spec.GravityFeet = append(spec.GravityFeet, l.GravityFeet/model.StandardGravity)
+		spec.GravityWaist = append(spec.GravityWaist, l.GravityWaist/model.StandardGravity)
+		spec.GravityHead = append(spec.GravityHead, l.GravityHead/model.StandardGravity)
+		spec.Weight = append(spec.Weight, l.Weight)
+		spec.SideSpinward = append(spec.SideSpinward, l.SideSpinward)
+		spec.SideAxial = append(spec.SideAxial, l.SideAxial)
+		spec.Friction = append(spec.Friction, l.FrictionDemand)
+		spec.HeadCross = append(spec.HeadCross, l.HeadCross)
+	}
+	row := p.row()
+	spec.Desc = described("Loads on %s along %s, which takes %s: gravity at the feet %s, at the head %s, weight %s, side load up to %s, friction demand up to %s.",
+		row[1], row[0], row[2], row[3], row[4], row[5], row[6], row[7])
+	return plots.LoadsChart(spec)
+}

@@ -1,0 +1,131 @@
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"slices"
+
+	"offplumb/sim/crew"
+	"offplumb/sim/flight"
+	"offplumb/sim/measure"
+	"offplumb/sim/model"
+	"offplumb/sim/study"
+	"offplumb/sim/table"
+)
+
+// job is one run of a scenario and all that it finds.
+type job struct {
+	*loaded
+	flags *runFlags
+	out   string
+
+	results   []study.Result // of each release
+	paths     []pathResult   // of each crew path
+	landings  []measure.Landing
+	decks     []measure.DeckFigure
+	verdicts  []measure.Verdict
+	unjudged  []string
+	files     []entry
+	resources []table.Resource
+	notes     []model.Warning
+}
+
+// pathResult is what a crew path does to the person.
+type pathResult struct {
+	plan      *crew.Plan
+	loads     []measure.Load
+	clearance crew.Clearance
+	skipped   bool
+}
+
+// entry is a file of the output folder and what it is about.
+type entry struct {
+	File string `json:"file"`
+	Of   string `json:"of"`
+	Name string `json:"name,omitempty"`
+}
+
+func (j *job) model() *model.Model { return j.Prepared.Model }
+
+// wanted says whether --only asks for a name.
+func (j *job) wanted(name string) bool {
+	return len(j.flags.only) == 0 || slices.Contains(j.flags.only, name)
+}
+
+// choose refuses an --only that names nothing.
+func (j *job) choose() error {
+	known := map[string]bool{}
+	for i := range j.model().Releases {
+		known[j.model().Releases[i].Name] = true
+	}
+	for i := range j.model().Paths {
+		known[j.model().Paths[i].Name] = true
+	}
+	for _, name := range j.flags.only {
+		if !known[name] {
+			return wrong(fmt.Errorf("--only: no release or crew path named %q", name))
+		}
+	}
+	return nil
+}
+
+// compute flies the releases and walks the paths.
+func (j *job) compute(ctx context.Context, p *progress) (err error) {
+	j.results, err = j.Run(ctx, study.Options{Workers: j.flags.jobs, Want: j.wanted, Done: p.releases})
+	if ctx.Err() != nil {
+		return context.Cause(ctx)
+	}
+	return err
+}
+
+// measure works out the paths' loads, the tables' rows and the verdicts.
+func (j *job) measure() {
+	m := j.model()
+	j.notes = append(j.notes, m.Warnings...)
+	for _, plan := range j.Plans {
+		r := pathResult{plan: plan, skipped: !j.wanted(plan.Path.Name)}
+		if !r.skipped {
+			var step float64
+			r.loads, step = measure.LoadSeries(m, plan)
+			r.clearance = plan.Clearance(m)
+			j.noteStep("path."+plan.Path.Name, step)
+		}
+		j.paths = append(j.paths, r)
+	}
+	for i := range j.results {
+		if r := &j.results[i]; r.Finished() {
+			j.landings = append(j.landings, r.Landing)
+		}
+	}
+	j.decks = measure.DeckFigures(m)
+	j.judge()
+	j.warn()
+}
+
+func (j *job) judge() {
+	e := measure.Evidence{Decks: j.decks}
+	e.Landing = func(i int) (*measure.Landing, bool) { return &j.results[i].Landing, j.results[i].Finished() }
+	e.Track = func(i int) ([]measure.Sample, bool) { return j.samples(i) }
+	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
+	for i := range j.Limits {
+		if v, ok := j.Limits[i].Judge(e); ok {
+			j.verdicts = append(j.verdicts, v)
+		} else {
+			j.unjudged = append(j.unjudged, j.Limits[i].Limit.Name)
+		}
+	}
+}
+
+// samples gives the rows of a track.
+func (j *job) samples(i int) ([]measure.Sample, bool) {
+	t := j.results[i].Track
+	if t == nil {
+		return nil, false
+	}
+	m := j.model()
+	rows, _ := measure.Samples(m, t, flight.NewForces(m, t.Body, nil))
+	return rows, true
+}
+
+func asSignal(err error, to *signalled) bool { return errors.As(err, to) }

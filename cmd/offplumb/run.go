@@ -1,0 +1,152 @@
+package main
+
+import (
+	"context"
+	"fmt"
+	"os"
+	"path/filepath"
+	"runtime"
+	"slices"
+	"strings"
+
+	"github.com/spf13/cobra"
+	"offplumb/plots"
+)
+
+// runFlags are those of the run command.
+type runFlags struct {
+	loading
+	out       string
+	only      []string
+	jobs      int
+	noFigures bool
+	formats   []string
+	json      bool
+	quiet     bool
+	force     bool
+}
+
+func newRun(s streams) *cobra.Command {
+	var f runFlags
+	cmd := &cobra.Command{
+		Use: "run SCENARIO.toml", Short: "do everything a scenario asks for; write tables and figures, print a summary",
+		Long: strings.TrimSpace(`
+run reads a scenario, flies its releases, walks its crew paths and judges its
+limits. It writes tables (CSV), figures and run.json into a folder and prints a
+summary. Exit status: 0 done, 1 done but a limit is broken, 2 the command line
+or the scenario is wrong, 3 the run could not be completed.`),
+		Args: exactly(1, "one scenario file, or - for standard input"),
+		RunE: func(cmd *cobra.Command, args []string) error {
+			if err := f.check(); err != nil {
+				return err
+			}
+			return f.run(cmd.Context(), s, args[0])
+		},
+	}
+	f.loading.flags(cmd)
+	fl := cmd.Flags()
+	fl.StringVar(&f.out, "out", "", "write into this `folder` (default: the scenario's name plus -out)")
+	fl.StringArrayVar(&f.only, "only", nil, "run this release or crew path only: its `NAME`, repeatable")
+	fl.IntVar(&f.jobs, "jobs", runtime.GOMAXPROCS(0), "how many `workers` compute at a time")
+	fl.BoolVar(&f.noFigures, "no-figures", false, "write no figures")
+	fl.StringSliceVar(&f.formats, "figure-format", []string{"svg"}, "`formats` of the figures: svg, png, pdf, separated by commas")
+	fl.BoolVar(&f.json, "json", false, "print the contents of run.json in place of the summary")
+	fl.BoolVar(&f.quiet, "quiet", false, "print no summary")
+	fl.BoolVar(&f.force, "force", false, "write into a folder that holds something else")
+	return cmd
+}
+
+func (f *runFlags) check() error {
+	if f.jobs < 1 {
+		return wrong(fmt.Errorf("--jobs: wants 1 or more, got %d", f.jobs))
+	}
+	for _, format := range f.formats {
+		if !slices.Contains(plots.Formats(), format) {
+			return wrong(fmt.Errorf("--figure-format: wants one of %s, got %q", strings.Join(plots.Formats(), ", "), format))
+		}
+	}
+	return nil
+}
+
+// folder gives the output folder of a scenario.
+func (f *runFlags) folder(scenario string) string {
+	if f.out != "" {
+		return f.out
+	}
+	if scenario == "-" {
+		return "scenario-out"
+	}
+	base := filepath.Base(scenario)
+	return strings.TrimSuffix(base, filepath.Ext(base)) + "-out"
+}
+
+func (f *runFlags) run(ctx context.Context, s streams, scenario string) error {
+	sc, err := f.load(scenario, s.in)
+	if err != nil {
+		return err
+	}
+	j := &job{loaded: sc, flags: f, out: f.folder(scenario)}
+	if err := j.choose(); err != nil {
+		return err
+	}
+	st, err := newStage(j.out, f.force)
+	if err != nil {
+		return err
+	}
+	if err := j.do(ctx, s, st); err != nil {
+		return j.giveUp(err, st, s)
+	}
+	if err := st.commit(); err != nil {
+		st.discard()
+		return incomplete(fmt.Errorf("cannot put the results in place: %w", plainPath(j.out, err)))
+	}
+	return j.report(s)
+}
+
+// do computes and writes everything into the stage.
+func (j *job) do(ctx context.Context, s streams, st *stage) error {
+	p := newProgress(s.err, j.flags.quiet)
+	defer p.clear()
+	runErr := j.compute(ctx, p)
+	j.measure()
+	if err := j.write(ctx, st, p, runErr == nil); err != nil {
+		return err
+	}
+	return runErr
+}
+
+// giveUp keeps what was finished beside the output folder, which stays as it
+// is.
+func (j *job) giveUp(err error, st *stage, s streams) error {
+	where, kerr := st.keepPartial()
+	if kerr == nil && where != "" {
+		fmt.Fprintf(s.err, "offplumb: not completed; what was finished is in %s\n", where)
+	}
+	if cause := new(signalled); asSignal(err, cause) {
+		return *cause
+	}
+	return incomplete(err)
+}
+
+// report prints the summary and gives the exit status.
+func (j *job) report(s streams) error {
+	var err error
+	switch {
+	case j.flags.json:
+		var src []byte
+		if src, err = os.ReadFile(filepath.Join(j.out, runFile)); err == nil {
+			_, err = s.out.Write(src)
+		}
+	case !j.flags.quiet:
+		err = j.summary(s.out)
+	}
+	if err != nil {
+		return incomplete(err)
+	}
+	for i := range j.verdicts {
+		if j.verdicts[i].Verdict == "broken" {
+			return errBroken
+		}
+	}
+	return nil
+}

@@ -1,0 +1,132 @@
+package main
+
+import (
+	"context"
+	"fmt"
+	"io"
+	"slices"
+	"sync"
+	"sync/atomic"
+
+	"offplumb/sim/measure"
+	"offplumb/sim/table"
+)
+
+// task is one file to be written.
+type task struct {
+	entry
+	write func(io.Writer) error
+	table []table.Column // of a table, else nil
+	title string
+}
+
+// write puts all files into the stage. After an incomplete run the tables of
+// what was finished are written, and no figures.
+func (j *job) write(ctx context.Context, st *stage, p *progress, complete bool) error {
+	tasks := j.tables()
+	if complete && !j.flags.noFigures {
+		figures, err := j.figures()
+		if err != nil {
+			return err
+		}
+		tasks = append(tasks, figures...)
+	}
+	for i := range tasks {
+		j.files = append(j.files, tasks[i].entry)
+		if t := &tasks[i]; t.table != nil {
+			j.resources = append(j.resources, table.Resource{Name: resourceName(t.File), Path: t.File, Title: t.title, Columns: t.table})
+		}
+	}
+	if err := writeAll(ctx, st, tasks, j.flags.jobs, p, complete); err != nil {
+		return err
+	}
+	if err := st.file("datapackage.json", func(w io.Writer) error {
+		return table.WriteDataPackage(w, "offplumb-run", j.Title, j.resources)
+	}); err != nil {
+		return err
+	}
+	return st.file(runFile, func(w io.Writer) error { return j.runJSON(w, complete) })
+}
+
+// resourceName makes a name of a path, as data packages want it.
+func resourceName(path string) string {
+	var n table.Namer
+	return n.Name(path[:len(path)-len(".csv")])
+}
+
+// writeAll writes the files on several workers. The error is that of the first
+// file in order.
+func writeAll(ctx context.Context, st *stage, tasks []task, workers int, p *progress, stoppable bool) error {
+	errs := make([]error, len(tasks))
+	var next atomic.Int64
+	var all sync.WaitGroup
+	var tell sync.Mutex
+	for range max(1, min(workers, len(tasks))) {
+		all.Go(func() {
+			for {
+				i := int(next.Add(1)) - 1
+				if i >= len(tasks) || stoppable && ctx.Err() != nil {
+					return
+				}
+				errs[i] = st.file(tasks[i].File, tasks[i].write)
+				tell.Lock()
+				p.tell("files", i+1, len(tasks))
+				tell.Unlock()
+			}
+		})
+	}
+	all.Wait()
+	if stoppable && ctx.Err() != nil {
+		return context.Cause(ctx)
+	}
+	i := slices.IndexFunc(errs, func(err error) bool { return err != nil })
+	if i < 0 {
+		return nil
+	}
+	return errs[i]
+}
+
+// tables gives the CSV files.
+func (j *job) tables() []task {
+	out := []task{
+		tableTask("landings.csv", "landings", "", "A row for each release.", measure.LandingTable(j.landings)),
+	}
+	var names table.Namer
+	for i := range j.results {
+		name := names.Name(j.Lets[i].Release.Name)
+		if j.results[i].Track == nil {
+			continue
+		}
+		rows := func() *table.Table { s, _ := j.samples(i); return measure.TrackTable(s) }
+		out = append(out, lateTask("tracks/"+name+".csv", "track", j.Lets[i].Release.Name, "A track: a row for each output step.", rows, measure.TrackTable(nil)))
+	}
+	var paths table.Namer
+	for i := range j.paths {
+		p := &j.paths[i]
+		name := paths.Name(p.plan.Path.Name)
+		if p.skipped {
+			continue
+		}
+		rows := func() *table.Table { return measure.CrewTable(p.loads) }
+		out = append(out, lateTask("crew/"+name+".csv", "crew", p.plan.Path.Name, "Loads along a crew path: a row for each output step.", rows, measure.CrewTable(nil)))
+	}
+	out = append(out, tableTask("decks.csv", "decks", "", "A row for each deck.", measure.DeckTable(j.decks)))
+	if len(j.Limits) > 0 {
+		out = append(out, tableTask("limits.csv", "limits", "", "A row for each limit.", measure.LimitTable(j.verdicts)))
+	}
+	return out
+}
+
+func tableTask(file, of, name, title string, t *table.Table) task {
+	return lateTask(file, of, name, title, func() *table.Table { return t }, t)
+}
+
+// lateTask makes its rows when it is written, so that they need not all be in
+// memory at once.
+func lateTask(file, of, name, title string, rows func() *table.Table, like *table.Table) task {
+	if name != "" {
+		title = fmt.Sprintf("%s: %s", name, title)
+	}
+	return task{entry: entry{File: file, Of: of, Name: name}, title: title, table: like.Columns,
+		write: func(w io.Writer) error { return rows().WriteCSV(w) }}
+}
