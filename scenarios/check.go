@@ -268,7 +268,11 @@ func comma(text string) string {
 func (c *checker) within(n *node, k *key, x float64, path string) bool {
 	s := k.span
 	if x < s.low || s.open && x == s.low || x > s.high || math.IsNaN(x) {
-		c.fault(n.at, path, "", "wants %s, got %s", s.words(k), n.found())
+		got := n.found()
+		if n.kind == isNumber {
+			got = shorten(n.raw)
+		}
+		c.fault(n.at, path, "", "wants %s, got %s", s.words(k), got)
 		return false
 	}
 	return true

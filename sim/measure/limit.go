@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"path"
+	"slices"
 	"strings"
 
 	"offplumb/sim/model"
@@ -69,7 +70,9 @@ func judgedTable[T any](kind string, cols []column[T]) judged {
 		} else if _, taken := j.nums[c.key]; !taken {
 			j.nums[c.key] = c.unit
 		}
-		j.keys = append(j.keys, c.key)
+		if !slices.Contains(j.keys, c.key) {
+			j.keys = append(j.keys, c.key)
+		}
 		if c.unit.suffix != "" && c.text == nil {
 			j.nums[c.key+c.unit.suffix] = c.unit
 		}

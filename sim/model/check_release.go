@@ -26,7 +26,7 @@ func (c *checker) releases() {
 		}
 		p, err := m.Resolve(r.At)
 		if err != nil {
-			c.fault(key+".at", "", "%v", err)
+			c.fault(key+".at"+r.At.key(), "", "%v", err)
 			continue
 		}
 		c.clear(key+".at", p, m.BodyOf(r).Diameter/2)
@@ -85,9 +85,17 @@ func (m *Model) overlap(pos r3.Vec, a float64) string {
 	name := m.Interior.Surface(near.Surface).Name
 	switch slack := TouchSlack * math.Max(1, r3.Norm(pos)*1e-5); {
 	case near.Gap < -slack:
-		return fmt.Sprintf("lies inside what %q is the surface of", name)
+		return fmt.Sprintf("lies inside the solid whose surface is %q", name)
 	case near.Gap < a-slack:
 		return fmt.Sprintf("a body of diameter %.6g m has no room: its centre is %.6g m from %q", 2*a, near.Gap, name)
 	}
 	return ""
+}
+
+// key names what a station stands on.
+func (s *Station) key() string {
+	if s.Room != "" {
+		return ".room"
+	}
+	return ".deck"
 }
