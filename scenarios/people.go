@@ -40,6 +40,13 @@ func (b *builder) leg(o *object) model.Leg {
 		}
 		b.wants(o, "a climb or descent", "speed")
 		b.refuses(o, "a climb or descent has none", head...)
+	case o.has("stand_up"), o.has("sit_down"):
+		l.Kind, l.Distance = model.StandUp, o.num("stand_up")
+		if o.has("sit_down") {
+			l.Kind, l.Distance = model.SitDown, o.num("sit_down")
+		}
+		l.Speed, l.Ramp = o.numOr("speed", model.DefaultRise), o.numOr("ramp", model.DefaultRiseRamp)
+		b.refuses(o, "standing up or sitting down has none", append(ladder, head...)...)
 	case o.has("turn_head"):
 		l.Kind, l.Angle, l.Duration = model.TurnHead, o.num("turn_head"), o.numOr("over", defaultTurn)
 		b.refuses(o, "a turn of the head has none", append(moves, ladder...)...)

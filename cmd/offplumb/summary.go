@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"io"
 	"math"
+	"strconv"
 	"strings"
 
 	"offplumb/sim/flight"
@@ -50,7 +51,7 @@ func spinLine(m *model.Model) string {
 		return "No spin."
 	}
 	return fmt.Sprintf("Spin %s rpm (%s); floor at %s m: %s g, rim speed %s m/s.", table.Round(rpm(h.Spin), 3), way,
-		table.Round(h.FloorRadius, 4), table.Round(m.Gravity(h.FloorRadius)/model.StandardGravity, 3), table.Round(h.Spin*h.FloorRadius, 3))
+		given(h.FloorRadius), table.Round(m.Gravity(h.FloorRadius)/model.StandardGravity, 3), table.Round(h.Spin*h.FloorRadius, 3))
 }
 
 // block appends a headed table, its first columns to the left.
@@ -84,8 +85,8 @@ func (j *job) sumLandings(b *strings.Builder) {
 
 func landingRow(l *measure.Landing) []string {
 	axial := "-"
-	if !math.IsNaN(l.OffsetAxial) && l.OffsetAxial != 0 {
-		axial = sigfig(l.OffsetAxial, 3) + " m"
+	if math.Abs(l.OffsetAxial) > leastShown {
+		axial = withUnit(l.OffsetAxial, "m")
 	}
 	return []string{l.Release, ending(l), way(l.Offset), way(l.Deflection), axial,
 		withUnit(l.Time, "s"), withUnit(l.Speed, "m/s"), withUnit(l.Energy, "J")}
@@ -101,39 +102,58 @@ func ending(l *measure.Landing) string {
 		}
 		return s
 	case flight.Lost:
-		return fmt.Sprintf("lost, leaving the hull at %s deg", table.Fixed(l.Place.Phi*180/math.Pi, 1))
+		return fmt.Sprintf("lost, leaving the hull at %s deg, axial %s m", table.Fixed(l.Place.Phi*180/math.Pi, 1), table.Fixed(l.Place.Z, 1))
 	}
 	return "touched nothing"
 }
 
-// sigfig rounds to significant digits, but shows nothing below a micrometre,
-// which no reader cares for.
+// leastShown is the least magnitude shown, in SI: what is below, no reader
+// cares for.
+const leastShown = 5e-7
+
+// sigfig rounds to significant digits.
 func sigfig(x float64, digits int) string {
-	if math.Abs(x) < 5e-7 {
+	if math.Abs(x) < leastShown {
 		x = 0
 	}
 	return table.Round(x, digits)
 }
 
+// given writes a number as someone gave it, without zeros at its end.
+func given(x float64) string {
+	rounded, _ := strconv.ParseFloat(strconv.FormatFloat(x, 'g', 6, 64), 64)
+	return strconv.FormatFloat(rounded, 'f', -1, 64)
+}
+
+// smaller are the units for small values of some units: each a thousandth of
+// the one before.
+var smaller = map[string][]string{"m": {"m", "mm"}, "J": {"J", "mJ", "uJ"}, "m/s": {"m/s", "mm/s"}}
+
+// smallFrom is the magnitude below which a smaller unit is taken.
+const smallFrom = 0.0099995
+
 func withUnit(x float64, unit string) string {
 	if math.IsNaN(x) {
 		return "-"
+	}
+	units := smaller[unit]
+	for k := 1; k < len(units) && math.Abs(x) < smallFrom && x != 0; k++ {
+		x, unit = 1000*x, units[k]
 	}
 	return sigfig(x, 3) + " " + unit
 }
 
 // way says how far and which way along the deck.
 func way(x float64) string {
-	switch s := sigfig(math.Abs(x), 3); {
+	switch {
 	case math.IsNaN(x):
 		return "-"
-	case s == "0":
+	case math.Abs(x) < leastShown:
 		return "0 m"
 	case x > 0:
-		return s + " m spinward"
-	default:
-		return s + " m antispinward"
+		return withUnit(x, "m") + " spinward"
 	}
+	return withUnit(-x, "m") + " antispinward"
 }
 
 func (j *job) sumPaths(b *strings.Builder) {
@@ -229,7 +249,7 @@ func spaced(unit string) string {
 }
 
 func allowed(v *measure.Verdict) string {
-	low, high := sigfig(v.Min, 3), sigfig(v.Max, 3)
+	low, high := given(v.Min), given(v.Max)
 	none := func(x float64) bool { return math.IsNaN(x) || math.IsInf(x, 0) }
 	switch {
 	case none(v.Min) && none(v.Max):

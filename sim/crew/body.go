@@ -20,17 +20,28 @@ type Point struct {
 //	p'  = (q' - s phi') e_out + q phi' e_spin + z'
 //	p'' = (q'' - q phi'^2 - s phi'') e_out + (2 q' phi' + q phi'' - s phi'^2) e_spin + z''
 //
-// (cylindrical components, Kleppner & Kolenkow, An Introduction to Mechanics,
+// with q' less the rate at which the height grows (cylindrical components, Kleppner & Kolenkow, An Introduction to Mechanics,
 // section 1.9; from memory). q may be negative: beyond the axis.
 func (f *Feet) Point(reach model.Reach) Point {
+	return f.point(reach, motion{x: reach.Height})
+}
+
+// Body gives the motion of a point of the trunk, at a height (m) above the
+// feet when the person stands: it sinks and rises with sitting and standing.
+func (f *Feet) Body(height float64) Point {
+	return f.point(model.Reach{}, motion{x: height - f.low.x, v: -f.low.v, a: -f.low.a})
+}
+
+// point is the point at a reach, its height moving as given.
+func (f *Feet) point(reach model.Reach, height motion) Point {
 	l := frame.LocalAt(f.Phi)
-	q, s := f.R-reach.Height, reach.Spinward
+	q, vq, aq, s := f.R-height.x, f.VR-height.v, f.AR-height.a, reach.Spinward
 	return Point{
 		State: frame.State{
 			Pos: l.Vec(s, f.Z+reach.Axial, -q),
-			Vel: l.Vec(q*f.VPhi, f.VZ, -(f.VR - s*f.VPhi)),
+			Vel: l.Vec(q*f.VPhi, f.VZ, -(vq - s*f.VPhi)),
 		},
-		Acc: l.Vec(2*f.VR*f.VPhi+q*f.APhi-s*f.VPhi*f.VPhi, f.AZ, -(f.AR - q*f.VPhi*f.VPhi - s*f.APhi)),
+		Acc: l.Vec(2*vq*f.VPhi+q*f.APhi-s*f.VPhi*f.VPhi, f.AZ, -(aq - q*f.VPhi*f.VPhi - s*f.APhi)),
 	}
 }
 

@@ -43,7 +43,7 @@ func (p *Plan) blocked(m *model.Model, l *leg) (float64, string) {
 	for k := 0; k <= n; k++ {
 		t := l.start + l.way.lasts()*float64(k)/float64(n)
 		f := p.At(t)
-		for h := stepOver; h <= p.Crew.Stature; h += bodyStep {
+		for h := stepOver; h <= p.Crew.Stature-f.low.x; h += bodyStep {
 			pos := f.Point(model.Reach{Height: h}).Pos
 			if near := m.Interior.Contact(pos); near.Gap < 0 {
 				return t, fmt.Sprintf("%q", m.Interior.Surface(near.Surface).Name)
@@ -74,7 +74,7 @@ func (p *Plan) Clearance(m *model.Model) Clearance {
 func (p *Plan) near(m *model.Model, t float64, best *Clearance) {
 	a := p.Crew.Breadth / 2
 	f := p.At(t)
-	for h := stepOver + a; h <= p.Crew.Stature-a/2; h += bodyStep {
+	for h := stepOver + a; h <= p.Crew.Stature-f.low.x-a/2; h += bodyStep {
 		pos := f.Point(model.Reach{Height: h}).Pos
 		if gap := m.Interior.Dist(pos) - a; gap < best.Gap {
 			near := m.Interior.Contact(pos)

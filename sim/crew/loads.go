@@ -43,7 +43,7 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 
 // felt is the apparent gravity at a share of the stature, m/s^2.
 func (p *Plan) felt(a *frame.Attitude, f *Feet, share float64) r3.Vec {
-	return r3.Scale(-1, Support(a, f.Point(model.Reach{Height: share * p.Crew.Stature})))
+	return r3.Scale(-1, Support(a, f.Body(share*p.Crew.Stature)))
 }
 
 // stand splits the apparent gravity at the waist along the deck's directions.

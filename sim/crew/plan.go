@@ -28,7 +28,8 @@ type leg struct {
 	start  float64 // s from the start of the path
 	from   spot
 	to     spot
-	deck   int // the deck that it is on or begins at
+	deck   int     // the deck that it is on or begins at
+	low    float64 // m, by which the person is lower than standing at its start
 	way    profile
 	length float64 // m
 	spec   *model.Leg
@@ -67,7 +68,8 @@ type builder struct {
 	m        *model.Model
 	plan     *Plan
 	at       spot
-	deck     int // -1 between decks
+	deck     int     // -1 between decks
+	low      float64 // m, by which the person is lower than standing
 	time     float64
 	problems []model.Problem
 }
@@ -78,7 +80,7 @@ func (b *builder) fault(key, format string, args ...any) {
 
 func (b *builder) add(i int, spec *model.Leg) {
 	key := fmt.Sprintf("legs[%d]", i)
-	l := leg{start: b.time, from: b.at, to: b.at, deck: b.deck, spec: spec}
+	l := leg{start: b.time, from: b.at, to: b.at, deck: b.deck, low: b.low, spec: spec}
 	switch spec.Kind {
 	case model.Walk:
 		b.walk(key, &l)
@@ -86,6 +88,8 @@ func (b *builder) add(i int, spec *model.Leg) {
 		b.climb(key, &l)
 	case model.TurnHead:
 		l.way = swing{angle: spec.Angle, over: spec.Duration}
+	case model.StandUp, model.SitDown:
+		b.rise(key, &l)
 	default:
 		l.way = pause(spec.Duration)
 	}
@@ -141,6 +145,30 @@ func (b *builder) onDeck(l *leg) bool {
 		}
 	}
 	return true
+}
+
+// rise lets the person stand up or sit down: waist and head move, the feet
+// stay. A person who stands up before having sat down was sitting from the
+// start of the path.
+func (b *builder) rise(key string, l *leg) {
+	by := l.spec.Distance
+	if l.spec.Kind == model.StandUp {
+		b.low -= by
+		if b.low < 0 {
+			for i := range b.plan.legs {
+				b.plan.legs[i].low -= b.low
+			}
+			l.low -= b.low
+			b.low = 0
+		}
+	} else {
+		b.low += by
+	}
+	if most := b.plan.Crew.Waist * b.plan.Crew.Stature; l.low > most || b.low > most {
+		b.fault(key, "the waist, at %.3g m, would be lower than the feet", most)
+		return
+	}
+	l.way = newRamped(by, l.spec.Speed, l.spec.Ramp)
 }
 
 func (b *builder) climb(key string, l *leg) {
@@ -209,7 +237,7 @@ func (p *Plan) Joints() []float64 {
 // LegName names the i-th leg.
 func (p *Plan) LegName(i int) string {
 	names := map[model.LegKind]string{model.Walk: "walk", model.Stand: "stand", model.Climb: "climb",
-		model.Descend: "descend", model.TurnHead: "turn head"}
+		model.Descend: "descend", model.TurnHead: "turn head", model.StandUp: "stand up", model.SitDown: "sit down"}
 	return fmt.Sprintf("%d %s", i+1, names[p.legs[i].spec.Kind])
 }
 
@@ -224,6 +252,7 @@ type Feet struct {
 	Leg          int
 	Along        float64 // m since the start of the path
 	HeadTurn     r3.Vec  // rad/s, rate of the head relative to the body, habitat components
+	low          motion  // m, by which waist and head are lower than standing
 }
 
 // At gives the feet at a time (s from the start of the path), held at its ends.
@@ -232,6 +261,13 @@ func (p *Plan) At(t float64) Feet {
 	l := &p.legs[i]
 	s := l.way.at(t - l.start)
 	f := Feet{R: l.from.r, Phi: l.from.phi, Z: l.from.z, Leg: i, Along: p.before(i)}
+	f.low.x = l.low
+	switch l.spec.Kind {
+	case model.StandUp:
+		f.low = motion{l.low - s.x, -s.v, -s.a}
+	case model.SitDown:
+		f.low = motion{l.low + s.x, s.v, s.a}
+	}
 	if l.spec.Kind == model.TurnHead {
 		f.HeadTurn = r3.Scale(s.v, headAxis(l.spec.About, f.Phi))
 		return f

@@ -14,7 +14,15 @@ type unit struct {
 	si           string
 }
 
-// The units of the columns.
+// of gives an SI value in the unit.
+func (u unit) of(si float64) float64 {
+	if u.scale == 0 {
+		return si
+	}
+	return si / u.scale
+}
+
+// The units of the columns; a column without one is a ratio.
 var (
 	metre      = unit{"_m", "m", 1, "m"}
 	second     = unit{"_s", "s", 1, "s"}
@@ -26,7 +34,6 @@ var (
 	newton     = unit{"_N", "N", 1, "N"}
 	joule      = unit{"_J", "J", 1, "J"}
 	radPerSec2 = unit{"_rad_s2", "rad/s^2", 1, "rad/s^2"}
-	plain      = unit{"", "", 1, ""}
 )
 
 // column is one column of a table whose rows are made from a T. A number is

@@ -53,9 +53,9 @@ func (c *Criterion) blank(t Target) Verdict {
 	l := c.Limit
 	v := Verdict{Limit: l.Name, Of: t.String(), Measure: l.Measure, Unit: c.unit.name, Source: l.Source,
 		Value: math.NaN(), At: math.NaN(), Verdict: Held, badness: badness{over: math.Inf(-1)}}
-	v.Min, v.Max = si(l.Min)/c.unit.scale, si(l.Max)/c.unit.scale
+	v.Min, v.Max = c.unit.of(si(l.Min)), c.unit.of(si(l.Max))
 	if l.MaxAbs != nil {
-		bound := l.MaxAbs.SI / c.unit.scale
+		bound := c.unit.of(l.MaxAbs.SI)
 		v.Min, v.Max = math.Max(-bound, orInf(v.Min, -1)), math.Min(bound, orInf(v.Max, 1))
 	}
 	return v
@@ -115,7 +115,7 @@ func series[T any](c *Criterion, t Target, cols []column[T], rows []T, time func
 	v := c.blank(t)
 	col := numberColumn(cols, c.Key, c.unit)
 	for i := range rows {
-		c.judge(&v, col.num(&rows[i])/c.unit.scale, time(&rows[i]))
+		c.judge(&v, c.unit.of(col.num(&rows[i])), time(&rows[i]))
 	}
 	if len(rows) == 0 {
 		v.Verdict, v.Found, v.badness = Broken, "no value", badness{rank: 2, over: math.Inf(1)}
@@ -136,7 +136,7 @@ func numberColumn[T any](cols []column[T], key string, u unit) *column[T] {
 // it if it is the worst so far.
 func (c *Criterion) judge(v *Verdict, x, at float64) {
 	now := badness{over: over(x, v.Min, v.Max)}
-	warn := over(x, si(c.Limit.WarnMin)/c.unit.scale, si(c.Limit.WarnMax)/c.unit.scale)
+	warn := over(x, c.unit.of(si(c.Limit.WarnMin)), c.unit.of(si(c.Limit.WarnMax)))
 	verdict, words := Held, ""
 	switch {
 	case math.IsNaN(x):

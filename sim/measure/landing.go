@@ -27,7 +27,7 @@ type Landing struct {
 	Speed         float64 // of the centre relative to the surface
 	NormalSpeed   float64
 	Incidence     float64 // between velocity and normal, 0 head-on
-	Energy        float64 // J; NaN without a mass
+	Energy        float64 // J; NaN without a mass or a touch
 	Uniform       Uniform
 	FellThrough   []string // openings passed before the touch
 }
@@ -52,7 +52,6 @@ func Land(m *model.Model, t *flight.Track) Landing {
 	a := m.Motion.At(t.Begin + t.End)
 	local := a.ToHabitat(last)
 	out.Speed = r3.Norm(local.Vel)
-	out.Energy = energy(t.Body.Mass, out.Speed)
 	out.where(m, local)
 	return out
 }

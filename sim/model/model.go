@@ -257,6 +257,8 @@ const (
 	Climb
 	Descend
 	TurnHead
+	StandUp
+	SitDown
 )
 
 // Direction is one of the four ways to face on a deck.
@@ -276,9 +278,9 @@ type Leg struct {
 	Spinward *Arc     // walk: where to on the deck at hand; nil: as it is
 	Axial    *float64 // walk: where to, m; nil: as it is
 	Laps     float64  // walk: times round, spinward positive, in place of Spinward
-	Speed    float64  // m/s, walk, climb, descend
+	Speed    float64  // m/s, walk, climb, descend; of the head: stand up, sit down
 	Ramp     float64  // s, at both ends
-	Distance float64  // m, climb and descend
+	Distance float64  // m: climb and descend; stand up and sit down: by which the head rises or sinks
 	Duration float64  // s, stand and turn of the head
 	Facing   Direction
 	Angle    float64 // rad, turn of the head
@@ -356,6 +358,8 @@ const (
 	DefaultFriction    = 0.4  // of a body; our choice, no source
 	DefaultBreadth     = 0.5  // m, shoulders and kit
 	DefaultRamp        = 0.5  // s, ramp of a walk or climb
+	DefaultRise        = 1    // m/s, of the head when someone stands up or sits down (common practice, no source)
+	DefaultRiseRamp    = 0.45 // s, its ramp; our choice, no source
 	WaistShare         = 0.55 // of stature (from memory)
 	HeadShare          = 0.93 // of stature (from memory)
 	DefaultRelTol      = 1e-9
