@@ -30,11 +30,14 @@ type Segment struct {
 // At fills y with the state at t, which should lie in [T0, T1]. At(T0) is Y0
 // and At(T1) is Y1, bit for bit.
 func (s *Step) At(t float64, y []float64) {
-	if t == s.T1 {
+	switch t {
+	case s.T1:
 		copy(y, s.Y1)
-		return
+	case s.T0:
+		copy(y, s.Y0) // the polynomial loses the sign of a zero
+	default:
+		s.segment().At(t, y)
 	}
-	s.segment().At(t, y)
 }
 
 // Rate fills dy with the time derivative of the interpolant at t, per unit of
@@ -73,7 +76,7 @@ func (s *Step) Truncate(t float64) {
 	if t == s.T1 {
 		return
 	}
-	s.segment().At(t, s.Y1)
+	s.At(t, s.Y1)
 	s.T1 = t
 	s.st.moved = true
 }

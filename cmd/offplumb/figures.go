@@ -15,9 +15,14 @@ import (
 	"offplumb/sim/table"
 )
 
-// trackPoints is about how many points a drawn track has; figures thin them
-// further.
-const trackPoints = 400
+// A drawn track has about trackPoints points, and one for each turnDrawn (rad)
+// that the habitat turns by, so that its laps are round; figures thin them
+// further. Beyond mostPoints the laps could not be told apart.
+const (
+	trackPoints = 400
+	turnDrawn   = math.Pi / 60
+	mostPoints  = 20_000
+)
 
 // drawing is a figure to be made, with its file name less the ending.
 type drawing struct {
@@ -72,14 +77,15 @@ func described(format string, args ...any) string {
 
 // moments gives the times (s since the release) at which a track is drawn: its
 // ends, its knots and between them.
-func moments(t *flight.Track) []float64 {
+func moments(t *flight.Track, spin float64) []float64 {
 	knots := t.Knots()
 	if t.End == 0 {
 		return []float64{0}
 	}
 	out := []float64{knots[0]}
+	points := math.Min(mostPoints, math.Max(trackPoints, math.Abs(spin)*t.End/turnDrawn))
 	for i := 1; i < len(knots); i++ {
-		n := 1 + int(trackPoints*(knots[i]-knots[i-1])/t.End)
+		n := 1 + int(points*(knots[i]-knots[i-1])/t.End)
 		for k := 1; k <= n; k++ {
 			out = append(out, knots[i-1]+(knots[i]-knots[i-1])*float64(k)/float64(n))
 		}
@@ -98,7 +104,7 @@ func (j *job) seenFrom(t *flight.Track) []seen {
 	m := j.model()
 	w := measure.NewWinding(m, t)
 	var out []seen
-	for _, at := range moments(t) {
+	for _, at := range moments(t, m.Habitat.Spin) {
 		a := m.Motion.At(t.Begin + at)
 		p := frame.PolarOf(a.In(t.At(at).Pos))
 		p.Phi = w.To(at)
@@ -125,18 +131,27 @@ func (j *job) sideView(i int) (*plots.Figure, error) {
 		p := onSide(deck.Radius, s.place.R, s.place.Phi)
 		spec.Track = append(spec.Track, plots.TrackPoint{T: s.t, X: p.X, Y: p.Y, Phase: s.phase})
 	}
-	if u := &l.Uniform; u.Lands {
-		for k := 0.0; k <= trackPoints; k++ {
-			s, _, h := u.At(u.Time * k / trackPoints)
-			spec.Uniform = append(spec.Uniform, onSide(deck.Radius, deck.Radius-h, s/deck.Radius))
-		}
-	}
+	spec.Uniform = uniformPath(&l.Uniform, deck.Radius)
 	if l.Outcome == flight.Landed {
 		last := spec.Track[len(spec.Track)-1]
 		spec.Landing = &plots.Point{X: last.X, Y: last.Y}
 	}
 	spec.Desc = described("Side view in the habitat frame, seen from the +axial end: %s.", sentence(l))
 	return plots.SideView(spec)
+}
+
+// uniformPath bends the uniform-gravity path, which is one over a flat deck,
+// onto a deck of radius r (m). One that rises to the axis cannot be drawn so.
+func uniformPath(u *measure.Uniform, r float64) []plots.Point {
+	if !u.Lands || u.Top() >= r {
+		return nil
+	}
+	var out []plots.Point
+	for k := 0.0; k <= trackPoints; k++ {
+		s, _, h := u.At(u.Time * k / trackPoints)
+		out = append(out, onSide(r, r-h, s/r))
+	}
+	return out
 }
 
 func sideTitle(l *measure.Landing) string { return l.Release + ": " + outcomeWords(l) }
@@ -165,7 +180,11 @@ func sentence(l *measure.Landing) string {
 
 func (j *job) sideNotes(l *measure.Landing, deck *model.Deck) string {
 	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on deck %q: %s g.", deck.Name, table.Round(j.model().Gravity(deck.Radius)/model.StandardGravity, 3))
-	if l.Uniform.Lands {
+	switch {
+	case !l.Uniform.Lands:
+	case l.Uniform.Top() >= deck.Radius:
+		s += " The path under uniform gravity of that strength would rise beyond the axis and is not drawn."
+	default:
 		s += " Dashed: the same release under uniform gravity of that strength, without air."
 	}
 	return s
@@ -181,7 +200,7 @@ func (j *job) inertialView(i int) (*plots.Figure, error) {
 		Outlines: j.section(t.Start.Z, 0, plots.Point{}), Foot: plots.Point{X: foot.X, Y: foot.Y},
 		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + t.End), Body: t.Body.Diameter / 2,
 		Surface: l.Surface, Offset: l.Offset, Notes: j.inertialNotes(t, l)}
-	for _, at := range moments(t) {
+	for _, at := range moments(t, m.Habitat.Spin) {
 		p := t.At(at).Pos
 		spec.Path = append(spec.Path, plots.TrackPoint{T: at, X: p.X, Y: p.Y, Phase: t.Phases[t.PhaseAt(at)].Kind.String()})
 	}

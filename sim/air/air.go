@@ -6,8 +6,9 @@ import "math"
 
 // Constants of dry air.
 const (
-	// GasConstant is that of dry air, J/(kg K): 8314.32/28.9644 of the US
-	// Standard Atmosphere 1976.
+	// GasConstant is that of dry air, J/(kg K): 8314.32/28.96442 of the
+	// standard atmosphere of ISO 2533:1975 (from memory). The molar mass of the
+	// US Standard Atmosphere 1976, rounded to 28.9644, gives 7e-7 more.
 	GasConstant = 287.05287
 	// Sutherland's law, US Standard Atmosphere 1976, eq. 51:
 	// mu = beta T^1.5/(T + S).

@@ -16,7 +16,7 @@ type Polar struct {
 // PolarOf gives the cylindrical coordinates of a point (m) in habitat
 // components, Phi in (-pi, pi].
 func PolarOf(p r3.Vec) Polar {
-	return Polar{R: math.Hypot(p.X, p.Y), Phi: math.Atan2(p.Y, p.X), Z: p.Z}
+	return Polar{R: math.Hypot(p.X, p.Y), Phi: WrapAngle(math.Atan2(p.Y, p.X)), Z: p.Z}
 }
 
 // Vec gives the point, m, in habitat components. A negative R lies across the

@@ -44,3 +44,11 @@ func UniformGravity(m *model.Model, t *flight.Track) Uniform {
 func (u *Uniform) At(time float64) (spinward, axial, height float64) {
 	return u.VSpinward * time, u.VAxial * time, u.Height + u.VUp*time - u.Gravity*time*time/2
 }
+
+// Top is the greatest height that the path reaches, m above the deck.
+func (u *Uniform) Top() float64 {
+	if u.VUp <= 0 || u.Gravity == 0 {
+		return u.Height
+	}
+	return u.Height + u.VUp*u.VUp/(2*u.Gravity)
+}
