@@ -13,8 +13,8 @@ func Reference() string {
 	write := func(head string, s *section) {
 		for i := range s.keys {
 			k := &s.keys[i]
-			if head == "" && k.sub != nil {
-				continue
+			if s == file && k.sub != nil {
+				continue // it has rows of its own
 			}
 			deflt := k.deflt
 			if k.required {

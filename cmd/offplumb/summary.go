@@ -137,7 +137,7 @@ func withUnit(x float64, unit string) string {
 		return "-"
 	}
 	units := smaller[unit]
-	for k := 1; k < len(units) && math.Abs(x) < smallFrom && x != 0; k++ {
+	for k := 1; k < len(units) && math.Abs(x) < smallFrom && math.Abs(x) >= leastShown; k++ {
 		x, unit = 1000*x, units[k]
 	}
 	return sigfig(x, 3) + " " + unit

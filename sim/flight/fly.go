@@ -85,6 +85,11 @@ func (f *Flier) fly(t *Track) error {
 	phase := Phase{Kind: Free, base: t.First}
 	f.st.Reset(0, make([]float64, 6))
 	slop := model.TouchSlack * math.Max(1, r3.Norm(t.First.Pos)*1e-5)
+	if f.lies(t, slop) {
+		t.Last, t.Phases = t.First, append(t.Phases, phase)
+		f.land(t)
+		return nil
+	}
 	events := []integrator.EventSpec{
 		{Event: f.touch, Slop: slop, Terminal: true},
 		{Event: f.hull, Terminal: true},
@@ -121,9 +126,33 @@ func (f *Flier) end(t *Track, stopped bool, hits []integrator.Hit) {
 	if !stopped {
 		return
 	}
-	if t.Outcome = Lost; hits[0].Event != 0 {
-		return
+	if t.Outcome = Lost; hits[0].Event == 0 {
+		f.land(t)
 	}
+}
+
+// parting is the least speed, in m/s, at which a body that touches at its
+// release counts as leaving: slower, it would stay within a nanometre for a
+// second.
+const parting = 1e-9
+
+// lies says whether a body touches a surface at its release, to within slop
+// (m), and does not leave it: it moves in, or it is at rest along the normal
+// and pressed on. Where that is not plain the search for contact decides.
+func (f *Flier) lies(t *Track, slop float64) bool {
+	c := f.m.Interior.Contact(t.Local.Pos)
+	away := r3.Dot(t.Local.Vel, c.Normal)
+	if c.Gap-f.wide > slop || away > parting {
+		return false
+	}
+	a := f.m.Motion.At(t.Begin)
+	ap := a.Apparent(t.Local)
+	force := a.In(f.free.forces.Accel(t.Begin, t.First))
+	return away < -parting || r3.Dot(r3.Add(ap.Sum(), force), c.Normal) < 0
+}
+
+// land ends a track at a touch.
+func (f *Flier) land(t *Track) {
 	t.Outcome = Landed
 	a := f.m.Motion.At(t.Begin + t.End)
 	local := a.ToHabitat(t.Last)
