@@ -1,0 +1,42 @@
+// Package plots draws the figures: it turns tables and outlines, in SI units,
+// into drawings. It knows no models and no physics.
+//
+// SideView and InertialView show one release, on board and from outside; DeflectionChart
+// its apparent deflection, or that of several; DeckPlan one deck unrolled, with landings;
+// LoadsChart what a crew path does to the person. Each takes a spec of plain numbers,
+// names and outlines, and refuses what cannot be drawn.
+//
+// # The language of the figures
+//
+// A figure is a sheet: a title, one or more views or panels in a hairline frame,
+// a strip with the directions and the scale, and a line of notes. Within it
+//
+//   - structure is drawn in thin outlines, solids in a light tint;
+//   - one strong line is what moves, and a phase other than flight is dashed;
+//   - a release is an open circle, a landing a full one, a resting place a square;
+//   - a dimension line with arrows and a value gives what the reader came for;
+//   - a chain line is a plumb line, a dashed thin one the uniform-gravity path;
+//   - things are named where they stand, not in a legend, and no name lies on another;
+//   - where both axes are lengths the scale is one: the sheet is cropped, never
+//     stretched. What is too small for that is drawn again as a detail, with its
+//     scale stated;
+//   - every number carries its unit, or its axis does.
+//
+// Colours are those of Okabe & Ito, "Color Universal Design" (2002, revised 2008;
+// values from memory), which people with the common kinds of colour blindness tell
+// apart. They are never the only cue: a number, a mark or a dash goes with each, so
+// that a grey print says the same. No colour is a verdict.
+//
+// Sheets are at most 540 pt by 390 pt, or the same upright, so that they print on A5
+// at full size with no text below 7.5 pt.
+//
+// # Conventions
+//
+// Lengths are in metres, angles in radians, times in seconds. Side views are seen
+// from the +axial end: spinward to the right, up toward the axis. Deck plans are seen
+// from above, by someone whose feet are on the deck: spinward to the right, +axial
+// toward the bottom of the sheet, since facing spinward +axial is on the right hand.
+//
+// SVG and PNG bytes are the same on each run; a PDF carries its date. PDF text is in code
+// page 1252: a character outside of it becomes a near one, or a question mark.
+package plots
