@@ -36,6 +36,7 @@ func HalfAngle(w, r float64) float64 { return math.Asin(math.Min(1, w/(2*r))) }
 // between the axial places at which holes begin or end, each cut at the
 // angles of its holes.
 func (b *Builder) AddShell(s Shell) {
+	defer b.together()()
 	zs := []float64{s.Z0, s.Z1}
 	for _, h := range s.Holes {
 		zs = append(zs, clamp(h.Z0, s.Z0, s.Z1), clamp(h.Z1, s.Z0, s.Z1))

@@ -21,6 +21,7 @@ type Surface struct {
 type Piece struct {
 	Solid Solid
 	Faces []SurfaceID
+	Group Group // what it is a part of
 	rims  []rim
 }
 
@@ -78,6 +79,7 @@ type Interior struct {
 	surfaces []Surface
 	pieces   []Piece
 	spaces   []Space
+	groups   [][]int // the pieces of each group
 	tree     tree
 }
 
@@ -149,8 +151,10 @@ func (in *Interior) Pieces() []Piece { return in.pieces }
 
 // Builder gathers the surfaces, solids and spaces of an interior.
 type Builder struct {
-	in    Interior
-	named map[string]SurfaceID
+	in     Interior
+	named  map[string]SurfaceID
+	groups Group
+	within int // depth of Together
 }
 
 // Surface gives the surface of a name, making it at its first use.
@@ -170,7 +174,7 @@ func (b *Builder) Surface(name string, restitution, friction float64) SurfaceID 
 
 // Add adds a solid with the surface of each of its faces.
 func (b *Builder) Add(s Solid, faces ...SurfaceID) {
-	b.in.pieces = append(b.in.pieces, Piece{Solid: s, Faces: faces})
+	b.in.pieces = append(b.in.pieces, Piece{Solid: s, Faces: faces, Group: b.group()})
 }
 
 // AddSpace adds a room or passage.
@@ -180,5 +184,6 @@ func (b *Builder) AddSpace(s Space) { b.in.spaces = append(b.in.spaces, s) }
 func (b *Builder) Build() *Interior {
 	in := b.in
 	in.tree = newTree(in.pieces)
+	in.groups = grouped(in.pieces)
 	return &in
 }

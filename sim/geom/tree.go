@@ -128,3 +128,43 @@ func (t *tree) nearest(pieces []Piece, p r3.Vec) (int, float64) {
 	}
 	return at, best
 }
+
+// within calls f with each piece whose distance from p is at most reach, in
+// no special order.
+func (t *tree) within(pieces []Piece, p r3.Vec, reach float64, f func(i int, d float64)) {
+	t.each(pieces, p, &reach, func(i int, d float64) float64 {
+		if d <= reach {
+			f(i, d)
+		}
+		return reach
+	})
+}
+
+// each calls f with the pieces in boxes no farther from p than bound, and sets
+// bound to what f returns.
+func (t *tree) each(pieces []Piece, p r3.Vec, bound *float64, f func(i int, d float64) float64) {
+	if len(t.nodes) == 0 {
+		return
+	}
+	var stack [treeDepth]int
+	top := 1
+	for top > 0 {
+		top--
+		n := &t.nodes[stack[top]]
+		if n.box.Dist(p) > math.Max(*bound, 0) {
+			continue
+		}
+		if n.left == 0 {
+			for _, k := range t.order[n.first:n.last] {
+				*bound = f(k, pieces[k].Solid.Dist(p))
+			}
+			continue
+		}
+		near, far := n.left, n.left+1
+		if t.nodes[far].box.Dist(p) < t.nodes[near].box.Dist(p) {
+			near, far = far, near
+		}
+		stack[top], stack[top+1] = far, near
+		top += 2
+	}
+}

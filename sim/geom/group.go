@@ -1,0 +1,133 @@
+package geom
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// Group is a number of pieces that together are one body of matter: a floor
+// that was cut into sectors around its openings, or a single solid. A sphere
+// that slides along a group crosses the seams of its pieces unawares, because
+// the group's distance, the smallest of theirs, is that of their union in free
+// space.
+type Group int
+
+// Touch is a contact with one group.
+type Touch struct {
+	Group
+	Contact
+}
+
+// group gives the group of the piece that is added next.
+func (b *Builder) group() Group {
+	if b.within > 0 {
+		return b.groups
+	}
+	b.groups++
+	return b.groups - 1
+}
+
+// together puts the pieces added until its result is called into one group.
+func (b *Builder) together() func() {
+	b.within++
+	return func() {
+		if b.within--; b.within == 0 {
+			b.groups++
+		}
+	}
+}
+
+func grouped(pieces []Piece) [][]int {
+	var out [][]int
+	for i := range pieces {
+		for int(pieces[i].Group) >= len(out) {
+			out = append(out, nil)
+		}
+		out[pieces[i].Group] = append(out[pieces[i].Group], i)
+	}
+	return out
+}
+
+// ContactIn gives the nearest point of one group.
+func (in *Interior) ContactIn(p r3.Vec, g Group) Contact {
+	at, best := -1, math.Inf(1)
+	for _, i := range in.groups[g] {
+		if d := in.pieces[i].Solid.Dist(p); d < best {
+			at, best = i, d
+		}
+	}
+	if at < 0 {
+		return Contact{Gap: best, Surface: -1}
+	}
+	return in.contactOf(at, p, best)
+}
+
+func (in *Interior) contactOf(i int, p r3.Vec, d float64) Contact {
+	point, normal, face := in.pieces[i].Solid.Nearest(p)
+	return Contact{Gap: d, Point: point, Normal: normal, Surface: in.pieces[i].surface(face, point)}
+}
+
+// Touching appends to dst a contact with each group within the distance reach
+// (m) of p, those nearest first.
+func (in *Interior) Touching(p r3.Vec, reach float64, dst []Touch) []Touch {
+	from := len(dst)
+	in.tree.within(in.pieces, p, reach, func(i int, d float64) {
+		g := in.pieces[i].Group
+		for k := from; k < len(dst); k++ {
+			if dst[k].Group == g {
+				if d < dst[k].Gap {
+					dst[k].Contact = in.contactOf(i, p, d)
+				}
+				return
+			}
+		}
+		dst = append(dst, Touch{g, in.contactOf(i, p, d)})
+	})
+	for i := from + 1; i < len(dst); i++ {
+		for k := i; k > from && before(&dst[k], &dst[k-1]); k-- {
+			dst[k], dst[k-1] = dst[k-1], dst[k]
+		}
+	}
+	return dst
+}
+
+func before(a, b *Touch) bool {
+	if a.Gap != b.Gap {
+		return a.Gap < b.Gap
+	}
+	return a.Group < b.Group
+}
+
+// parallel is the cosine above which two normals count as one: a sphere of
+// the radius a that meets the next piece of a flat floor at an angle of 4 mrad
+// is a millionth of a away from it.
+const parallel = 1 - 1e-5
+
+// DistBeside gives the distance (m) from p to the nearest solid that belongs
+// to none of the groups touched and whose direction differs from theirs: what
+// a sphere that slides along them would run into.
+//
+// Law: where it jumps as p moves, it jumps upward; else it changes by no more
+// than p does.
+func (in *Interior) DistBeside(p r3.Vec, touched []Touch) float64 {
+	best := math.Inf(1)
+	in.tree.each(in.pieces, p, &best, func(i int, d float64) float64 {
+		for k := range touched {
+			if in.pieces[i].Group == touched[k].Group {
+				return best
+			}
+		}
+		if d < best {
+			_, n, _ := in.pieces[i].Solid.Nearest(p)
+			for k := range touched {
+				if r3.Dot(n, touched[k].Normal) > parallel {
+					return best
+				}
+			}
+			return d
+		}
+		return best
+	})
+	return best
+}
