@@ -4,7 +4,6 @@ import (
 	"math"
 	"testing"
 
-	"offplumb/sim/air"
 	"offplumb/sim/flight"
 	"offplumb/sim/measure"
 	"offplumb/sim/model"
@@ -40,7 +39,7 @@ func one(t *testing.T, in model.Model, setup flight.Setup) (*model.Model, *fligh
 func dropFrom(r, spin, height, diameter float64) model.Model {
 	in := ring(r, spin)
 	in.Bodies = []model.Body{{Name: "b", Mass: 1, Diameter: diameter}}
-	in.Releases = []model.Release{{Name: "drop", Body: "b", At: model.Station{Height: height}}}
+	in.Releases = []model.Release{{Name: "drop", Body: "b", At: model.Station{Height: height}, Until: model.Until{Kind: model.UntilLanding}}}
 	return in
 }
 
@@ -81,5 +80,3 @@ func TestDropFollowsInvolute(t *testing.T) {
 		}
 	}
 }
-
-var _ = air.Air{}

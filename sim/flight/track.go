@@ -3,6 +3,7 @@ package flight
 import (
 	"sort"
 
+	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/integrator"
 	"offplumb/sim/frame"
 	"offplumb/sim/geom"
@@ -14,11 +15,14 @@ type Kind int
 
 // The kinds of phases.
 const (
-	Free Kind = iota // in flight, touching nothing
+	Free  Kind = iota // in flight, touching nothing
+	Slide             // sliding on surfaces
+	Roll              // rolling on a surface without slip
+	Rest              // at rest relative to the habitat
 )
 
 // String names a kind as the tables do.
-func (k Kind) String() string { return [...]string{"flight"}[k] }
+func (k Kind) String() string { return [...]string{"flight", "slide", "roll", "rest"}[k] }
 
 // Outcome is how a release ends.
 type Outcome int
@@ -28,17 +32,22 @@ const (
 	Landed Outcome = iota // it touched a surface
 	TimeUp                // its duration, or the longest allowed, ended
 	Lost                  // its centre passed the hull's outer face
+	Rested                // it came to rest
+	Stuck                 // it is wedged, or its motion has no end that the model can resolve
 )
 
 // String names an outcome as the tables do.
-func (o Outcome) String() string { return [...]string{"landed", "time", "lost"}[o] }
+func (o Outcome) String() string { return [...]string{"landed", "time", "lost", "rested", "stuck"}[o] }
 
 // Phase is a stretch of a track in which a body does one thing.
 type Phase struct {
-	Kind   Kind
-	T0, T1 float64 // s since the release
-	base   frame.State
-	steps  []integrator.Segment // departures from the uniform motion of base
+	Kind    Kind
+	T0, T1  float64 // s since the release
+	Surface string  // of a slide, roll or rest: what it is on at the start
+
+	local bool // steps are in the habitat frame, else inertial
+	base  frame.State
+	steps []integrator.Segment // from T0: departures from base, in flight from its uniform motion
 }
 
 // Impact is a touch of a surface.
@@ -52,6 +61,10 @@ type Impact struct {
 // Work counts what the integration of a track took.
 type Work struct {
 	Steps, Rejected, Derivs int
+}
+
+func (w *Work) add(s integrator.Stats) {
+	w.Steps, w.Rejected, w.Derivs = w.Steps+s.Accepted, w.Rejected+s.Rejected, w.Derivs+s.Derivs
 }
 
 // Track is the motion that a release takes. Its states are inertial.
@@ -68,6 +81,8 @@ type Track struct {
 	End     float64     // s since the release
 	Last    frame.State // at the end, inertial
 	Work    Work
+
+	motion frame.Motion
 }
 
 // Landing is the first touch, or nil.
@@ -87,13 +102,28 @@ func (t *Track) At(time float64) frame.State {
 	if time >= t.End {
 		return t.Last
 	}
-	p := t.PhaseAt(time)
-	steps := t.Phases[p].steps
-	i := sort.Search(len(steps), func(i int) bool { return steps[i].T1 >= time })
-	if i == len(steps) {
-		i--
+	p := &t.Phases[t.PhaseAt(time)]
+	s := p.at(time)
+	if p.local {
+		a := t.motion.At(t.Begin + time)
+		return a.ToInertial(s)
 	}
-	return t.Phases[p].state(i, time)
+	return s
+}
+
+// at gives the state on a phase, in its own frame.
+func (p *Phase) at(time float64) frame.State {
+	u := time - p.T0
+	i := sort.Search(len(p.steps), func(i int) bool { return p.steps[i].T1 >= u })
+	if i = min(i, len(p.steps)-1); i < 0 {
+		return p.base
+	}
+	var y [dims]float64
+	p.steps[i].At(u, y[:p.steps[i].Dim()])
+	if p.local {
+		return frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}
+	}
+	return depart(p.base, u, y[:])
 }
 
 // PhaseAt gives the index of the phase under way, the earlier one at a joint.
@@ -108,7 +138,7 @@ func (t *Track) Knots() []float64 {
 	var out []float64
 	for _, p := range t.Phases {
 		for i := range p.steps {
-			out = append(out, p.steps[i].T0)
+			out = append(out, p.T0+p.steps[i].T0)
 		}
 	}
 	return append(out, t.End)
