@@ -23,7 +23,7 @@ const (
 	parting = 1e-9
 	// stepTurn is how far, in rad, the habitat turns in a step along a
 	// surface, at most: the events without a bound are looked at once a step.
-	stepTurn = 0.1
+	stepTurn = 0.3
 )
 
 // follow takes a release through its phases: flight, impact, slide, roll,
@@ -222,7 +222,7 @@ func (f *Flier) rests(t *Track, now *moving, touches []geom.Touch, idx []int) bo
 	if f.body.Rolls {
 		slow = rollCreep
 	}
-	if r3.Norm(now.v) > slow {
+	if r3.Norm(now.v) > 2*slow { // twice: the event stops short of it
 		return false
 	}
 	a := f.m.Motion.At(t.Begin + now.t)
@@ -295,7 +295,7 @@ func (f *Flier) slideOn(t *Track, now *moving, on []geom.Touch) ([]geom.Group, e
 		Surface: f.m.Interior.Surface(on[0].Surface).Name}
 	s.eval(0, y)
 	if s.rolls {
-		s.slips = s.slip(y) > creep || r3.Norm(s.grip) > s.push[0].mu*s.push[0].force
+		s.slips = s.slip(y) > 2*creep || r3.Norm(s.grip) > s.push[0].mu*s.push[0].force
 		if !s.slips {
 			phase.Kind = Roll
 		}
@@ -315,6 +315,7 @@ func (f *Flier) slideOn(t *Track, now *moving, on []geom.Touch) ([]geom.Group, e
 	t.Work.add(res.Stats)
 	now.t += res.T
 	now.q, now.v, now.w = r3.Add(s.origin, vec(res.Y)), vec(res.Y[3:]), vec(res.Y[6:])
+	f.onto(now, on)
 	f.arrival = f.inertial(t, now)
 	phase.T1 = now.t
 	t.Phases = append(t.Phases, phase)
@@ -325,6 +326,15 @@ func (f *Flier) slideOn(t *Track, now *moving, on []geom.Touch) ([]geom.Group, e
 		}
 	}
 	return parted, nil
+}
+
+// onto takes away what a phase has drifted from its surfaces.
+func (f *Flier) onto(now *moving, on []geom.Touch) {
+	for i := range on {
+		c := f.m.Interior.ContactIn(now.q, on[i].Group)
+		now.q = r3.Add(now.q, r3.Scale(f.wide-c.Gap, c.Normal))
+		now.v = r3.Sub(now.v, r3.Scale(r3.Dot(now.v, c.Normal), c.Normal))
+	}
 }
 
 // contactEvents gives the events of a slide, and the index of the first that

@@ -17,8 +17,9 @@ const (
 	probe = 1e-5
 	// regain is the rate, 1/s, at which a body in contact is brought back onto
 	// its surface from the drift of the integration (Baumgarte 1972; from
-	// memory): slow against the steps, fast against a slide.
-	regain = 20
+	// memory). Slow, since a fast one would govern the steps; what is left at
+	// the end of a phase is taken away at once.
+	regain = 0.5
 	// creep is the speed, in m/s, below which a sliding body counts as having
 	// stopped: it would come to rest within a nanometre.
 	creep = 1e-5
