@@ -36,7 +36,7 @@ func (j *job) figures() ([]task, error) {
 	var names table.Namer
 	for i := range j.results {
 		name := names.Name(j.Lets[i].Release.Name)
-		if r := &j.results[i]; r.Track != nil {
+		if r := &j.results[i]; j.tracked(i) {
 			all = append(all,
 				drawing{name + "-side", "side view", r.Landing.Release, func() (*plots.Figure, error) { return j.sideView(i) }},
 				drawing{name + "-inertial", "inertial view", r.Landing.Release, func() (*plots.Figure, error) { return j.inertialView(i) }})
@@ -75,17 +75,15 @@ func described(format string, args ...any) string {
 	return fmt.Sprintf(format, args...) + " " + caution
 }
 
-// moments gives the times (s since the release) at which a track is drawn: its
-// ends, its knots and between them.
-func moments(t *flight.Track, spin float64) []float64 {
+// moments gives the times (s since the release) at which a track is drawn up
+// to an end: its knots and between them.
+func moments(t *flight.Track, spin, end float64) []float64 {
+	out := []float64{0}
+	points := math.Min(mostPoints, math.Max(trackPoints, math.Abs(spin)*end/turnDrawn))
 	knots := t.Knots()
-	if t.End == 0 {
-		return []float64{0}
-	}
-	out := []float64{knots[0]}
-	points := math.Min(mostPoints, math.Max(trackPoints, math.Abs(spin)*t.End/turnDrawn))
-	for i := 1; i < len(knots); i++ {
-		n := 1 + int(points*(knots[i]-knots[i-1])/t.End)
+	for i := 1; i < len(knots) && knots[i-1] < end; i++ {
+		knots[i] = math.Min(knots[i], end)
+		n := 1 + int(points*(knots[i]-knots[i-1])/end)
 		for k := 1; k <= n; k++ {
 			out = append(out, knots[i-1]+(knots[i]-knots[i-1])*float64(k)/float64(n))
 		}
@@ -100,11 +98,11 @@ type seen struct {
 	phase string
 }
 
-func (j *job) seenFrom(t *flight.Track) []seen {
+func (j *job) seenFrom(t *flight.Track, end float64) []seen {
 	m := j.model()
 	w := measure.NewWinding(m, t)
 	var out []seen
-	for _, at := range moments(t, m.Habitat.Spin) {
+	for _, at := range moments(t, m.Habitat.Spin, end) {
 		a := m.Motion.At(t.Begin + at)
 		p := frame.PolarOf(a.In(t.At(at).Pos))
 		p.Phi = w.To(at)
@@ -127,17 +125,30 @@ func (j *job) sideView(i int) (*plots.Figure, error) {
 	spec := plots.SideViewSpec{Title: sideTitle(l), Spin: m.Habitat.Spin, Deck: deck.Radius, Body: t.Body.Diameter / 2,
 		Outlines: j.section(t.Start.Z, -math.Pi/2-t.Start.Phi, plots.Point{Y: deck.Radius}), Surface: l.Surface, Offset: l.Offset, Deflection: l.Deflection,
 		Notes: j.sideNotes(l, deck)}
-	for _, s := range j.seenFrom(t) {
+	for _, s := range j.seenFrom(t, t.End) {
 		p := onSide(deck.Radius, s.place.R, s.place.Phi)
 		spec.Track = append(spec.Track, plots.TrackPoint{T: s.t, X: p.X, Y: p.Y, Phase: s.phase})
 	}
 	spec.Uniform = uniformPath(&l.Uniform, deck.Radius)
 	if l.Outcome == flight.Landed {
-		last := spec.Track[len(spec.Track)-1]
-		spec.Landing = &plots.Point{X: last.X, Y: last.Y}
+		spec.Landing = landingOn(spec.Track, l.Time)
+	}
+	if o := r.Rest.Outcome; (o == flight.Rested || o == flight.Stuck) && t.End > l.Time {
+		spec.Rest = landingOn(spec.Track, t.End)
 	}
 	spec.Desc = described("Side view in the habitat frame, seen from the +axial end: %s.", sentence(l))
 	return plots.SideView(spec)
+}
+
+// landingOn gives the point of a drawn track at a time, which is one of its
+// moments.
+func landingOn(track []plots.TrackPoint, time float64) *plots.Point {
+	for i := range track {
+		if track[i].T >= time {
+			return &plots.Point{X: track[i].X, Y: track[i].Y}
+		}
+	}
+	return nil
 }
 
 // uniformPath bends the uniform-gravity path, which is one over a flat deck,
@@ -198,17 +209,17 @@ func (j *job) inertialView(i int) (*plots.Figure, error) {
 	turned := m.Habitat.Spin
 	spec := plots.InertialViewSpec{Title: l.Release + ": the same motion from outside, in the inertial frame", Spin: m.Habitat.Spin,
 		Outlines: j.section(t.Start.Z, 0, plots.Point{}), Foot: plots.Point{X: foot.X, Y: foot.Y},
-		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + t.End), Body: t.Body.Diameter / 2,
+		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + l.Time), Body: t.Body.Diameter / 2,
 		Surface: l.Surface, Offset: l.Offset, Notes: j.inertialNotes(t, l)}
-	for _, at := range moments(t, m.Habitat.Spin) {
+	for _, at := range moments(t, m.Habitat.Spin, l.Time) {
 		p := t.At(at).Pos
 		spec.Path = append(spec.Path, plots.TrackPoint{T: at, X: p.X, Y: p.Y, Phase: t.Phases[t.PhaseAt(at)].Kind.String()})
 	}
 	if l.Outcome == flight.Landed {
-		spec.Landing = &plots.Point{X: t.Last.Pos.X, Y: t.Last.Pos.Y}
+		spec.Landing = landingOn(spec.Path, l.Time)
 	}
 	spec.Desc = described("View in the inertial frame from the +axial end: %s, while the habitat turns by %s deg.",
-		sentence(l), table.Round(math.Abs(turned*t.End)*180/math.Pi, 3))
+		sentence(l), table.Round(math.Abs(turned*l.Time)*180/math.Pi, 3))
 	return plots.InertialView(spec)
 }
 
@@ -218,7 +229,7 @@ func (j *job) inertialNotes(t *flight.Track, l *measure.Landing) string {
 		path = "Air drag, of air that turns with the habitat, bends the path."
 	}
 	return fmt.Sprintf("Inertial frame, seen from the +axial end. %s The habitat turns by %s deg meanwhile.", path,
-		table.Round(math.Abs(j.model().Habitat.Spin*t.End)*180/math.Pi, 3))
+		table.Round(math.Abs(j.model().Habitat.Spin*l.Time)*180/math.Pi, 3))
 }
 
 // section gives the outlines of the structure at an axial place (m), turned
@@ -227,7 +238,7 @@ func (j *job) section(z, turn float64, by plots.Point) []plots.Outline {
 	m := j.model()
 	var out []plots.Outline
 	for _, o := range m.Interior.Section(z) {
-		name := m.Interior.Surface(o.Surface).Name
+		name := strings.TrimSuffix(m.Interior.Surface(o.Surface).Name, " outside")
 		p := plots.Outline{Name: name, Kind: j.kindOf(name), Closed: true}
 		for _, s := range o.Segs {
 			p.Path = append(p.Path, carried(s, turn, by))

@@ -19,7 +19,7 @@ func (j *job) sharedFigures() []drawing {
 	var out []drawing
 	var shown []int
 	for i := range j.results {
-		if r := &j.results[i]; r.Track != nil && r.Landing.Uniform.Lands && r.Track.End > 0 {
+		if r := &j.results[i]; j.tracked(i) && r.Landing.Uniform.Lands && r.Landing.Time > 0 {
 			shown = append(shown, i)
 		}
 	}
@@ -74,7 +74,7 @@ func (j *job) deflectionChart(which []int) (*plots.Figure, error) {
 func (j *job) deflection(t *flight.Track, l *measure.Landing) plots.DeflectionSeries {
 	deck := j.model().Decks[t.Start.Deck].Radius
 	out := plots.DeflectionSeries{Name: l.Release}
-	for _, s := range j.seenFrom(t) {
+	for _, s := range j.seenFrom(t, l.Time) {
 		u, _, _ := l.Uniform.At(math.Min(s.t, l.Uniform.Time))
 		out.Time = append(out.Time, s.t)
 		out.Height = append(out.Height, deck-s.place.R)

@@ -23,6 +23,8 @@ type job struct {
 	results   []study.Result // of each release
 	paths     []pathResult   // of each crew path
 	landings  []measure.Landing
+	rests     []measure.Rest
+	near      []measure.Clearance
 	decks     []measure.DeckFigure
 	verdicts  []measure.Verdict
 	unjudged  []string
@@ -83,29 +85,49 @@ func (j *job) compute(ctx context.Context, p *progress) (err error) {
 func (j *job) measure() {
 	m := j.model()
 	j.notes = append(j.notes, m.Warnings...)
+	for i := range j.results {
+		j.rowsOf(i)
+	}
 	for _, plan := range j.Plans {
 		r := pathResult{plan: plan, skipped: !j.wanted(plan.Path.Name)}
 		if !r.skipped {
 			var step float64
 			r.loads, step = measure.LoadSeries(m, plan)
 			r.clearance = plan.Clearance(m)
+			j.near = append(j.near, measure.PathClearances(m, plan)...)
 			j.noteStep("path."+plan.Path.Name, step)
 		}
 		j.paths = append(j.paths, r)
-	}
-	for i := range j.results {
-		if r := &j.results[i]; r.Finished() {
-			j.landings = append(j.landings, r.Landing)
-		}
 	}
 	j.decks = measure.DeckFigures(m)
 	j.judge()
 	j.warn()
 }
 
+// rowsOf gathers a release's rows of the tables.
+func (j *job) rowsOf(i int) {
+	r := &j.results[i]
+	if !r.Finished() {
+		return
+	}
+	j.landings = append(j.landings, r.Landing)
+	j.rests = append(j.rests, r.Rest)
+	if j.tracked(i) {
+		j.near = append(j.near, r.Clearances...)
+	}
+}
+
+// tracked says whether a release's track is to be written and drawn.
+func (j *job) tracked(i int) bool {
+	return j.results[i].Track != nil && !j.Lets[i].Release.NoTrack
+}
+
 func (j *job) judge() {
 	e := measure.Evidence{Decks: j.decks}
 	e.Landing = func(i int) (*measure.Landing, bool) { return &j.results[i].Landing, j.results[i].Finished() }
+	e.Rest = func(i int) (*measure.Rest, bool) { return &j.results[i].Rest, j.results[i].Finished() }
+	e.Events = func(i int) ([]measure.Event, bool) { return j.results[i].Events, j.results[i].Track != nil }
+	e.Clearance = func(i int) ([]measure.Clearance, bool) { return j.results[i].Clearances, j.results[i].Track != nil }
 	e.Track = func(i int) ([]measure.Sample, bool) { return j.samples(i) }
 	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
 	for i := range j.Limits {

@@ -24,6 +24,7 @@ func (j *job) summary(w io.Writer) error {
 	var b strings.Builder
 	b.WriteString(j.Title + "\n" + spinLine(j.model()) + "\n")
 	j.sumLandings(&b)
+	j.sumStories(&b)
 	j.sumPaths(&b)
 	j.sumLimits(&b)
 	if len(j.notes) > 0 {
@@ -156,6 +157,27 @@ func way(x float64) string {
 	return withUnit(-x, "m") + " antispinward"
 }
 
+// sumStories tells what came after the landing, a line a release.
+func (j *job) sumStories(b *strings.Builder) {
+	var lines []string
+	for i := range j.rests {
+		if r := &j.rests[i]; r.Outcome != flight.Landed && (r.Outcome != flight.TimeUp || r.Impacts > 0) {
+			lines = append(lines, wrapped("  "+r.Release+": "+r.Story+".", "    "))
+		}
+	}
+	if len(lines) == 0 {
+		return
+	}
+	b.WriteString("\nHow they went\n")
+	for i, line := range lines {
+		if i == rowsShown {
+			fmt.Fprintf(b, "  and %d more in rests.csv\n", len(lines)-rowsShown)
+			break
+		}
+		b.WriteString(line)
+	}
+}
+
 func (j *job) sumPaths(b *strings.Builder) {
 	rows := [][]string{{"crew path", "person", "takes", "gravity at feet", "at head", "weight", "side load up to", "friction demand up to", "clearance"}}
 	for i := range j.paths {
@@ -279,7 +301,9 @@ func wrapped(text, indent string) string {
 	for i, word := range strings.Fields(text) {
 		switch n := len([]rune(word)); {
 		case i == 0:
-			col = n
+			lead := text[:len(text)-len(strings.TrimLeft(text, " "))]
+			b.WriteString(lead)
+			col = n + len(lead)
 		case col+1+n > textWidth:
 			b.WriteString("\n" + indent)
 			col = len(indent) + n

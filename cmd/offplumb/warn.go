@@ -54,7 +54,7 @@ func studyNames(j *job) (out []string) {
 }
 
 func (j *job) warnReleases() {
-	var ended, late []string
+	var late, stuck []string
 	for i := range j.results {
 		r := &j.results[i]
 		if !r.Finished() {
@@ -62,22 +62,22 @@ func (j *job) warnReleases() {
 		}
 		l := &r.Landing
 		rel := j.Lets[i].Release
-		if l.Outcome == flight.Landed && rel.Until.Kind != model.UntilLanding {
-			ended = append(ended, l.Release)
-		}
-		if l.Outcome == flight.TimeUp && rel.Until.Kind != model.UntilDuration {
+		if r.Rest.Outcome == flight.TimeUp && rel.Until.Kind != model.UntilDuration {
 			late = append(late, l.Release)
+		}
+		if r.Rest.Outcome == flight.Stuck {
+			stuck = append(stuck, l.Release)
 		}
 		if r.Track != nil {
 			_, step := measure.Times(r.Track.End, j.model().Output.Step)
 			j.noteStep("release."+l.Release, step)
 		}
 	}
-	if len(ended) > 0 {
-		j.note("releases", "the motion after the first touch is not computed by this version; these end at their landing: %s", someNames(ended))
-	}
 	if len(late) > 0 {
-		j.note("releases", "touched nothing within the longest time, %s s: %s", table.Round(j.model().Solver.MaxTime, 4), someNames(late))
+		j.note("releases", "still move after the longest time, %s s: %s", table.Round(j.model().Solver.MaxTime, 4), someNames(late))
+	}
+	if len(stuck) > 0 {
+		j.note("releases", "are stuck, wedged between surfaces or in a motion that the model cannot resolve: %s", someNames(stuck))
 	}
 }
 

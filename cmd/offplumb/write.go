@@ -90,15 +90,19 @@ func writeAll(ctx context.Context, st *stage, tasks []task, workers int, p *prog
 func (j *job) tables() []task {
 	out := []task{
 		tableTask("landings.csv", "landings", "", "A row for each release.", measure.LandingTable(j.landings)),
+		tableTask("rests.csv", "rests", "", "A row for each release: where it ends.", measure.RestTable(j.rests)),
 	}
 	var names table.Namer
 	for i := range j.results {
 		name := names.Name(j.Lets[i].Release.Name)
-		if j.results[i].Track == nil {
+		if !j.tracked(i) {
 			continue
 		}
 		rows := func() *table.Table { s, _ := j.samples(i); return measure.TrackTable(s) }
 		out = append(out, lateTask("tracks/"+name+".csv", "track", j.Lets[i].Release.Name, "A track: a row for each output step.", rows, measure.TrackTable(nil)))
+		if events := j.results[i].Events; len(events) > 0 {
+			out = append(out, tableTask("impacts/"+name+".csv", "impacts", j.Lets[i].Release.Name, "A row for each impact.", measure.EventTable(events)))
+		}
 	}
 	var paths table.Namer
 	for i := range j.paths {
@@ -109,6 +113,9 @@ func (j *job) tables() []task {
 		}
 		rows := func() *table.Table { return measure.CrewTable(p.loads) }
 		out = append(out, lateTask("crew/"+name+".csv", "crew", p.plan.Path.Name, "Loads along a crew path: a row for each output step.", rows, measure.CrewTable(nil)))
+	}
+	if len(j.near) > 0 {
+		out = append(out, tableTask("clearance.csv", "clearance", "", "The closest approach of each release and crew path to each surface.", measure.ClearanceTable(j.near)))
 	}
 	out = append(out, tableTask("decks.csv", "decks", "", "A row for each deck.", measure.DeckTable(j.decks)))
 	if len(j.Limits) > 0 {

@@ -136,10 +136,19 @@ func (t *Track) PhaseAt(time float64) int {
 // two of them the track is smooth.
 func (t *Track) Knots() []float64 {
 	var out []float64
-	for _, p := range t.Phases {
-		for i := range p.steps {
-			out = append(out, p.T0+p.steps[i].T0)
-		}
+	for i := range t.Phases {
+		out = t.Phases[i].starts(out)
 	}
 	return append(out, t.End)
+}
+
+// Knots gives the ends of the integration steps of a phase, s since the
+// release.
+func (p *Phase) Knots() []float64 { return append(p.starts(nil), p.T1) }
+
+func (p *Phase) starts(to []float64) []float64 {
+	for i := range p.steps {
+		to = append(to, p.T0+p.steps[i].T0)
+	}
+	return to
 }

@@ -49,6 +49,9 @@ func grouped(pieces []Piece) [][]int {
 	return out
 }
 
+// Groups gives the pieces of each group, as indices into Pieces.
+func (in *Interior) Groups() [][]int { return in.groups }
+
 // ContactIn gives the nearest point of one group.
 func (in *Interior) ContactIn(p r3.Vec, g Group) Contact {
 	at, best := -1, math.Inf(1)

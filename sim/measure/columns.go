@@ -1,5 +1,7 @@
 package measure
 
+import "offplumb/sim/frame"
+
 // landingColumns are those of landings.csv.
 var landingColumns = []column[Landing]{
 	{key: "release", meaning: "name of the release", text: func(l *Landing) string { return l.Release }},
@@ -23,16 +25,61 @@ var landingColumns = []column[Landing]{
 	{key: "normal_speed", unit: speedUnit, meaning: "part of the speed along the surface's normal", num: func(l *Landing) float64 { return l.NormalSpeed }},
 	{key: "incidence", unit: degree, meaning: "angle between velocity and normal, 0 head-on", num: func(l *Landing) float64 { return l.Incidence }},
 	{key: "energy", unit: joule, meaning: "impact energy: half mass times speed squared, without spin", num: func(l *Landing) float64 { return l.Energy }},
-	{key: "falls_through", meaning: "openings passed outward before the landing, separated by semicolons", text: func(l *Landing) string { return l.through() }},
+	{key: "normal_energy", unit: joule, meaning: "half mass times normal speed squared", num: func(l *Landing) float64 { return l.NormalEnergy }},
+	{key: "falls_through", meaning: "openings fallen through in the whole motion, separated by semicolons", text: func(l *Landing) string { return l.through() }},
 	{key: "uniform_time", unit: second, meaning: "duration of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Time) }},
 	{key: "uniform_offset", unit: metre, meaning: "deck offset of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Offset) }},
 	{key: "uniform_speed", unit: speedUnit, meaning: "speed at the end of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Speed) }},
 }
 
+// restColumns are those of rests.csv.
+var restColumns = []column[Rest]{
+	{key: "release", meaning: "name of the release", text: func(r *Rest) string { return r.Release }},
+	{key: "outcome", meaning: "rested; landed: it was to stop there; time: its duration ended; lost: its centre passed the hull's outer face; stuck: it is wedged, or its motion has no end that the model can resolve",
+		text: func(r *Rest) string { return r.Outcome.String() }},
+	{key: "surface", meaning: "what it is on at the end", text: func(r *Rest) string { return r.Surface }},
+	{key: "time", unit: second, meaning: "time of the end, from the release", num: func(r *Rest) float64 { return r.Time }},
+	{key: "deck", meaning: "deck beneath it", text: func(r *Rest) string { return r.Deck }},
+	{key: "spinward", unit: metre, meaning: "place of the centre: arc on that deck", num: func(r *Rest) float64 { return r.Arc }},
+	{key: "axial", unit: metre, meaning: "place of the centre: axial", num: func(r *Rest) float64 { return r.Place.Z }},
+	{key: "height", unit: metre, meaning: "place of the centre: height above that deck", num: func(r *Rest) float64 { return r.Place.Height }},
+	{key: "spinward", unit: degree, meaning: "place of the centre: angle from spinward zero", num: func(r *Rest) float64 { return frame.WrapAngle(r.Place.Phi) }},
+	{key: "impacts", meaning: "number of impacts", num: func(r *Rest) float64 { return float64(r.Impacts) }},
+	{key: "path", unit: metre, meaning: "way of the centre relative to the habitat", num: func(r *Rest) float64 { return r.Path }},
+	{key: "slid", unit: metre, meaning: "part of the way that it slid or rolled", num: func(r *Rest) float64 { return r.Slid }},
+	{key: "speed", unit: speedUnit, meaning: "speed at the end, relative to the habitat", num: func(r *Rest) float64 { return r.Speed }},
+	{key: "story", meaning: "the track in words", text: func(r *Rest) string { return r.Story }},
+}
+
+// eventColumns are those of impacts/NAME.csv.
+var eventColumns = []column[Event]{
+	{key: "time", unit: second, meaning: "time from the release", num: func(e *Event) float64 { return e.Time }},
+	{key: "event", meaning: "impact; leaves: it passes the outer end of a passage outward", text: func(e *Event) string { return e.Kind }},
+	{key: "surface", meaning: "surface touched, or passage left", text: func(e *Event) string { return e.Surface }},
+	{key: "deck", meaning: "deck beneath", text: func(e *Event) string { return e.Deck }},
+	{key: "spinward", unit: metre, meaning: "place of the centre: arc on that deck", num: func(e *Event) float64 { return e.Arc }},
+	{key: "axial", unit: metre, meaning: "place of the centre: axial", num: func(e *Event) float64 { return e.Place.Z }},
+	{key: "height", unit: metre, meaning: "place of the centre: height above that deck", num: func(e *Event) float64 { return e.Place.Height }},
+	{key: "speed", unit: speedUnit, meaning: "speed of the centre relative to the surface", num: func(e *Event) float64 { return e.Speed }},
+	{key: "normal_speed", unit: speedUnit, meaning: "part of the speed along the surface's normal", num: func(e *Event) float64 { return e.NormalSpeed }},
+	{key: "incidence", unit: degree, meaning: "angle between velocity and normal, 0 head-on", num: func(e *Event) float64 { return e.Incidence }},
+	{key: "energy", unit: joule, meaning: "half mass times speed squared, without spin", num: func(e *Event) float64 { return e.Energy }},
+	{key: "normal_energy", unit: joule, meaning: "half mass times normal speed squared", num: func(e *Event) float64 { return e.Normal }},
+}
+
+// clearanceColumns are those of clearance.csv.
+var clearanceColumns = []column[Clearance]{
+	{key: "name", meaning: "release or crew path", text: func(c *Clearance) string { return c.Name }},
+	{key: "surface", meaning: "surface approached", text: func(c *Clearance) string { return c.Surface }},
+	{key: "clearance", unit: metre, meaning: "least gap between the body and the surface; 0 where it was touched, negative where a person's outline reaches into it",
+		num: func(c *Clearance) float64 { return c.Gap }},
+	{key: "time", unit: second, meaning: "time of the closest approach, from the release or the start of the path", num: func(c *Clearance) float64 { return c.Time }},
+}
+
 // sampleColumns are those of tracks/NAME.csv.
 var sampleColumns = []column[Sample]{
 	{key: "time", unit: second, meaning: "time from the release", num: func(s *Sample) float64 { return s.Time }},
-	{key: "phase", meaning: "what the body does: flight", text: func(s *Sample) string { return s.Phase }},
+	{key: "phase", meaning: "what the body does: flight, slide, roll or rest", text: func(s *Sample) string { return s.Phase }},
 	{key: "spinward", unit: metre, meaning: "arc on the deck beneath the start, not wrapped", num: func(s *Sample) float64 { return s.Arc }},
 	{key: "axial", unit: metre, meaning: "axial place of the centre", num: func(s *Sample) float64 { return s.Local.Pos.Z }},
 	{key: "height", unit: metre, meaning: "height of the centre above the deck beneath the start", num: func(s *Sample) float64 { return s.Height }},

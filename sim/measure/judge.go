@@ -10,10 +10,13 @@ import (
 // Evidence is what limits are judged by. A release or path that did not run
 // has none: Release and Path give false, and limits on it are skipped.
 type Evidence struct {
-	Landing func(release int) (*Landing, bool)
-	Track   func(release int) ([]Sample, bool)
-	Loads   func(path int) ([]Load, bool)
-	Decks   []DeckFigure
+	Landing   func(release int) (*Landing, bool)
+	Rest      func(release int) (*Rest, bool)
+	Track     func(release int) ([]Sample, bool)
+	Events    func(release int) ([]Event, bool)
+	Clearance func(release int) ([]Clearance, bool)
+	Loads     func(path int) ([]Load, bool)
+	Decks     []DeckFigure
 }
 
 // Judge gives the verdict on a limit: that on its worst target, at its worst
@@ -37,7 +40,19 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 		if !ok {
 			return Verdict{}, false
 		}
-		return c.landing(t, l), true
+		return judgeEnd(c, t, landingColumns, l, l.Time, c.words(l.Surface, l.AllThrough)), true
+	case "rests":
+		r, ok := e.Rest(t.Index)
+		if !ok {
+			return Verdict{}, false
+		}
+		return judgeEnd(c, t, restColumns, r, r.Time, c.words(r.Surface, nil)), true
+	case "impacts":
+		rows, ok := e.Events(t.Index)
+		return c.impacts(t, rows), ok
+	case "clearance":
+		rows, ok := e.Clearance(t.Index)
+		return series(c, t, clearanceColumns, c.among(rows), func(k *Clearance) float64 { return k.Time }), ok
 	case "tracks":
 		rows, ok := e.Track(t.Index)
 		return series(c, t, sampleColumns, rows, func(s *Sample) float64 { return s.Time }), ok
@@ -68,45 +83,70 @@ func orInf(x float64, sign int) float64 {
 	return x
 }
 
-// landing judges a landing, by its number or by what it touched.
-func (c *Criterion) landing(t Target, l *Landing) Verdict {
+// judgeEnd judges a landing or a rest, by its number or by what it is on;
+// words say how it breaks a limit on surfaces or openings.
+func judgeEnd[T any](c *Criterion, t Target, cols []column[T], row *T, at float64, words string) Verdict {
 	var v Verdict
 	if len(c.Limit.Bounds()) > 0 {
-		v = series(c, t, landingColumns, []Landing{*l}, func(l *Landing) float64 { return l.Time })
+		v = series(c, t, cols, []T{*row}, func(*T) float64 { return at })
 	} else {
 		v = c.blank(t)
-		v.At = l.Time
+		v.At, v.Found = at, "as wanted"
 	}
-	if words := c.words(l); words != "" {
+	if words != "" {
 		v.Verdict, v.badness, v.Found = Broken, badness{rank: 2, over: math.Inf(1)}, words
-	} else if v.Found == "" && l.Surface != "" && c.unit.si == "" {
-		v.Found = l.Surface
 	}
 	return v
 }
 
-// words says how a landing breaks a limit on surfaces or openings.
-func (c *Criterion) words(l *Landing) string {
+// impacts judges the impacts of a release. One without any holds whatever
+// bounds an impact.
+func (c *Criterion) impacts(t Target, rows []Event) Verdict {
+	hits := slices.DeleteFunc(slices.Clone(rows), func(e Event) bool { return e.Kind != Impact })
+	if len(hits) == 0 {
+		v := c.blank(t)
+		v.Found = "no impact"
+		return v
+	}
+	return series(c, t, eventColumns, hits, func(e *Event) float64 { return e.Time })
+}
+
+// among keeps the rows of the surfaces that the limit names, if it names any.
+func (c *Criterion) among(rows []Clearance) []Clearance {
+	if len(c.Limit.SurfaceIn) == 0 {
+		return rows
+	}
+	var out []Clearance
+	for i := range rows {
+		if slices.Contains(c.Limit.SurfaceIn, rows[i].Surface) {
+			out = append(out, rows[i])
+		}
+	}
+	return out
+}
+
+// words says how a landing or a rest breaks a limit on surfaces or openings.
+func (c *Criterion) words(surface string, through []string) string {
 	in, out := c.Limit.SurfaceIn, c.Limit.SurfaceNotIn
 	switch {
-	case len(in) > 0 && !slices.Contains(in, l.Surface):
-		return touched(l) + ", not " + strings.Join(in, " or ")
-	case slices.Contains(out, l.Surface):
-		return touched(l)
+	case len(in) > 0 && !slices.Contains(in, surface):
+		return touched(surface) + ", not " + strings.Join(in, " or ")
+	case slices.Contains(out, surface):
+		return touched(surface)
 	}
 	for _, o := range c.Limit.FallsThroughNot {
-		if slices.Contains(l.FellThrough, o) {
+		if slices.Contains(through, o) {
 			return "fell through " + o
 		}
 	}
 	return ""
 }
 
-func touched(l *Landing) string {
-	if l.Surface == "" {
+func touched(surface string) string {
+	if surface == "" {
 		return "touched nothing"
 	}
-	return "touched " + l.Surface
+	return "touched " + surface
 }
 
 // series judges a column at its worst row. A column without a value anywhere

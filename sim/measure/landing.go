@@ -27,9 +27,11 @@ type Landing struct {
 	Speed         float64 // of the centre relative to the surface
 	NormalSpeed   float64
 	Incidence     float64 // between velocity and normal, 0 head-on
+	NormalEnergy  float64 // J, of the motion along the normal
 	Energy        float64 // J; NaN without a mass or a touch
 	Uniform       Uniform
 	FellThrough   []string // openings passed before the touch
+	AllThrough    []string // and after it
 }
 
 // Land measures the landing of a track.
@@ -37,18 +39,23 @@ func Land(m *model.Model, t *flight.Track) Landing {
 	nan := math.NaN()
 	out := Landing{Release: t.Release.Name, Body: t.Body.Name, Outcome: t.Outcome, Time: t.End,
 		Offset: nan, Deflection: nan, OffsetAxial: nan, DeflAxial: nan,
-		NormalSpeed: nan, Incidence: nan, Energy: nan}
+		NormalSpeed: nan, Incidence: nan, Energy: nan, NormalEnergy: nan}
 	out.Uniform = UniformGravity(m, t)
-	out.FellThrough = FellThrough(m, t)
 	last := t.Last
 	hit := t.Landing()
+	out.AllThrough = FellThrough(m, t, t.End)
 	if hit != nil {
 		out.Outcome, out.Time, out.Surface = flight.Landed, hit.Time, hit.Surface
+		out.FellThrough = FellThrough(m, t, hit.Time)
 		out.strike(t.Body.Mass, hit)
 		out.offsets(m, t, hit)
 		out.where(m, hit.State)
 		return out
 	}
+	if out.Outcome != flight.Lost {
+		out.Outcome = flight.TimeUp
+	}
+	out.FellThrough = out.AllThrough
 	a := m.Motion.At(t.Begin + t.End)
 	local := a.ToHabitat(last)
 	out.Speed = r3.Norm(local.Vel)
@@ -70,7 +77,7 @@ func (l *Landing) strike(mass float64, hit *flight.Impact) {
 	if l.Speed > 0 {
 		l.Incidence = math.Acos(math.Min(1, l.NormalSpeed/l.Speed))
 	}
-	l.Energy = energy(mass, l.Speed)
+	l.Energy, l.NormalEnergy = energy(mass, l.Speed), energy(mass, l.NormalSpeed)
 }
 
 // energy is half m v^2, J, without spin; NaN where no mass is given.
@@ -95,7 +102,7 @@ func (l *Landing) offsets(m *model.Model, t *flight.Track, hit *flight.Impact) {
 func (l *Landing) angle() float64 { return frame.WrapAngle(l.Place.Phi) }
 
 // through lists the openings passed.
-func (l *Landing) through() string { return strings.Join(l.FellThrough, "; ") }
+func (l *Landing) through() string { return strings.Join(l.AllThrough, "; ") }
 
 // uniform is a figure of the uniform-gravity path, which has none where it
 // never comes down.

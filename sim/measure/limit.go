@@ -83,10 +83,13 @@ func judgedTable[T any](kind string, cols []column[T]) judged {
 // judgedTables are the tables that limits may name.
 func judgedTables() map[string]judged {
 	return map[string]judged{
-		"landings": judgedTable("release", landingColumns),
-		"tracks":   judgedTable("release", sampleColumns),
-		"crew":     judgedTable("path", crewColumns),
-		"decks":    judgedTable("habitat", deckColumns),
+		"landings":  judgedTable("release", landingColumns),
+		"rests":     judgedTable("release", restColumns),
+		"tracks":    judgedTable("release", sampleColumns),
+		"impacts":   judgedTable("release", eventColumns),
+		"clearance": judgedTable("release", clearanceColumns),
+		"crew":      judgedTable("path", crewColumns),
+		"decks":     judgedTable("habitat", deckColumns),
 	}
 }
 
@@ -111,7 +114,7 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	c.Table, key, _ = strings.Cut(l.Measure, ".")
 	t, ok := tables[c.Table]
 	if !ok {
-		return c, fault("measure", "wants table.column, the table one of landings, tracks, crew, decks; got %q", l.Measure)
+		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks; got %q", l.Measure)
 	}
 	u, num := t.nums[key]
 	if !num && !t.text[key] {
@@ -133,6 +136,16 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	return c, problems
 }
 
+// NeedTracks marks the releases whose tracks are needed to judge the limit.
+func (c *Criterion) NeedTracks(release []bool) {
+	switch c.Table {
+	case "tracks", "impacts", "clearance":
+		for _, t := range c.Targets {
+			release[t.Index] = true
+		}
+	}
+}
+
 func fault(key, format string, args ...any) []model.Problem {
 	return []model.Problem{{Key: key, Msg: fmt.Sprintf(format, args...)}}
 }
@@ -150,8 +163,10 @@ func (c *Criterion) bounds(num bool) (out []model.Problem) {
 		}
 	}
 	words := len(l.SurfaceIn)+len(l.SurfaceNotIn)+len(l.FallsThroughNot) > 0
-	if words && c.Table != "landings" {
-		out = append(out, fault("measure", "surface_in, surface_not_in and falls_through_not judge landings, got %q", c.Limit.Measure)...)
+	if words && c.Table == "clearance" && len(l.SurfaceNotIn)+len(l.FallsThroughNot) == 0 {
+		words = false // surface_in says which surfaces count
+	} else if words && c.Table != "landings" && c.Table != "rests" {
+		out = append(out, fault("measure", "surface_in and surface_not_in judge landings and rests, falls_through_not landings; got %q", c.Limit.Measure)...)
 	}
 	if !numeric && !words {
 		out = append(out, fault("name", "wants something to hold against: min, max, max_abs, surface_in, surface_not_in or falls_through_not")...)

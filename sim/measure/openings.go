@@ -1,6 +1,7 @@
 package measure
 
 import (
+	"math"
 	"slices"
 
 	"offplumb/sim/flight"
@@ -15,16 +16,17 @@ import (
 const passParts = 8
 
 // FellThrough names the openings within which a track crossed the surface of
-// their deck outward, in the order of their passing, each once.
-func FellThrough(m *model.Model, t *flight.Track) []string {
+// their deck outward up to a time (s since the release), in the order of their
+// decks and their passing, each once.
+func FellThrough(m *model.Model, t *flight.Track, until float64) []string {
 	var out []string
 	knots := t.Knots()
 	for i := range m.Decks {
 		if len(m.Decks[i].Openings) == 0 {
 			continue
 		}
-		for k := 1; k < len(knots); k++ {
-			out = passings(m, t, &m.Decks[i], knots[k-1], knots[k], out)
+		for k := 1; k < len(knots) && knots[k-1] < until; k++ {
+			out = passings(m, t, &m.Decks[i], knots[k-1], math.Min(knots[k], until), out)
 		}
 	}
 	return out

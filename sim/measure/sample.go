@@ -69,7 +69,9 @@ func sampleAt(m *model.Model, t *flight.Track, time, round float64, forces *flig
 	deck := m.Decks[t.Start.Deck].Radius
 	out := Sample{Time: time, Inertial: s, Local: local, Polar: p,
 		Arc: deck * p.Phi, Offset: deck * round, Height: deck - p.R}
-	if len(t.Phases) > 0 {
+	if n := len(t.Phases); n > 0 && time >= t.End {
+		out.Phase = t.Phases[n-1].Kind.String()
+	} else if n > 0 {
 		out.Phase = t.Phases[t.PhaseAt(time)].Kind.String()
 	}
 	out.VSpinward, out.VAxial, out.VUp = frame.LocalAt(p.Phi).Split(local.Vel)

@@ -16,3 +16,13 @@ func DeckTable(rows []DeckFigure) *table.Table { return fill(deckColumns, rows) 
 
 // LimitTable is limits.csv: a row for each limit judged.
 func LimitTable(rows []Verdict) *table.Table { return fill(verdictColumns, rows) }
+
+// RestTable is rests.csv: a row for each release.
+func RestTable(rows []Rest) *table.Table { return fill(restColumns, rows) }
+
+// EventTable is impacts/NAME.csv: a row for each impact.
+func EventTable(rows []Event) *table.Table { return fill(eventColumns, rows) }
+
+// ClearanceTable is clearance.csv: a row for each surface that a release or a
+// crew path came near.
+func ClearanceTable(rows []Clearance) *table.Table { return fill(clearanceColumns, rows) }

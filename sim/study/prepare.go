@@ -16,6 +16,8 @@ type Prepared struct {
 	Plans  []*crew.Plan // of each crew path
 	Lets   []flight.Let // of each release
 	Limits []measure.Criterion
+
+	keep []bool // of each release: its track is wanted
 }
 
 // Prepare works out the crew paths and the start of every release, and checks
@@ -30,6 +32,13 @@ func Prepare(m *model.Model) (*Prepared, []model.Problem) {
 	p.Limits = limits
 	if problems = append(problems, more...); len(problems) > 0 {
 		return nil, problems
+	}
+	p.keep = make([]bool, len(p.Lets))
+	for i := range p.Lets {
+		p.keep[i] = !p.Lets[i].Release.NoTrack
+	}
+	for i := range p.Limits {
+		p.Limits[i].NeedTracks(p.keep)
 	}
 	return p, nil
 }

@@ -12,10 +12,13 @@ import (
 
 // Result is what one release did.
 type Result struct {
-	Track   *flight.Track // nil where only the landing is wanted
-	Landing measure.Landing
-	Work    flight.Work
-	done    bool
+	Track      *flight.Track // nil where only landing and rest are wanted
+	Landing    measure.Landing
+	Rest       measure.Rest
+	Events     []measure.Event     // with Track only, as is Clearances
+	Clearances []measure.Clearance // to every surface
+	Work       flight.Work
+	done       bool
 }
 
 // Finished says whether the release was asked for and computed.
@@ -73,9 +76,11 @@ func (p *Prepared) one(flier *flight.Flier, i int, want func(string) bool) (Resu
 	if err != nil {
 		return Result{}, err
 	}
-	res := Result{Track: track, Landing: measure.Land(p.Model, track), Work: track.Work, done: true}
-	if let.Release.NoTrack {
-		res.Track = nil
+	res := Result{Landing: measure.Land(p.Model, track), Rest: measure.EndOf(p.Model, track), Work: track.Work, done: true}
+	if p.keep[i] {
+		res.Track = track
+		res.Events = measure.Events(p.Model, track)
+		res.Clearances = measure.Clearances(p.Model, track)
 	}
 	return res, nil
 }

@@ -1,0 +1,121 @@
+package measure
+
+import (
+	"math"
+
+	"offplumb/sim/crew"
+	"offplumb/sim/flight"
+	"offplumb/sim/geom"
+	"offplumb/sim/model"
+)
+
+// Clearance is the closest approach of a release or a crew path to a surface.
+type Clearance struct {
+	Name    string
+	Surface string
+	Gap     float64 // m, between the body's surface and it; 0 where it was touched
+	Time    float64 // s since the release
+}
+
+// clearParts is how many times an integration step is looked at for a closest
+// approach, before it is refined.
+const clearParts = 6
+
+// clearLooks is how often a closest approach is refined: 60 thirds leave less
+// than a billionth of the stretch.
+const clearLooks = 60
+
+// Clearances gives the closest approach of a track to every surface that was
+// the nearest of its body of matter at some time, in the order of the
+// interior's surfaces.
+func Clearances(m *model.Model, t *flight.Track) []Clearance {
+	best := map[geom.SurfaceID]Clearance{}
+	times := looks(t)
+	for g := range m.Interior.Groups() {
+		closest(m, t, geom.Group(g), times, best)
+	}
+	for i := range t.Impacts {
+		hit := &t.Impacts[i]
+		if old, ok := best[hit.Contact.Surface]; !ok || old.Gap > 0 {
+			best[hit.Contact.Surface] = Clearance{Gap: 0, Time: hit.Time}
+		}
+	}
+	var out []Clearance
+	for id, s := range m.Interior.Surfaces() {
+		if c, ok := best[geom.SurfaceID(id)]; ok {
+			c.Name, c.Surface = t.Release.Name, s.Name
+			out = append(out, c)
+		}
+	}
+	return out
+}
+
+// looks gives the times at which a track is looked at.
+func looks(t *flight.Track) []float64 {
+	knots := t.Knots()
+	out := []float64{0}
+	for i := 1; i < len(knots); i++ {
+		for k := 1.0; k <= clearParts; k++ {
+			if at := knots[i-1] + (knots[i]-knots[i-1])*k/clearParts; at > out[len(out)-1] {
+				out = append(out, at)
+			}
+		}
+	}
+	return out
+}
+
+// closest finds the least gap to each surface of a group.
+func closest(m *model.Model, t *flight.Track, g geom.Group, times []float64, best map[geom.SurfaceID]Clearance) {
+	gap := func(time float64) geom.Contact {
+		a := m.Motion.At(t.Begin + time)
+		return m.Interior.ContactIn(a.In(t.At(time).Pos), g)
+	}
+	least := map[geom.SurfaceID]int{}
+	gaps := make([]float64, len(times))
+	for i, time := range times {
+		c := gap(time)
+		gaps[i] = c.Gap
+		if old, ok := least[c.Surface]; !ok || c.Gap < gaps[old] {
+			least[c.Surface] = i
+		}
+	}
+	for id, i := range least {
+		c := Clearance{Gap: gaps[i], Time: times[i]}
+		refine(gap, id, times[max(0, i-1)], times[min(len(times)-1, i+1)], &c)
+		c.Gap = math.Max(0, c.Gap-t.Body.Diameter/2)
+		if old, ok := best[id]; !ok || c.Gap < old.Gap {
+			best[id] = c
+		}
+	}
+}
+
+// refine narrows the stretch a to b about the least gap, by thirds, as long as
+// it stays with the surface.
+func refine(gap func(float64) geom.Contact, id geom.SurfaceID, a, b float64, best *Clearance) {
+	for range clearLooks {
+		u, v := a+(b-a)/3, b-(b-a)/3
+		cu, cv := gap(u), gap(v)
+		for _, c := range []struct {
+			geom.Contact
+			at float64
+		}{{cu, u}, {cv, v}} {
+			if c.Surface == id && c.Gap < best.Gap {
+				best.Gap, best.Time = c.Gap, c.at
+			}
+		}
+		if cu.Gap < cv.Gap {
+			b = v
+		} else {
+			a = u
+		}
+	}
+}
+
+// PathClearances gives the closest approach of a person along a path.
+func PathClearances(m *model.Model, p *crew.Plan) []Clearance {
+	c := p.Clearance(m)
+	if math.IsInf(c.Gap, 1) {
+		return nil
+	}
+	return []Clearance{{Name: p.Path.Name, Surface: c.Surface, Gap: c.Gap, Time: c.Time}}
+}

@@ -1,0 +1,109 @@
+package measure
+
+import (
+	"fmt"
+	"strings"
+
+	"offplumb/sim/flight"
+	"offplumb/sim/model"
+	"offplumb/sim/table"
+)
+
+// Story tells a track in one line: what it touched first, what it slid on, by
+// which passage it arrived, where it ended, each with its time and speed.
+func Story(m *model.Model, t *flight.Track) string {
+	s := teller{m: m, t: t, events: Events(m, t)}
+	for i := range t.Phases {
+		s.until(t.Phases[i].T0)
+		if p := &t.Phases[i]; p.T1 > p.T0 && (p.Kind == flight.Slide || p.Kind == flight.Roll) {
+			s.along(p)
+		}
+	}
+	s.until(t.End)
+	s.ending()
+	return strings.Join(s.parts, "; ")
+}
+
+// teller puts a story together.
+type teller struct {
+	m      *model.Model
+	t      *flight.Track
+	events []Event
+	parts  []string
+	last   string // surface of the last impact told
+	more   int    // impacts on it since
+}
+
+func (s *teller) say(format string, args ...any) {
+	s.flush()
+	s.parts = append(s.parts, fmt.Sprintf(format, args...))
+}
+
+// flush counts the impacts that were not told.
+func (s *teller) flush() {
+	if s.more > 0 {
+		words := "bounces there once more"
+		if s.more > 1 {
+			words = fmt.Sprintf("bounces there %d times more", s.more)
+		}
+		s.more = 0
+		s.parts = append(s.parts, words)
+	}
+}
+
+// until tells the events up to a time.
+func (s *teller) until(time float64) {
+	for len(s.events) > 0 && s.events[0].Time <= time {
+		e := &s.events[0]
+		s.events = s.events[1:]
+		switch {
+		case e.Kind == Leaves:
+			s.say("leaves %s at %s with %s", e.Surface, seconds(e.Time), speeds(e.Speed, e.Energy))
+			s.last = ""
+		case e.Surface == s.last:
+			s.more++
+		default:
+			s.say("touches %s at %s with %s", e.Surface, seconds(e.Time), speeds(e.Speed, e.Energy))
+			s.last = e.Surface
+		}
+	}
+}
+
+// along tells a slide or a roll.
+func (s *teller) along(p *flight.Phase) {
+	verb := "slides"
+	if p.Kind == flight.Roll {
+		verb = "rolls"
+	}
+	if way := wayOf(s.m, s.t, p); way > leastWay {
+		s.say("%s %s m on %s", verb, table.Round(way, 3), p.Surface)
+		s.last = ""
+	}
+}
+
+// leastWay is the least slide, in m, that a story tells.
+const leastWay = 1e-3
+
+func (s *teller) ending() {
+	switch s.t.Outcome {
+	case flight.Rested:
+		s.say("rests at %s", seconds(s.t.End))
+	case flight.Stuck:
+		s.say("is stuck at %s", seconds(s.t.End))
+	case flight.Lost:
+		s.say("is lost at %s", seconds(s.t.End))
+	case flight.TimeUp:
+		s.say("still moves at %s", seconds(s.t.End))
+	default:
+		s.flush()
+	}
+}
+
+func seconds(t float64) string { return table.Round(t, 3) + " s" }
+
+func speeds(v, e float64) string {
+	if e != e { // no mass, no energy
+		return table.Round(v, 3) + " m/s"
+	}
+	return table.Round(v, 3) + " m/s, " + table.Round(e, 3) + " J"
+}
