@@ -164,6 +164,9 @@ func leaving(m *model.Model, t *flight.Track, p *model.Passage, s frame.State, a
 func inSection(p *model.Passage, pos r3.Vec) bool {
 	l := frame.LocalAt(p.Spinward.Angle(p.FromRadius))
 	across, along := math.Abs(r3.Dot(pos, l.Spinward)), math.Abs(pos.Z-p.Axial)
+	if r3.Dot(pos, l.Up) > 0 {
+		return false // across the axis
+	}
 	if p.Width > 0 {
 		return across <= p.Width/2 && along <= p.Width/2
 	}

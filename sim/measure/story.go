@@ -21,7 +21,20 @@ func Story(m *model.Model, t *flight.Track) string {
 	}
 	s.until(t.End)
 	s.ending()
-	return strings.Join(s.parts, "; ")
+	return strings.Join(shorter(s.parts), "; ")
+}
+
+// A longer story than headTold + tailTold parts leaves out what is between.
+const headTold, tailTold = 9, 3
+
+func shorter(parts []string) []string {
+	over := len(parts) - headTold - tailTold
+	if over < 2 {
+		return parts
+	}
+	out := append([]string(nil), parts[:headTold]...)
+	out = append(out, fmt.Sprintf("(%d more, in its impacts)", over))
+	return append(out, parts[len(parts)-tailTold:]...)
 }
 
 // teller puts a story together.
