@@ -81,6 +81,9 @@ func (b *builder) build(o *object, files reading) {
 }
 
 func (b *builder) habitat(o *object) {
+	if o == nil {
+		return
+	}
 	h := &b.in.Habitat
 	h.Room = b.room(o)
 	switch {
@@ -100,6 +103,9 @@ func (b *builder) room(o *object) model.Room {
 		CeilingRadius: o.num("ceiling_radius"), TubeRadius: o.num("tube_radius"), FlatFloor: o.flag("flat_floor")}
 	for i, q := range o.list("size") {
 		r.Size[i] = q.si
+	}
+	if o.has("shape") && o.str("shape") == "" {
+		return r
 	}
 	switch r.Shape {
 	case model.Torus:
@@ -155,9 +161,12 @@ func (b *builder) deck(o *object) model.Deck {
 		b.refuses(o, "the reference floor goes the whole way round and from end to end", "from", "to", "axial")
 	}
 	for _, p := range o.subs("opening") {
-		size := p.list("size")
-		d.Openings = append(d.Openings, model.Opening{Name: p.str("name"), Spinward: p.arc("spinward"), Axial: p.num("axial"),
-			Size: [2]float64{size[0].si, size[1].si}, Coaming: p.num("coaming"), Closed: p.flag("closed")})
+		hole := model.Opening{Name: p.str("name"), Spinward: p.arc("spinward"), Axial: p.num("axial"),
+			Coaming: p.num("coaming"), Closed: p.flag("closed")}
+		for i, q := range p.list("size") {
+			hole.Size[i] = q.si
+		}
+		d.Openings = append(d.Openings, hole)
 	}
 	return d
 }
@@ -196,13 +205,20 @@ var fixtureKeys = map[string][2][]string{
 	"wall": {{"from", "to", "height"}, {"thickness", "doorway"}},
 }
 
+func (b *builder) fixtureKeys(o *object, kind string) {
+	own := fixtureKeys[kind]
+	b.wants(o, "a "+kind, own[0]...)
+	for _, other := range []string{"at", "size", "turn", "from", "to", "diameter", "height", "thickness", "doorway"} {
+		if !contains(own[0], other) && !contains(own[1], other) {
+			b.refuses(o, "a "+kind+" has none", other)
+		}
+	}
+}
+
 func (b *builder) fixture(o *object) model.Fixture {
 	k := o.str("kind")
-	b.wants(o, "a "+k, fixtureKeys[k][0]...)
-	for _, other := range []string{"at", "size", "turn", "from", "to", "diameter", "height", "thickness", "doorway"} {
-		if own := fixtureKeys[k]; !contains(own[0], other) && !contains(own[1], other) {
-			b.refuses(o, "a "+k+" has none", other)
-		}
+	if k != "" {
+		b.fixtureKeys(o, k)
 	}
 	f := model.Fixture{Name: o.str("name"), Kind: fixtureKinds[k], At: b.station(o.sub("at")), Turn: o.num("turn"),
 		From: b.station(o.sub("from")), To: b.station(o.sub("to")), Diameter: o.num("diameter"), Height: o.num("height"),
@@ -279,8 +295,7 @@ func (b *builder) limit(o *object) model.Limit {
 		name string
 		to   **model.Quantity
 	}{{"min", &l.Min}, {"max", &l.Max}, {"max_abs", &l.MaxAbs}, {"warn_min", &l.WarnMin}, {"warn_max", &l.WarnMax}} {
-		if o.has(k.name) {
-			q := o.get(k.name)
+		if q, ok := o.vals[k.name]; ok {
 			*k.to = &model.Quantity{SI: q.si, Unit: q.quantity.unit()}
 		}
 	}

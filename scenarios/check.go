@@ -3,6 +3,7 @@ package scenarios
 import (
 	"fmt"
 	"math"
+	"regexp"
 	"slices"
 	"strconv"
 	"strings"
@@ -32,18 +33,19 @@ type value struct {
 	subs  []*object
 }
 
-// Accessors: the zero value where a key is not given.
-
+// has says whether a key is given, be its value right or wrong.
 func (o *object) has(k string) bool {
 	if o == nil {
 		return false
 	}
-	_, ok := o.vals[k]
+	_, ok := o.node.kids[k]
 	return ok
 }
 
+// Accessors: the zero value where a key is not given, or its value is wrong.
+
 func (o *object) get(k string) *value {
-	if o.has(k) {
+	if o != nil && o.vals[k] != nil {
 		return o.vals[k]
 	}
 	return &value{}
@@ -202,6 +204,9 @@ func (c *checker) value(n *node, k *key, path string) *value {
 func (n *node) found() string {
 	switch n.kind {
 	case isText:
+		if n.text == "" {
+			return "an empty text"
+		}
 		return strconv.Quote(shorten(n.text))
 	case isNumber:
 		return "the bare number " + shorten(n.raw)
@@ -278,11 +283,13 @@ func (c *checker) within(n *node, k *key, x float64, path string) bool {
 	return true
 }
 
-// words describes a span.
+// words describes a span, in the unit of its key that is shown.
 func (s span) words(k *key) string {
 	unit := ""
 	if len(k.dims) > 0 {
-		unit = " " + k.dims[0].si
+		u := k.dims[0].shown()
+		unit = " " + u.name
+		s.low, s.high = s.low/u.scale, s.high/u.scale
 	}
 	switch {
 	case s.open && math.IsInf(s.high, 1):
@@ -295,6 +302,10 @@ func (s span) words(k *key) string {
 	return fmt.Sprintf("a value from %.6g%s to %.6g%s", s.low, unit, s.high, unit)
 }
 
+// mostNumber is the largest magnitude of a bare number that is taken for
+// meant; whole numbers below it are exact.
+const mostNumber = 1e15
+
 func (c *checker) number(n *node, k *key, path string) (float64, bool) {
 	if n.kind != isNumber {
 		words := "a bare number"
@@ -304,12 +315,16 @@ func (c *checker) number(n *node, k *key, path string) (float64, bool) {
 		c.fault(n.at, path, "", "wants %s, got %s", words, n.found())
 		return 0, false
 	}
-	if math.IsNaN(n.num) || math.IsInf(n.num, 0) || math.Abs(n.num) > 1e15 {
-		c.fault(n.at, path, "", "wants a finite number, got %s", n.raw)
+	if math.IsNaN(n.num) || math.IsInf(n.num, 0) {
+		c.fault(n.at, path, "", "wants a finite number, got %s", shorten(n.raw))
+		return 0, false
+	}
+	if math.Abs(n.num) > mostNumber {
+		c.fault(n.at, path, "", "wants a magnitude of at most %g, got %s", mostNumber, shorten(n.raw))
 		return 0, false
 	}
 	if k.want == wantInteger && n.num != math.Trunc(n.num) {
-		c.fault(n.at, path, "", "wants a whole number, got %s", n.raw)
+		c.fault(n.at, path, "", "wants a whole number, got %s", shorten(n.raw))
 		return 0, false
 	}
 	return n.num, c.within(n, k, n.num, path)
@@ -325,19 +340,26 @@ func (c *checker) text(n *node, k *key, path string) (string, bool) {
 	if k.want != wantName {
 		return n.text, true
 	}
-	switch {
-	case strings.TrimSpace(n.text) == "":
-		c.fault(n.at, path, "", "wants a name, got an empty text")
-	case n.text != strings.TrimSpace(n.text):
-		c.fault(n.at, path, "", "wants a name without spaces at its ends, got %s", n.found())
-	case len(n.text) > longestName:
-		c.fault(n.at, path, "", "wants a name of at most %d bytes, got %s", longestName, n.found())
-	case strings.ContainsFunc(n.text, func(r rune) bool { return !unicode.IsPrint(r) }):
-		c.fault(n.at, path, "", "wants a name of printable characters, got %s", n.found())
-	default:
-		return n.text, true
+	if why := nameFault(n.text); why != "" {
+		c.fault(n.at, path, "", "%s, got %s", why, n.found())
+		return "", false
 	}
-	return "", false
+	return n.text, true
+}
+
+// nameFault says what is wrong with a name, "" where nothing is.
+func nameFault(s string) string {
+	switch {
+	case strings.TrimSpace(s) == "":
+		return "wants a name"
+	case s != strings.TrimSpace(s):
+		return "wants a name without spaces at its ends"
+	case len(s) > longestName:
+		return fmt.Sprintf("wants a name of at most %d bytes", longestName)
+	case strings.ContainsFunc(s, func(r rune) bool { return !unicode.IsPrint(r) }):
+		return "wants a name of printable characters"
+	}
+	return ""
 }
 
 func (c *checker) word(n *node, k *key, path string) (string, bool) {
@@ -385,7 +407,11 @@ func (c *checker) list(n *node, k *key, path string) ([]quantity, bool) {
 	if !c.is(n, isArray, "a list in brackets", path) {
 		return nil, false
 	}
-	if k.count > 0 && len(n.items) != k.count || len(n.items) == 0 {
+	if len(n.items) == 0 {
+		c.fault(n.at, path, "", "wants %s, got an empty list", countWords(k.count))
+		return nil, false
+	}
+	if k.count > 0 && len(n.items) != k.count {
 		c.fault(n.at, path, "", "wants %s, got %d", countWords(k.count), len(n.items))
 		return nil, false
 	}
@@ -410,9 +436,16 @@ func countWords(n int) string {
 	return fmt.Sprintf("a list of %d values", n)
 }
 
+// indices are those of lists in a path.
+var indices = regexp.MustCompile(`\[[0-9]+\]`)
+
 func (c *checker) tables(n *node, k *key, path string) ([]*object, bool) {
 	if n.kind == isTable {
-		c.fault(n.key, path, fmt.Sprintf("write [[%s]]", k.name), "wants a list of tables, got one table")
+		hint := fmt.Sprintf("write [[%s]]", indices.ReplaceAllString(path, ""))
+		if n.inline {
+			hint = fmt.Sprintf("write %s = [{ ... }]", k.name)
+		}
+		c.fault(n.key, path, hint, "wants a list of tables, got one table")
 		return nil, false
 	}
 	if !c.is(n, isArray, "a list of tables", path) {

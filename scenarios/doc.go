@@ -5,13 +5,14 @@
 //
 // The way of a file, each stage in a file of its own:
 //
+//	place.go     the place of each offset of a file
 //	tree.go      TOML text -> a tree of nodes with their positions
 //	set.go       settings from the command line, put into the tree
 //	keys.go      the format as data: every key, its unit, range and meaning
 //	check.go     the tree held against the format -> typed values in SI
 //	units.go     quantities with units
 //	build.go     typed values -> model.Model
-//	list.go      release lists in CSV
+//	list.go      release lists in CSV; their rows in listrow.go
 //	load.go      all of it in order, and the places of later problems
 //	reference.go the format as a table for the README; schema.go as JSON Schema
 //	examples.go  the shipped scenarios

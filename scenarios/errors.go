@@ -57,21 +57,14 @@ func (l ErrorList) sorted() ErrorList {
 	return slices.Compact(l)
 }
 
-// place is where a value stands.
-type place struct {
-	file      string
-	line, col int
-}
-
-func (p place) fault(key, hint, format string, args ...any) Error {
-	return Error{File: p.file, Line: p.line, Col: p.col, Key: key, Msg: fmt.Sprintf(format, args...), Hint: hint}
-}
-
 // nearest gives the known word that is most like the one given, or "" where
 // none is within a third of its letters.
 func nearest(word string, known []string) string {
 	best, least := "", max(1, len(word)/3)+1
 	for _, k := range known {
+		if len(word)-len(k) >= least || len(k)-len(word) >= least {
+			continue // as many letters to insert or delete at least
+		}
 		if d := editDistance(word, k); d < least {
 			best, least = k, d
 		}
@@ -86,14 +79,14 @@ const maxWord = 64
 // their neighbour to make b of a (optimal string alignment).
 func editDistance(a, b string) int {
 	if len(a) > maxWord || len(b) > maxWord {
-		return maxWord
+		return max(len(a), len(b))
 	}
-	var d [maxWord + 1][maxWord + 1]int
+	var d [maxWord + 1][maxWord + 1]uint8 // of at most maxWord, and cheap to clear
 	for i := 0; i <= len(a); i++ {
 		for j := 0; j <= len(b); j++ {
 			switch {
 			case i == 0 || j == 0:
-				d[i][j] = i + j
+				d[i][j] = uint8(i + j)
 				continue
 			case a[i-1] == b[j-1]:
 				d[i][j] = d[i-1][j-1]
@@ -105,5 +98,5 @@ func editDistance(a, b string) int {
 			}
 		}
 	}
-	return d[len(a)][len(b)]
+	return int(d[len(a)][len(b)])
 }

@@ -58,9 +58,6 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 	errs = append(errs, apply(root, opt.Sets)...)
 	b := &builder{}
 	o := b.object(root, file, "")
-	if errs = append(errs, b.errs...); len(errs) > 0 {
-		return nil, errs.sorted()
-	}
 	sc := &Scenario{Name: name, Title: o.str("title"), Notes: o.str("notes"), Studies: studies(o), Inputs: []Input{input(name, src)}, root: root}
 	if sc.Title == "" {
 		sc.Title = strings.TrimSuffix(path.Base(name), ".toml")
@@ -68,8 +65,8 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 	}
 	b.build(o, reading{read: readOrNot(opt.ReadFile), allowOutside: opt.AllowOutside, inputs: &sc.Inputs})
 	b.in.Title = sc.Title
-	if len(b.errs) > 0 {
-		return nil, b.errs.sorted()
+	if errs = append(errs, b.errs...); len(errs) > 0 {
+		return nil, errs.sorted()
 	}
 	sc.keys, sc.rows = b.keys, b.rows
 	m, problems := model.New(b.in)
@@ -164,8 +161,9 @@ var rowKeys = map[string]string{"at.height": "height_m", "at.axial": "axial_m", 
 
 // find gives the place in a list of a key of its release.
 func (r *row) find(key string) (place, string) {
-	if col, ok := r.cols[rowKeys[key]]; ok {
-		return place{r.file, r.line, col}, rowKeys[key]
+	column := rowKeys[key]
+	if i := listColumn(column); i < 0 || r.cells[i].line == 0 {
+		return r.at(""), ""
 	}
-	return place{r.file, r.line, 1}, ""
+	return r.at(column), column
 }

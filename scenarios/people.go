@@ -58,6 +58,9 @@ func (b *builder) leg(o *object) model.Leg {
 }
 
 func (b *builder) walk(l *model.Leg, o *object) {
+	if o == nil {
+		return
+	}
 	if o.has("spinward") {
 		a := o.arc("spinward")
 		l.Spinward = &a
@@ -67,7 +70,7 @@ func (b *builder) walk(l *model.Leg, o *object) {
 		l.Axial = &z
 	}
 	l.Laps = o.num("laps")
-	if len(o.vals) == 0 {
+	if len(o.node.names) == 0 {
 		b.fault(o.node.at, o.path, "", "a walk wants where to: spinward, laps or axial")
 	}
 }

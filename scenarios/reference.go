@@ -55,11 +55,7 @@ func (k *key) header(path string) string {
 func (k *key) holds() string {
 	switch k.want {
 	case wantQuantity:
-		words := make([]string, len(k.dims))
-		for i, d := range k.dims {
-			words[i] = article(d.name)
-		}
-		return strings.Join(words, " or ")
+		return k.kinds("")
 	case wantNumber:
 		return "number"
 	case wantInteger:
@@ -72,9 +68,9 @@ func (k *key) holds() string {
 		return "text or list"
 	case wantList:
 		if k.count == 0 {
-			return "list of lengths"
+			return "list of " + k.kinds("s")
 		}
-		return fmt.Sprintf("list of %d lengths", k.count)
+		return fmt.Sprintf("list of %d %s", k.count, k.kinds("s"))
 	case wantBounds:
 		return "list"
 	case wantTable:
@@ -92,6 +88,15 @@ func (k *key) holds() string {
 		return "table"
 	}
 	return "text"
+}
+
+// kinds names the dimensions of a key, each with the ending.
+func (k *key) kinds(ending string) string {
+	words := make([]string, len(k.dims))
+	for i, d := range k.dims {
+		words[i] = article(d.name) + ending
+	}
+	return strings.Join(words, " or ")
 }
 
 func article(s string) string { return strings.TrimPrefix(strings.TrimPrefix(s, "a "), "an ") }

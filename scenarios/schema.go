@@ -107,11 +107,14 @@ func (s span) schema(kind string) schema {
 	return out
 }
 
+// spellings makes patterns of units that take all the ways of writing them.
+var spellings = strings.NewReplacer(`\^2`, `(\^?2|²)`, `\^3`, `(\^?3|³)`, " ", "[ ·]", "µ", "[µ\u03bc]")
+
 func quantitySchema(dims []*dimension) schema {
 	var units []string
 	for _, d := range dims {
 		for _, u := range d.units {
-			units = append(units, regexp.QuoteMeta(u.name))
+			units = append(units, spellings.Replace(regexp.QuoteMeta(u.name)))
 		}
 	}
 	return schema{"type": "string", "examples": []string{dims[0].example},

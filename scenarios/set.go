@@ -9,10 +9,9 @@ import (
 // apply puts settings KEY=VALUE into the tree, in their order.
 func apply(root *node, sets []string) (errs ErrorList) {
 	for _, s := range sets {
-		name, val, ok := strings.Cut(s, "=")
 		at := place{file: "--set " + printable(s)}
-		parts, err := splitKey(strings.TrimSpace(name))
-		if !ok || err != nil || len(parts) == 0 {
+		parts, val, ok := splitSetting(s)
+		if !ok {
 			errs = append(errs, at.fault("", `such as --set habitat.spin="4 rpm"`, "wants KEY=VALUE, the parts of the key separated by points"))
 			continue
 		}
@@ -28,29 +27,39 @@ func apply(root *node, sets []string) (errs ErrorList) {
 	return errs
 }
 
-// splitKey divides a key at its points; a part in quotes may hold any.
-func splitKey(key string) (parts []string, err error) {
-	for key != "" {
-		if q := key[0]; q == '"' || q == '\'' {
-			end := strings.IndexByte(key[1:], q)
-			if end < 0 {
-				return nil, fmt.Errorf("a quote without an end")
-			}
-			parts = append(parts, key[1:end+1])
-			key = key[end+2:]
-			if key != "" && key[0] != '.' {
-				return nil, fmt.Errorf("wants a point after a quote")
-			}
-			key = strings.TrimPrefix(key, ".")
-			continue
+// splitSetting divides a setting into its value and the parts of its key. A
+// part in quotes may hold points and equals signs.
+func splitSetting(s string) (parts []string, val string, ok bool) {
+	for {
+		part, rest, ok := keyPartOf(strings.TrimSpace(s))
+		if !ok || rest == "" {
+			return nil, "", false
 		}
-		part, rest, more := strings.Cut(key, ".")
-		if part == "" || more && rest == "" {
-			return nil, fmt.Errorf("an empty part")
+		parts = append(parts, part)
+		if rest[0] == '=' {
+			return parts, rest[1:], true
 		}
-		parts, key = append(parts, part), rest
+		s = rest[1:]
 	}
-	return parts, nil
+}
+
+// keyPartOf takes the first part of a key; the rest begins with a point or an
+// equals sign.
+func keyPartOf(s string) (part, rest string, ok bool) {
+	if s != "" && (s[0] == '"' || s[0] == '\'') {
+		end := strings.IndexByte(s[1:], s[0])
+		if end < 0 {
+			return "", "", false
+		}
+		part, rest = s[1:end+1], strings.TrimSpace(s[end+2:])
+		return part, rest, rest != "" && (rest[0] == '.' || rest[0] == '=')
+	}
+	end := strings.IndexAny(s, ".=")
+	if end < 0 {
+		return "", "", false
+	}
+	part = strings.TrimSpace(s[:end])
+	return part, s[end:], part != ""
 }
 
 // setting parses a value as the file would; what is no TOML is a text without
@@ -64,7 +73,11 @@ func setting(val string, at place) (*node, ErrorList) {
 		return v, nil
 	}
 	if val != "" && strings.IndexByte("[{\"'", val[0]) >= 0 {
-		return nil, ErrorList{at.fault("", "", "cannot read the value: %s", strings.TrimSpace(errs[0].Msg))}
+		why := "wants one value"
+		if len(errs) > 0 {
+			why = errs[0].Msg
+		}
+		return nil, ErrorList{at.fault("", "", "cannot read the value: %s", why)}
 	}
 	return &node{kind: isText, text: val, at: at, key: at}, nil
 }
@@ -80,54 +93,85 @@ func (n *node) moveTo(at place) {
 	}
 }
 
-// put sets one key. Tables on the way are made; of an exclusive group the
-// other keys go.
-func put(at *node, s *section, parts []string, v *node, where place) (Error, bool) {
-	for i, name := range parts {
-		k := s.find(name)
-		path := strings.Join(parts[:i+1], ".")
-		if k == nil {
-			hint := ""
-			if like := nearest(name, s.names()); like != "" {
-				hint = "did you mean " + like + "?"
-			}
-			return where.fault("", hint, "%s has no key %q", s.name, name), false
-		}
-		if k.group != "" {
-			for _, other := range s.group(k.group) {
-				if other != name {
-					at.drop(other)
-				}
-			}
-		}
-		rest := parts[i+1:]
-		switch {
-		case len(rest) == 0:
-			at.put(name, v)
-			return Error{}, true
-		case k.want == wantOpen:
-			return putOpen(at, name, rest, v, where), true
-		case k.want != wantTable && k.want != wantTables:
-			return where.fault("", "", "%s holds no keys", path), false
-		}
-		kid, ok := at.kids[name]
-		if k.want == wantTables {
-			if !ok || kid.kind != isArray {
-				return where.fault("", "", "the scenario has no %s", name), false
-			}
-			item := kid.named(rest[0])
-			if item == nil {
-				return where.fault("", kid.hint(rest[0]), "no %s named %q", name, rest[0]), false
-			}
-			return put(item, k.sub, rest[1:], v, where)
-		}
-		if !ok || kid.kind != isTable {
-			kid = newTable(where)
-			at.put(name, kid)
-		}
-		at, s = kid, k.sub
+// instead lists, beside the groups of the format, the keys that a key stands
+// in place of.
+var instead = map[*section]map[string][]string{
+	airKeys: {
+		"none":        {"pressure", "temperature", "density", "viscosity"},
+		"pressure":    {"none", "density", "viscosity"},
+		"temperature": {"none", "density", "viscosity"},
+		"density":     {"none", "pressure", "temperature"},
+		"viscosity":   {"none", "pressure", "temperature"},
+	},
+	station: {"radius": {"deck", "height"}, "deck": {"radius"}, "height": {"radius"}},
+	target:  {"radius": {"deck", "height"}, "deck": {"radius"}, "height": {"radius"}},
+}
+
+// giveWay drops the keys that a key stands in place of.
+func giveWay(at *node, s *section, k *key) {
+	for _, other := range instead[s][k.name] {
+		at.drop(other)
 	}
-	return where.fault("", "", "wants a key of the entry, not the entry itself"), false
+	if k.group == "" {
+		return
+	}
+	for _, other := range s.group(k.group) {
+		if other != k.name {
+			at.drop(other)
+		}
+	}
+}
+
+// put sets one key. Tables on the way are made; of an exclusive group the
+// other keys go. At a fault nothing is changed.
+func put(at *node, s *section, parts []string, v *node, where place) (Error, bool) {
+	if len(parts) == 0 {
+		return where.fault("", "", "wants a key of the entry, not the entry itself"), false
+	}
+	name, rest := parts[0], parts[1:]
+	k := s.find(name)
+	switch {
+	case k == nil:
+		hint := ""
+		if like := nearest(name, s.names()); like != "" {
+			hint = "did you mean " + like + "?"
+		}
+		return where.fault("", hint, "%s has no key %q", s.name, printable(name)), false
+	case len(rest) == 0:
+		if v.kind != isBool || v.flag {
+			giveWay(at, s, k)
+		}
+		at.put(name, v)
+		return Error{}, true
+	case k.want == wantOpen:
+		return putOpen(at, name, rest, v, where), true
+	case k.want == wantTables:
+		return putEntry(at.kids[name], k, rest, v, where)
+	case k.want != wantTable:
+		return where.fault("", "", "%s holds no keys", name), false
+	}
+	kid, ok := at.kids[name]
+	if !ok || kid.kind != isTable {
+		kid = newTable(where)
+	}
+	fault, ok := put(kid, k.sub, rest, v, where)
+	if ok {
+		giveWay(at, s, k)
+		at.put(name, kid)
+	}
+	return fault, ok
+}
+
+// putEntry sets a key of an entry of a list.
+func putEntry(list *node, k *key, parts []string, v *node, where place) (Error, bool) {
+	if list == nil || list.kind != isArray {
+		return where.fault("", "", "the scenario has no %s", k.name), false
+	}
+	item := list.named(parts[0])
+	if item == nil {
+		return where.fault("", list.hint(parts[0]), "no %s named %q", k.name, printable(parts[0])), false
+	}
+	return put(item, k.sub, parts[1:], v, where)
 }
 
 // putOpen sets a key of a free table.

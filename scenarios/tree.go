@@ -3,13 +3,12 @@ package scenarios
 import (
 	"bytes"
 	"errors"
+	"fmt"
 	"math"
-	"sort"
 	"strconv"
 	"strings"
 	"unicode/utf8"
 
-	"github.com/pelletier/go-toml/v2"
 	"github.com/pelletier/go-toml/v2/unstable"
 )
 
@@ -79,35 +78,24 @@ func (n *node) drop(name string) {
 
 // reader turns TOML into a tree.
 type reader struct {
-	file  string
-	src   []byte
-	lines []int // offset of each line
-	skip  int   // bytes of a byte order mark
-	p     unstable.Parser
-	root  *node
-	here  *node // the table that key-values go to
-	errs  ErrorList
+	content
+	end  int // offset up to which values are read
+	p    unstable.Parser
+	root *node
+	here *node // the table that key-values go to
+	errs ErrorList
 }
 
 // parse reads TOML 1.0. Syntax errors end it at the first, faults of structure
 // do not.
 func parse(file string, src []byte) (*node, ErrorList) {
 	if len(src) > MaxSize {
-		return nil, ErrorList{{File: file, Msg: "wants a scenario of at most 1 MiB", Hint: "put long lists of releases into a CSV file and name it in [[release_list]]"}}
+		return nil, ErrorList{{File: file, Line: 1, Col: 1, Msg: "wants a scenario of at most 1 MiB", Hint: "put long lists of releases into a CSV file and name it in [[release_list]]"}}
 	}
-	r := &reader{file: file, lines: []int{0}}
-	if bytes.HasPrefix(src, []byte("\xef\xbb\xbf")) {
-		src = src[3:]
-	}
-	r.src = src
-	for i, b := range src {
-		if b == '\n' {
-			r.lines = append(r.lines, i+1)
-		}
-	}
+	r := &reader{content: newContent(file, src)}
 	r.root = newTable(place{file, 1, 1})
 	r.here = r.root
-	r.p.Reset(src)
+	r.p.Reset(r.src)
 	for r.p.NextExpression() {
 		r.expression(r.p.Expression())
 	}
@@ -118,24 +106,23 @@ func parse(file string, src []byte) (*node, ErrorList) {
 	return r.root, r.errs.sorted()
 }
 
-// place gives the line and column of an offset, columns counted in characters.
-func (r *reader) place(offset int) place {
-	offset = min(max(offset, 0), len(r.src))
-	line := sort.SearchInts(r.lines, offset+1) - 1
-	return place{r.file, line + 1, utf8.RuneCount(r.src[r.lines[line]:offset]) + 1}
-}
-
-// syntax gives a syntax error with its place, which the decoder knows best.
+// syntax gives a syntax error with its place.
 func (r *reader) syntax(err error) Error {
-	var into map[string]any
-	var at *toml.DecodeError
-	if errors.As(toml.Unmarshal(r.src, &into), &at) {
-		line, col := at.Position()
-		start := r.lines[min(max(line-1, 0), len(r.lines)-1)]
-		p := r.place(start + max(col-1, 0))
-		return p.fault("", "", "not TOML: %s", strings.TrimPrefix(at.Error(), "toml: "))
+	var bad *unstable.ParserError
+	if !errors.As(err, &bad) {
+		return place{r.file, 1, 1}.fault("", "", "not TOML: %s", err)
 	}
-	return place{r.file, 1, 1}.fault("", "", "not TOML: %s", strings.TrimPrefix(err.Error(), "toml: "))
+	offset := int(r.p.Range(bad.Highlight).Offset)
+	msg, hint := bad.Message, ""
+	if c, n := utf8.DecodeRune(r.src[offset:]); n > 1 && strings.Contains(msg, "U+00") {
+		msg = fmt.Sprintf("unexpected character %q", c) // the parser names a byte of it
+	}
+	for _, s := range []string{"expected newline", "unexpected character", "strings must be quoted"} {
+		if strings.HasPrefix(msg, s) {
+			hint = `texts and quantities stand in straight quotes: "1.9 m"`
+		}
+	}
+	return r.place(offset).fault("", hint, "not TOML: %s", msg)
 }
 
 func (r *reader) fault(p place, key, format string, args ...any) {
@@ -162,11 +149,17 @@ type part struct {
 	end  int
 }
 
+// parts divides a dotted key; it gives none, and a fault, where there are more
+// than the format could ever want.
 func (r *reader) parts(it unstable.Iterator) []part {
 	var out []part
 	for it.Next() {
 		k := it.Node()
 		out = append(out, part{string(k.Data), r.place(int(k.Raw.Offset)), int(k.Raw.Offset + k.Raw.Length)})
+		if len(out) > maxDepth {
+			r.fault(out[0].at, "", "a key of more than %d parts", maxDepth)
+			return nil
+		}
 	}
 	return out
 }
@@ -174,8 +167,10 @@ func (r *reader) parts(it unstable.Iterator) []part {
 // header finds or makes the table of a header. It gives nil at a fault: the
 // keys below it are then not read.
 func (r *reader) header(e *unstable.Node, many bool) *node {
-	parts := r.parts(e.Key())
-	at := r.root
+	parts, at := r.parts(e.Key()), r.root
+	if parts == nil {
+		return nil
+	}
 	for _, p := range parts[:len(parts)-1] {
 		if at = r.into(at, p); at == nil {
 			return nil
@@ -191,7 +186,7 @@ func (r *reader) header(e *unstable.Node, many bool) *node {
 		kid = newTable(last.at)
 		at.put(last.name, kid)
 	case kid.kind != isTable || kid.inline || kid.header:
-		r.fault(last.at, last.name, "is given twice; first at line %d", kid.key.line)
+		r.fault(last.at, printable(last.name), "is given twice; first at line %d", kid.key.line)
 		return nil
 	}
 	kid.header = true
@@ -205,7 +200,7 @@ func (r *reader) another(at, list *node, p part) *node {
 		at.put(p.name, list)
 	}
 	if list.kind != isArray || list.inline {
-		r.fault(p.at, p.name, "is given twice; first at line %d", list.key.line)
+		r.fault(p.at, printable(p.name), "is given twice; first at line %d", list.key.line)
 		return nil
 	}
 	kid := newTable(p.at)
@@ -225,7 +220,7 @@ func (r *reader) into(at *node, p part) *node {
 		kid = kid.items[len(kid.items)-1]
 	}
 	if kid.kind != isTable || kid.inline {
-		r.fault(p.at, p.name, "is given twice; first at line %d", kid.key.line)
+		r.fault(p.at, printable(p.name), "is given twice; first at line %d", kid.key.line)
 		return nil
 	}
 	return kid
@@ -233,6 +228,9 @@ func (r *reader) into(at *node, p part) *node {
 
 func (r *reader) keyValue(at *node, e *unstable.Node, depth int) {
 	parts := r.parts(e.Key())
+	if parts == nil {
+		return
+	}
 	for _, p := range parts[:len(parts)-1] {
 		if at = r.into(at, p); at == nil {
 			return
@@ -240,10 +238,11 @@ func (r *reader) keyValue(at *node, e *unstable.Node, depth int) {
 	}
 	last := parts[len(parts)-1]
 	if old, ok := at.kids[last.name]; ok {
-		r.fault(last.at, last.name, "is given twice; first at line %d", old.key.line)
+		r.fault(last.at, printable(last.name), "is given twice; first at line %d", old.key.line)
 		return
 	}
-	v := r.value(e.Value(), r.place(r.valueOffset(last.end)), depth)
+	r.end = r.valueOffset(last.end)
+	v := r.value(e.Value(), depth)
 	v.key = last.at
 	at.put(last.name, v)
 }
@@ -256,8 +255,11 @@ func (r *reader) valueOffset(end int) int {
 	return end
 }
 
-func (r *reader) value(v *unstable.Node, at place, depth int) *node {
+// value reads the value that begins at r.end.
+func (r *reader) value(v *unstable.Node, depth int) *node {
+	at := r.place(r.end)
 	n := &node{at: at, key: at}
+	r.end += max(int(v.Raw.Length), 1) // of a list or a table: its bracket
 	if depth > maxDepth {
 		r.fault(at, "", "values nest deeper than %d levels", maxDepth)
 		return n
@@ -291,14 +293,26 @@ func (r *reader) list(n *node, v *unstable.Node, depth int) {
 	n.kind, n.inline = isArray, true
 	for it := v.Children(); it.Next(); {
 		kid := it.Node()
-		if kid.Kind == unstable.Comment {
+		switch {
+		case kid.Kind == unstable.Comment:
 			continue
+		case kid.Raw.Length > 0:
+			r.end = int(kid.Raw.Offset)
+		default: // The parser gives the place of all but lists.
+			r.skip()
 		}
-		at := n.at
-		if kid.Raw.Length > 0 {
-			at = r.place(int(kid.Raw.Offset))
+		n.items = append(n.items, r.value(kid, depth+1))
+	}
+}
+
+// skip goes to the list that comes next, past the ends of values, commas and
+// comments.
+func (r *reader) skip() {
+	for r.end < len(r.src) && r.src[r.end] != '[' {
+		if r.src[r.end] == '#' {
+			r.end += max(bytes.IndexByte(r.src[r.end:], '\n'), 0)
 		}
-		n.items = append(n.items, r.value(kid, at, depth+1))
+		r.end++
 	}
 }
 

@@ -62,18 +62,28 @@ func (d *dimension) list() string {
 	return strings.Join(names, ", ")
 }
 
-// find gives the unit of a name.
+// shown is the unit in which a bound is told: the first, but SI where that
+// one's zero is elsewhere.
+func (d *dimension) shown() unit {
+	if u := d.units[0]; u.offset == 0 {
+		return u
+	}
+	return unit{d.si, 1, 0}
+}
+
+// find gives the unit of a name, as split spells it.
 func (d *dimension) find(name string) (unit, bool) {
 	for _, u := range d.units {
-		if u.name == name {
+		if spelling.Replace(u.name) == name {
 			return u, true
 		}
 	}
 	return unit{}, false
 }
 
-// spelling brings a unit to the format's way of writing it.
-var spelling = strings.NewReplacer("²", "^2", "³", "^3", "·", " ", "µ", "µ", "m/s2", "m/s^2", "rad/s2", "rad/s^2", "deg/s2", "deg/s^2")
+// spelling brings the ways of writing a unit to one: m/s^2, m/s² and m/s2 are
+// the same, and so are the two letters for micro.
+var spelling = strings.NewReplacer("²", "2", "^2", "2", "³", "3", "^3", "3", "·", " ", "\u03bc", "µ")
 
 // split divides a text such as "1.9 m" into number and unit. It fails where
 // there is no finite number in front.
@@ -143,8 +153,8 @@ func measureOf(text string, dims ...*dimension) (quantity, error) {
 
 // wanted says what a quantity should look like.
 func wanted(dims []*dimension) string {
-	if len(dims) == 0 {
-		return "wants a number with a unit"
+	if len(dims) > 3 {
+		return "wants a number with its unit, or a bare number"
 	}
 	words := make([]string, len(dims))
 	for i, d := range dims {

@@ -55,7 +55,13 @@ func (j *job) figures() ([]task, error) {
 
 func (j *job) drawn(all []drawing) []task {
 	var out []task
+	taken := map[string]bool{}
 	for _, d := range all {
+		// A release named "plan x" and a deck named "x side" would meet.
+		for base, n := d.file, 2; taken[d.file]; n++ {
+			d.file = fmt.Sprintf("%s-%d", base, n)
+		}
+		taken[d.file] = true
 		for _, format := range j.flags.formats {
 			out = append(out, task{entry: entry{File: d.file + "." + format, Of: d.of, Name: d.name},
 				write: func(w io.Writer) error {

@@ -57,7 +57,7 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 			if !filepath.IsAbs(path) {
 				path = filepath.Join(folder, path)
 			}
-			return os.ReadFile(path)
+			return readUpTo(path, scenarios.MaxListSize+1)
 		},
 	})
 	if err != nil {
@@ -85,16 +85,21 @@ func readScenario(name string, stdin io.Reader) ([]byte, error) {
 	if info.IsDir() {
 		return nil, fmt.Errorf("%s: is a folder, wants a scenario file", name)
 	}
-	f, err := os.Open(name)
-	if err != nil {
-		return nil, plainPath(name, err)
-	}
-	defer f.Close()
-	src, err := io.ReadAll(io.LimitReader(f, maxScenario+1))
+	src, err := readUpTo(name, maxScenario+1)
 	if err != nil {
 		return nil, plainPath(name, err)
 	}
 	return src, nil
+}
+
+// readUpTo reads at most the given number of bytes of a file.
+func readUpTo(name string, most int64) ([]byte, error) {
+	f, err := os.Open(name)
+	if err != nil {
+		return nil, err
+	}
+	defer f.Close()
+	return io.ReadAll(io.LimitReader(f, most))
 }
 
 // plainPath says what is wrong with a file without naming the system call.

@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"io"
 	"slices"
+	"strings"
 	"sync"
 	"sync/atomic"
 
@@ -31,10 +32,11 @@ func (j *job) write(ctx context.Context, st *stage, p *progress, complete bool) 
 		}
 		tasks = append(tasks, figures...)
 	}
+	var names table.Namer
 	for i := range tasks {
 		j.files = append(j.files, tasks[i].entry)
 		if t := &tasks[i]; t.table != nil {
-			j.resources = append(j.resources, table.Resource{Name: resourceName(t.File), Path: t.File, Title: t.title, Columns: t.table})
+			j.resources = append(j.resources, table.Resource{Name: names.Name(strings.TrimSuffix(t.File, ".csv")), Path: t.File, Title: t.title, Columns: t.table})
 		}
 	}
 	if err := writeAll(ctx, st, tasks, j.flags.jobs, p, complete); err != nil {
@@ -46,12 +48,6 @@ func (j *job) write(ctx context.Context, st *stage, p *progress, complete bool) 
 		return err
 	}
 	return st.file(runFile, func(w io.Writer) error { return j.runJSON(w, complete) })
-}
-
-// resourceName makes a name of a path, as data packages want it.
-func resourceName(path string) string {
-	var n table.Namer
-	return n.Name(path[:len(path)-len(".csv")])
 }
 
 // writeAll writes the files on several workers. The error is that of the first

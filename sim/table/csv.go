@@ -52,10 +52,14 @@ func (t *Table) WriteCSV(w io.Writer) error {
 }
 
 func (c *Column) field(cell Cell) string {
-	if c.Kind == Text {
+	switch x := c.value(cell); {
+	case c.Kind == Text:
 		return guard(cell.Text)
+	case c.Kind == Integer && x == math.Trunc(x) && math.Abs(x) < 1<<53:
+		return strconv.FormatInt(int64(x), 10) // an exponent is no integer to readers of tables
+	default:
+		return Exact(x)
 	}
-	return Exact(c.value(cell))
 }
 
 // guard keeps a text from being taken for a formula by a spreadsheet, which
@@ -65,6 +69,9 @@ func (c *Column) field(cell Cell) string {
 // side", is none.
 func guard(s string) string {
 	if s == "" || !strings.ContainsRune("=+-@\t\r\n", rune(s[0])) {
+		return s
+	}
+	if _, err := strconv.ParseFloat(s, 64); err == nil {
 		return s
 	}
 	if s[0] == '+' || s[0] == '-' {

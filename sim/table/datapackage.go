@@ -59,7 +59,7 @@ type dataField struct {
 
 func (r *Resource) describe() dataResource {
 	out := dataResource{Profile: "tabular-data-resource", Name: r.Name, Path: r.Path, Title: r.Title,
-		Format: "csv", MediaType: "text/csv", Encoding: "utf-8", Schema: dataSchema{MissingValues: []string{""}}}
+		Format: "csv", MediaType: "text/csv", Encoding: "utf-8", Schema: dataSchema{Fields: []dataField{}, MissingValues: []string{""}}}
 	for i := range r.Columns {
 		c := &r.Columns[i]
 		out.Schema.Fields = append(out.Schema.Fields, dataField{Name: c.Name, Type: c.jsonType(), Unit: c.Unit, Description: c.Meaning})

@@ -8,7 +8,7 @@ import (
 )
 
 // Round writes a number for people, with the given number of significant
-// digits, without an exponent from a millionth to a million. Trailing zeros
+// digits, without an exponent from a millionth to ten million. Trailing zeros
 // stay, since they say how exact the number is. A missing value is "-".
 func Round(x float64, digits int) string {
 	switch {
@@ -20,10 +20,11 @@ func Round(x float64, digits int) string {
 		return "0"
 	}
 	// Rounded first: 0.99996 to three digits is 1.00, not 1.000.
-	rounded, _ := strconv.ParseFloat(strconv.FormatFloat(x, 'e', digits-1, 64), 64)
-	exp := int(math.Floor(math.Log10(math.Abs(rounded)) + 1e-12))
+	s := strconv.FormatFloat(x, 'e', digits-1, 64)
+	rounded, _ := strconv.ParseFloat(s, 64)
+	exp, _ := strconv.Atoi(s[strings.IndexByte(s, 'e')+1:])
 	if exp < -6 || exp > 6 {
-		return strconv.FormatFloat(x, 'g', digits, 64)
+		return s
 	}
 	return strconv.FormatFloat(rounded, 'f', max(0, digits-1-exp), 64)
 }
@@ -31,8 +32,11 @@ func Round(x float64, digits int) string {
 // Fixed writes a number with the given decimals, never as a negative zero. A
 // missing value is "-".
 func Fixed(x float64, decimals int) string {
-	if math.IsNaN(x) {
+	switch {
+	case math.IsNaN(x):
 		return "-"
+	case math.IsInf(x, 0):
+		return Exact(x)
 	}
 	s := strconv.FormatFloat(x, 'f', decimals, 64)
 	if strings.Trim(s, "-0.") == "" {
