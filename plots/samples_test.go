@@ -129,10 +129,9 @@ func throughSpec() SideViewSpec {
 	s.Offset *= upper / r
 	s.Deflection = math.NaN()
 	c := Point{0, upper}
-	for _, o := range []Outline{{Kind: Hull, Name: "hull", Path: Circle(c, r)}, {Kind: Deck, Name: "upper", Closed: true, Path: Sector(c, upper, upper+0.05, 0.05-math.Pi/2, 1)},
-		{Kind: Deck, Name: "upper", Closed: true, Path: Sector(c, upper, upper+0.05, -3, -0.1-math.Pi/2)}} {
-		s.Outlines = append(s.Outlines, o)
-	}
+	s.Outlines = append(s.Outlines, Outline{Kind: Hull, Name: "hull", Path: Circle(c, r)},
+		Outline{Kind: Deck, Name: "upper", Closed: true, Path: Sector(c, upper, upper+0.05, 0.05-math.Pi/2, 1)},
+		Outline{Kind: Deck, Name: "upper", Closed: true, Path: Sector(c, upper, upper+0.05, -3, -0.1-math.Pi/2)})
 	return s
 }
 

@@ -41,13 +41,6 @@ func Arc(c Point, r, start, end float64) Segment {
 	return Segment{Centre: c, Radius: r, Start: start, End: end}
 }
 
-func (s Segment) ends() (a, b Point) {
-	if s.Radius > 0 {
-		return polar(s.Centre, s.Radius, s.Start), polar(s.Centre, s.Radius, s.End)
-	}
-	return s.From, s.To
-}
-
 func (s Segment) check() error {
 	if !s.From.finite() || !s.To.finite() || !s.Centre.finite() || !finite(s.Start) || !finite(s.End) {
 		return errors.New("a segment has a coordinate that is not finite")
