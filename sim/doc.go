@@ -8,7 +8,7 @@
 //	plots            tables and outlines -> figures; knows no models
 //	sim/study        many runs, the worker pool
 //	sim/measure      pure functions of tracks: landings, deflection, samples, limits
-//	sim/flight       releases: free flight and contact
+//	sim/flight       releases: flight, impact, slide, roll, rest
 //	sim/crew         crew paths: kinematics and loads
 //	sim/model        the validated scenario, SI units, immutable
 //	sim/air          density, viscosity, drag law
