@@ -1,10 +1,5 @@
 package plots
 
-import (
-	"errors"
-	"fmt"
-)
-
 // LoadsChartSpec is what LoadsChart draws: what a crew member feels along a crew path,
 // in panels above one another with one time axis. Each slice has the length of Time, or
 // is nil; a NaN or an infinity is a gap. A panel without any finite value is left out.
@@ -22,38 +17,19 @@ type LoadsChartSpec struct {
 	SideAxial    []float64 // N, side load, +axial positive
 	Friction     []float64 // friction demand, a ratio
 	HeadCross    []float64 // rad/s², cross-coupled angular acceleration of the head
+
+	Limits [LoadPanels][]Level // limits to draw into each panel
 }
 
-// LegSpan is a leg of a crew path.
-type LegSpan struct {
-	Name     string
-	From, To float64 // s
-}
-
-func (s LoadsChartSpec) check() error {
-	for i, t := range s.Time {
-		if !finite(t) || i > 0 && t < s.Time[i-1] {
-			return fmt.Errorf("time %d, %g s, is not finite or runs back", i, t)
-		}
-	}
-	if n := len(s.Time); n < 2 || s.Time[n-1] == s.Time[0] {
-		return errors.New("wants at least two different times")
-	}
-	if err := checkValues("time", len(s.Time), s.Time); err != nil {
-		return err
-	}
-	for _, l := range s.Legs {
-		if !finite(l.From) || !finite(l.To) || l.To < l.From {
-			return fmt.Errorf("leg %q runs from %g s to %g s", l.Name, l.From, l.To)
-		}
-	}
-	for _, c := range s.columns() {
-		if err := checkValues(c.name, len(s.Time), c.y); err != nil {
-			return err
-		}
-	}
-	return nil
-}
+// The panels of a LoadsChart.
+const (
+	PanelGravity = iota
+	PanelWeight
+	PanelSide
+	PanelFriction
+	PanelHead
+	LoadPanels // how many there are
+)
 
 // columns are all the columns, by the panels they go to.
 func (s LoadsChartSpec) columns() []loadColumn {
@@ -72,7 +48,7 @@ type loadColumn struct {
 	y     []float64
 }
 
-var loadTitles = [...]string{
+var loadTitles = [LoadPanels]string{
 	"apparent gravity, g",
 	"weight, N",
 	"side load, N, spinward and +axial positive",
@@ -87,33 +63,18 @@ const mostFriction = 2.0
 // LoadsChart draws the loads along a crew path. It is an error if the times are not in
 // order, a slice has another length than Time, or no panel has a finite value.
 func LoadsChart(spec LoadsChartSpec) (*Figure, error) {
-	head := headline{spec.Title, spec.Desc, spec.Notes, spec.Spin}
-	if err := errors.Join(head.check(), spec.check()); err != nil {
-		return nil, fmt.Errorf("loads chart: %w", err)
-	}
-	panels := spec.panels()
-	if len(panels) == 0 {
-		return nil, errors.New("loads chart: no panel has a finite value")
-	}
-	c := newLoads(spec, panels)
-	return newFigure(spec.Title, spec.Desc, c.w, c.h, c.paint)
+	return StackChart(StackChartSpec{Title: spec.Title, Desc: spec.Desc, Notes: spec.Notes, Spin: spec.Spin,
+		Axis: "time, s", X: spec.Time, Legs: spec.Legs, Panels: spec.panels()})
 }
 
-// panels are those with something to show.
-func (s LoadsChartSpec) panels() (out []*panel) {
-	for i, title := range loadTitles {
-		q := &panel{title: title}
-		if i == 3 {
-			q.most = mostFriction
-		}
-		for _, c := range s.columns() {
-			if _, _, ok := span(c.y); c.panel == i && ok {
-				q.curves = append(q.curves, curve{c.name, s.Time, c.y, seriesPen(len(q.curves)), false})
-			}
-		}
-		if len(q.curves) > 0 {
-			out = append(out, q)
-		}
+func (s LoadsChartSpec) panels() []PanelSpec {
+	out := make([]PanelSpec, LoadPanels)
+	for i := range out {
+		out[i].Title, out[i].Levels = loadTitles[i], s.Limits[i]
+	}
+	out[PanelFriction].Most = mostFriction
+	for _, c := range s.columns() {
+		out[c.panel].Curves = append(out[c.panel].Curves, CurveSpec{c.name, c.y})
 	}
 	return out
 }

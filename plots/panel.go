@@ -21,6 +21,7 @@ type panel struct {
 	title  string // what runs up, with its unit
 	curves []curve
 	most   float64 // greatest value shown; 0 for no bound
+	levels []Level // lines across, such as limits
 	unit   float64 // size of the unit printed up the axis; 0 for 1
 	bare   bool    // no numbers at the left: they stand at a neighbour
 
@@ -65,6 +66,9 @@ func (q *panel) scaleUp() {
 		if a, b, ok := span(c.y); ok {
 			lo, hi = math.Min(lo, a), math.Max(hi, b)
 		}
+	}
+	for _, l := range q.levels {
+		lo, hi = math.Min(lo, l.Value), math.Max(hi, l.Value)
 	}
 	if q.most > 0 && hi > q.most {
 		hi = q.most
@@ -144,6 +148,12 @@ func (q *panel) name(need bool) {
 		}
 	}
 	q.pl.polyline(priceThin, q.pt(q.x0, 0), q.pt(q.x1, 0))
+	for _, l := range q.levels {
+		if l.Value <= q.y1 {
+			q.pl.polyline(priceThin, q.pt(q.x0, l.Value), q.pt(q.x1, l.Value))
+			q.pl.add(label{s: l.Name, size: sizeNote, ink: inkText, clear: 2, at: q.pt(q.x0+0.02*(q.x1-q.x0), l.Value)})
+		}
+	}
 	if beyond := q.beyond(); beyond != "" {
 		q.pl.add(label{s: beyond, size: sizeNote, ink: inkText, at: q.win.Max, clear: 60, need: true})
 	}
@@ -246,6 +256,11 @@ func (q *panel) paint(p *pad, along bool) {
 	}
 	if q.y0 <= 0 && q.y1 >= 0 {
 		p.line(penAxis, q.pt(q.x0, 0), q.pt(q.x1, 0))
+	}
+	for _, l := range q.levels {
+		if l.Value <= q.y1 {
+			p.line(penUniform, q.pt(q.x0, l.Value), q.pt(q.x1, l.Value))
+		}
 	}
 	p.rect(q.win, penFrame)
 	for _, c := range q.curves {

@@ -8,10 +8,11 @@ import (
 	"gonum.org/v1/plot/vg"
 )
 
-// loads is a loads chart at work.
+// loads is a stack of panels at work.
 type loads struct {
 	sheet
 	spin   float64
+	axis   string
 	panels []*panel
 	legs   []legMark
 }
@@ -30,8 +31,8 @@ const (
 	uprightFrom = 4     // panels
 )
 
-func newLoads(spec LoadsChartSpec, panels []*panel) *loads {
-	c := &loads{spin: spec.Spin, panels: panels}
+func newLoads(spec StackChartSpec, panels []*panel) *loads {
+	c := &loads{spin: spec.Spin, axis: spec.Axis, panels: panels}
 	plan := sheetPlan{title: spec.Title, notes: spec.Notes, strip: true, upright: len(panels) >= uprightFrom}
 	numbered := false
 	rows := 0
@@ -52,8 +53,8 @@ func newLoads(spec LoadsChartSpec, panels []*panel) *loads {
 }
 
 // stack sets the panels below each other, all right of the widest number.
-func (c *loads) stack(spec LoadsChartSpec, top, pitch float64) {
-	t0, t1 := spec.Time[0], spec.Time[len(spec.Time)-1]
+func (c *loads) stack(spec StackChartSpec, top, pitch float64) {
+	t0, t1 := spec.X[0], spec.X[len(spec.X)-1]
 	left := 0.0
 	place := func() {
 		for i, q := range c.panels {
@@ -127,7 +128,7 @@ func (c *loads) paint(p *pad) {
 		q.paint(p, q == last)
 	}
 	at := xy((last.win.Min.X+last.win.Max.X).Points()/2, last.win.Min.Y.Points()-axisBelow+3)
-	p.text(text{s: "time, s", at: at, along: 0.5, size: sizeLabel, ink: inkText})
+	p.text(text{s: clean(c.axis), at: at, along: 0.5, size: sizeLabel, ink: inkText})
 	c.say(p, spinStatement(c.spin), c.strip.Min.X.Points()-12, c.strip.Max.X.Points())
 	c.sheet.draw(p)
 }
