@@ -77,6 +77,10 @@ func (b *builder) build(o *object, files reading) {
 	for _, l := range o.subs("limit") {
 		b.in.Limits = append(b.in.Limits, b.limit(l))
 	}
+	for _, p := range o.subs("platforms") {
+		b.in.Spacings = append(b.in.Spacings, model.Spacing{Name: p.str("name"), Passage: p.str("passage"), Body: p.str("body"),
+			MaxSpeed: p.num("max_speed"), Source: p.str("source")})
+	}
 	b.settings(o.sub("solver"), o.sub("output"))
 }
 
@@ -254,7 +258,7 @@ func (b *builder) release(i int, o *object) {
 		b.fault(at.node.at, at.path, `write height = "1.5 m"`, "a release wants the height of the body's centre above the deck, or its radius")
 	}
 	if c := o.sub("carried"); c != nil {
-		r.Carried = &model.Carried{Path: c.str("path"), Time: c.num("time"), Reach: reachOf(c.sub("reach"))}
+		r.Carried = &model.Carried{Path: c.str("path"), Time: c.num("time"), Every: c.num("every"), ByTime: c.get("every").dim == duration, Reach: reachOf(c.sub("reach"))}
 		b.refuses(o, "a carried release is let go at the time of its path", "time")
 	}
 	b.in.Releases = append(b.in.Releases, r)
@@ -290,7 +294,8 @@ func reachOf(o *object) model.Reach {
 
 func (b *builder) limit(o *object) model.Limit {
 	l := model.Limit{Name: o.str("name"), Of: o.texts("of"), Measure: o.str("measure"), SurfaceIn: o.texts("surface_in"),
-		SurfaceNotIn: o.texts("surface_not_in"), FallsThroughNot: o.texts("falls_through_not"), Source: o.str("source")}
+		SurfaceNotIn: o.texts("surface_not_in"), FallsThroughNot: o.texts("falls_through_not"), Source: o.str("source"),
+		Stature: o.num("stature"), Speed: o.num("speed")}
 	for _, k := range []struct {
 		name string
 		to   **model.Quantity

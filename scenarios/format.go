@@ -89,7 +89,9 @@ var velocityKeys = &section{name: "a velocity", doc: "Relative to the habitat.",
 var carriedKeys = &section{name: "a carried release", doc: "Let go by a crew member under way: it has the velocity of that point of the body.",
 	keys: []key{
 		text("path", "name of the crew path").need(),
-		qty("time", duration, notNegative, "from the start of the path").or(`"0 s"`),
+		qty("time", duration, notNegative, "from the start of the path").or(`"0 s"`).one("when"),
+		{name: "every", want: wantQuantity, dims: []*dimension{length, duration}, span: positive, group: "when",
+			doc: "a let-go series: one release at each such length of the path, or time"},
 		table("reach", reach, "where it is held"),
 	}}
 
@@ -208,6 +210,19 @@ var walkTo = &section{name: "the end of a walk", doc: "Where a walk goes on the 
 		qty("axial", length, anything, "along the axis"),
 	}}
 
+var rideTo = &section{name: "a ride", doc: "How far a lift goes, from where the feet are.",
+	keys: []key{
+		qty("up", length, anything, "toward the axis; negative: away from it").one("way"),
+		arc("spinward", "along the ring, at the radius of the feet").one("way"),
+	},
+	exactly: []string{"way"}}
+
+var carryKeys = &section{name: "a load", doc: "A mass that the person holds.",
+	keys: []key{
+		qty("mass", mass, positive, "its mass").need(),
+		table("at", reach, "where it is held").or(`height = "1 m"`),
+	}}
+
 var leg = &section{name: "a leg", doc: "One piece of a crew path.",
 	keys: []key{
 		table("walk", walkTo, "walk or run to a place").one("leg"),
@@ -216,10 +231,16 @@ var leg = &section{name: "a leg", doc: "One piece of a crew path.",
 		qty("descend", length, positive, "away from the axis; one that ends level with a deck joins it").one("leg"),
 		qty("stand_up", length, positive, "rise from a seat: how far the head rises, the feet staying").one("leg"),
 		qty("sit_down", length, positive, "sink onto a seat: how far the head sinks").one("leg"),
+		table("ride", rideTo, "ride a lift, radially or along the ring").one("leg"),
+		qty("turn", angle, anything, "turn the body about the vertical, to the right positive").one("leg"),
 		qty("turn_head", angle, anything, "turn the head by an angle").one("leg"),
-		qty("speed", speed, positive, "of walk, climb and descend; of the head in stand_up and sit_down").or(`"1 m/s" for stand_up and sit_down, else required`),
+		qty("speed", speed, positive, "of walk, climb, descend and ride; of the head in stand_up and sit_down").or(`"1 m/s" for stand_up and sit_down, else required`),
 		qty("ramp", duration, notNegative, "of the speed, at both ends").or(`"0.5 s"; "0.45 s" for stand_up and sit_down`),
-		qty("over", duration, positive, "of turn_head").or(`"1 s"`),
+		word("profile", `"smooth"; "trapezoid" for a ride`, "how the speed grows and falls at both ends: smooth, with no jerk that is infinite, or steadily", "smooth", "trapezoid"),
+		qty("pitch", angle, span{low: degrees(10), high: degrees(90)}, "climb, descend: of a straight ladder or stair above the deck at its start, rising the way that the person faces").or(`"90 deg": a radial ladder`),
+		flag("head_first", "climb, descend: with the head outward of the feet"),
+		text("through", "climb, descend: the opening that the way leads through; the shoulders must pass it"),
+		qty("over", duration, positive, "of turn_head and turn").or(`"1 s"`),
 		word("about", `"vertical"`, "axis of turn_head", "vertical", "spinward", "axial"),
 		word("facing", `"spinward"`, "where the person looks on a ladder", "spinward", "antispinward", "+axial", "-axial"),
 	},
@@ -232,6 +253,7 @@ var crewPath = &section{name: "a crew path", doc: "A person's motion through sta
 		table("start", station, "where the feet are at the start").or("the reference floor's middle"),
 		tables("legs", leg, "its legs, in order").need(),
 		qty("time", duration, notNegative, "when it starts").or(`"0 s"`),
+		table("carry", carryKeys, "a mass held all the way"),
 	}}
 
 var limit = &section{name: "a limit", doc: "An acceptance criterion of the project.",
@@ -248,6 +270,17 @@ var limit = &section{name: "a limit", doc: "An acceptance criterion of the proje
 		texts("surface_not_in", "surfaces that it must not land on"),
 		texts("falls_through_not", "openings that it must not fall through"),
 		text("source", "where the limit comes from, in the project's words").or("none stated"),
+		qty("stature", length, span{low: 0.3, high: 3}, "of habitat.head_to_foot").or(`"1.75 m"`),
+		qty("speed", speed, positive, "of habitat.coriolis_ratio").or(`"1 m/s"`),
+	}}
+
+var platforms = &section{name: "a spacing of platforms", doc: "Where platforms or nets must stand in a passage so that a body let go anywhere along its middle never touches anything faster than a speed.",
+	keys: []key{
+		title(),
+		text("passage", "name of the passage").need(),
+		text("body", "what falls: name of the body").need(),
+		qty("max_speed", speed, positive, "of any contact").need(),
+		text("source", "where the speed comes from, in the project's words").or("none stated"),
 	}}
 
 var solver = &section{name: "the solver", doc: "Accuracy of the integration. The tolerances hold for the departure from uniform motion in the inertial frame, as norms of position and velocity.",
@@ -337,6 +370,7 @@ var file = &section{name: "the file", doc: "The file itself.",
 		tables("crew", crew, "persons"),
 		tables("crew_path", crewPath, "crew paths"),
 		tables("limit", limit, "limits"),
+		tables("platforms", platforms, "spacings of platforms"),
 		tables("scatter", scatter, "studies: scatter"),
 		tables("sweep", sweep, "studies: sweeps"),
 		tables("throw_to", throwTo, "studies: throws"),

@@ -5,10 +5,12 @@ import (
 	"encoding/hex"
 	"fmt"
 	"path"
+	"slices"
 	"strconv"
 	"strings"
 
 	"offplumb/sim/model"
+	"offplumb/sim/study"
 )
 
 // Options say how a scenario is loaded.
@@ -73,8 +75,27 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 	if len(problems) > 0 {
 		return nil, sc.Problems(problems)
 	}
+	if m, problems = sc.expand(m, b.in); len(problems) > 0 {
+		return nil, sc.Problems(problems)
+	}
 	sc.Model = m
 	return sc, nil
+}
+
+// expand puts the releases of let-go series in the place of those that declare
+// them.
+func (sc *Scenario) expand(m *model.Model, in model.Model) (*model.Model, []model.Problem) {
+	releases, from, problems := study.Expand(m, in.Releases)
+	if len(problems) > 0 || !slices.ContainsFunc(releases, func(r model.Release) bool { return r.Series != "" }) {
+		return m, problems
+	}
+	keys, rows := make([]string, len(from)), make([]row, len(from))
+	for i, k := range from {
+		keys[i], rows[i] = sc.keys[k], sc.rows[k]
+	}
+	sc.keys, sc.rows = keys, rows
+	in.Releases = releases
+	return model.New(in)
 }
 
 func readOrNot(read func(string) ([]byte, error)) func(string) ([]byte, error) {

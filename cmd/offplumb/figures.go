@@ -50,6 +50,7 @@ func (j *job) figures() ([]task, error) {
 			all = append(all, drawing{"loads-" + name, "loads", j.paths[i].plan.Path.Name, func() (*plots.Figure, error) { return j.loadsChart(i) }})
 		}
 	}
+	all = append(all, j.studyFigures()...)
 	return j.drawn(all), nil
 }
 

@@ -26,6 +26,9 @@ type job struct {
 	rests     []measure.Rest
 	near      []measure.Clearance
 	decks     []measure.DeckFigure
+	letgo     []letGoSeries
+	serial    map[string]bool      // names of the releases in them
+	spacings  [][]measure.Platform // of each spacing of platforms; nil: not asked for
 	verdicts  []measure.Verdict
 	unjudged  []string
 	files     []entry
@@ -55,6 +58,11 @@ func (j *job) wanted(name string) bool {
 	return len(j.flags.only) == 0 || slices.Contains(j.flags.only, name)
 }
 
+// wantedRelease says whether --only asks for a release, or for its series.
+func (j *job) wantedRelease(r *model.Release) bool {
+	return j.wanted(r.Name) || r.Series != "" && j.wanted(r.Series)
+}
+
 // choose refuses an --only that names nothing.
 func (j *job) choose() error {
 	known := map[string]bool{}
@@ -64,9 +72,15 @@ func (j *job) choose() error {
 	for i := range j.model().Paths {
 		known[j.model().Paths[i].Name] = true
 	}
+	for i := range j.model().Spacings {
+		known[j.model().Spacings[i].Name] = true
+	}
+	for _, name := range measure.SeriesNames(j.model()) {
+		known[name] = true
+	}
 	for _, name := range j.flags.only {
 		if !known[name] {
-			return wrong(fmt.Errorf("--only: no release or crew path named %q", name))
+			return wrong(fmt.Errorf("--only: no release, crew path or study named %q", name))
 		}
 	}
 	return nil
@@ -74,11 +88,30 @@ func (j *job) choose() error {
 
 // compute flies the releases and walks the paths.
 func (j *job) compute(ctx context.Context, p *progress) (err error) {
-	j.results, err = j.Run(ctx, study.Options{Workers: j.flags.jobs, Want: j.wanted, Done: p.releases})
+	j.results, err = j.Run(ctx, study.Options{Workers: j.flags.jobs, Want: j.wantedRelease, Done: p.releases})
 	if ctx.Err() != nil {
 		return context.Cause(ctx)
 	}
-	return err
+	if err != nil {
+		return err
+	}
+	return j.place(ctx)
+}
+
+// place finds the platforms.
+func (j *job) place(ctx context.Context) error {
+	m := j.model()
+	j.spacings = make([][]measure.Platform, len(m.Spacings))
+	for i := range m.Spacings {
+		if !j.wanted(m.Spacings[i].Name) {
+			continue
+		}
+		var err error
+		if j.spacings[i], err = study.Platforms(ctx, m, &m.Spacings[i]); err != nil {
+			return err
+		}
+	}
+	return nil
 }
 
 // measure works out the paths' loads, the tables' rows and the verdicts.
@@ -100,6 +133,7 @@ func (j *job) measure() {
 		j.paths = append(j.paths, r)
 	}
 	j.decks = measure.DeckFigures(m)
+	j.letGo()
 	j.judge()
 	j.warn()
 }
@@ -119,11 +153,15 @@ func (j *job) rowsOf(i int) {
 
 // tracked says whether a release's track is to be written and drawn.
 func (j *job) tracked(i int) bool {
-	return j.results[i].Track != nil && !j.Lets[i].Release.NoTrack
+	r := j.Lets[i].Release
+	return j.results[i].Track != nil && !r.NoTrack && r.Series == ""
 }
 
 func (j *job) judge() {
 	e := measure.Evidence{Decks: j.decks}
+	e.Habitat = func(stature, speed float64) measure.HabitatFigure {
+		return measure.HabitatOf(j.model(), stature, speed)
+	}
 	e.Landing = func(i int) (*measure.Landing, bool) { return &j.results[i].Landing, j.results[i].Finished() }
 	e.Rest = func(i int) (*measure.Rest, bool) { return &j.results[i].Rest, j.results[i].Finished() }
 	e.Events = func(i int) ([]measure.Event, bool) { return j.results[i].Events, j.results[i].Track != nil }

@@ -26,6 +26,7 @@ func (j *job) summary(w io.Writer) error {
 	j.sumLandings(&b)
 	j.sumStories(&b)
 	j.sumPaths(&b)
+	j.sumStudies(&b)
 	j.sumLimits(&b)
 	if len(j.notes) > 0 {
 		b.WriteString("\nWarnings\n")
@@ -79,10 +80,19 @@ func (j *job) sumLandings(b *strings.Builder) {
 	}
 	rows := [][]string{{"release", "outcome", "off plumb", "of it by the spin", "axially", "after", "at speed", "with energy"}}
 	for i := range j.landings {
-		rows = append(rows, landingRow(&j.landings[i]))
+		if !j.inSeries(j.landings[i].Release) {
+			rows = append(rows, landingRow(&j.landings[i]))
+		}
+	}
+	if len(rows) == 1 {
+		return
 	}
 	block(b, "Landings", rows, 2, "landings.csv")
 }
+
+// inSeries says whether a release belongs to a let-go series, which has a line
+// of its own.
+func (j *job) inSeries(release string) bool { return j.serial[release] }
 
 func landingRow(l *measure.Landing) []string {
 	axial := "-"
@@ -161,7 +171,7 @@ func way(x float64) string {
 func (j *job) sumStories(b *strings.Builder) {
 	var lines []string
 	for i := range j.rests {
-		if r := &j.rests[i]; r.Outcome != flight.Landed && (r.Outcome != flight.TimeUp || r.Impacts > 0) {
+		if r := &j.rests[i]; !j.inSeries(r.Release) && r.Outcome != flight.Landed && (r.Outcome != flight.TimeUp || r.Impacts > 0) {
 			lines = append(lines, wrapped("  "+r.Release+": "+r.Story+".", "    "))
 		}
 	}
@@ -187,6 +197,13 @@ func (j *job) sumPaths(b *strings.Builder) {
 	}
 	if len(rows) > 1 {
 		block(b, "Crew paths", rows, 2, "crew/")
+	}
+	for i := range j.paths {
+		if p := &j.paths[i]; !p.skipped {
+			for _, words := range measure.Ladders(j.model(), p.plan, p.loads) {
+				b.WriteString(wrapped("  "+words+".", "    "))
+			}
+		}
 	}
 }
 

@@ -114,6 +114,8 @@ func (j *job) tables() []task {
 		out = append(out, tableTask("clearance.csv", "clearance", "", "The closest approach of each release and crew path to each surface.", measure.ClearanceTable(j.near)))
 	}
 	out = append(out, tableTask("decks.csv", "decks", "", "A row for each deck.", measure.DeckTable(j.decks)))
+	out = append(out, tableTask("habitat.csv", "habitat", "", "Figures of the habitat as a whole, a single row.", measure.HabitatTable(measure.HabitatOf(j.model(), 0, 0))))
+	out = append(out, j.studyTables()...)
 	if len(j.Limits) > 0 {
 		out = append(out, tableTask("limits.csv", "limits", "", "A row for each limit.", measure.LimitTable(j.verdicts)))
 	}

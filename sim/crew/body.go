@@ -35,6 +35,9 @@ func (f *Feet) Body(height float64) Point {
 // point is the point at a reach, its height moving as given.
 func (f *Feet) point(reach model.Reach, height motion) Point {
 	l := frame.LocalAt(f.Phi)
+	if f.HeadFirst {
+		height = motion{-height.x, -height.v, -height.a}
+	}
 	q, vq, aq, s := f.R-height.x, f.VR-height.v, f.AR-height.a, reach.Spinward
 	return Point{
 		State: frame.State{

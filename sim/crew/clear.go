@@ -39,7 +39,7 @@ func (p *Plan) clear(m *model.Model) []model.Problem {
 
 // blocked tries a leg at places bodyStep apart.
 func (p *Plan) blocked(m *model.Model, l *leg) (float64, string) {
-	n := 1 + int(math.Min(1e5, l.length/bodyStep))
+	n := 1 + int(math.Min(1e5, l.length()/bodyStep))
 	for k := 0; k <= n; k++ {
 		t := l.start + l.way.lasts()*float64(k)/float64(n)
 		f := p.At(t)
@@ -62,7 +62,7 @@ func (p *Plan) Clearance(m *model.Model) Clearance {
 	best := Clearance{Gap: math.Inf(1)}
 	for i := range p.legs {
 		l := &p.legs[i]
-		n := 1 + int(math.Min(1e5, l.length/bodyStep))
+		n := 1 + int(math.Min(1e5, l.length()/bodyStep))
 		for k := 0; k <= n; k++ {
 			t := l.start + l.way.lasts()*float64(k)/float64(n)
 			p.near(m, t, &best)

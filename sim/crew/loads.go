@@ -14,7 +14,7 @@ import (
 const weightless = 1e-9
 
 // Loads are what a person feels and exerts at one instant. Forces are those
-// of the person on the structure.
+// of the person, with what is carried, on the structure.
 type Loads struct {
 	Time float64 // s from the start of the path
 	Feet Feet
@@ -25,6 +25,18 @@ type Loads struct {
 	SideSpinward, SideAxial                float64 // N
 	FrictionDemand                         float64 // side by weight; NaN where there is no weight
 	HeadCross                              float64 // rad/s^2, |omega x rate of the head|
+
+	Coriolis, Euler   float64 // m/s^2, magnitudes at the waist
+	AlongLadder       float64 // N, toward the ladder's foot, on a climb; NaN elsewhere
+	Pull              float64 // N, away from the ladder; negative: into it; NaN elsewhere
+	GravityCarried    float64 // m/s^2, at what is carried; NaN: nothing
+	ForceCarried      float64 // N, of what is carried on the person; NaN: nothing
+	Power             float64 // W, of the support's force on the person: the work of a climb
+	CrossSpinward     float64 // rad/s^2, the parts of omega x rate of the head
+	CrossAxial        float64
+	CrossUp           float64
+	SpeedWaist        float64 // m/s, relative to the habitat
+	GravityDifference float64 // m/s^2, of feet less head
 }
 
 // Loads works out the loads at a time (s from the start of the path).
@@ -32,31 +44,90 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 	a := m.Motion.At(p.Path.Time + t)
 	f := p.At(t)
 	out := Loads{Time: t, Feet: f}
-	out.GravityFeet = r3.Norm(p.felt(&a, &f, 0))
-	out.GravityHead = r3.Norm(p.felt(&a, &f, p.Crew.Head))
-	waist := p.felt(&a, &f, p.Crew.Waist)
-	out.GravityWaist = r3.Norm(waist)
-	out.stand(waist, p.Crew.Mass, a.Omega, f)
-	out.HeadCross = r3.Norm(r3.Cross(a.In(a.Omega), f.HeadTurn))
+	out.GravityFeet = r3.Norm(felt(&a, f.Body(0)))
+	out.GravityHead = r3.Norm(felt(&a, f.Body(p.Crew.Head*p.Crew.Stature)))
+	out.GravityDifference = out.GravityFeet - out.GravityHead
+	waist := f.Body(p.Crew.Waist * p.Crew.Stature)
+	gravity := felt(&a, waist)
+	out.GravityWaist, out.SpeedWaist = r3.Norm(gravity), r3.Norm(waist.Vel)
+	force := r3.Scale(p.Crew.Mass, gravity)
+	out.Power = -r3.Dot(force, waist.Vel)
+	force = r3.Add(force, out.carry(&a, p.Path.Carry, &f))
+	ap := a.Apparent(waist.State)
+	out.Coriolis, out.Euler = r3.Norm(ap.Coriolis), r3.Norm(ap.Euler)
+	out.stand(gravity, force, a.Omega, f)
+	out.climb(p.legs[f.Leg].spec, force, &f)
+	out.cross(r3.Cross(a.In(a.Omega), f.HeadTurn), f.Phi)
 	return out
 }
 
-// felt is the apparent gravity at a share of the stature, m/s^2.
-func (p *Plan) felt(a *frame.Attitude, f *Feet, share float64) r3.Vec {
-	return r3.Scale(-1, Support(a, f.Body(share*p.Crew.Stature)))
+// felt is the apparent gravity at a point, m/s^2.
+func felt(a *frame.Attitude, p Point) r3.Vec { return r3.Scale(-1, Support(a, p)) }
+
+// carry works out the load in the hands, and gives its force, N.
+func (l *Loads) carry(a *frame.Attitude, c model.Carry, f *Feet) r3.Vec {
+	l.GravityCarried, l.ForceCarried = math.NaN(), math.NaN()
+	if c.Mass == 0 {
+		return r3.Vec{}
+	}
+	at := f.Point(c.At)
+	gravity := felt(a, at)
+	force := r3.Scale(c.Mass, gravity)
+	l.GravityCarried, l.ForceCarried = r3.Norm(gravity), r3.Norm(force)
+	l.Power -= r3.Dot(force, at.Vel)
+	return force
 }
 
-// stand splits the apparent gravity at the waist along the deck's directions.
-func (l *Loads) stand(gravity r3.Vec, mass float64, omega r3.Vec, f Feet) {
-	spinward, axial, up := frame.LocalAt(f.Phi).Split(gravity)
-	l.Weight, l.SideSpinward, l.SideAxial = -mass*up, mass*spinward, mass*axial
+// stand splits the force on the structure along the deck's directions, and
+// gives the tilt of the apparent gravity at the waist.
+func (l *Loads) stand(gravity, force r3.Vec, omega r3.Vec, f Feet) {
+	local := frame.LocalAt(f.Phi)
+	spinward, axial, up := local.Split(force)
+	l.Weight, l.SideSpinward, l.SideAxial = -up, spinward, axial
 	l.FrictionDemand, l.TiltSpinward, l.TiltAxial = math.NaN(), math.NaN(), math.NaN()
 	w := r3.Norm(omega)
 	floor := weightless * w * w * math.Abs(f.R)
+	gs, ga, gu := local.Split(gravity)
 	if r3.Norm(gravity) > floor {
-		l.TiltSpinward, l.TiltAxial = math.Atan2(spinward, -up), math.Atan2(axial, -up)
+		l.TiltSpinward, l.TiltAxial = math.Atan2(gs, -gu), math.Atan2(ga, -gu)
 	}
-	if -up > floor {
+	if -gu > floor && -up > 0 {
 		l.FrictionDemand = math.Hypot(spinward, axial) / -up
 	}
+}
+
+// climb splits the force along the ladder and across it. The ladder is in
+// front of the person, who faces it.
+func (l *Loads) climb(spec *model.Leg, force r3.Vec, f *Feet) {
+	l.AlongLadder, l.Pull = math.NaN(), math.NaN()
+	if spec.Kind != model.Climb && spec.Kind != model.Descend {
+		return
+	}
+	local := frame.LocalAt(f.Phi)
+	ahead := facing(spec.Facing, local)
+	sin, cos := 1.0, 0.0
+	if spec.Pitch > 0 {
+		sin, cos = math.Sincos(spec.Pitch)
+	}
+	rise := r3.Add(r3.Scale(sin, local.Up), r3.Scale(cos, ahead))
+	into := r3.Sub(r3.Scale(sin, ahead), r3.Scale(cos, local.Up))
+	l.AlongLadder, l.Pull = -r3.Dot(force, rise), -r3.Dot(force, into)
+}
+
+// facing gives the direction in which a person looks, in habitat components.
+func facing(d model.Direction, l frame.Local) r3.Vec {
+	switch d {
+	case model.Spinward:
+		return l.Spinward
+	case model.Antispinward:
+		return r3.Scale(-1, l.Spinward)
+	case model.PlusAxial:
+		return l.Axial
+	}
+	return r3.Scale(-1, l.Axial)
+}
+
+func (l *Loads) cross(c r3.Vec, phi float64) {
+	l.HeadCross = r3.Norm(c)
+	l.CrossSpinward, l.CrossAxial, l.CrossUp = frame.LocalAt(phi).Split(c)
 }

@@ -27,12 +27,19 @@ type Plan struct {
 type leg struct {
 	start  float64 // s from the start of the path
 	from   spot
-	to     spot
 	deck   int     // the deck that it is on or begins at
 	low    float64 // m, by which the person is lower than standing at its start
 	way    profile
-	length float64 // m
+	course course // nil: the feet stay
 	spec   *model.Leg
+}
+
+// length is the way of the feet, m.
+func (l *leg) length() float64 {
+	if l.course == nil {
+		return 0
+	}
+	return l.course.length()
 }
 
 // spot is where feet are: radius (m), angle (rad, not wrapped), axial (m).
@@ -80,13 +87,15 @@ func (b *builder) fault(key, format string, args ...any) {
 
 func (b *builder) add(i int, spec *model.Leg) {
 	key := fmt.Sprintf("legs[%d]", i)
-	l := leg{start: b.time, from: b.at, to: b.at, deck: b.deck, low: b.low, spec: spec}
+	l := leg{start: b.time, from: b.at, deck: b.deck, low: b.low, spec: spec}
 	switch spec.Kind {
 	case model.Walk:
 		b.walk(key, &l)
 	case model.Climb, model.Descend:
 		b.climb(key, &l)
-	case model.TurnHead:
+	case model.Ride:
+		b.ride(key, &l)
+	case model.TurnHead, model.Turn:
 		l.way = swing{angle: spec.Angle, over: spec.Duration}
 	case model.StandUp, model.SitDown:
 		b.rise(key, &l)
@@ -96,7 +105,7 @@ func (b *builder) add(i int, spec *model.Leg) {
 	if l.way == nil {
 		return
 	}
-	b.at, b.time = l.to, b.time+l.way.lasts()
+	b.time += l.way.lasts()
 	b.plan.legs = append(b.plan.legs, l)
 }
 
@@ -106,20 +115,31 @@ func (b *builder) walk(key string, l *leg) {
 		return
 	}
 	deck := &b.m.Decks[b.deck]
-	l.to.phi = walkTo(l.spec, b.at.phi, deck.Radius)
+	to := b.at
+	to.phi = walkTo(l.spec, b.at.phi, deck.Radius)
 	if l.spec.Axial != nil {
-		l.to.z = *l.spec.Axial
+		to.z = *l.spec.Axial
 	}
-	if !b.onDeck(l) {
+	if !b.onDeck(l.deck, b.at, to) {
 		b.fault(key+".walk", "leads off deck %q", deck.Name)
 		return
 	}
-	l.length = math.Hypot(deck.Radius*(l.to.phi-l.from.phi), l.to.z-l.from.z)
-	if l.length == 0 {
-		b.fault(key+".walk", "a leg of no length: the person is there already")
+	b.follow(key+".walk", l, newArc(b.at, to, math.Hypot(deck.Radius*(to.phi-b.at.phi), to.z-b.at.z)))
+}
+
+// follow lets a leg follow a course.
+func (b *builder) follow(key string, l *leg, c course) {
+	if c.length() == 0 {
+		b.fault(key, "a leg of no length: the person is there already")
 		return
 	}
-	l.way = newRamped(l.length, l.spec.Speed, l.spec.Ramp)
+	l.course = c
+	b.at = c.end()
+	if l.spec.Trapezoid && l.spec.Ramp > 0 {
+		l.way = newTrapezoid(c.length(), l.spec.Speed, l.spec.Ramp)
+		return
+	}
+	l.way = newRamped(c.length(), l.spec.Speed, l.spec.Ramp)
 }
 
 // walkTo gives the angle (rad, not wrapped) that a walk ends at.
@@ -131,16 +151,16 @@ func walkTo(spec *model.Leg, phi, radius float64) float64 {
 }
 
 // onDeck tries the way at points half a foot's width apart at most.
-func (b *builder) onDeck(l *leg) bool {
-	deck := &b.m.Decks[l.deck]
+func (b *builder) onDeck(d int, from, to spot) bool {
+	deck := &b.m.Decks[d]
 	if deck.Whole {
-		return l.to.z >= deck.Axial[0] && l.to.z <= deck.Axial[1]
+		return to.z >= deck.Axial[0] && to.z <= deck.Axial[1]
 	}
-	turn := math.Abs(l.to.phi - l.from.phi)
+	turn := math.Abs(to.phi - from.phi)
 	n := 2 + int(math.Min(1e6, deck.Radius*turn/0.05))
 	for k := 0; k <= n; k++ {
 		u := float64(k) / float64(n)
-		if !deck.Covers(l.from.phi+u*(l.to.phi-l.from.phi), l.from.z+u*(l.to.z-l.from.z)) {
+		if !deck.Covers(from.phi+u*(to.phi-from.phi), from.z+u*(to.z-from.z)) {
 			return false
 		}
 	}
@@ -172,18 +192,89 @@ func (b *builder) rise(key string, l *leg) {
 }
 
 func (b *builder) climb(key string, l *leg) {
-	way := -l.spec.Distance
-	name := ".climb"
-	if l.spec.Kind == model.Descend {
-		way, name = -way, ".descend"
+	name, down := key+".climb", l.spec.Kind == model.Descend
+	if down {
+		name = key + ".descend"
 	}
-	l.to.r += way
-	l.length = math.Abs(way)
-	l.way = newRamped(l.length, l.spec.Speed, l.spec.Ramp)
-	if l.to.r > b.m.Decks[0].Radius+levelSlack {
-		b.fault(key+name, "leads below the reference floor")
+	b.follow(name, l, b.ladder(l.spec, down))
+	b.hatch(key+".through", l)
+	b.arrive(name)
+}
+
+// ladder gives the course of a climb.
+func (b *builder) ladder(spec *model.Leg, down bool) course {
+	if spec.Pitch > 0 && spec.Pitch < math.Pi/2 {
+		return newLine(b.at, spec.Pitch, spec.Facing, spec.Distance, down)
 	}
-	b.deck = b.levelDeck(&l.to)
+	to := b.at
+	to.r -= spec.Distance
+	if down {
+		to.r = b.at.r + spec.Distance
+	}
+	return newArc(b.at, to, spec.Distance)
+}
+
+// arrive checks the end of a climb or a ride, and joins the deck that it is
+// level with.
+func (b *builder) arrive(key string) {
+	if b.at.r > b.m.Decks[0].Radius+levelSlack {
+		b.fault(key, "leads below the reference floor")
+	}
+	if b.at.r <= 0 {
+		b.fault(key, "leads to the axis or beyond")
+	}
+	b.deck = b.levelDeck(&b.at)
+}
+
+// ride moves the person in a lift, radially or along the ring.
+func (b *builder) ride(key string, l *leg) {
+	to := b.at
+	long := math.Abs(l.spec.Up)
+	to.r -= l.spec.Up
+	if l.spec.Round != nil {
+		turn := l.spec.Round.Angle(b.at.r)
+		to.phi += turn
+		long = math.Abs(turn) * b.at.r
+	}
+	b.follow(key+".ride", l, newArc(b.at, to, long))
+	b.arrive(key + ".ride")
+}
+
+// hatch checks that a climb leads through the opening that it names, and that
+// the person's shoulders pass it.
+func (b *builder) hatch(key string, l *leg) {
+	name := l.spec.Through
+	if name == "" || l.course == nil {
+		return
+	}
+	d, o := b.opening(name)
+	if o == nil {
+		b.fault(key, "no opening named %q", name)
+		return
+	}
+	lo, hi := math.Min(l.from.r, b.at.r), math.Max(l.from.r, b.at.r)
+	if d.Radius < lo-levelSlack || d.Radius > hi+levelSlack {
+		b.fault(key, "the way does not cross deck %q, in which %q is", d.Name, name)
+		return
+	}
+	across := d.Radius * math.Abs(frame.WrapAngle(b.at.phi-o.Spinward.Angle(d.Radius)))
+	half := b.plan.Crew.Breadth / 2
+	if room := math.Min(o.Size[0]/2-across, o.Size[1]/2-math.Abs(b.at.z-o.Axial)); room < half {
+		b.fault(key, "%q leaves %.3g m to its rim beside the person's middle, who needs %.3g m", name, room, half)
+	}
+}
+
+// opening finds an opening by its name.
+func (b *builder) opening(name string) (*model.Deck, *model.Opening) {
+	for i := range b.m.Decks {
+		d := &b.m.Decks[i]
+		for k := range d.Openings {
+			if d.Openings[k].Name == name {
+				return d, &d.Openings[k]
+			}
+		}
+	}
+	return nil, nil
 }
 
 // levelDeck joins the end of a climb to the deck that it is level with; -1
@@ -215,6 +306,28 @@ func (p *Plan) Duration() float64 {
 	return last.start + last.way.lasts()
 }
 
+// Length is the way of the feet over the whole path, m.
+func (p *Plan) Length() float64 { return p.before(len(p.legs)) }
+
+// TimeAlong gives the first time (s) at which the feet have gone a way (m).
+func (p *Plan) TimeAlong(way float64) float64 {
+	lo, hi := 0.0, p.Duration()
+	if way <= 0 {
+		return 0
+	}
+	for {
+		mid := lo + (hi-lo)/2
+		if mid <= lo || mid >= hi {
+			return hi
+		}
+		if p.At(mid).Along >= way {
+			hi = mid
+		} else {
+			lo = mid
+		}
+	}
+}
+
 // legAt gives the leg under way at a time, the earlier one at a joint.
 func (p *Plan) legAt(t float64) int {
 	for i := range p.legs {
@@ -237,7 +350,7 @@ func (p *Plan) Joints() []float64 {
 // LegName names the i-th leg.
 func (p *Plan) LegName(i int) string {
 	names := map[model.LegKind]string{model.Walk: "walk", model.Stand: "stand", model.Climb: "climb",
-		model.Descend: "descend", model.TurnHead: "turn head", model.StandUp: "stand up", model.SitDown: "sit down"}
+		model.Descend: "descend", model.Turn: "turn", model.Ride: "ride", model.TurnHead: "turn head", model.StandUp: "stand up", model.SitDown: "sit down"}
 	return fmt.Sprintf("%d %s", i+1, names[p.legs[i].spec.Kind])
 }
 
@@ -252,6 +365,7 @@ type Feet struct {
 	Leg          int
 	Along        float64 // m since the start of the path
 	HeadTurn     r3.Vec  // rad/s, rate of the head relative to the body, habitat components
+	HeadFirst    bool    // the head is outward of the feet
 	low          motion  // m, by which waist and head are lower than standing
 }
 
@@ -260,7 +374,7 @@ func (p *Plan) At(t float64) Feet {
 	i := p.legAt(t)
 	l := &p.legs[i]
 	s := l.way.at(t - l.start)
-	f := Feet{R: l.from.r, Phi: l.from.phi, Z: l.from.z, Leg: i, Along: p.before(i)}
+	f := Feet{R: l.from.r, Phi: l.from.phi, Z: l.from.z, Leg: i, Along: p.before(i), HeadFirst: l.spec.HeadFirst}
 	f.low.x = l.low
 	switch l.spec.Kind {
 	case model.StandUp:
@@ -268,25 +382,24 @@ func (p *Plan) At(t float64) Feet {
 	case model.SitDown:
 		f.low = motion{l.low + s.x, s.v, s.a}
 	}
-	if l.spec.Kind == model.TurnHead {
+	switch {
+	case l.spec.Kind == model.TurnHead:
 		f.HeadTurn = r3.Scale(s.v, headAxis(l.spec.About, f.Phi))
-		return f
+	case l.spec.Kind == model.Turn:
+		f.HeadTurn = r3.Scale(-s.v, frame.LocalAt(f.Phi).Up)
+	case l.course != nil:
+		l.course.put(&f, s)
+		f.Along += s.x
+		// A body that goes round turns with it.
+		f.HeadTurn = r3.Vec{Z: f.VPhi}
 	}
-	if l.length == 0 {
-		return f
-	}
-	dr, dphi, dz := (l.to.r-l.from.r)/l.length, (l.to.phi-l.from.phi)/l.length, (l.to.z-l.from.z)/l.length
-	f.R, f.Phi, f.Z = f.R+dr*s.x, f.Phi+dphi*s.x, f.Z+dz*s.x
-	f.VR, f.VPhi, f.VZ = dr*s.v, dphi*s.v, dz*s.v
-	f.AR, f.APhi, f.AZ = dr*s.a, dphi*s.a, dz*s.a
-	f.Along += s.x
 	return f
 }
 
 func (p *Plan) before(i int) float64 {
 	sum := 0.0
 	for k := range p.legs[:i] {
-		sum += p.legs[k].length
+		sum += p.legs[k].length()
 	}
 	return sum
 }

@@ -62,6 +62,28 @@ func (r ramped) rise(t float64) motion {
 	}
 }
 
+// trapezoid is a way whose speed grows steadily, stays and falls steadily, as
+// that of a lift does.
+type trapezoid struct{ ramped }
+
+func newTrapezoid(way, speed, ramp float64) trapezoid { return trapezoid{newRamped(way, speed, ramp)} }
+
+func (r trapezoid) at(t float64) motion {
+	switch {
+	case t <= 0 || t >= r.total || t > r.ramp && t < r.total-r.ramp:
+		return r.ramped.at(t)
+	case t <= r.ramp:
+		return r.rise(t)
+	}
+	back := r.rise(r.total - t)
+	return motion{x: r.way - back.x, v: back.v, a: -back.a}
+}
+
+func (r trapezoid) rise(t float64) motion {
+	a := r.speed / r.ramp
+	return motion{x: a * t * t / 2, v: a * t, a: a}
+}
+
 // swing is a turn by an angle that follows 3u^2 - 2u^3 over its duration.
 type swing struct {
 	angle float64 // rad

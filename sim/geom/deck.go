@@ -25,6 +25,9 @@ type Hole struct {
 	Phi    float64 // rad, its middle
 	Half   float64 // rad, half its extent
 	Z0, Z1 float64 // m
+	// Round is a round passage whose mouth this is, or nil: the hole is square,
+	// and collars fill its corners.
+	Round *Passage
 }
 
 // HalfAngle gives half the angle under which a clear width w (m) appears at
@@ -36,6 +39,15 @@ func HalfAngle(w, r float64) float64 { return math.Asin(math.Min(1, w/(2*r))) }
 // between the axial places at which holes begin or end, each cut at the
 // angles of its holes.
 func (b *Builder) AddShell(s Shell) {
+	b.addBands(&s)
+	for i := range s.Holes {
+		if p := s.Holes[i].Round; p != nil {
+			b.addCollar(p, chord(s.R0, p.Width/2), s.R1)
+		}
+	}
+}
+
+func (b *Builder) addBands(s *Shell) {
 	defer b.together()()
 	zs := []float64{s.Z0, s.Z1}
 	for _, h := range s.Holes {
@@ -44,7 +56,7 @@ func (b *Builder) AddShell(s Shell) {
 	slices.Sort(zs)
 	zs = slices.Compact(zs)
 	for i := 1; i < len(zs); i++ {
-		b.addBand(&s, zs[i-1], zs[i])
+		b.addBand(s, zs[i-1], zs[i])
 	}
 }
 

@@ -101,36 +101,3 @@ func before(a, b *Touch) bool {
 	}
 	return a.Group < b.Group
 }
-
-// parallel is the cosine above which two normals count as one: a sphere of
-// the radius a that meets the next piece of a flat floor at an angle of 4 mrad
-// is a millionth of a away from it.
-const parallel = 1 - 1e-5
-
-// DistBeside gives the distance (m) from p to the nearest solid that belongs
-// to none of the groups touched and whose direction differs from theirs: what
-// a sphere that slides along them would run into.
-//
-// Law: where it jumps as p moves, it jumps upward; else it changes by no more
-// than p does.
-func (in *Interior) DistBeside(p r3.Vec, touched []Touch) float64 {
-	best := math.Inf(1)
-	in.tree.each(in.pieces, p, &best, func(i int, d float64) float64 {
-		for k := range touched {
-			if in.pieces[i].Group == touched[k].Group {
-				return best
-			}
-		}
-		if d < best {
-			_, n, _ := in.pieces[i].Solid.Nearest(p)
-			for k := range touched {
-				if r3.Dot(n, touched[k].Normal) > parallel {
-					return best
-				}
-			}
-			return d
-		}
-		return best
-	})
-	return best
-}

@@ -115,6 +115,7 @@ type shape struct {
 	solid geom.Solid
 	cover cover
 	size  float64 // m, farthest from the origin
+	bent  float64 // m, by which straight pieces of its outlines cut inside it
 }
 
 // randomShapes gives a number of shapes of every kind.
@@ -123,12 +124,12 @@ func randomShapes(rng *rand.Rand, each int, step float64) []shape {
 	for range each {
 		for kind := range sectorKinds {
 			s := randomSector(rng, kind)
-			out = append(out, shape{s, coverSector(s, step), s.R1 + math.Max(math.Abs(s.Z0), math.Abs(s.Z1))})
+			out = append(out, shape{solid: s, cover: coverSector(s, step), size: s.R1 + math.Max(math.Abs(s.Z0), math.Abs(s.Z1))})
 		}
 		b := randomBlock(rng)
-		out = append(out, shape{b, coverBlock(b, step), r3.Norm(b.Centre) + b.Half[0] + b.Half[1] + b.Half[2]})
+		out = append(out, shape{solid: b, cover: coverBlock(b, step), size: r3.Norm(b.Centre) + b.Half[0] + b.Half[1] + b.Half[2]})
 	}
-	return out
+	return append(out, furtherShapes(rng, each, step)...)
 }
 
 // point gives a place: near the boundary, at any distance down to a tenth of a

@@ -180,6 +180,9 @@ func (b *Builder) Add(s Solid, faces ...SurfaceID) {
 // AddSpace adds a room or passage.
 func (b *Builder) AddSpace(s Space) { b.in.spaces = append(b.in.spaces, s) }
 
+// Inside says whether a point is within a room or passage added so far.
+func (b *Builder) Inside(p r3.Vec) bool { return b.in.Inside(p) }
+
 // Build finishes the interior; the builder is done with.
 func (b *Builder) Build() *Interior {
 	in := b.in

@@ -12,7 +12,7 @@ import (
 
 // worlds are the interiors that the laws are tried on.
 func worlds() []namedWorld {
-	return []namedWorld{{"gallery", gallery()}, {"wheel", wheel(3)}, {"wide passage", wide()}}
+	return append([]namedWorld{{"gallery", gallery()}, {"wheel", wheel(3)}, {"wide passage", wide()}}, shaped()...)
 }
 
 type namedWorld struct {
@@ -42,6 +42,8 @@ func coverPieces(in *geom.Interior, step float64) cover {
 			c = coverSector(s, step)
 		case *geom.Block:
 			c = coverBlock(s, step)
+		default:
+			c = coverFurther(s, step)
 		}
 		all.points, all.edges = append(all.points, c.points...), append(all.edges, c.edges...)
 		all.reach = math.Max(all.reach, c.reach)
@@ -64,7 +66,7 @@ func eachWorld(t *testing.T, stream uint64, test func(*testing.T, *rand.Rand, *w
 func TestInteriorLipschitz(t *testing.T) {
 	eachWorld(t, 100, func(t *testing.T, rng *rand.Rand, _ *world, in *geom.Interior) {
 		edges := coverPieces(in, 5).edges
-		for range 40000 {
+		for range 15000 {
 			p := somewhere(rng, edges)
 			q := toward(p, decades(rng, 1e-6, 10), direction(rng))
 			most := dist(p, q)
@@ -82,7 +84,7 @@ func TestInteriorLipschitz(t *testing.T) {
 func TestInteriorSolid(t *testing.T) {
 	eachWorld(t, 110, func(t *testing.T, rng *rand.Rand, w *world, in *geom.Interior) {
 		edges := coverPieces(in, 5).edges
-		for range 60000 {
+		for range 25000 {
 			p := somewhere(rng, edges)
 			if d := in.Dist(p); math.Abs(d) > slack(worldSize) && (d < 0) != w.solid(p) {
 				t.Fatalf("Dist(%v) = %g, solid: %t", p, d, w.solid(p))
@@ -97,7 +99,7 @@ func TestInteriorDistExact(t *testing.T) {
 	const beyond = 1e-9 // m, past the surface: some hundred thousand roundings
 	eachWorld(t, 120, func(t *testing.T, rng *rand.Rand, w *world, in *geom.Interior) {
 		edges := coverPieces(in, 5).edges
-		for range 4000 {
+		for range 2500 {
 			p := somewhere(rng, edges)
 			c := in.Contact(p)
 			if c.Gap < 0 {
@@ -132,7 +134,7 @@ func solidAbout(w *world, p r3.Vec, d float64) bool {
 func TestInteriorDistSampled(t *testing.T) {
 	eachWorld(t, 130, func(t *testing.T, rng *rand.Rand, _ *world, in *geom.Interior) {
 		all := coverPieces(in, 0.5)
-		for range 30 {
+		for range 12 {
 			p := somewhere(rng, all.edges)
 			d := in.Dist(p)
 			if d <= 0 {
@@ -150,7 +152,7 @@ func TestInteriorDistSampled(t *testing.T) {
 func TestContact(t *testing.T) {
 	eachWorld(t, 140, func(t *testing.T, rng *rand.Rand, _ *world, in *geom.Interior) {
 		edges := coverPieces(in, 5).edges
-		for range 20000 {
+		for range 8000 {
 			p := somewhere(rng, edges)
 			c := in.Contact(p)
 			switch {

@@ -33,7 +33,7 @@ func (w *world) solid(p r3.Vec) bool {
 			return true
 		}
 	}
-	return false
+	return w.furtherSolid(p)
 }
 
 // turnFrom gives the angle from the direction phi to p, in (-pi, pi].
@@ -106,10 +106,13 @@ func inWalls(s *geom.Passage, p r3.Vec) bool {
 }
 
 // alongShaft gives how far p lies from the middle line of a shaft, across its
-// square section, and along it from the axis.
+// square or round section, and along it from the axis.
 func alongShaft(s *geom.Passage, p r3.Vec) (across, along float64) {
 	phi := turnFrom(s.Phi, p)
 	r := math.Hypot(p.X, p.Y)
+	if u, v := r*math.Sin(phi), p.Z-s.Z; s.Round {
+		return math.Hypot(u, v), r * math.Cos(phi)
+	}
 	return math.Max(math.Abs(r*math.Sin(phi)), math.Abs(p.Z-s.Z)), r * math.Cos(phi)
 }
 

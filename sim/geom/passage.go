@@ -6,14 +6,25 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
-// Passage is a radial shaft of square section that joins two rooms.
+// Passage is a radial shaft of square or round section that joins two rooms.
+//
+// Its mouths are cut into hulls and decks as pieces between surfaces of
+// constant angle and axial place, never narrower than the shaft; the walls,
+// which are at least as thick as what they pierce, fill what that leaves open,
+// and of a round shaft collars around it. So there is no lip and no slit.
 type Passage struct {
-	Name     string
-	Phi, Z   float64 // rad and m, of its middle line
-	From, To float64 // m from the axis; From < To
-	Width    float64 // m
-	Wall     float64 // m, thickness of its walls
+	Name   string
+	Phi, Z float64 // rad and m, of its middle line
+	From   float64 // m from the axis, of the corners at its inner end
+	To     float64 // m from the axis, of the middle of its outer end; From < To
+	Width  float64 // m, its side or diameter
+	Round  bool    // it has a round section
+	Wall   float64 // m, thickness of its walls
 }
+
+// Span is a stretch of places along the middle line of a passage, m from the
+// axis.
+type Span struct{ From, To float64 }
 
 // FloorMouth is the hole that the passage makes in a floor of radius r (m)
 // inside of which it begins. Its corners meet those of the shaft: there is no
@@ -30,48 +41,91 @@ func (p *Passage) CeilingMouth(r, thickness float64) Hole {
 }
 
 func (p *Passage) mouth(half float64) Hole {
-	return Hole{Name: p.Name + " mouth", Phi: p.Phi, Half: half, Z0: p.Z - p.Width/2, Z1: p.Z + p.Width/2}
+	h := Hole{Name: p.mouthName(), Phi: p.Phi, Half: half, Z0: p.Z - p.Width/2, Z1: p.Z + p.Width/2}
+	if p.Round {
+		h.Round = p
+	}
+	return h
 }
+
+func (p *Passage) mouthName() string { return p.Name + " mouth" }
 
 // ends gives where along its middle line the shaft's walls begin and end: where
 // the whole of its section is inside the rooms.
-func (p *Passage) ends() (x0, x1 float64) {
-	h := p.Width / 2
-	return math.Sqrt(math.Max(0, p.From*p.From-h*h)), p.To
+func (p *Passage) ends() Span { return Span{chord(p.From, p.Width/2), p.To} }
+
+// crosses says whether the shaft runs through a shell that its middle line
+// meets at the distance r (m) from the axis.
+func (p *Passage) crosses(r float64) bool {
+	s := p.ends()
+	return s.From <= r && r <= s.To
 }
 
-// AddPassage adds the four walls of a passage and the space between them.
+// AddPassage adds the walls of a passage and the space between them.
 func (b *Builder) AddPassage(p Passage) {
-	x0, x1 := p.ends()
-	out := onAngle(p.Phi, 1, 0)
-	spin := onAngle(p.Phi+math.Pi/2, 1, 0)
-	axial := r3.Vec{Z: 1}
-	side := p.Width/2 + p.Wall/2
-	wall := func(name string, off r3.Vec, alongHalf, acrossHalf float64) {
-		centre := r3.Add(r3.Add(r3.Scale((x0+x1)/2, out), r3.Vec{Z: p.Z}), off)
-		id := b.Surface(p.Name+" "+name, math.NaN(), math.NaN())
-		b.Add(&Block{Centre: centre, Along: spin, Across: axial, Up: r3.Scale(-1, out),
-			Half: [3]float64{alongHalf, acrossHalf, (x1 - x0) / 2}}, id, id, id, id, id, id)
+	if p.Round {
+		b.addPipe(&p)
+	} else {
+		b.addWalls(&p)
 	}
-	long := p.Width/2 + p.Wall
-	wall("antispinward wall", r3.Scale(-side, spin), p.Wall/2, long)
-	wall("spinward wall", r3.Scale(side, spin), p.Wall/2, long)
-	wall("-axial wall", r3.Scale(-side, axial), long, p.Wall/2)
-	wall("+axial wall", r3.Scale(side, axial), long, p.Wall/2)
-	b.AddSpace(&shaftSpace{mid: r3.Add(r3.Scale((x0+x1)/2, out), r3.Vec{Z: p.Z}), out: out, spin: spin,
-		half: p.Width / 2, length: (x1-x0)/2 + p.Wall, wall: p.Wall})
+	s := p.ends()
+	b.AddSpace(&shaftSpace{shaft: ShaftAt(p.Phi, p.Z), mid: (s.From + s.To) / 2, half: p.Width / 2,
+		length: (s.To-s.From)/2 + p.Wall, wall: p.Wall, round: p.Round})
+}
+
+// addWalls adds the four walls of a square shaft.
+func (b *Builder) addWalls(p *Passage) {
+	at, s := ShaftAt(p.Phi, p.Z), p.ends()
+	side, long := p.Width/2+p.Wall/2, p.Width/2+p.Wall
+	wall := func(name string, u, v, alongHalf, acrossHalf float64) {
+		id := b.Surface(p.Name+" "+name, math.NaN(), math.NaN())
+		b.Add(&Block{Centre: at.point(r3.Vec{X: u, Y: v, Z: (s.From + s.To) / 2}), Along: at.Spin, Across: r3.Vec{Z: 1}, Up: r3.Scale(-1, at.Out),
+			Half: [3]float64{alongHalf, acrossHalf, (s.To - s.From) / 2}}, id, id, id, id, id, id)
+	}
+	wall("antispinward wall", -side, 0, p.Wall/2, long)
+	wall("spinward wall", side, 0, p.Wall/2, long)
+	wall("-axial wall", 0, -side, long, p.Wall/2)
+	wall("+axial wall", 0, side, long, p.Wall/2)
+}
+
+// addPipe adds the wall of a round shaft.
+func (b *Builder) addPipe(p *Passage) {
+	defer b.together()()
+	s := p.ends()
+	id := b.Surface(p.Name+" wall", math.NaN(), math.NaN())
+	for _, spinward := range []bool{false, true} {
+		b.Add(&Pipe{Shaft: ShaftAt(p.Phi, p.Z), Bore: p.Width / 2, Outer: p.Width/2 + p.Wall, From: s.From, To: s.To, Spinward: spinward},
+			id, id, id, id, id, id)
+	}
+}
+
+// addCollar fills the corners of a mouth of a round shaft, from one place
+// along its middle line to another.
+func (b *Builder) addCollar(p *Passage, from, to float64) {
+	defer b.together()()
+	wall, mouth := b.Surface(p.Name+" wall", math.NaN(), math.NaN()), b.Surface(p.mouthName(), math.NaN(), math.NaN())
+	for _, spinward := range []bool{false, true} {
+		b.Add(&Collar{Shaft: ShaftAt(p.Phi, p.Z), Bore: p.Width / 2, Half: p.Width/2 + p.Wall, From: from, To: to, Spinward: spinward},
+			wall, mouth, mouth, mouth, mouth)
+	}
 }
 
 // shaftSpace is the free space of a passage.
 type shaftSpace struct {
-	mid, out, spin r3.Vec
-	half, length   float64
-	wall           float64
+	shaft        Shaft
+	mid          float64 // m from the axis
+	half, length float64 // m, half its width and half its length
+	wall         float64
+	round        bool
 }
 
 func (s *shaftSpace) across(p r3.Vec) (across, along float64) {
-	d := r3.Sub(p, s.mid)
-	return math.Max(math.Abs(r3.Dot(d, s.spin)), math.Abs(d.Z)), math.Abs(r3.Dot(d, s.out))
+	q := s.shaft.local(p)
+	across = math.Max(math.Abs(q.X), math.Abs(q.Y))
+	if s.round {
+		across = math.Hypot(q.X, q.Y)
+	}
+	return across, math.Abs(q.Z - s.mid)
 }
 
 // Beyond implements [Space].

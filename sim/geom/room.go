@@ -36,10 +36,7 @@ func (b *Builder) AddCylinder(c Cylinder) {
 }
 
 func (c *Cylinder) surface(name string) string {
-	if c.Name == "" {
-		return name
-	}
-	return c.Name + " " + name
+	return surfaceOf(c.Name, name)
 }
 
 // addBulkhead closes an end of the room, from its ceiling to the outer face of
@@ -70,4 +67,10 @@ func (c *cylinderSpace) Beyond(p r3.Vec) float64 {
 func (c *cylinderSpace) Holds(p r3.Vec) bool {
 	r := math.Hypot(p.X, p.Y)
 	return r >= c.r0 && r <= c.outer && p.Z >= c.z0 && p.Z <= c.z1
+}
+
+// Span is [Torus.Span] for a cylindrical room.
+func (c *Cylinder) Span(_, z, h float64) (Span, bool) {
+	s := Span{c.Ceiling, chord(c.Floor.R0, h)}
+	return s, z-h >= c.Floor.Z0 && z+h <= c.Floor.Z1 && s.From < s.To
 }

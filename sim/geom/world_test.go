@@ -33,6 +33,10 @@ type world struct {
 	decks    []geom.Deck
 	passages []geom.Passage
 	blocks   []*geom.Block
+	tori     []geom.Torus
+	balls    []geom.Ball
+	cabins   []geom.Cabin
+	posts    []*geom.Capsule
 }
 
 func (w *world) build() *geom.Interior {
@@ -45,6 +49,18 @@ func (w *world) build() *geom.Interior {
 	}
 	for _, p := range w.passages {
 		b.AddPassage(p)
+	}
+	for _, t := range w.tori {
+		b.AddTorus(t)
+	}
+	for _, s := range w.balls {
+		b.AddBall(s)
+	}
+	for _, c := range w.cabins {
+		b.AddCabin(c)
+	}
+	for _, c := range w.posts {
+		b.Add(c, b.Surface("rail", none, none))
 	}
 	for _, k := range w.blocks {
 		b.Add(k, blockNames(b)...)

@@ -31,8 +31,10 @@ var (
 	accelUnit  = unit{"_m_s2", "m/s^2", 1, "m/s^2"}
 	degree     = unit{"_deg", "deg", math.Pi / 180, "rad"}
 	gravity    = unit{"_g", "g", 9.80665, "m/s^2"}
+	turns      = unit{"_rpm", "rpm", math.Pi / 30, "rad/s"}
 	newton     = unit{"_N", "N", 1, "N"}
 	joule      = unit{"_J", "J", 1, "J"}
+	watt       = unit{"_W", "W", 1, "W"}
 	radPerSec2 = unit{"_rad_s2", "rad/s^2", 1, "rad/s^2"}
 )
 

@@ -115,11 +115,23 @@ var crewColumns = []column[Load]{
 	{key: "gravity_head", unit: gravity, meaning: "apparent gravity at the head, magnitude", num: func(l *Load) float64 { return l.GravityHead }},
 	{key: "tilt_spinward", unit: degree, meaning: "angle from the deck's normal at which a plumb bob at the waist hangs spinward", num: func(l *Load) float64 { return l.TiltSpinward }},
 	{key: "tilt_axial", unit: degree, meaning: "angle from the deck's normal at which a plumb bob at the waist hangs toward +axial", num: func(l *Load) float64 { return l.TiltAxial }},
-	{key: "weight", unit: newton, meaning: "force of the person on the structure along the deck's normal, at the waist", num: func(l *Load) float64 { return l.Weight }},
+	{key: "weight", unit: newton, meaning: "force of the person, with what is carried, on the structure along the deck's normal, at the waist", num: func(l *Load) float64 { return l.Weight }},
 	{key: "side_spinward", unit: newton, meaning: "sideways force of the person on the structure, spinward positive", num: func(l *Load) float64 { return l.SideSpinward }},
 	{key: "side_axial", unit: newton, meaning: "sideways force of the person on the structure, +axial positive", num: func(l *Load) float64 { return l.SideAxial }},
 	{key: "friction_demand", meaning: "sideways force by weight; empty where there is no weight", num: func(l *Load) float64 { return l.FrictionDemand }},
 	{key: "head_cross", unit: radPerSec2, meaning: "cross-coupled angular acceleration at the head: |spin x rate of the head|", num: func(l *Load) float64 { return l.HeadCross }},
+	{key: "gravity_difference", unit: gravity, meaning: "apparent gravity at the feet less that at the head", num: func(l *Load) float64 { return l.GravityDifference }},
+	{key: "a_coriolis", unit: accelUnit, meaning: "magnitude of the Coriolis acceleration at the waist", num: func(l *Load) float64 { return l.Coriolis }},
+	{key: "a_euler", unit: accelUnit, meaning: "magnitude of the Euler acceleration at the waist", num: func(l *Load) float64 { return l.Euler }},
+	{key: "along_ladder", unit: newton, meaning: "force on the ladder along it, toward its foot; empty off ladders", num: func(l *Load) float64 { return l.AlongLadder }},
+	{key: "pull", unit: newton, meaning: "force that pulls the person away from the ladder in front; negative: into it; empty off ladders", num: func(l *Load) float64 { return l.Pull }},
+	{key: "gravity_carried", unit: gravity, meaning: "apparent gravity at what is carried; empty without", num: func(l *Load) float64 { return l.GravityCarried }},
+	{key: "carried", unit: newton, meaning: "force of what is carried on the person; empty without", num: func(l *Load) float64 { return l.ForceCarried }},
+	{key: "power", unit: watt, meaning: "power of the support's force on the person and the load: that of climbing", num: func(l *Load) float64 { return l.Power }},
+	{key: "work", unit: joule, meaning: "its work since the start of the path", num: func(l *Load) float64 { return l.Work }},
+	{key: "cross_spinward", unit: radPerSec2, meaning: "spinward part of the cross-coupled angular acceleration at the head", num: func(l *Load) float64 { return l.CrossSpinward }},
+	{key: "cross_axial", unit: radPerSec2, meaning: "axial part of it", num: func(l *Load) float64 { return l.CrossAxial }},
+	{key: "cross_up", unit: radPerSec2, meaning: "upward part of it", num: func(l *Load) float64 { return l.CrossUp }},
 }
 
 // deckColumns are those of decks.csv.
@@ -130,6 +142,7 @@ var deckColumns = []column[DeckFigure]{
 	{key: "speed", unit: speedUnit, meaning: "speed of its surface, spinward positive", num: func(d *DeckFigure) float64 { return d.Speed }},
 	{key: "coriolis_per_speed", unit: perSecond, meaning: "Coriolis acceleration for each m/s across the axis: twice the spin rate", num: func(d *DeckFigure) float64 { return d.Coriolis }},
 	{key: "drop_1m_offset", unit: metre, meaning: "deck offset of a point dropped from 1 m above it in vacuum, spinward positive; empty where the axis is nearer", num: func(d *DeckFigure) float64 { return d.Drop }},
+	{key: "walk_run", unit: speedUnit, meaning: "speed at which a person of 1.75 m changes from walking to running at rest gravity: Froude number 0.5", num: func(d *DeckFigure) float64 { return WalkRunSpeed(d.Gravity) }},
 }
 
 // verdictColumns are those of limits.csv.

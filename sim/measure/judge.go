@@ -17,6 +17,7 @@ type Evidence struct {
 	Clearance func(release int) ([]Clearance, bool)
 	Loads     func(path int) ([]Load, bool)
 	Decks     []DeckFigure
+	Habitat   func(stature, speed float64) HabitatFigure
 }
 
 // Judge gives the verdict on a limit: that on its worst target, at its worst
@@ -59,6 +60,10 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 	case "crew":
 		rows, ok := e.Loads(t.Index)
 		return series(c, t, crewColumns, rows, func(l *Load) float64 { return l.Time }), ok
+	}
+	if c.Table == "habitat" {
+		row := []HabitatFigure{e.Habitat(c.Limit.Stature, c.Limit.Speed)}
+		return series(c, t, habitatColumns, row, func(*HabitatFigure) float64 { return math.NaN() }), true
 	}
 	return series(c, t, deckColumns, e.Decks, func(*DeckFigure) float64 { return math.NaN() }), true
 }

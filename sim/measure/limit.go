@@ -31,6 +31,8 @@ type Target struct {
 	Kind  string // release, path or habitat
 	Index int
 	Name  string
+
+	Series string // of a release: the let-go series that it belongs to
 }
 
 // String names the target as a scenario does.
@@ -89,6 +91,7 @@ func judgedTables() map[string]judged {
 		"impacts":   judgedTable("release", eventColumns),
 		"clearance": judgedTable("release", clearanceColumns),
 		"crew":      judgedTable("path", crewColumns),
+		"habitat":   judgedTable("habitat", habitatColumns),
 		"decks":     judgedTable("habitat", deckColumns),
 	}
 }
@@ -114,7 +117,7 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	c.Table, key, _ = strings.Cut(l.Measure, ".")
 	t, ok := tables[c.Table]
 	if !ok {
-		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks; got %q", l.Measure)
+		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat; got %q", l.Measure)
 	}
 	u, num := t.nums[key]
 	if !num && !t.text[key] {
@@ -144,6 +147,16 @@ func (c *Criterion) NeedTracks(release []bool) {
 			release[t.Index] = true
 		}
 	}
+}
+
+// Judges says whether the limit is about releases of a let-go series.
+func (c *Criterion) Judges(series string) bool {
+	return slices.ContainsFunc(c.Targets, func(t Target) bool { return t.Series == series })
+}
+
+// About says whether the limit judges the thing of a name.
+func (c *Criterion) About(name string) bool {
+	return slices.ContainsFunc(c.Targets, func(t Target) bool { return t.Name == name })
 }
 
 func fault(key, format string, args ...any) []model.Problem {
@@ -221,7 +234,7 @@ func hasOpening(m *model.Model, name string) bool {
 func targets(m *model.Model, of, kind string) ([]Target, string) {
 	if of == "habitat" {
 		if kind != "habitat" {
-			return nil, "habitat has the table decks only"
+			return nil, "habitat has the tables decks and habitat"
 		}
 		return []Target{{Kind: "habitat"}}, ""
 	}
@@ -235,7 +248,11 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 	var out []Target
 	for i, n := range names(m, kind) {
 		if ok, err := path.Match(escape(name), escapeName(n)); n == name || ok && err == nil {
-			out = append(out, Target{Kind: kind, Index: i, Name: n})
+			t := Target{Kind: kind, Index: i, Name: n}
+			if kind == "release" {
+				t.Series = m.Releases[i].Series
+			}
+			out = append(out, t)
 		}
 	}
 	if len(out) == 0 {

@@ -26,3 +26,9 @@ func EventTable(rows []Event) *table.Table { return fill(eventColumns, rows) }
 // ClearanceTable is clearance.csv: a row for each surface that a release or a
 // crew path came near.
 func ClearanceTable(rows []Clearance) *table.Table { return fill(clearanceColumns, rows) }
+
+// LetGoTable is letgo/NAME.csv: a row for each release of a let-go series.
+func LetGoTable(rows []LetGo) *table.Table { return fill(letGoColumns, rows) }
+
+// HabitatTable is habitat.csv, of one row.
+func HabitatTable(h HabitatFigure) *table.Table { return fill(habitatColumns, []HabitatFigure{h}) }

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/sim/frame"
 	"offplumb/sim/geom"
 )
@@ -142,9 +143,38 @@ func (c *checker) fixture(b *geom.Builder, i int) {
 		c.box(b, key, f)
 	case Wall:
 		c.wall(b, key, f)
-	default:
-		c.fault(key+".kind", "use kind = \"box\" or \"wall\"", "this version knows boxes and walls only")
+	case Post:
+		c.post(b, key, f)
 	}
+}
+
+// inset is by what share of its length the ends of a fixture are drawn in
+// before they are looked for in the rooms: they may stand on the very hull.
+const inset = 1e-6
+
+// post adds a post or rail between two stations, its rounded ends about them.
+func (c *checker) post(b *geom.Builder, key string, f *Fixture) {
+	var at [2]r3.Vec
+	for i, s := range []*Station{&f.From, &f.To} {
+		p, err := c.m.Resolve(*s)
+		if err != nil {
+			c.fault(key+[]string{".from", ".to"}[i]+s.key(), "", "%v", err)
+			return
+		}
+		at[i] = p.Vec()
+	}
+	d := r3.Sub(at[1], at[0])
+	if r3.Norm(d) <= TouchSlack {
+		c.fault(key+".to", "", "wants a place apart from the other end")
+		return
+	}
+	for i, u := range []float64{inset, 1 - inset} {
+		if !b.Inside(r3.Add(at[0], r3.Scale(u, d))) {
+			c.fault(key+[]string{".from", ".to"}[i], "", "fixture %q stands outside the habitat", f.Name)
+			return
+		}
+	}
+	b.Add(&geom.Capsule{A: at[0], B: at[1], Radius: f.Diameter / 2}, b.Surface(f.Name, f.Restitution, f.Friction))
 }
 
 // box adds a straight box whose underside is tangent to the circle through

@@ -25,6 +25,7 @@ type Model struct {
 	Crews    []Crew
 	Paths    []Path
 	Limits   []Limit
+	Spacings []Spacing
 	Solver   Solver
 	Output   Output
 
@@ -234,7 +235,9 @@ type Release struct {
 	Time    float64  // s, when it is let go
 	Start   Start
 	Until   Until
-	NoTrack bool // its landing is wanted, not its track
+	NoTrack bool    // its landing is wanted, not its track
+	Series  string  // the let-go series that it belongs to; "": none
+	Along   float64 // m along the path, in a series
 }
 
 // Crew is a person.
@@ -259,6 +262,8 @@ const (
 	TurnHead
 	StandUp
 	SitDown
+	Turn
+	Ride
 )
 
 // Direction is one of the four ways to face on a deck.
@@ -283,8 +288,15 @@ type Leg struct {
 	Distance float64  // m: climb and descend; stand up and sit down: by which the head rises or sinks
 	Duration float64  // s, stand and turn of the head
 	Facing   Direction
-	Angle    float64 // rad, turn of the head
+	Angle    float64 // rad, turn of the head, turn of the body (toward the right, seen from above)
 	About    Axis
+
+	Pitch     float64 // rad, climb and descend: of the ladder above the deck; 0: a radial one
+	HeadFirst bool    // climb and descend: the head goes outward
+	Through   string  // climb and descend: the opening that the way leads through
+	Trapezoid bool    // the speed grows and falls steadily, instead of smoothly
+	Up        float64 // m, ride: toward the axis, negative: away
+	Round     *Arc    // ride: along the ring, at the radius of the feet
 }
 
 // Axis is what the head turns about.
@@ -304,6 +316,23 @@ type Path struct {
 	Start Station
 	Legs  []Leg
 	Time  float64 // s, when it starts
+	Carry Carry
+}
+
+// Carry is a mass that a person holds.
+type Carry struct {
+	Mass float64 // kg; 0: nothing
+	At   Reach
+}
+
+// Spacing asks for the platforms or nets of a passage that keep the speed of a
+// falling body below a limit.
+type Spacing struct {
+	Name     string
+	Passage  string
+	Body     string
+	MaxSpeed float64 // m/s, at any contact
+	Source   string
 }
 
 // Quantity is a number with its dimension, as limits have it.
@@ -324,6 +353,8 @@ type Limit struct {
 	SurfaceNotIn     []string
 	FallsThroughNot  []string
 	Source           string
+	Stature          float64 // m, of measures of the habitat; 0: DefaultStature
+	Speed            float64 // m/s, of measures of the habitat; 0: DefaultSpeed
 }
 
 // Solver sets the accuracy of the integration.
@@ -357,6 +388,8 @@ const (
 	DefaultRestitution = 0.3  // of a body; our choice, no source
 	DefaultFriction    = 0.4  // of a body; our choice, no source
 	DefaultBreadth     = 0.5  // m, shoulders and kit
+	DefaultStature     = 1.75 // m, of measures of the habitat; our choice, no source
+	DefaultSpeed       = 1    // m/s, of measures of the habitat
 	DefaultRamp        = 0.5  // s, ramp of a walk or climb
 	DefaultRise        = 1    // m/s, of the head when someone stands up or sits down (common practice, no source)
 	DefaultRiseRamp    = 0.45 // s, its ramp; our choice, no source

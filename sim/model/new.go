@@ -40,6 +40,7 @@ func New(in Model) (*Model, []Problem) {
 	}
 	c.releases()
 	c.paths()
+	c.spacings()
 	if len(c.problems) > 0 {
 		return nil, c.problems
 	}
@@ -192,4 +193,32 @@ func (c *checker) paths() {
 			c.fault(key+".start", "", "%v", err)
 		}
 	}
+}
+
+func (c *checker) spacings() {
+	for i := range c.m.Spacings {
+		s := &c.m.Spacings[i]
+		key := fmt.Sprintf("platforms[%d]", i)
+		p, ok := c.m.PassageNamed(s.Passage)
+		if !ok {
+			c.fault(key+".passage", "", "no passage named %q", s.Passage)
+		}
+		b, known := c.m.bodyIndex[s.Body]
+		if !known {
+			c.fault(key+".body", "", "no body named %q", s.Body)
+		}
+		if ok && known && c.m.Bodies[b].Diameter >= math.Max(p.Width, p.Diameter) {
+			c.fault(key+".body", "", "body %q does not fit into %q", s.Body, s.Passage)
+		}
+	}
+}
+
+// PassageNamed finds a passage.
+func (m *Model) PassageNamed(name string) (*Passage, bool) {
+	for i := range m.Passages {
+		if m.Passages[i].Name == name {
+			return &m.Passages[i], true
+		}
+	}
+	return nil, false
 }

@@ -35,7 +35,7 @@ func Prepare(m *model.Model) (*Prepared, []model.Problem) {
 	}
 	p.keep = make([]bool, len(p.Lets))
 	for i := range p.Lets {
-		p.keep[i] = !p.Lets[i].Release.NoTrack
+		p.keep[i] = !p.Lets[i].Release.NoTrack // those of a series are needed for its table
 	}
 	for i := range p.Limits {
 		p.Limits[i].NeedTracks(p.keep)

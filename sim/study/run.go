@@ -8,6 +8,7 @@ import (
 
 	"offplumb/sim/flight"
 	"offplumb/sim/measure"
+	"offplumb/sim/model"
 )
 
 // Result is what one release did.
@@ -26,9 +27,9 @@ func (r *Result) Finished() bool { return r.done }
 
 // Options say how a scenario is run.
 type Options struct {
-	Workers int                    // at least 1
-	Want    func(name string) bool // which releases; nil: all
-	Done    func(done, of int)     // progress, called from one worker at a time; may be nil
+	Workers int                       // at least 1
+	Want    func(*model.Release) bool // which releases; nil: all
+	Done    func(done, of int)        // progress, called from one worker at a time; may be nil
 }
 
 // Run flies every release. Result i belongs to release i. It stops early, with
@@ -67,9 +68,9 @@ func (p *Prepared) Run(ctx context.Context, opt Options) ([]Result, error) {
 	return results, nil
 }
 
-func (p *Prepared) one(flier *flight.Flier, i int, want func(string) bool) (Result, error) {
+func (p *Prepared) one(flier *flight.Flier, i int, want func(*model.Release) bool) (Result, error) {
 	let := &p.Lets[i]
-	if want != nil && !want(let.Release.Name) {
+	if want != nil && !want(let.Release) {
 		return Result{}, nil
 	}
 	track, err := flier.Fly(let)

@@ -71,7 +71,7 @@ func TestWorkersChangeNothing(t *testing.T) {
 
 func TestOnlyWanted(t *testing.T) {
 	p := many(t, 6)
-	results, err := p.Run(context.Background(), study.Options{Workers: 2, Want: func(name string) bool { return name == "r3" }})
+	results, err := p.Run(context.Background(), study.Options{Workers: 2, Want: func(r *model.Release) bool { return r.Name == "r3" }})
 	if err != nil {
 		t.Fatal(err)
 	}

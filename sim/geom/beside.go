@@ -1,0 +1,179 @@
+package geom
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// Beside says what a moving sphere may run into.
+type Beside struct {
+	Wide float64 // m, radius of the sphere
+	Thin float64 // m, the depth that counts as nothing
+	// On are the groups that the sphere slides on. Neither they count nor what
+	// lies flush with them: the next piece of the same floor, up to the depth
+	// Thin.
+	On []Group
+	// Grazed are the groups that the sphere touches without being pressed on
+	// them. They count from a gap of more than twice Thin on, since along a
+	// gap of nothing there is no telling how soon it closes.
+	Grazed []Group
+}
+
+// parallel is the cosine above which two normals count as one: a sphere of
+// the radius a that meets the next piece of a flat floor at an angle of 4 mrad
+// is a hundred thousandth of a away from it.
+const parallel = 1 - 1e-5
+
+// counter decides which pieces count at one place.
+type counter struct {
+	*Beside
+	in      *Interior
+	p       r3.Vec
+	normals [mostOn]r3.Vec // of the groups On, once they are known
+	known   bool
+}
+
+// mostOn is how many groups a sphere may slide on.
+const mostOn = 3
+
+// counts says whether piece i, at the distance d, counts.
+func (c *counter) counts(i int, d float64) bool {
+	g := c.in.pieces[i].Group
+	for _, x := range c.On {
+		if x == g {
+			return false
+		}
+	}
+	if d <= c.Wide+2*c.Thin {
+		for _, x := range c.Grazed {
+			if x == g {
+				return false
+			}
+		}
+	}
+	return d < c.Wide-c.Thin || len(c.On) == 0 || !c.flush(i)
+}
+
+// flush says whether the sphere is to piece i as it is to what it slides on.
+func (c *counter) flush(i int) bool {
+	if !c.known {
+		c.known = true
+		for k, g := range c.On {
+			c.normals[k] = c.in.ContactIn(c.p, g).Normal
+		}
+	}
+	_, n, _ := c.in.pieces[i].Solid.Nearest(c.p)
+	for k := range c.On {
+		if r3.Dot(n, c.normals[k]) > parallel {
+			return true
+		}
+	}
+	return false
+}
+
+// DistBeside gives the distance (m) from p to the nearest solid that counts;
+// infinite where there is none.
+//
+// Law: but for jumps, it changes by no more than p does.
+func (in *Interior) DistBeside(p r3.Vec, b *Beside) float64 {
+	best := math.Inf(1)
+	c := counter{Beside: b, in: in, p: p}
+	in.tree.each(in.pieces, p, &best, func(i int, d float64) float64 {
+		if d < best && c.counts(i, d) {
+			return d
+		}
+		return best
+	})
+	return best
+}
+
+// TimeBeside gives a time (s), at most limit, during which no gap between the
+// sphere and what counts surely closes, nor one of less than twice Thin
+// changes by more than Thin: the sphere being at p with the velocity v (m/s)
+// and an acceleration that never exceeds acc (m/s^2).
+//
+// A gap closes no faster than the sphere moves. Along a solid of which the
+// free side is convex, or hollow with a known curvature, its present rate
+// tells more: the distance to a convex solid is a convex function of place, so
+// that its second derivative in time is at least -acc, and that to one of
+// hollow curvature k at least -acc - k v^2.
+func (in *Interior) TimeBeside(p, v r3.Vec, acc, limit float64, b *Beside) float64 {
+	speed := r3.Norm(v)
+	reach := func(t float64) float64 { return b.Wide + speed*t + acc*t*t/2 }
+	c := counter{Beside: b, in: in, p: p}
+	best, bound := limit, reach(limit)
+	in.tree.each(in.pieces, p, &bound, func(i int, d float64) float64 {
+		gap := math.Max(d-b.Wide, b.Thin)
+		t := within(gap, speed, acc)
+		if t >= best || !c.counts(i, d) {
+			return bound
+		}
+		if s, ok := in.pieces[i].Solid.(smooth); ok {
+			t = math.Max(t, c.aimed(s, gap, v, acc, best))
+		}
+		best = math.Min(best, t)
+		return reach(best)
+	})
+	return best
+}
+
+// within gives the time to travel the way d (m), starting at a speed and never
+// accelerating by more than acc.
+func within(d, speed, acc float64) float64 { return 2 * d / (speed + math.Sqrt(speed*speed+2*acc*d)) }
+
+// smooth is a solid that knows how its distance bends around a point.
+type smooth interface {
+	Solid
+	// bends gives a distance (m) around p within which the solid's distance is
+	// smooth with no principal curvature below -hollow (1/m).
+	bends(p r3.Vec) (around, hollow float64)
+}
+
+// aimed is the time that a gap to a smooth solid surely takes to close, as far
+// as that can be told up to most.
+func (c *counter) aimed(s smooth, gap float64, v r3.Vec, acc, most float64) float64 {
+	speed := r3.Norm(v)
+	around, hollow := s.bends(c.p)
+	if around == 0 {
+		return 0
+	}
+	most = math.Min(most, within(around, speed, acc))
+	if hollow > 0 && acc > 0 {
+		most = math.Min(most, speed/acc) // the speed doubles at most
+		acc += 4 * speed * speed * hollow
+	} else {
+		acc += speed * speed * hollow
+	}
+	_, n, _ := s.Nearest(c.p)
+	rate := r3.Dot(v, n)
+	if gap < 2*c.Thin {
+		rate = -math.Abs(rate) // not to pass over the moment when it has opened
+	}
+	if rate > 0 {
+		if acc == 0 {
+			return most
+		}
+		return math.Min(most, (rate+math.Sqrt(rate*rate+2*acc*gap))/acc)
+	}
+	return math.Min(most, within(gap, -rate, acc))
+}
+
+// bends implements smooth: a block is convex.
+func (b *Block) bends(r3.Vec) (around, hollow float64) { return math.Inf(1), 0 }
+
+// bends implements smooth. The inner face of a sector is hollow with the
+// radius of the place; beyond the axis, and beyond the half plane opposite to
+// the sector's middle, another part of it may be as near.
+func (s *Sector) bends(p r3.Vec) (around, hollow float64) {
+	if s.Whole && s.R0 == 0 {
+		return math.Inf(1), 0
+	}
+	r := math.Hypot(p.X, p.Y)
+	around = r / 2
+	if !s.Whole {
+		off := math.Abs(math.Remainder(math.Atan2(p.Y, p.X)-(s.Phi0+s.Phi1)/2, 2*math.Pi))
+		around = math.Min(around, r*math.Sin(math.Min(math.Pi/2, math.Pi-off)))
+	}
+	return around, 2 / r
+}

@@ -1,0 +1,60 @@
+package measure
+
+import (
+	"math"
+
+	"offplumb/sim/model"
+)
+
+// HabitatFigure is what the habitat as a whole is like, for a person of a
+// stature (m) who moves at a speed (m/s). SI units.
+type HabitatFigure struct {
+	Spin, Gravity, RimSpeed float64
+	HeadToFoot              float64 // share by which gravity at the head is less than at the feet
+	CoriolisRatio           float64 // Coriolis acceleration at the speed, by gravity
+	Stature, Speed          float64
+}
+
+// HabitatOf works out the figures at the reference floor; a stature or speed
+// of 0 is the default.
+func HabitatOf(m *model.Model, stature, speed float64) HabitatFigure {
+	if stature == 0 {
+		stature = model.DefaultStature
+	}
+	if speed == 0 {
+		speed = model.DefaultSpeed
+	}
+	h := &m.Habitat
+	out := HabitatFigure{Spin: h.Spin, Gravity: m.Gravity(h.FloorRadius), RimSpeed: h.Spin * h.FloorRadius,
+		Stature: stature, Speed: speed, HeadToFoot: model.HeadShare * stature / h.FloorRadius}
+	out.CoriolisRatio = 2 * math.Abs(h.Spin) * speed / out.Gravity
+	if h.Spin == 0 {
+		out.CoriolisRatio = math.NaN()
+	}
+	return out
+}
+
+// froude is the Froude number v^2/(g l) at which people change from walking to
+// running, whatever the gravity (Kram, Domingo & Ferris, J. Exp. Biol. 200,
+// 1997, 821-826).
+const froude = 0.5
+
+// legLength is the length of a leg as a share of stature (from memory).
+const legLength = 0.53
+
+// WalkRunSpeed is the speed, m/s, at which a person of the default stature
+// changes from walking to running under a gravity (m/s^2).
+func WalkRunSpeed(gravity float64) float64 {
+	return math.Sqrt(froude * gravity * legLength * model.DefaultStature)
+}
+
+// habitatColumns are those of habitat.csv.
+var habitatColumns = []column[HabitatFigure]{
+	{key: "spin", unit: turns, meaning: "spin rate, positive: the floor moves spinward", num: func(h *HabitatFigure) float64 { return h.Spin }},
+	{key: "floor_gravity", unit: gravity, meaning: "apparent gravity at rest on the reference floor", num: func(h *HabitatFigure) float64 { return h.Gravity }},
+	{key: "rim_speed", unit: speedUnit, meaning: "speed of the reference floor", num: func(h *HabitatFigure) float64 { return h.RimSpeed }},
+	{key: "head_to_foot", meaning: "share by which apparent gravity at the head is less than at the feet, standing on the floor", num: func(h *HabitatFigure) float64 { return h.HeadToFoot }},
+	{key: "coriolis_ratio", meaning: "Coriolis acceleration at the speed, by apparent gravity on the floor", num: func(h *HabitatFigure) float64 { return h.CoriolisRatio }},
+	{key: "stature", unit: metre, meaning: "stature that head_to_foot is for", num: func(h *HabitatFigure) float64 { return h.Stature }},
+	{key: "speed", unit: speedUnit, meaning: "speed that coriolis_ratio is for", num: func(h *HabitatFigure) float64 { return h.Speed }},
+}
