@@ -194,7 +194,10 @@ func (b *builder) station(o *object) model.Station {
 		return model.Station{}
 	}
 	if o.has("radius") {
-		b.refuses(o, "a station by radius has none", "deck", "height")
+		b.refuses(o, "a station by radius has none", "deck", "height", "room")
+	}
+	if o.has("room") {
+		b.refuses(o, "a station in a room has none", "deck")
 	}
 	return model.Station{Deck: o.str("deck"), Room: o.str("room"), Spinward: o.arc("spinward"), Axial: o.num("axial"),
 		Height: o.num("height"), Radius: o.num("radius"), HasRadius: o.has("radius")}

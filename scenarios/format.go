@@ -15,7 +15,7 @@ var station = &section{name: "a station", doc: "A place in the habitat.",
 		qty("axial", length, anything, "along the axis, from the habitat's middle").or(`"0 m"`),
 		qty("height", length, anything, "above that deck; of a body's centre").or(`"0 m"; a release must say it`),
 		qty("radius", length, notNegative, "distance from the axis, in place of deck and height; the arc is then measured at it"),
-		text("room", "the cabin whose flat floor the station stands on").or("the habitat"),
+		text("room", "the further room on whose floor the station stands: in a cabin spinward and axial are straight lengths from the middle of its flat floor and height is along its normal").or("the habitat"),
 	}}
 
 var reach = &section{name: "a reach", doc: "A point carried along with a person, from the feet.",
@@ -29,9 +29,9 @@ var room = []key{
 	word("shape", `"cylinder"`, "the form of the room", "cylinder", "torus", "sphere", "cabin"),
 	qty("length", length, positive, "between the two end bulkheads").or("no bulkheads"),
 	qty("ceiling_radius", length, positive, "distance of the ceiling from the axis").or("no ceiling"),
-	qty("tube_radius", length, positive, "of a torus"),
-	flag("flat_floor", "a torus with a flat floor"),
-	lengths("size", 3, positive, "of a cabin: spinward, axial, up"),
+	qty("tube_radius", length, positive, "of a torus; floor_radius is its outermost"),
+	flag("flat_floor", "a torus whose floor is a cylinder of floor_radius, 1.2 tube radii wide: the middle of the tube lies 0.8 tube radii above it, the ceiling 1.8"),
+	lengths("size", 3, positive, "of a cabin: spinward, axial, up; its flat floor is tangent at floor_radius"),
 }
 
 var habitat = &section{name: "the habitat", doc: "The habitat's own room and its spin.",
@@ -47,7 +47,7 @@ var furtherRoom = &section{name: "a room", doc: "A further room, beside the habi
 	keys: append([]key{
 		title(),
 		qty("floor_radius", length, positive, "distance of its floor from the axis").need(),
-		arc("spinward", "where its middle stands").or(`"0 m"`),
+		arc("spinward", "where its middle stands; a cabin only").or(`"0 m"`),
 		qty("axial", length, anything, "where its middle stands").or(`"0 m"`),
 	}, room...)}
 
@@ -171,7 +171,7 @@ var fixture = &section{name: "a fixture", doc: "Something solid that stands in a
 		table("at", station, "box: the middle of its underside"),
 		lengths("size", 3, positive, "box: spinward, axial, up"),
 		qty("turn", angle, anything, "box: about the vertical, from spinward toward +axial").or(`"0 deg"`),
-		table("from", station, "post, wall: one end"),
+		table("from", station, "post, wall: one end; those of a post are rounded about the stations"),
 		table("to", station, "post, wall: the other end"),
 		qty("diameter", length, positive, "post"),
 		qty("height", length, positive, "wall"),
@@ -254,6 +254,7 @@ var crewPath = &section{name: "a crew path", doc: "A person's motion through sta
 		tables("legs", leg, "its legs, in order").need(),
 		qty("time", duration, notNegative, "when it starts").or(`"0 s"`),
 		table("carry", carryKeys, "a mass held all the way"),
+		{name: "gravity_levels", want: wantList, dims: []*dimension{accel}, span: notNegative, doc: "levels of apparent gravity below and above which the time is wanted"},
 	}}
 
 var limit = &section{name: "a limit", doc: "An acceptance criterion of the project.",

@@ -13,6 +13,9 @@ func (b *builder) people(o *object) {
 	}
 	for _, p := range o.subs("crew_path") {
 		path := model.Path{Name: p.str("name"), Crew: p.str("crew"), Start: b.station(p.sub("start")), Time: p.num("time"), Carry: carryOf(p.sub("carry"))}
+		for _, q := range p.list("gravity_levels") {
+			path.GravityLevels = append(path.GravityLevels, q.si)
+		}
 		for _, l := range p.subs("legs") {
 			path.Legs = append(path.Legs, b.leg(l))
 		}

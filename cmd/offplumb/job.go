@@ -40,7 +40,9 @@ type job struct {
 type pathResult struct {
 	plan      *crew.Plan
 	loads     []measure.Load
-	clearance crew.Clearance
+	near      []measure.Clearance
+	clearance measure.Clearance // the least of near
+	gravity   []measure.GravityTime
 	skipped   bool
 }
 
@@ -126,8 +128,10 @@ func (j *job) measure() {
 		if !r.skipped {
 			var step float64
 			r.loads, step = measure.LoadSeries(m, plan)
-			r.clearance = plan.Clearance(m)
-			j.near = append(j.near, measure.PathClearances(m, plan)...)
+			r.near = measure.PathClearances(m, plan)
+			r.clearance = measure.Closest(r.near)
+			j.near = append(j.near, r.near...)
+			r.gravity = measure.GravityTimes(plan.Path, r.loads)
 			j.noteStep("path."+plan.Path.Name, step)
 		}
 		j.paths = append(j.paths, r)
@@ -167,6 +171,7 @@ func (j *job) judge() {
 	e.Events = func(i int) ([]measure.Event, bool) { return j.results[i].Events, j.results[i].Track != nil }
 	e.Clearance = func(i int) ([]measure.Clearance, bool) { return j.results[i].Clearances, j.results[i].Track != nil }
 	e.Track = func(i int) ([]measure.Sample, bool) { return j.samples(i) }
+	e.PathClearance = func(i int) ([]measure.Clearance, bool) { return j.paths[i].near, !j.paths[i].skipped }
 	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
 	for i := range j.Limits {
 		if v, ok := j.Limits[i].Judge(e); ok {

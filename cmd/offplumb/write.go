@@ -113,11 +113,21 @@ func (j *job) tables() []task {
 	if len(j.near) > 0 {
 		out = append(out, tableTask("clearance.csv", "clearance", "", "The closest approach of each release and crew path to each surface.", measure.ClearanceTable(j.near)))
 	}
+	if times := j.gravityTimes(); len(times) > 0 {
+		out = append(out, tableTask("gravity.csv", "gravity", "", "Times below and above levels of apparent gravity along crew paths.", measure.GravityTable(times)))
+	}
 	out = append(out, tableTask("decks.csv", "decks", "", "A row for each deck.", measure.DeckTable(j.decks)))
 	out = append(out, tableTask("habitat.csv", "habitat", "", "Figures of the habitat as a whole, a single row.", measure.HabitatTable(measure.HabitatOf(j.model(), 0, 0))))
 	out = append(out, j.studyTables()...)
 	if len(j.Limits) > 0 {
 		out = append(out, tableTask("limits.csv", "limits", "", "A row for each limit.", measure.LimitTable(j.verdicts)))
+	}
+	return out
+}
+
+func (j *job) gravityTimes() (out []measure.GravityTime) {
+	for i := range j.paths {
+		out = append(out, j.paths[i].gravity...)
 	}
 	return out
 }

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/sim/geom"
 	"offplumb/sim/model"
 )
 
@@ -60,25 +61,50 @@ func (p *Plan) blocked(m *model.Model, l *leg) (float64, string) {
 // capsule from 0.3 m above the feet to the head, as wide as the breadth.
 func (p *Plan) Clearance(m *model.Model) Clearance {
 	best := Clearance{Gap: math.Inf(1)}
-	for i := range p.legs {
-		l := &p.legs[i]
-		n := 1 + int(math.Min(1e5, l.length()/bodyStep))
-		for k := 0; k <= n; k++ {
-			t := l.start + l.way.lasts()*float64(k)/float64(n)
-			p.near(m, t, &best)
+	for _, c := range p.Clearances(m) {
+		if c.Gap < best.Gap {
+			best = c
 		}
 	}
 	return best
 }
 
-func (p *Plan) near(m *model.Model, t float64, best *Clearance) {
+// Clearances finds the smallest room to each surface that is the nearest of
+// its body of matter somewhere along the path, in the order of the interior's
+// surfaces. It looks bodyStep apart along the way and along the body.
+func (p *Plan) Clearances(m *model.Model) []Clearance {
+	best := make([]Clearance, len(m.Interior.Surfaces()))
+	for i := range best {
+		best[i].Gap = math.Inf(1)
+	}
+	for i := range p.legs {
+		l := &p.legs[i]
+		n := 1 + int(math.Min(1e5, l.length()/bodyStep))
+		for k := 0; k <= n; k++ {
+			p.near(m, l.start+l.way.lasts()*float64(k)/float64(n), best)
+		}
+	}
+	var out []Clearance
+	for i, s := range m.Interior.Surfaces() {
+		if c := best[i]; !math.IsInf(c.Gap, 1) {
+			c.Surface = s.Name
+			out = append(out, c)
+		}
+	}
+	return out
+}
+
+// near looks at the room about the person at a time.
+func (p *Plan) near(m *model.Model, t float64, best []Clearance) {
 	a := p.Crew.Breadth / 2
 	f := p.At(t)
 	for h := stepOver + a; h <= p.Crew.Stature-f.low.x-a/2; h += bodyStep {
 		pos := f.Point(model.Reach{Height: h}).Pos
-		if gap := m.Interior.Dist(pos) - a; gap < best.Gap {
-			near := m.Interior.Contact(pos)
-			*best = Clearance{Gap: gap, Time: t, Surface: m.Interior.Surface(near.Surface).Name}
+		for g := range m.Interior.Groups() {
+			c := m.Interior.ContactIn(pos, geom.Group(g))
+			if gap := c.Gap - a; c.Surface >= 0 && gap < best[c.Surface].Gap {
+				best[c.Surface].Gap, best[c.Surface].Time = gap, t
+			}
 		}
 	}
 }

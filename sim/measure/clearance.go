@@ -111,11 +111,23 @@ func refine(gap func(float64) geom.Contact, id geom.SurfaceID, a, b float64, bes
 	}
 }
 
-// PathClearances gives the closest approach of a person along a path.
+// PathClearances gives the closest approach of a person along a path to each
+// surface.
 func PathClearances(m *model.Model, p *crew.Plan) []Clearance {
-	c := p.Clearance(m)
-	if math.IsInf(c.Gap, 1) {
-		return nil
+	var out []Clearance
+	for _, c := range p.Clearances(m) {
+		out = append(out, Clearance{Name: p.Path.Name, Surface: c.Surface, Gap: c.Gap, Time: c.Time})
 	}
-	return []Clearance{{Name: p.Path.Name, Surface: c.Surface, Gap: c.Gap, Time: c.Time}}
+	return out
+}
+
+// Closest gives the least clearance of some; an infinite one of none.
+func Closest(list []Clearance) Clearance {
+	best := Clearance{Gap: math.Inf(1), Time: math.NaN()}
+	for _, c := range list {
+		if c.Gap < best.Gap {
+			best = c
+		}
+	}
+	return best
 }

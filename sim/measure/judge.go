@@ -17,7 +17,9 @@ type Evidence struct {
 	Clearance func(release int) ([]Clearance, bool)
 	Loads     func(path int) ([]Load, bool)
 	Decks     []DeckFigure
-	Habitat   func(stature, speed float64) HabitatFigure
+
+	PathClearance func(path int) ([]Clearance, bool)
+	Habitat       func(stature, speed float64) HabitatFigure
 }
 
 // Judge gives the verdict on a limit: that on its worst target, at its worst
@@ -52,7 +54,11 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 		rows, ok := e.Events(t.Index)
 		return c.impacts(t, rows), ok
 	case "clearance":
-		rows, ok := e.Clearance(t.Index)
+		get := e.Clearance
+		if t.Kind == "path" {
+			get = e.PathClearance
+		}
+		rows, ok := get(t.Index)
 		return series(c, t, clearanceColumns, c.among(rows), func(k *Clearance) float64 { return k.Time }), ok
 	case "tracks":
 		rows, ok := e.Track(t.Index)

@@ -130,7 +130,11 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	problems := c.bounds(num)
 	problems = append(problems, c.surfaces(m)...)
 	for _, of := range l.Of {
-		found, msg := targets(m, of, t.kind)
+		kind := t.kind
+		if c.Table == "clearance" && strings.HasPrefix(of, "path.") {
+			kind = "path" // crew paths have clearances too
+		}
+		found, msg := targets(m, of, kind)
 		if msg != "" {
 			problems = append(problems, fault("of", "%s", msg)...)
 		}
@@ -144,7 +148,9 @@ func (c *Criterion) NeedTracks(release []bool) {
 	switch c.Table {
 	case "tracks", "impacts", "clearance":
 		for _, t := range c.Targets {
-			release[t.Index] = true
+			if t.Kind == "release" {
+				release[t.Index] = true
+			}
 		}
 	}
 }
