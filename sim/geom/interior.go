@@ -183,6 +183,15 @@ func (b *Builder) AddSpace(s Space) { b.in.spaces = append(b.in.spaces, s) }
 // Inside says whether a point is within a room or passage added so far.
 func (b *Builder) Inside(p r3.Vec) bool { return b.in.Inside(p) }
 
+// SoFar gives the interior of what was added until now.
+func (b *Builder) SoFar() *Interior {
+	in := b.in
+	in.surfaces, in.pieces, in.spaces = slices.Clone(in.surfaces), slices.Clone(in.pieces), slices.Clone(in.spaces)
+	in.tree = newTree(in.pieces)
+	in.groups = grouped(in.pieces)
+	return &in
+}
+
 // Build finishes the interior; the builder is done with.
 func (b *Builder) Build() *Interior {
 	in := b.in

@@ -50,14 +50,32 @@ func (p *Passage) mouth(half float64) Hole {
 
 func (p *Passage) mouthName() string { return p.Name + " mouth" }
 
-// ends gives where along its middle line the shaft's walls begin and end: where
+// Ends gives where along its middle line the shaft's walls begin and end: where
 // the whole of its section is inside the rooms.
-func (p *Passage) ends() Span { return Span{chord(p.From, p.Width/2), p.To} }
+func (p *Passage) Ends() Span { return Span{chord(p.From, p.Width/2), p.To} }
+
+// Point gives the point of its middle line at the distance w (m) from the axis.
+func (p *Passage) Point(w float64) r3.Vec {
+	s := ShaftAt(p.Phi, p.Z)
+	return s.point(r3.Vec{Z: w})
+}
+
+// Holds says whether a point lies within the clear section of the passage, and
+// between its ends, by more than a depth (m).
+func (p *Passage) Holds(at r3.Vec, by float64) bool {
+	s, ends := ShaftAt(p.Phi, p.Z), p.Ends()
+	q := s.local(at)
+	across := math.Max(math.Abs(q.X), math.Abs(q.Y))
+	if p.Round {
+		across = math.Hypot(q.X, q.Y)
+	}
+	return across < p.Width/2-by && q.Z > ends.From+by && q.Z < ends.To-by
+}
 
 // crosses says whether the shaft runs through a shell that its middle line
 // meets at the distance r (m) from the axis.
 func (p *Passage) crosses(r float64) bool {
-	s := p.ends()
+	s := p.Ends()
 	return s.From <= r && r <= s.To
 }
 
@@ -68,14 +86,14 @@ func (b *Builder) AddPassage(p Passage) {
 	} else {
 		b.addWalls(&p)
 	}
-	s := p.ends()
+	s := p.Ends()
 	b.AddSpace(&shaftSpace{shaft: ShaftAt(p.Phi, p.Z), mid: (s.From + s.To) / 2, half: p.Width / 2,
 		length: (s.To-s.From)/2 + p.Wall, wall: p.Wall, round: p.Round})
 }
 
 // addWalls adds the four walls of a square shaft.
 func (b *Builder) addWalls(p *Passage) {
-	at, s := ShaftAt(p.Phi, p.Z), p.ends()
+	at, s := ShaftAt(p.Phi, p.Z), p.Ends()
 	side, long := p.Width/2+p.Wall/2, p.Width/2+p.Wall
 	wall := func(name string, u, v, alongHalf, acrossHalf float64) {
 		id := b.Surface(p.Name+" "+name, math.NaN(), math.NaN())
@@ -91,7 +109,7 @@ func (b *Builder) addWalls(p *Passage) {
 // addPipe adds the wall of a round shaft.
 func (b *Builder) addPipe(p *Passage) {
 	defer b.together()()
-	s := p.ends()
+	s := p.Ends()
 	id := b.Surface(p.Name+" wall", math.NaN(), math.NaN())
 	for _, spinward := range []bool{false, true} {
 		b.Add(&Pipe{Shaft: ShaftAt(p.Phi, p.Z), Bore: p.Width / 2, Outer: p.Width/2 + p.Wall, From: s.From, To: s.To, Spinward: spinward},

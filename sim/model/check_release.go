@@ -51,6 +51,15 @@ func (m *Model) blame(p Place) string {
 	if z0, z1 := m.Habitat.Ends(); p.Z <= z0 || p.Z >= z1 {
 		return ".axial"
 	}
+	if f := m.FlatDeck(p.Deck); f != nil {
+		switch s, _, h := f.Place(p.Vec()); {
+		case h < 0 || h > f.Size[2]:
+			return ".height"
+		case math.Abs(s) > f.Size[0]/2:
+			return ".spinward"
+		}
+		return ""
+	}
 	if p.R <= 0 || p.R > m.Decks[p.Deck].Radius {
 		return ".height"
 	}
@@ -65,7 +74,7 @@ func (m *Model) Obstructed(p Place, a float64) string {
 	switch {
 	case p.R < 0:
 		return fmt.Sprintf("lies beyond the axis, which is %.6g m above deck %q", m.Decks[p.Deck].Radius, deck)
-	case p.Height < 0:
+	case p.Height < 0 && (p.Height >= -m.Decks[p.Deck].Thickness || !m.Interior.Inside(pos)):
 		return fmt.Sprintf("lies below deck %q: height %.6g m", deck, p.Height)
 	case !m.Interior.Inside(pos):
 		return m.outside(p)
@@ -74,7 +83,7 @@ func (m *Model) Obstructed(p Place, a float64) string {
 }
 
 func (m *Model) outside(p Place) string {
-	if z0, z1 := m.Habitat.Ends(); p.Z < z0 || p.Z > z1 {
+	if z0, z1 := m.Habitat.Ends(); m.Habitat.Shape == Cylinder && (p.Z < z0 || p.Z > z1) {
 		return fmt.Sprintf("lies outside the bulkheads at axial %g m and %g m: axial %g m", z0, z1, p.Z)
 	}
 	return "lies outside the rooms of the habitat"

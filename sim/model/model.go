@@ -91,6 +91,7 @@ type Deck struct {
 	Thickness   float64 // m, outward from its surface
 	From, To    Arc     // spinward extent
 	Whole       bool    // goes the whole way round
+	Flat        bool    // a plane across the radius through its middle, Radius from the axis: see [Model.FlatDeck]
 	Axial       [2]float64
 	HasAxial    bool    // Axial was given, else the whole length
 	Friction    float64 // NaN: the body's
@@ -317,6 +318,8 @@ type Path struct {
 	Legs  []Leg
 	Time  float64 // s, when it starts
 	Carry Carry
+
+	GravityLevels []float64 // m/s^2, below and above which the time is wanted
 }
 
 // Carry is a mass that a person holds.

@@ -55,32 +55,15 @@ func (m *Model) index() {
 }
 
 func (c *checker) habitat() {
-	h := &c.m.Habitat
-	if h.CeilingRadius > 0 && h.CeilingRadius >= h.FloorRadius {
-		c.fault("habitat.ceiling_radius", "", "wants less than floor_radius, %g m, got %g m", h.FloorRadius, h.CeilingRadius)
+	c.roomShape("habitat", &c.m.Habitat.Room)
+	for i := range c.m.Rooms {
+		c.roomShape(fmt.Sprintf("room[%d]", i), &c.m.Rooms[i])
 	}
-	for i, r := range c.m.Rooms {
-		if r.CeilingRadius > 0 && r.CeilingRadius >= r.FloorRadius {
-			c.fault(fmt.Sprintf("room[%d].ceiling_radius", i), "", "wants less than floor_radius, %g m, got %g m", r.FloorRadius, r.CeilingRadius)
-		}
-	}
-}
-
-// Ends gives the axial extent of the habitat's own room, m; infinite without
-// bulkheads.
-func (h *Habitat) Ends() (from, to float64) {
-	if h.Length == 0 {
-		return math.Inf(-1), math.Inf(1)
-	}
-	return h.Axial - h.Length/2, h.Axial + h.Length/2
 }
 
 func (c *checker) decks(file []Deck) {
 	m := c.m
-	z0, z1 := m.Habitat.Ends()
-	floor := Deck{Name: FloorName, Radius: m.Habitat.FloorRadius, Thickness: DefaultThickness, Whole: true,
-		Axial: [2]float64{z0, z1}, Friction: None, Restitution: None}
-	m.Decks = []Deck{floor}
+	m.Decks = []Deck{m.Habitat.floor()}
 	for i := range file {
 		d := file[i]
 		key := fmt.Sprintf("deck[%d]", i)
@@ -88,7 +71,11 @@ func (c *checker) decks(file []Deck) {
 			c.floorDeck(key, d)
 			continue
 		}
-		c.deckExtent(key, &d, z0, z1)
+		if m.Habitat.Shape == Cabin {
+			c.fault(key, "a box fixture can stand for one", "a cabin has no further decks")
+			continue
+		}
+		c.deckExtent(key, &d)
 		c.openings(key, &d)
 		m.Decks = append(m.Decks, d)
 	}
@@ -107,27 +94,43 @@ func (c *checker) floorDeck(key string, d Deck) {
 	if d.Thickness > 0 {
 		f.Thickness = d.Thickness
 	}
+	if most := c.m.Habitat.FloorRadius - 2*c.m.Habitat.TubeRadius; c.m.Habitat.Shape == Torus && f.Thickness >= most {
+		c.fault(key+".thickness", "", "wants less than %.6g m, so that the hull keeps off the axis, got %g m", most, f.Thickness)
+	}
+	if h := &c.m.Habitat; len(d.Openings) > 0 && (h.Shape == Sphere || h.Shape == Torus && !h.FlatFloor) {
+		c.fault(key+".opening[0]", "a cylinder, a cabin or a torus with flat_floor can have openings", "the floor of a tube or sphere has no openings")
+		return
+	}
 	c.openings(key, f)
 }
 
-func (c *checker) deckExtent(key string, d *Deck, z0, z1 float64) {
+func (c *checker) deckExtent(key string, d *Deck) {
 	h := &c.m.Habitat
 	radiusKey := key + ".radius"
 	if d.Radius == 0 {
 		d.Radius, radiusKey = h.FloorRadius-d.Height, key+".height"
 	}
 	low := math.Max(h.CeilingRadius, 0)
+	z0, z1 := h.Ends()
+	within := "between the bulkheads"
+	if h.Shape == Torus {
+		low = h.torus().Ring() - h.TubeRadius
+	}
 	if d.Radius >= h.FloorRadius || d.Radius <= low {
 		c.fault(radiusKey, "", "deck %q lies outside the habitat: wants a radius between %g m and %g m, got %g m",
 			d.Name, low, h.FloorRadius, d.Radius)
 		return
 	}
+	if h.Shape != Cylinder {
+		half := h.halfWidth(d.Radius, d.Thickness)
+		z0, z1, within = h.Axial-half, h.Axial+half, "within the hull, which at this radius ends"
+	}
 	if !d.HasAxial {
 		d.Axial = [2]float64{z0, z1}
 	}
 	if d.Axial[0] >= d.Axial[1] || d.Axial[0] < z0 || d.Axial[1] > z1 {
-		c.fault(key+".axial", "", "wants an extent between the bulkheads at %g m and %g m, smaller first, got %g m to %g m",
-			z0, z1, d.Axial[0], d.Axial[1])
+		c.fault(key+".axial", "", "wants an extent %s at %g m and %g m, smaller first, got %g m to %g m",
+			within, z0, z1, d.Axial[0], d.Axial[1])
 	}
 	if !d.Whole {
 		c.deckArc(key, d)
@@ -151,13 +154,13 @@ func (c *checker) openings(key string, d *Deck) {
 	for i := range d.Openings {
 		o := &d.Openings[i]
 		at := fmt.Sprintf("%s.opening[%d]", key, i)
-		if o.Size[0] >= 2*d.Radius || !c.opens(d, o) {
+		if !d.Flat && o.Size[0] >= 2*d.Radius || !c.opens(d, o) {
 			c.fault(at+".size", "", "opening %q does not fit in deck %q", o.Name, d.Name)
 		}
 		if o.Coaming >= d.Radius {
 			c.fault(at+".coaming", "", "wants less than the deck's radius, %g m, got %g m", d.Radius, o.Coaming)
 		}
-		if low := 2 * (d.Radius - o.Coaming); o.Coaming > 0 && o.Size[0] >= low {
+		if low := 2 * (d.Radius - o.Coaming); !d.Flat && o.Coaming > 0 && o.Size[0] >= low {
 			c.fault(at+".coaming", "", "the coaming of %q would stand closer to the axis than the opening is wide", o.Name)
 		}
 	}
@@ -170,6 +173,9 @@ func (c *checker) opens(d *Deck, o *Opening) bool {
 	}
 	if d.Whole {
 		return true
+	}
+	if f := c.m.Habitat.flat(); d.Flat {
+		return math.Abs(f.Along(o.Spinward))+o.Size[0]/2 <= f.Size[0]/2
 	}
 	half := math.Asin(math.Min(1, o.Size[0]/(2*d.Radius)))
 	mid, from, to := o.Spinward.Angle(d.Radius), d.From.Angle(d.Radius), d.To.Angle(d.Radius)
@@ -191,6 +197,17 @@ func (c *checker) paths() {
 		}
 		if _, err := m.Resolve(p.Start); err != nil {
 			c.fault(key+".start", "", "%v", err)
+		}
+		c.walksFlat(key, p)
+	}
+}
+
+// walksFlat refuses walks in a habitat that is a cabin.
+func (c *checker) walksFlat(key string, p *Path) {
+	for i := range p.Legs {
+		if c.m.Decks[0].Flat && p.Legs[i].Kind == Walk {
+			c.fault(fmt.Sprintf("%s.legs[%d].walk", key, i), "", "a walk on a flat floor is not computed: the ways that are lead round the axis")
+			return
 		}
 	}
 }

@@ -38,20 +38,50 @@ func (m *Model) DeckNamed(name string) (int, bool) {
 func (m *Model) Resolve(s Station) (Place, error) {
 	z := s.Axial
 	if s.Room != "" {
-		return Place{}, fmt.Errorf("no room named %q that a station can stand in", s.Room)
+		return m.inRoom(s)
 	}
 	if s.HasRadius {
 		p := frame.Polar{R: s.Radius, Phi: s.Spinward.Angle(s.Radius), Z: z}
 		d := m.DeckBeneath(p)
-		return Place{Polar: p, Deck: d, Height: m.Decks[d].Radius - s.Radius}, nil
+		return Place{Polar: p, Deck: d, Height: m.Above(d, p)}, nil
 	}
 	d, ok := m.DeckNamed(s.Deck)
 	if !ok {
 		return Place{}, fmt.Errorf("no deck named %q", s.Deck)
 	}
+	if f := m.FlatDeck(d); f != nil {
+		pos := f.Point(f.Along(s.Spinward), z-f.Z, s.Height)
+		return Place{Polar: frame.PolarOf(pos), Deck: d, Height: s.Height}, nil
+	}
 	r := m.Decks[d].Radius
 	p := frame.Polar{R: r - s.Height, Phi: s.Spinward.Angle(r), Z: z}
 	return Place{Polar: p, Deck: d, Height: s.Height}, nil
+}
+
+// inRoom finds the place of a station in a further room: from the middle of
+// its floor, along it and above it.
+func (m *Model) inRoom(s Station) (Place, error) {
+	r := m.RoomNamed(s.Room)
+	if r == nil {
+		return Place{}, fmt.Errorf("no room named %q", s.Room)
+	}
+	if r.Shape == Cabin {
+		f := r.flat()
+		return m.PlaceOf(f.Point(f.Along(s.Spinward), s.Axial, s.Height)), nil
+	}
+	p := frame.Polar{R: r.FloorRadius - s.Height, Phi: s.Spinward.Angle(r.FloorRadius), Z: r.Axial + s.Axial}
+	d := m.DeckBeneath(p)
+	return Place{Polar: p, Deck: d, Height: m.Above(d, p)}, nil
+}
+
+// RoomNamed finds a further room, nil where there is none.
+func (m *Model) RoomNamed(name string) *Room {
+	for i := range m.Rooms {
+		if m.Rooms[i].Name == name {
+			return &m.Rooms[i]
+		}
+	}
+	return nil
 }
 
 // DeckBeneath gives the deck next outward along the radius through a place,
@@ -71,11 +101,18 @@ func (m *Model) DeckBeneath(p frame.Polar) int {
 func (m *Model) PlaceOf(pos r3.Vec) Place {
 	p := frame.PolarOf(pos)
 	d := m.DeckBeneath(p)
-	return Place{Polar: p, Deck: d, Height: m.Decks[d].Radius - p.R}
+	return Place{Polar: p, Deck: d, Height: m.Above(d, p)}
 }
 
-// Arc gives the place's arc on its deck, m, in (-pi R, pi R].
-func (m *Model) Arc(p Place) float64 { return m.Decks[p.Deck].Radius * frame.WrapAngle(p.Phi) }
+// Arc gives the place's arc on its deck, m, in (-pi R, pi R]; on a flat deck
+// the straight length from its middle.
+func (m *Model) Arc(p Place) float64 {
+	if f := m.FlatDeck(p.Deck); f != nil {
+		s, _, _ := f.Place(p.Vec())
+		return s
+	}
+	return m.Decks[p.Deck].Radius * frame.WrapAngle(p.Phi)
+}
 
 // Covers says whether the deck, its openings counted as closed, lies under
 // the angle phi (rad) and the axial place z (m).
@@ -94,13 +131,24 @@ func (d *Deck) Covers(phi, z float64) bool {
 	return over <= to-from
 }
 
+// middle gives the angle (rad) of the middle of an opening.
+func (d *Deck) middle(o *Opening) float64 {
+	if d.Flat && !o.Spinward.IsAngle {
+		return math.Atan2(o.Spinward.Value, d.Radius)
+	}
+	return o.Spinward.Angle(d.Radius)
+}
+
 // OpeningAt gives the open opening at an angle (rad) and an axial place (m) of
 // the deck, or nil.
 func (d *Deck) OpeningAt(phi, z float64) *Opening {
 	for i := range d.Openings {
 		o := &d.Openings[i]
 		half := math.Asin(math.Min(1, o.Size[0]/(2*d.Radius)))
-		across := math.Abs(frame.WrapAngle(phi - o.Spinward.Angle(d.Radius)))
+		across := math.Abs(frame.WrapAngle(phi - d.middle(o)))
+		if d.Flat {
+			half, across = o.Size[0]/2, d.Radius*math.Abs(math.Tan(phi)-math.Tan(d.middle(o)))
+		}
 		if !o.Closed && across <= half && math.Abs(z-o.Axial) <= o.Size[1]/2 {
 			return o
 		}

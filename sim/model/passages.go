@@ -1,0 +1,151 @@
+package model
+
+import (
+	"fmt"
+	"math"
+
+	"offplumb/sim/geom"
+)
+
+// shafts checks the passages and gives those that can be built, with their
+// keys.
+func (c *checker) shafts(rooms []housed) (out []geom.Passage, keys []string) {
+	for i := range c.m.Passages {
+		key := fmt.Sprintf("passage[%d]", i)
+		if p, ok := c.shaft(key, &c.m.Passages[i], rooms); ok {
+			out, keys = append(out, p), append(keys, key)
+		}
+	}
+	return out, keys
+}
+
+// size gives the width of a passage and the key that says it.
+func (p *Passage) size() (width float64, key string) {
+	if p.Width > 0 {
+		return p.Width, ".width"
+	}
+	return p.Diameter, ".diameter"
+}
+
+// shaft runs a passage on into the rooms at both ends until the whole of its
+// section is inside.
+func (c *checker) shaft(key string, p *Passage, rooms []housed) (geom.Passage, bool) {
+	width, wide := p.size()
+	out := geom.Passage{Name: p.Name, Phi: p.Spinward.Angle(p.FromRadius), Z: p.Axial, From: p.FromRadius, To: p.ToRadius,
+		Width: width, Round: p.Width == 0, Wall: c.thickest(p)}
+	if p.FromRadius >= p.ToRadius {
+		c.fault(key+".to_radius", "", "wants more than from_radius, %g m, got %g m", p.FromRadius, p.ToRadius)
+		return out, false
+	}
+	inner, outer := endRoom(rooms, &out, p.FromRadius, true), endRoom(rooms, &out, p.ToRadius, false)
+	switch {
+	case inner == nil:
+		c.fault(key+".from_radius", nextHull(rooms, &out, p.FromRadius), "reaches no room: there is none at %g m from the axis", p.FromRadius)
+	case outer == nil:
+		c.fault(key+".to_radius", nextHull(rooms, &out, p.ToRadius), "reaches no room: there is none at %g m from the axis", p.ToRadius)
+	case width >= 2*p.FromRadius:
+		c.fault(key+wide, "", "wants less than twice from_radius, got %g m", width)
+	default:
+		return out, c.fit(key, wide, &out, inner, outer)
+	}
+	return out, false
+}
+
+// thickest gives the thickness of the walls of a passage: that of the thickest
+// hull or deck that it may pierce, so that they fill what its mouths leave
+// open.
+func (c *checker) thickest(p *Passage) float64 {
+	wall := DefaultThickness
+	for i := range c.m.Decks {
+		d := &c.m.Decks[i]
+		if i == 0 || p.ToRadius > d.Radius && p.FromRadius < d.Radius+d.Thickness {
+			wall = math.Max(wall, d.Thickness)
+		}
+	}
+	return wall
+}
+
+// endRoom gives the room in which an end of a passage lies, r (m) from the
+// axis, or in whose hull, nil for none; of several the one whose hull is next
+// along the passage.
+func endRoom(rooms []housed, p *geom.Passage, r float64, inner bool) *housed {
+	var best *housed
+	var next float64
+	for i := range rooms {
+		s, ok := rooms[i].Span(p.Phi, p.Z, 0)
+		if !ok || r < s.From-DefaultThickness || r > s.To+DefaultThickness {
+			continue
+		}
+		if best == nil || inner && s.To < next || !inner && s.From > next {
+			best, next = &rooms[i], s.To
+			if !inner {
+				next = s.From
+			}
+		}
+	}
+	return best
+}
+
+// nextHull tells where the room nearest to an end of a passage begins or ends.
+func nextHull(rooms []housed, p *geom.Passage, r float64) string {
+	hint, least := "", math.Inf(1)
+	for i := range rooms {
+		s, ok := rooms[i].Span(p.Phi, p.Z, 0)
+		if !ok {
+			continue
+		}
+		for _, at := range []float64{s.From, s.To} {
+			if d := math.Abs(at - r); d < least {
+				hint, least = fmt.Sprintf("there the hull of %s is %.6g m from the axis", rooms[i].title(), at), d
+			}
+		}
+	}
+	return hint
+}
+
+// fit runs a passage on into the rooms at its ends.
+func (c *checker) fit(key, wide string, p *geom.Passage, inner, outer *housed) bool {
+	h := p.Width / 2
+	a, ok := inner.Span(p.Phi, p.Z, h)
+	b, ok2 := outer.Span(p.Phi, p.Z, h)
+	switch {
+	case !ok:
+		c.fault(key+wide, "", "does not fit into %s: wants a passage that lies within its sides", inner.title())
+		return false
+	case !ok2:
+		c.fault(key+wide, "", "does not fit into %s: wants a passage that lies within its sides", outer.title())
+		return false
+	}
+	p.From = math.Min(p.From, math.Hypot(a.To, h))
+	p.To = math.Max(p.To, b.From)
+	if t, isTorus := inner.hull.(*geom.Torus); isTorus && t.Flat && p.To > t.Floor.R0 && math.Abs(p.Z-t.Z)+h > t.HalfWidth(t.Floor.R0) {
+		c.fault(key+".axial", "", "does not lead out of %s through its flat floor, which is %.6g m wide", inner.title(), 2*t.HalfWidth(t.Floor.R0))
+		return false
+	}
+	return true
+}
+
+// Looking along a passage for what stands in it: how many places are tried per
+// width, which finds what reaches into it by a thousandth of that, and how many
+// at most.
+const (
+	looksPerWidth = 20
+	mostLooks     = 100_000
+)
+
+// blocked tries that nothing is in the way of the passages: the side of a room
+// that one does not lead into, a wall, another passage.
+func (c *checker) blocked(in *geom.Interior, shafts []geom.Passage, keys []string) {
+	for i := range shafts {
+		p := &shafts[i]
+		w, h := p.Ends(), p.Width/2
+		n := int(math.Min(mostLooks, math.Ceil(looksPerWidth*(w.To-w.From)/p.Width))) + 1
+		for k := range n + 1 {
+			at := p.Point(w.From + (w.To-w.From)*float64(k)/float64(n))
+			if near := in.Contact(at); near.Gap < h && p.Holds(near.Point, TouchSlack) {
+				c.fault(keys[i], "", "runs into %q", in.Surface(near.Surface).Name)
+				break
+			}
+		}
+	}
+}
