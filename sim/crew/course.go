@@ -17,6 +17,32 @@ type course interface {
 	length() float64
 }
 
+// crossing gives the first place at which a course that goes inward or outward
+// all the way meets a radius (m); its nearer end where it does not.
+func crossing(c course, r float64) spot {
+	at := func(way float64) spot {
+		var f Feet
+		c.put(&f, motion{x: way})
+		return spot{r: f.R, phi: f.Phi, z: f.Z}
+	}
+	lo, hi := 0.0, c.length()
+	outer := at(lo).r > r
+	if first, last := at(lo), at(hi); outer == (last.r > r) && math.Abs(first.r-r) < math.Abs(last.r-r) {
+		return first
+	}
+	for {
+		mid := lo + (hi-lo)/2
+		if mid <= lo || mid >= hi {
+			return at(hi)
+		}
+		if at(mid).r > r == outer {
+			lo = mid
+		} else {
+			hi = mid
+		}
+	}
+}
+
 // arc is a course on which radius, angle and axial place change evenly: a walk
 // on a deck, a radial ladder, a ride.
 type arc struct {
@@ -40,6 +66,8 @@ func (c arc) put(f *Feet, s motion) {
 type line struct {
 	from spot
 	way  r3.Vec // unit, habitat components
+	rise r3.Vec // unit, up the ladder
+	into r3.Vec // unit, across the ladder, away from the person on it
 	long float64
 }
 
@@ -48,11 +76,13 @@ type line struct {
 func newLine(from spot, pitch float64, toward model.Direction, long float64, down bool) line {
 	l := frame.LocalAt(from.phi)
 	ahead := facing(toward, l)
-	way := r3.Add(r3.Scale(math.Cos(pitch), ahead), r3.Scale(math.Sin(pitch), l.Up))
+	sin, cos := math.Sincos(pitch)
+	rise := r3.Add(r3.Scale(cos, ahead), r3.Scale(sin, l.Up))
+	c := line{from: from, way: rise, rise: rise, into: r3.Sub(r3.Scale(sin, ahead), r3.Scale(cos, l.Up)), long: long}
 	if down {
-		way = r3.Scale(-1, way)
+		c.way = r3.Scale(-1, rise)
 	}
-	return line{from: from, way: way, long: long}
+	return c
 }
 
 func (c line) length() float64 { return c.long }

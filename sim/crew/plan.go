@@ -77,6 +77,7 @@ type builder struct {
 	at       spot
 	deck     int     // -1 between decks
 	low      float64 // m, by which the person is lower than standing
+	lowest   float64 // m, the most of it so far
 	time     float64
 	problems []model.Problem
 }
@@ -174,17 +175,17 @@ func (b *builder) rise(key string, l *leg) {
 	by := l.spec.Distance
 	if l.spec.Kind == model.StandUp {
 		b.low -= by
-		if b.low < 0 {
-			for i := range b.plan.legs {
-				b.plan.legs[i].low -= b.low
-			}
-			l.low -= b.low
-			b.low = 0
-		}
 	} else {
 		b.low += by
 	}
-	if most := b.plan.Crew.Waist * b.plan.Crew.Stature; l.low > most || b.low > most {
+	if up := -b.low; up > 0 {
+		for i := range b.plan.legs {
+			b.plan.legs[i].low += up
+		}
+		l.low, b.low, b.lowest = l.low+up, 0, b.lowest+up
+	}
+	b.lowest = math.Max(b.lowest, math.Max(l.low, b.low))
+	if most := b.plan.Crew.Waist * b.plan.Crew.Stature; b.lowest > most {
 		b.fault(key, "the waist, at %.3g m, would be lower than the feet", most)
 		return
 	}
@@ -223,7 +224,7 @@ func (b *builder) arrive(key string) {
 	if b.at.r <= 0 {
 		b.fault(key, "leads to the axis or beyond")
 	}
-	b.deck = b.levelDeck(&b.at)
+	b.deck = b.levelDeck(b.at)
 }
 
 // ride moves the person in a lift, radially or along the ring.
@@ -257,11 +258,27 @@ func (b *builder) hatch(key string, l *leg) {
 		b.fault(key, "the way does not cross deck %q, in which %q is", d.Name, name)
 		return
 	}
-	across := d.Radius * math.Abs(frame.WrapAngle(b.at.phi-o.Spinward.Angle(d.Radius)))
 	half := b.plan.Crew.Breadth / 2
-	if room := math.Min(o.Size[0]/2-across, o.Size[1]/2-math.Abs(b.at.z-o.Axial)); room < half {
+	if room := b.roomIn(d, o, l); room < half {
 		b.fault(key, "%q leaves %.3g m to its rim beside the person's middle, who needs %.3g m", name, room, half)
 	}
+}
+
+// roomIn gives the least distance (m) of the person's middle from the rim of
+// an opening while any part of the person is in it: on a pitched ladder, whose
+// climber stands along the radius, head and feet pass it at different places.
+func (b *builder) roomIn(d *model.Deck, o *model.Opening, l *leg) float64 {
+	out := math.Inf(1)
+	tall := b.plan.Crew.Stature
+	if l.spec.HeadFirst {
+		tall = -tall
+	}
+	for _, r := range []float64{d.Radius, d.Radius + tall} {
+		at := crossing(l.course, r)
+		across := d.Radius * math.Abs(frame.WrapAngle(at.phi-o.Spinward.Angle(d.Radius)))
+		out = math.Min(out, math.Min(o.Size[0]/2-across, o.Size[1]/2-math.Abs(at.z-o.Axial)))
+	}
+	return out
 }
 
 // opening finds an opening by its name.
@@ -277,13 +294,12 @@ func (b *builder) opening(name string) (*model.Deck, *model.Opening) {
 	return nil, nil
 }
 
-// levelDeck joins the end of a climb to the deck that it is level with; -1
-// where there is none. The spot is put on it exactly.
-func (b *builder) levelDeck(at *spot) int {
+// levelDeck gives the deck that the end of a climb is level with; -1 where
+// there is none.
+func (b *builder) levelDeck(at spot) int {
 	for i := range b.m.Decks {
 		d := &b.m.Decks[i]
-		if math.Abs(d.Radius-at.r) <= levelSlack && b.besides(d, *at) {
-			at.r = d.Radius
+		if math.Abs(d.Radius-at.r) <= levelSlack && b.besides(d, at) {
 			return i
 		}
 	}

@@ -7,6 +7,7 @@ import (
 	"offplumb/integrator"
 	"offplumb/sim/air"
 	"offplumb/sim/frame"
+	"offplumb/sim/geom"
 	"offplumb/sim/model"
 )
 
@@ -24,8 +25,9 @@ type Flier struct {
 	st      *integrator.Stepper // of free flight
 	slide   *slide
 	contact *integrator.Stepper // of sliding and rolling
-	touch   *gap
-	hull    *gap
+	touch   *apart
+	hull    *apart
+	watch   geom.Beside
 	body    model.Body  // in flight
 	wide    float64     // m, its radius
 	ended   bool        // its track is
@@ -58,8 +60,10 @@ func (f *Flier) steppers() error {
 		return err
 	}
 	f.st = st
-	f.touch = touch(f.free, f.m.Interior, 0)
-	f.touch.of = func(p r3.Vec) float64 { return f.m.Interior.Dist(p) - f.wide }
+	in := f.m.Interior
+	f.touch = &apart{free: f.free, step: never,
+		of:   func(p r3.Vec) float64 { return math.Min(in.DistBeside(p, &f.watch), math.MaxFloat32) - f.wide },
+		time: func(p, v r3.Vec, acc, limit float64) float64 { return in.TimeBeside(p, v, acc, limit, &f.watch) }}
 	f.hull = inside(f.free, f.m.Interior)
 	return nil
 }
@@ -96,7 +100,7 @@ func (f *Flier) beneath(let *Let) (int, float64) {
 
 // fly integrates one flight, to a touch, the end of its time or its loss. The
 // spin of a body in flight stays in the inertial frame.
-func (f *Flier) fly(t *Track, now *moving) error {
+func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) error {
 	base := f.inertial(t, now)
 	if now.t == 0 {
 		base = t.First
@@ -105,18 +109,14 @@ func (f *Flier) fly(t *Track, now *moving) error {
 	spin := r3.Add(a.Out(now.w), a.Omega)
 	phase := Phase{Kind: Free, T0: now.t, base: base}
 	f.free.base, f.free.begin = base, t.Begin+now.t
-	f.touch.step, f.hull.step = never, never
-	f.st.Reset(0, f.zero[:])
-	events := []integrator.EventSpec{
-		{Event: f.touch, Slop: slop(base.Pos), Terminal: true},
-		{Event: f.hull, Terminal: true},
+	events := f.flightEvents(base, grazed)
+	var opts []integrator.Option
+	if len(grazed) > 0 {
+		omega, _ := f.m.Motion.Bounds(t.Begin+now.t, t.Begin+now.t)
+		opts = append(opts, integrator.MaxStep(stepTurn/math.Max(omega, slowest)))
 	}
-	res, err := integrator.Solve(f.st, f.longest(t.Release)-now.t, events, func(s *integrator.Step, _ []integrator.Hit) error {
-		if s.T1 > s.T0 {
-			phase.steps = append(phase.steps, s.Clone())
-		}
-		return nil
-	})
+	f.st.Reset(0, f.zero[:], opts...)
+	res, err := integrator.Solve(f.st, f.longest(t.Release)-now.t, events, phase.keep)
 	if err != nil {
 		return err
 	}
@@ -133,13 +133,29 @@ func (f *Flier) fly(t *Track, now *moving) error {
 	return nil
 }
 
+// flightEvents lists what ends a flight: a touch, the loss of the body.
+func (f *Flier) flightEvents(base frame.State, grazed []geom.Group) []integrator.EventSpec {
+	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Grazed: grazed}
+	f.touch.step, f.hull.step = never, never
+	events := []integrator.EventSpec{
+		{Event: f.touch, Slop: slop(base.Pos), Terminal: true},
+		{Event: f.hull, Terminal: true},
+	}
+	for _, g := range grazed {
+		events = append(events,
+			integrator.EventSpec{Event: flownInto{grazing{f, g}}, Slop: slop(base.Pos), Terminal: true},
+			integrator.EventSpec{Event: flownOnto{grazing{f, g}}, Slop: forceSlop, Terminal: true})
+	}
+	return events
+}
+
 // settle ends a release that flew out of its time or out of the hull. Of a
 // touch and a loss at one instant the touch counts.
 func (f *Flier) settle(t *Track, now *moving, res integrator.Result) {
 	switch {
 	case !res.Stopped:
 		f.end(t, now, TimeUp)
-	case res.Hits[0].Event != 0:
+	case res.Hits[0].Event == 1:
 		f.end(t, now, Lost)
 	default:
 		return

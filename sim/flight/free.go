@@ -46,15 +46,18 @@ func depart(base frame.State, t float64, y []float64) frame.State {
 // a thousandth of a millimetre.
 const thin = 1e-6
 
-// gap is a distance of the body in flight that depends on its place in the
-// habitat alone, with Lipschitz constant 1. It promises its rate:
+// apart is how a body in flight may end: a distance that depends on its place
+// in the habitat alone, with Lipschitz constant 1. It promises its rate by the
+// velocity u relative to the habitat, whatever its way of turning:
 //
 //	|gap'| <= |u|,  u = r' - omega x r,  |u'| <= |r''| + |domega/dt| |r| + |omega| |r'|
-//
-// u being the velocity relative to the habitat, whatever its way of turning.
-type gap struct {
+type apart struct {
 	free *free
 	of   func(local r3.Vec) float64
+	// time, if it is not nil, gives a time (s, at most limit) during which the
+	// distance surely does not vanish, at a place with a velocity and a bound on
+	// the acceleration, all in the habitat.
+	time func(local, vel r3.Vec, acc, limit float64) float64
 
 	// Of the step under search.
 	step         [2]float64
@@ -64,39 +67,70 @@ type gap struct {
 }
 
 // Value implements [integrator.Event].
-func (g *gap) Value(t float64, y []float64) float64 {
+func (g *apart) Value(t float64, y []float64) float64 {
 	a := g.free.forces.motion.At(g.free.begin + t)
 	return g.of(a.In(depart(g.free.base, t, y).Pos))
 }
 
 // Bound implements [integrator.Bounded].
-func (g *gap) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, least float64) {
+func (g *apart) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, least float64) {
 	if g.step != [2]float64{s.T0, s.T1} {
 		g.step = [2]float64{s.T0, s.T1}
 		g.omega, g.alpha = g.free.forces.motion.Bounds(g.free.begin+s.T0, g.free.begin+s.T1)
 		g.speed, g.accel = s.MaxRate(0, 3), s.MaxAccel(0, 3)
 	}
 	s.Rate(t, g.rate[:])
-	vel := r3.Add(g.free.base.Vel, r3.Vec{X: g.rate[0], Y: g.rate[1], Z: g.rate[2]})
-	pos := depart(g.free.base, t, y).Pos
-	u := r3.Sub(vel, r3.Cross(g.free.forces.motion.Omega(g.free.begin+t), pos))
+	at := depart(g.free.base, t, y)
+	at.Vel = r3.Add(g.free.base.Vel, vec(g.rate[:]))
+	a := g.free.forces.motion.At(g.free.begin + t)
+	local := a.ToHabitat(at)
 	speed := r3.Norm(g.free.base.Vel) + g.speed
 	reach := 0.0
 	if g.alpha > 0 {
-		reach = r3.Norm(pos) + speed*(s.T1-t)
+		reach = r3.Norm(at.Pos) + speed*(s.T1-t)
 	}
-	return r3.Norm(u), g.accel + g.alpha*reach + g.omega*speed, thin
-}
-
-// touch is the gap between a body of the radius a (m) and the interior.
-func touch(f *free, in *geom.Interior, a float64) *gap {
-	return &gap{free: f, of: func(p r3.Vec) float64 { return in.Dist(p) - a }, step: never}
+	acc := g.accel + g.alpha*reach + g.omega*speed
+	if g.time == nil {
+		return r3.Norm(local.Vel), acc, thin
+	}
+	return promise(g.of(local.Pos), g.time(local.Pos, local.Vel, acc, s.T1-t)), 0, thin
 }
 
 // inside is how far the body's centre is from the hull's outer face, within.
-func inside(f *free, in *geom.Interior) *gap {
-	return &gap{free: f, of: func(p r3.Vec) float64 { return -in.Beyond(p) }, step: never}
+func inside(f *free, in *geom.Interior) *apart {
+	return &apart{free: f, of: func(p r3.Vec) float64 { return -in.Beyond(p) }, step: never}
 }
 
 // never is the span of no step.
 var never = [2]float64{math.Inf(1), math.Inf(-1)}
+
+// grazing is a body in flight along a group that it touches.
+type grazing struct {
+	f *Flier
+	g geom.Group
+}
+
+func (e grazing) local(t float64, y []float64) frame.State {
+	a := e.f.m.Motion.At(e.f.free.begin + t)
+	return a.ToHabitat(depart(e.f.free.base, t, y))
+}
+
+// flownInto is the gap to it.
+type flownInto struct{ grazing }
+
+func (e flownInto) Value(t float64, y []float64) float64 {
+	return e.f.m.Interior.ContactIn(e.local(t, y).Pos, e.g).Gap - e.f.wide
+}
+
+// flownOnto is the acceleration of the gap to it: where it falls below zero,
+// the body is pressed on it.
+type flownOnto struct{ grazing }
+
+func (e flownOnto) Value(t float64, y []float64) float64 {
+	s := e.local(t, y)
+	if e.f.m.Interior.ContactIn(s.Pos, e.g).Gap > e.f.wide+2*thin {
+		return 1 // it has left
+	}
+	a := e.f.m.Motion.At(e.f.free.begin + t)
+	return e.f.gapAccel(s.Pos, s.Vel, e.f.pull(&a, e.f.free.begin+t, s), e.g)
+}

@@ -43,7 +43,7 @@ func (f *Flier) strike(n, v, w r3.Vec, e, mu float64) (r3.Vec, r3.Vec) {
 	v = r3.Add(v, r3.Scale((1+e)*into, n))
 	u, share := v, 1.0
 	if f.body.Rolls && f.wide > 0 {
-		u, share = r3.Sub(v, r3.Scale(f.wide, r3.Cross(w, n))), 2.0/7
+		u, share = r3.Sub(v, r3.Scale(f.wide, r3.Cross(w, n))), rollShare
 	}
 	u = r3.Sub(u, r3.Scale(r3.Dot(u, n), n))
 	speed := r3.Norm(u)
@@ -58,33 +58,82 @@ func (f *Flier) strike(n, v, w r3.Vec, e, mu float64) (r3.Vec, r3.Vec) {
 	return v, w
 }
 
+// rollShare is the share of its slip that a solid sphere which grips loses in
+// velocity; its spin takes the rest.
+const rollShare = 2.0 / 7
+
 // mostStrikes bounds the impulses of one instant, in a corner.
 const mostStrikes = 30
 
+// struck is one impulse.
+type struck struct {
+	i int    // index of the touch
+	v r3.Vec // m/s, velocity before
+}
+
 // collide lets a body that touches surfaces at t (s, habitat time) rebound
-// from those that it moves into, and gives the state after and the impacts.
-// Where a rebound would not rise, the body stays.
-func (f *Flier) collide(t float64, now *moving, touches []geom.Touch) (hits []int) {
+// from those that it moves into, and gives the impacts. Where a rebound would
+// not rise, the body stays; so does one that a corner's friction lifts by so
+// little.
+func (f *Flier) collide(t float64, now *moving, touches []geom.Touch) (hits []struck) {
 	for k := range mostStrikes {
-		i, into := -1, parting
-		for j := range touches {
-			if x := -r3.Dot(now.v, touches[j].Normal); x > into {
-				i, into = j, x
-			}
-		}
+		i := deepest(now.v, touches)
 		if i < 0 {
-			return hits
+			break
 		}
-		hits = append(hits, i)
+		hits = append(hits, struck{i, now.v})
 		e, mu := f.gripOf(touches[i].Surface)
-		if k > mostStrikes/2 || !f.rises(t, now, &touches[i], e*into, mu, e) {
+		if into := -r3.Dot(now.v, touches[i].Normal); k > mostStrikes/2 || !f.rises(t, now, &touches[i], e*into, mu, e) {
 			e = 0
 		}
 		now.v, now.w = f.strike(touches[i].Normal, now.v, now.w, e, mu)
 	}
-	// Wedged in a corner: nothing is left of the motion.
-	now.v = r3.Vec{}
+	if len(hits) > 0 {
+		f.stayDown(t, now, touches)
+		f.yield(now, touches)
+	}
 	return hits
+}
+
+// deepest gives the touch that a velocity goes into most, -1 for none.
+func deepest(v r3.Vec, touches []geom.Touch) int {
+	i, into := -1, parting
+	for j := range touches {
+		if x := -r3.Dot(v, touches[j].Normal); x > into {
+			i, into = j, x
+		}
+	}
+	return i
+}
+
+// stayDown takes away the rise of a body, after an impact, from surfaces that
+// have it back before it rose by leastRise.
+func (f *Flier) stayDown(t float64, now *moving, touches []geom.Touch) {
+	for i := range touches {
+		n := touches[i].Normal
+		up := r3.Dot(now.v, n)
+		if up <= parting {
+			continue
+		}
+		v := r3.Sub(now.v, r3.Scale(up, n))
+		if press := f.presses(t, now.q, v, &touches[i]); up*up <= 2*press*leastRise {
+			now.v = v
+		}
+	}
+}
+
+// yield takes from a velocity what still goes into surfaces that a body is
+// wedged between, and all of it if that does not do.
+func (f *Flier) yield(now *moving, touches []geom.Touch) {
+	for range mostStrikes {
+		i := deepest(now.v, touches)
+		if i < 0 {
+			return
+		}
+		n := touches[i].Normal
+		now.v = r3.Sub(now.v, r3.Scale(r3.Dot(now.v, n), n))
+	}
+	now.v = r3.Vec{}
 }
 
 // rises says whether a rebound at the given speed (m/s) is one: it rises
@@ -92,14 +141,51 @@ func (f *Flier) collide(t float64, now *moving, touches []geom.Touch) (hits []in
 func (f *Flier) rises(t float64, now *moving, c *geom.Touch, speed, mu, e float64) bool {
 	v, _ := f.strike(c.Normal, now.v, now.w, e, mu)
 	v = r3.Sub(v, r3.Scale(r3.Dot(v, c.Normal), c.Normal))
-	a := f.m.Motion.At(t)
-	_, rate := f.bend(now.q, v, c.Group)
-	press := -r3.Dot(f.pull(&a, t, frame.State{Pos: now.q, Vel: v}), c.Normal) - r3.Dot(v, rate)
+	press := f.presses(t, now.q, v, c)
 	return press <= 0 || speed*speed > 2*press*leastRise
 }
 
-// moving is a body at an instant, in the habitat frame.
-type moving struct {
-	t       float64 // s since the release
-	q, v, w r3.Vec  // m, m/s, rad/s relative to the habitat
+// presses is the acceleration (m/s^2) by which a body that moves along a
+// surface is pressed on it.
+func (f *Flier) presses(t float64, q, v r3.Vec, c *geom.Touch) float64 {
+	a := f.m.Motion.At(t)
+	return -f.gapAccel(q, v, f.pull(&a, t, frame.State{Pos: q, Vel: v}), c.Group)
+}
+
+// meet lets the body rebound and records the impacts, each surface once.
+func (f *Flier) meet(t *Track, now *moving, touches []geom.Touch, known []geom.Group) {
+	before := *now
+	for _, hit := range f.collide(t.Begin+now.t, now, touches) {
+		c := &touches[hit.i]
+		// A slide into its own surface is a matter of rounding.
+		if hasGroup(known, c.Group) && -r3.Dot(before.v, c.Normal) <= parting || t.hitNow(now.t, c.Surface) {
+			continue
+		}
+		f.record(t, moving{t: now.t, q: now.q, v: hit.v}, c)
+	}
+}
+
+// touched records as impacts the surfaces that the body has come to be pressed
+// on without an impact.
+func (f *Flier) touched(t *Track, now *moving, s stance, known []geom.Group) {
+	for i := range s.on {
+		if !hasGroup(known, s.on[i].Group) && !t.hitNow(now.t, s.on[i].Surface) {
+			f.record(t, *now, &s.on[i])
+		}
+	}
+}
+
+// hitNow says whether an impact at this time with this surface is recorded.
+func (t *Track) hitNow(time float64, id geom.SurfaceID) bool {
+	for i := len(t.Impacts) - 1; i >= 0 && t.Impacts[i].Time == time; i-- {
+		if t.Impacts[i].Contact.Surface == id {
+			return true
+		}
+	}
+	return false
+}
+
+func (f *Flier) record(t *Track, at moving, c *geom.Touch) {
+	t.Impacts = append(t.Impacts, Impact{Time: at.t, State: frame.State{Pos: at.q, Vel: at.v}, Contact: c.Contact,
+		Surface: f.m.Interior.Surface(c.Surface).Name})
 }

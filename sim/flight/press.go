@@ -2,6 +2,7 @@ package flight
 
 import (
 	"math"
+	"math/bits"
 
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -17,8 +18,10 @@ const singular = 1e-8
 // push is what one contact does, per kg of body.
 type push struct {
 	normal  r3.Vec  // unit, away from the surface
+	turn    r3.Vec  // 1/s, dn/dt as the body moves
 	closing float64 // m/s^2, by which the gap's acceleration exceeds normal.(acceleration): v.(dn/dt)
 	mu      float64 // friction
+	noise   float64 // m/s^2, what an acceleration along the normal may be by rounding
 	force   float64 // m/s^2, normal force by mass
 }
 
@@ -63,17 +66,21 @@ func balance(p []push, pull r3.Vec) bool {
 // pressed gives the subset of contacts on which a body stays: the normal
 // forces do not pull, and the body does not sink into the others. It is the
 // linear complementarity problem of rigid contact (Lotstedt 1982; from
-// memory), small enough to try all subsets, the smaller first. drag is the
-// acceleration by friction that a subset would give.
-func pressed(all []push, pull r3.Vec, drag func([]push) r3.Vec) []int {
+// memory), small enough to try all subsets, the smaller first. whole is the
+// acceleration that a subset whose normal forces are known would give, friction
+// included. It reports whether there is such a subset.
+func pressed(all []push, pull r3.Vec, whole func([]push) r3.Vec) ([]int, bool) {
 	for size := 0; size <= min(len(all), mostContacts); size++ {
 		for set := 0; set < 1<<len(all); set++ {
-			if idx := members(set, len(all)); len(idx) == size && stays(all, idx, pull, drag) {
-				return idx
+			if bits.OnesCount(uint(set)) != size {
+				continue
+			}
+			if idx := members(set, len(all)); stays(all, idx, pull, whole) {
+				return idx, true
 			}
 		}
 	}
-	return nil
+	return nil, false
 }
 
 func members(set, n int) []int {
@@ -87,28 +94,23 @@ func members(set, n int) []int {
 }
 
 // stays tries one subset.
-func stays(all []push, idx []int, pull r3.Vec, drag func([]push) r3.Vec) bool {
-	sub := make([]push, len(idx))
-	for k, i := range idx {
-		sub[k] = all[i]
-	}
+func stays(all []push, idx []int, pull r3.Vec, whole func([]push) r3.Vec) bool {
+	sub := subset(all, idx)
 	if !balance(sub, pull) {
 		return false
 	}
-	acc := pull
 	for i := range sub {
 		if sub[i].force <= 0 {
 			return false
 		}
-		acc = r3.Add(acc, r3.Scale(sub[i].force, sub[i].normal))
 	}
-	acc = r3.Add(acc, drag(sub))
+	acc := whole(sub)
 	for i := range all {
 		if in(idx, i) {
 			continue
 		}
-		// A gap that would close, by more than the rounding of the sum.
-		if r3.Dot(all[i].normal, acc)+all[i].closing < -1e-12*(1+r3.Norm(pull)) {
+		// A gap that would close, by more than what may be rounding.
+		if r3.Dot(all[i].normal, acc)+all[i].closing < -all[i].noise {
 			return false
 		}
 	}
@@ -132,16 +134,10 @@ func in(idx []int, i int) bool {
 func holds(all []push, pull r3.Vec) []int {
 	for size := 1; size <= min(len(all), mostContacts); size++ {
 		for set := 0; set < 1<<len(all); set++ {
-			idx := members(set, len(all))
-			if len(idx) != size {
+			if bits.OnesCount(uint(set)) != size {
 				continue
 			}
-			sub := make([]push, size)
-			for k, i := range idx {
-				sub[k] = all[i]
-				sub[k].closing = 0
-			}
-			if held(sub, pull) {
+			if idx := members(set, len(all)); held(subset(all, idx), pull) {
 				return idx
 			}
 		}

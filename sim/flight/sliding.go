@@ -1,0 +1,138 @@
+package flight
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/integrator"
+	"offplumb/sim/frame"
+	"offplumb/sim/geom"
+)
+
+// stepTurn is how far, in rad, the habitat turns in a step along a surface, at
+// most: the events without a bound are looked at once a step.
+const stepTurn = 0.3
+
+// ending is what the next phase must know of how the last one ended.
+type ending struct {
+	parted []geom.Group // left for want of force
+	skids  bool         // a rolling body lost its grip
+}
+
+// slideOn moves a body along the surfaces that it is pressed on, until it
+// stops, parts from one, meets another, or its time ends.
+func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, error) {
+	s, kind := f.slideFrom(t, now, st.on, skids)
+	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q},
+		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
+	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
+	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
+	f.contact.Reset(0, y, integrator.MaxStep(stepTurn/math.Max(spin, slowest)))
+	events := f.slideEvents(s, now, groupsOf(st.grazed))
+	res, err := integrator.Solve(f.contact, f.longest(t.Release)-now.t, events.specs, phase.keep)
+	if err != nil {
+		return ending{}, err
+	}
+	t.Work.add(res.Stats)
+	now.t += res.T
+	now.q, now.v, now.w = s.place(res.Y), vec(res.Y[3:]), vec(res.Y[6:])
+	end := events.ending(res.Hits)
+	f.onto(now, s.groups, end.parted)
+	f.arrival = f.inertial(t, now)
+	phase.T1 = now.t
+	t.Phases = append(t.Phases, phase)
+	return end, nil
+}
+
+// keep stores a step of a phase.
+func (p *Phase) keep(s *integrator.Step, _ []integrator.Hit) error {
+	if s.T1 > s.T0 {
+		p.steps = append(p.steps, s.Clone())
+	}
+	return nil
+}
+
+// slideFrom prepares the equations, brings a body that has as good as stopped,
+// or as good as stopped slipping, to do so, and says what it does.
+func (f *Flier) slideFrom(t *Track, now *moving, on []geom.Touch, skids bool) (*slide, Kind) {
+	s := f.slide
+	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, groups: groupsOf(on)}
+	for i := range on {
+		_, s.mu[i] = f.gripOf(on[i].Surface)
+	}
+	if !f.rolls(len(on)) {
+		now.w = r3.Vec{}
+		if r3.Norm(now.v) <= 2*creep {
+			now.v = r3.Vec{}
+		}
+		return s, Slide
+	}
+	n := on[0].Normal
+	u := f.slipOf(now.v, now.w, n)
+	s.slips = true
+	s.eval(0, []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z})
+	s.slips = skids || s.mu[0] == 0 || r3.Norm(u) > 2*creep || s.rub.need > s.rub.most
+	if s.slips {
+		return s, Slide
+	}
+	f.grip(now, n, u)
+	return s, Roll
+}
+
+// grip ends the slip u (m/s) of a rolling body by the impulse that does so.
+func (f *Flier) grip(now *moving, n, u r3.Vec) {
+	j := r3.Scale(-rollShare, u)
+	now.v = r3.Add(now.v, j)
+	now.w = r3.Add(now.w, r3.Scale(-2.5/f.wide, r3.Cross(n, j)))
+}
+
+// onto takes away what a phase has drifted from its surfaces, but for those
+// that the body has left.
+func (f *Flier) onto(now *moving, groups, parted []geom.Group) {
+	for _, g := range groups {
+		if hasGroup(parted, g) {
+			continue
+		}
+		c := f.m.Interior.ContactIn(now.q, g)
+		now.q = r3.Add(now.q, r3.Scale(f.wide-c.Gap, c.Normal))
+		now.v = r3.Sub(now.v, r3.Scale(r3.Dot(now.v, c.Normal), c.Normal))
+	}
+}
+
+// slideEvents lists what ends a slide.
+func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Group) *ends {
+	e := &ends{}
+	watch := &geom.Beside{Wide: f.wide, Thin: thin, On: s.groups, Grazed: grazed}
+	e.add(besides{s, watch}, slop(s.origin), turns, 0)
+	e.add(stops{f.slowEnough(now, len(s.groups))}, 0, turns, 0)
+	for i, g := range s.groups {
+		e.add(parts{s, i}, forceSlop, loses, g)
+		e.add(leaves{s, g}, 0, loses, g)
+	}
+	if f.rolls(len(s.groups)) && s.mu[0] > 0 {
+		if s.slips {
+			e.add(grips{s}, 0, turns, 0)
+			e.add(holdsFast{s}, forceSlop, turns, 0)
+		} else {
+			e.add(skids{s}, forceSlop, starts, 0)
+		}
+	}
+	for _, g := range grazed {
+		e.add(reaches{s, g}, slop(s.origin), turns, g)
+		e.add(presses{s, g}, forceSlop, turns, g)
+	}
+	return e
+}
+
+// slowEnough is the speed at which a body counts as having stopped. One that
+// goes on from there stops anew only when it was faster again.
+func (f *Flier) slowEnough(now *moving, n int) float64 {
+	slow := creep
+	if f.rolls(n) {
+		slow = rollCreep
+	}
+	if r3.Norm(now.v) <= 2*slow {
+		return 4 * slow
+	}
+	return slow
+}
