@@ -68,6 +68,9 @@ func TestDeckPlanRefuses(t *testing.T) {
 		"release of NaN":    func(s *DeckPlanSpec) { s.Releases[0].At.X = math.NaN() },
 		"landing of NaN":    func(s *DeckPlanSpec) { s.Releases[0].Landing.X = math.NaN() },
 		"no description":    func(s *DeckPlanSpec) { s.Desc = "" },
+		"path of no points": func(s *DeckPlanSpec) { s.Paths = []PlanPath{{Name: "p"}} },
+		"path of NaN":       func(s *DeckPlanSpec) { s.Paths = []PlanPath{{Points: []Point{{}, {1, math.NaN()}}}} },
+		"huge path":         func(s *DeckPlanSpec) { s.Paths = []PlanPath{{Points: []Point{{1e12, 0}}}} },
 	}
 	for name, spoil := range cases {
 		s := planSpec()

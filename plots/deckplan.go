@@ -18,6 +18,7 @@ type DeckPlanSpec struct {
 	Openings []PlanOpening // openings in this deck
 	Fixtures []PlanFixture // what stands on it
 	Releases []PlanRelease // in the order of their numbers
+	Paths    []PlanPath    // crew paths on it; may be empty
 }
 
 // PlanOpening is an opening of a deck.
@@ -42,6 +43,13 @@ type PlanRelease struct {
 	At      Point  // m, foot of the plumb line
 	Landing *Point // m; nil if it does not land
 	Surface string // what it lands on; may be empty
+}
+
+// PlanPath is the way of the feet of a crew path, in order of time. Arcs run on, as those
+// of a landing do.
+type PlanPath struct {
+	Name   string
+	Points []Point // m; one for a path that stays over its place
 }
 
 func (s DeckPlanSpec) check() error {
@@ -69,6 +77,18 @@ func (s DeckPlanSpec) check() error {
 	for _, r := range s.Releases {
 		if err := checkPlaces([]Point{r.At}, r.Landing); err != nil {
 			return fmt.Errorf("release %q: %w", r.Name, err)
+		}
+	}
+	return checkPaths(s.Paths)
+}
+
+func checkPaths(paths []PlanPath) error {
+	for _, p := range paths {
+		if len(p.Points) == 0 {
+			return fmt.Errorf("path %q has no points", p.Name)
+		}
+		if err := checkPlaces(p.Points); err != nil {
+			return fmt.Errorf("path %q: %w", p.Name, err)
 		}
 	}
 	return nil

@@ -16,7 +16,8 @@ type plan struct {
 	xTicks   []plot.Tick
 	yTicks   []plot.Tick
 	entries  []planEntry
-	numbered int // releases that are listed, and have their number at the mark
+	numbered int      // releases that are listed, and have their number at the mark
+	lost     []string // names without a place, where paths have names
 }
 
 const (
@@ -31,7 +32,7 @@ func (s *plan) arrange() error {
 	must := s.matters()
 	switch {
 	case !must.some && !s.deck.some:
-		return errors.New("there is nothing to draw: no extent, no opening, no release")
+		return errors.New("there is nothing to draw: no extent, no opening, no release, no path")
 	case !must.some:
 		must = s.deck
 	case !s.deck.some:
@@ -90,15 +91,18 @@ func (s *plan) all() (out []Point) {
 			out = append(out, *r.Landing)
 		}
 	}
+	for i := range s.spec.Paths {
+		out = append(out, s.way(i)...)
+	}
 	return out
 }
 
-// matters is the part of the plan with the releases and landings. Without any it is
+// matters is the part of the plan with the releases, landings and paths. Without any it is
 // empty. A landing more than half a lap away would shrink the others to dots: its arrow
 // runs out of the window, unless all are like that, and the whole deck is shown.
 func (s *plan) matters() (a area) {
 	c := s.spec.circumference()
-	near := len(s.spec.Releases) == 0
+	near := s.addWays(&a) || len(s.spec.Releases)+len(s.spec.Paths) == 0
 	for _, r := range s.spec.Releases {
 		a.add(r.At)
 		switch {

@@ -68,12 +68,13 @@ func (s *plan) paint(p *pad) {
 		s.paintShape(p, shape)
 	}
 	p.rect(s.win, penFrame)
+	s.paintPaths(p)
 	for _, r := range s.spec.Releases {
 		s.paintRelease(p, r)
 	}
 	s.pl.draw(p)
 	s.paintList(p)
-	s.drawStrip(p, "spinward", "+axial", spinStatement(s.spec.Spin)+s.cropStatement())
+	s.drawStrip(p, "spinward", "+axial", spinStatement(s.spec.Spin)+s.cropStatement()+notNamed(s.lost))
 	s.sheet.draw(p)
 }
 

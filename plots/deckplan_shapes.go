@@ -115,7 +115,11 @@ func (s *plan) label() {
 			s.nameLine(shape.path, words)
 		}
 	}
-	s.pl.solve()
+	s.labelPaths()
+	lost := s.pl.solve()
+	if len(s.spec.Paths) > 0 {
+		s.lost = lost
+	}
 }
 
 // arrows are the visible pieces of the line from a release to its landing, on the page.

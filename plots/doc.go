@@ -2,8 +2,9 @@
 // into drawings. It knows no models and no physics.
 //
 // SideView and InertialView show one release, on board and from outside; DeflectionChart
-// its apparent deflection, or that of several; DeckPlan one deck unrolled, with landings;
-// LoadsChart what a crew path does to the person. Each takes a spec of plain numbers,
+// its apparent deflection, or that of several; DeckPlan one deck unrolled, with landings
+// and crew paths; PathView a crew path with the person on it; LoadsChart what it does to
+// the person. Each takes a spec of plain numbers,
 // names and outlines, and refuses what cannot be drawn.
 //
 // # The language of the figures
@@ -14,6 +15,9 @@
 //   - structure is drawn in thin outlines, solids in a light tint;
 //   - one strong line is what moves, and a phase other than flight is dashed;
 //   - a release is an open circle, a landing a full one, a resting place a square;
+//   - a crew path starts at a diamond and ends with an arrowhead. The person is a thin
+//     line with a dot for the head, and a thin arrow from the feet is a force, at a scale
+//     that is stated as that of lengths is;
 //   - a dimension line with arrows and a value gives what the reader came for;
 //   - a chain line is a plumb line, a dashed thin one the uniform-gravity path;
 //   - things are named where they stand, not in a legend, and no name lies on another;

@@ -79,9 +79,13 @@ func (s *scene) axisShown() bool {
 
 // statement is what stands below the view, with the labels that found no place in it.
 func (s *scene) statement(more string) string {
-	words := spinStatement(s.head.spin) + more
-	if len(s.lost) > 0 {
-		words += " Not named above: " + strings.Join(s.lost, "; ") + "."
+	return spinStatement(s.head.spin) + more + notNamed(s.lost)
+}
+
+// notNamed says which labels found no place.
+func notNamed(lost []string) string {
+	if len(lost) == 0 {
+		return ""
 	}
-	return words
+	return " Not named above: " + strings.Join(lost, "; ") + "."
 }

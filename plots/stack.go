@@ -10,6 +10,7 @@ type StackChartSpec struct {
 	Title, Desc, Notes string // Desc is for readers who cannot see the figure; Notes may be empty
 
 	Spin   float64   // rad/s; negative: the floor moves antispinward
+	Spins  string    // stands in place of what is said of the spin, where it varies; may be empty
 	Axis   string    // what runs along, with its unit
 	X      []float64 // never decreasing; at least two different
 	Legs   []LegSpan // stretches of X with names, in their order

@@ -11,7 +11,7 @@ import (
 // loads is a stack of panels at work.
 type loads struct {
 	sheet
-	spin   float64
+	spin   string // what is said of it
 	axis   string
 	panels []*panel
 	legs   []legMark
@@ -32,7 +32,7 @@ const (
 )
 
 func newLoads(spec StackChartSpec, panels []*panel) *loads {
-	c := &loads{spin: spec.Spin, axis: spec.Axis, panels: panels}
+	c := &loads{spin: spec.spin(), axis: spec.Axis, panels: panels}
 	plan := sheetPlan{title: spec.Title, notes: spec.Notes, strip: true, upright: len(panels) >= uprightFrom}
 	numbered := false
 	rows := 0
@@ -50,6 +50,14 @@ func newLoads(spec StackChartSpec, panels []*panel) *loads {
 		}
 	}
 	return c
+}
+
+// spin is what is said of the spin.
+func (s StackChartSpec) spin() string {
+	if s.Spins != "" {
+		return clean(s.Spins)
+	}
+	return spinStatement(s.Spin)
 }
 
 // stack sets the panels below each other, all right of the widest number.
@@ -129,7 +137,7 @@ func (c *loads) paint(p *pad) {
 	}
 	at := xy((last.win.Min.X+last.win.Max.X).Points()/2, last.win.Min.Y.Points()-axisBelow+3)
 	p.text(text{s: clean(c.axis), at: at, along: 0.5, size: sizeLabel, ink: inkText})
-	c.say(p, spinStatement(c.spin), c.strip.Min.X.Points()-12, c.strip.Max.X.Points())
+	c.say(p, c.spin, c.strip.Min.X.Points()-12, c.strip.Max.X.Points())
 	c.sheet.draw(p)
 }
 

@@ -109,7 +109,7 @@ func TestWildInputsNeverPanic(t *testing.T) {
 		}
 	}
 	if drawn < rounds {
-		t.Errorf("only %d of %d figures were drawn", drawn, 5*rounds)
+		t.Errorf("only %d of %d figures were drawn", drawn, 6*rounds)
 	}
 }
 
@@ -128,6 +128,8 @@ func wildFigures(w wild) []func() (*Figure, error) {
 		Fixtures: []PlanFixture{{Name: "f", Path: []Point{w.point(), w.point(), w.point()}}},
 		Releases: []PlanRelease{{Name: "r", At: w.point(), Landing: w.place()}, {Name: "q", At: w.point(), Landing: w.place()}},
 	}
+	crew := wildPath(w)
+	deck.Paths = wildPlanPaths(w)
 	n := w.IntN(9)
 	deflections := DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", w.times(n), w.list(n), w.list(n)}, {"b", w.times(n), w.list(n), w.list(n)}}}
 	loads := LoadsChartSpec{
@@ -137,6 +139,6 @@ func wildFigures(w wild) []func() (*Figure, error) {
 	return []func() (*Figure, error){
 		func() (*Figure, error) { return SideView(side) }, func() (*Figure, error) { return InertialView(inertial) },
 		func() (*Figure, error) { return DeckPlan(deck) }, func() (*Figure, error) { return DeflectionChart(deflections) },
-		func() (*Figure, error) { return LoadsChart(loads) },
+		func() (*Figure, error) { return LoadsChart(loads) }, func() (*Figure, error) { return PathView(crew) },
 	}
 }
