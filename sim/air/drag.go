@@ -17,13 +17,19 @@ type Law interface {
 // It holds to about 6 % for Re < 3e5, below the drag crisis.
 type CliftGauvin struct{}
 
+// Constants of the law, by Cd Re.
+const (
+	stokes     = 24    // at rest
+	formFactor = 42500 // of the fall of form drag at low speeds
+)
+
 // CdRe implements [Law].
 func (CliftGauvin) CdRe(re float64) float64 {
 	if re == 0 {
-		return 24
+		return stokes
 	}
 	log := math.Log(re)
-	return 24*(1+0.15*math.Exp(0.687*log)) + 0.42*re/(1+42500*math.Exp(-1.16*log))
+	return stokes*(1+0.15*math.Exp(0.687*log)) + 0.42*re/(1+formFactor*math.Exp(-1.16*log))
 }
 
 // Constant is a drag coefficient that does not depend on the speed: for a
@@ -41,6 +47,9 @@ type Drag struct {
 	// mu A/(2 D) and reynolds = rho D/mu.
 	viscous  float64 // kg/s
 	reynolds float64 // s/m
+	// The curve of the law, nil for another, and reynolds^2.
+	curve     *curve
+	reynolds2 float64 // s^2/m^2
 }
 
 // NewDrag gives the drag of a body of the given diameter (m), which sets the
@@ -53,7 +62,13 @@ func NewDrag(a Air, law Law, diameter, area float64) Drag {
 	if a.Vacuum() || area == 0 || diameter == 0 {
 		return Drag{}
 	}
-	return Drag{law: law, viscous: a.Viscosity * area / (2 * diameter), reynolds: a.Density * diameter / a.Viscosity}
+	d := Drag{law: law, viscous: a.Viscosity * area / (2 * diameter), reynolds: a.Density * diameter / a.Viscosity}
+	d.reynolds2 = d.reynolds * d.reynolds
+	// An infinite square would make rest a NaN.
+	if law == (CliftGauvin{}) && !math.IsInf(d.reynolds2, 0) {
+		d.curve = sphere()
+	}
+	return d
 }
 
 // None says whether there is no drag at any speed.
@@ -67,6 +82,16 @@ func (d *Drag) PerVelocity(speed float64) float64 {
 		return 0
 	}
 	return d.viscous * d.law.CdRe(d.reynolds*speed)
+}
+
+// PerVelocity2 is [Drag.PerVelocity] by the square of the speed, m^2/s^2. For
+// the law of a sphere it is several times faster, and within 1e-15 of the law
+// as printed: closer than the formula in floats comes.
+func (d *Drag) PerVelocity2(speedSquared float64) float64 {
+	if d.curve != nil {
+		return d.viscous * d.curve.at(d.reynolds2*speedSquared)
+	}
+	return d.PerVelocity(math.Sqrt(speedSquared))
 }
 
 // SphereArea is the area of a sphere across the motion, m^2.
