@@ -3,6 +3,7 @@ package scenarios_test
 import (
 	"flag"
 	"os"
+	"path/filepath"
 	"strings"
 	"testing"
 
@@ -27,7 +28,17 @@ func load(name string, src []byte, opt scenarios.Options) error {
 
 // TestBadFiles holds every refused file against the exact words of its error.
 func TestBadFiles(t *testing.T) {
-	const path = "testdata/bad.txtar"
+	paths, err := filepath.Glob("testdata/bad*.txtar")
+	if err != nil || len(paths) < 2 {
+		t.Fatal(paths, err)
+	}
+	for _, path := range paths {
+		badFiles(t, path)
+	}
+}
+
+func badFiles(t *testing.T, path string) {
+	t.Helper()
 	ar, err := txtar.ParseFile(path)
 	if err != nil {
 		t.Fatal(err)

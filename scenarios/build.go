@@ -81,6 +81,9 @@ func (b *builder) build(o *object, files reading) {
 		b.in.Spacings = append(b.in.Spacings, model.Spacing{Name: p.str("name"), Passage: p.str("passage"), Body: p.str("body"),
 			MaxSpeed: p.num("max_speed"), Source: p.str("source")})
 	}
+	for _, s := range o.subs("scatter") {
+		b.in.Scatters = append(b.in.Scatters, b.scatter(s, files))
+	}
 	b.settings(o.sub("solver"), o.sub("output"))
 }
 

@@ -318,7 +318,11 @@ func TestScenario(t *testing.T) {
 	const src = "format = 1\n" + ring + `[[sweep]]
 name = "s"
 key = "habitat.spin"
-measures = "landings.offset"
+values = ["4 rpm"]
+measures = "habitat.rim_speed"
+[[release]]
+name = "r"
+at = { height = "1 m" }
 [[scatter]]
 name = "c"
 of = "r"

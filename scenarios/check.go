@@ -179,7 +179,7 @@ func (c *checker) value(n *node, k *key, path string) *value {
 		v.flag, ok = n.flag, c.is(n, isBool, "true or false", path)
 	case wantTexts:
 		v.texts, ok = c.texts(n, k, path)
-	case wantList, wantBounds:
+	case wantList, wantBounds, wantNumbers:
 		v.list, ok = c.list(n, k, path)
 	case wantTable:
 		if ok = c.is(n, isTable, "a table in braces or under its own header", path); ok {
@@ -192,7 +192,9 @@ func (c *checker) value(n *node, k *key, path string) *value {
 	case wantBound:
 		v.quantity, ok = c.bound(n, path)
 	case wantOpen:
-		ok = c.is(n, isTable, "a table", path)
+		if ok = c.is(n, isTable, "a table", path); ok {
+			v.sub = c.free(n, k.free, path)
+		}
 	}
 	if !ok {
 		return nil
@@ -419,9 +421,12 @@ func (c *checker) list(n *node, k *key, path string) ([]quantity, bool) {
 	for i, item := range n.items {
 		var ok bool
 		at := fmt.Sprintf("%s[%d]", path, i)
-		if k.want == wantBounds {
-			out[i], ok = c.bound(item, at)
-		} else {
+		switch k.want {
+		case wantBounds:
+			ok = c.loose(item, at)
+		case wantNumbers:
+			out[i].si, ok = c.number(item, k, at)
+		default:
 			out[i], ok = c.quantity(item, k, at)
 		}
 		good = good && ok

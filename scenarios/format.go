@@ -301,22 +301,24 @@ var scatter = &section{name: "a scatter", doc: "A release many times, its keys v
 	keys: []key{
 		title(),
 		text("of", "name of the release").need(),
-		{name: "samples", want: wantInteger, span: span{low: 1, high: 1e8}, required: true, doc: "how many"},
+		{name: "samples", want: wantInteger, span: span{low: 1, high: 1e7}, required: true, doc: "how many; each takes about 100 bytes of memory"},
 		word("sampling", `"random"`, "how they are spread", "random", "latin_hypercube", "halton"),
-		{name: "vary", want: wantOpen, required: true, doc: "keys of the release and how each varies"},
+		{name: "vary", want: wantOpen, free: vary, required: true, doc: "keys of the release and how each varies"},
 	}}
 
-var sweep = &section{name: "a sweep", doc: "A key stepped through a range.",
+var sweep = &section{name: "a sweep", doc: "A key stepped through a range or a list of values, or two keys through all pairs of theirs. A point that is impossible has a row without measures. Of several rows, as along a crew path or of a let-go series, a measure is the value of the greatest magnitude, of clearance the least.",
 	keys: []key{
 		title(),
-		text("key", "the key that is stepped, as in --set").need(),
+		text("key", "the key that is stepped, as in --set; it must hold a number or a quantity").need(),
 		bound("from", "first value"), bound("to", "last value"),
-		{name: "count", want: wantInteger, span: span{low: 1, high: 1e6}, doc: "how many values"},
+		{name: "count", want: wantInteger, span: span{low: 1, high: 1e6}, doc: "how many values, evenly spaced"},
 		{name: "values", want: wantBounds, doc: "the values, in place of from, to and count"},
 		text("key2", "a second key"),
 		bound("from2", "its first value"), bound("to2", "its last value"),
 		{name: "count2", want: wantInteger, span: span{low: 1, high: 1e6}, doc: "how many of its values"},
-		texts("measures", "what is recorded: table.column").need(),
+		{name: "values2", want: wantBounds, doc: "its values, in place of from2, to2 and count2"},
+		texts("measures", "what is recorded: table.column; .min or .max behind it takes that of several rows").need(),
+		texts("of", "what the measures are of: release.NAME, path.NAME or habitat; * stands for anything; or a list; a column each").or("the release or crew path that a key names, else all"),
 	}}
 
 var target = &section{name: "a target", doc: "A station, or a point of a moving person.",

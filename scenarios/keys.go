@@ -19,9 +19,10 @@ const (
 	wantTables               // a list of tables of the section, in double brackets
 
 	wantWordOrQuantity
-	wantBound  // a quantity of any dimension, or a bare number
-	wantOpen   // a table whose keys are free
-	wantBounds // a list of bounds
+	wantBound   // a quantity of any dimension, or a bare number
+	wantOpen    // a table whose keys may hold points
+	wantNumbers // a list of count bare numbers
+	wantBounds  // a list of what other keys hold: texts, numbers, true or false
 )
 
 // span is a range of values, in SI.
@@ -46,6 +47,7 @@ type key struct {
 	words    []string
 	count    int
 	sub      *section
+	free     *section // of wantOpen: what its keys hold
 	required bool
 	group    string // of the keys of a group at most one may be given
 	deflt    string // in words; for the reader

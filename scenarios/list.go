@@ -56,18 +56,30 @@ func listColumn(name string) int {
 
 // list reads a release list: RFC 4180, one header row.
 func (b *builder) list(o *object, files reading) {
-	name := o.str("file")
-	at, key := o.at("file"), join(o.path, "file")
-	if o.vals["file"] == nil {
+	src, ok := b.contents(o, "file", files)
+	if !ok {
 		return
+	}
+	l := listReader{b: b, o: o, content: newContent(o.str("file"), src)}
+	l.csv = csv.NewReader(bytes.NewReader(l.src))
+	l.csv.ReuseRecord = true
+	l.all()
+}
+
+// contents reads the file that a key names.
+func (b *builder) contents(o *object, k string, files reading) ([]byte, bool) {
+	name := o.str(k)
+	at, key := o.at(k), join(o.path, k)
+	if o.vals[k] == nil {
+		return nil, false
 	}
 	if name == "" || strings.ContainsFunc(name, func(r rune) bool { return !unicode.IsPrint(r) }) {
 		b.fault(at, key, "", "wants the name of a CSV file, got %q", shorten(name))
-		return
+		return nil, false
 	}
 	if !files.allowOutside && !filepath.IsLocal(filepath.FromSlash(name)) {
 		b.fault(at, key, "--allow-outside permits it", "names a file outside the scenario's folder: %q", shorten(name))
-		return
+		return nil, false
 	}
 	src, err := files.read(name)
 	if err == nil && len(src) > MaxListSize {
@@ -75,13 +87,10 @@ func (b *builder) list(o *object, files reading) {
 	}
 	if err != nil {
 		b.fault(at, key, "", "cannot read %q: %v", shorten(name), plainly(err))
-		return
+		return nil, false
 	}
 	*files.inputs = append(*files.inputs, input(name, src))
-	l := listReader{b: b, o: o, content: newContent(name, src)}
-	l.csv = csv.NewReader(bytes.NewReader(l.src))
-	l.csv.ReuseRecord = true
-	l.all()
+	return src, true
 }
 
 // plainly drops the system call and the path from a file error.

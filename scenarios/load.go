@@ -39,9 +39,12 @@ type Scenario struct {
 	Notes   string
 	Model   *model.Model
 	Studies []Study // declared, in the order of the format and the file
+	Sweeps  []*Sweep
 	Inputs  []Input // the file itself first
 
 	root *node
+	read func(path string) ([]byte, error) // once each
+	open bool                              // files outside the scenario's folder are permitted
 	keys []string
 	rows []row
 }
@@ -57,29 +60,43 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 	if root == nil {
 		return nil, errs
 	}
-	errs = append(errs, apply(root, opt.Sets)...)
-	b := &builder{}
-	o := b.object(root, file, "")
-	sc := &Scenario{Name: name, Title: o.str("title"), Notes: o.str("notes"), Studies: studies(o), Inputs: []Input{input(name, src)}, root: root}
-	if sc.Title == "" {
-		sc.Title = strings.TrimSuffix(path.Base(name), ".toml")
-		b.in.Title = sc.Title
+	sc := &Scenario{Name: name, Inputs: []Input{input(name, src)}, root: root, read: readOrNot(opt.ReadFile), open: opt.AllowOutside}
+	if root.kids["sweep"] != nil {
+		sc.read = remembered(sc.read)
 	}
-	b.build(o, reading{read: readOrNot(opt.ReadFile), allowOutside: opt.AllowOutside, inputs: &sc.Inputs})
+	if err := sc.finish(append(errs, apply(root, opt.Sets)...)); err != nil {
+		return nil, err
+	}
+	return sc, nil
+}
+
+// finish makes the scenario of its tree, which had faults before. The error is
+// an [ErrorList].
+func (sc *Scenario) finish(errs ErrorList) error {
+	b := &builder{}
+	o := b.object(sc.root, file, "")
+	sc.Title, sc.Notes, sc.Studies, sc.Sweeps = o.str("title"), o.str("notes"), studies(o), b.sweeps(o)
+	if sc.Title == "" {
+		sc.Title = strings.TrimSuffix(path.Base(sc.Name), ".toml")
+	}
+	b.build(o, reading{read: sc.read, allowOutside: sc.open, inputs: &sc.Inputs})
 	b.in.Title = sc.Title
 	if errs = append(errs, b.errs...); len(errs) > 0 {
-		return nil, errs.sorted()
+		return errs.sorted()
 	}
 	sc.keys, sc.rows = b.keys, b.rows
 	m, problems := model.New(b.in)
 	if len(problems) > 0 {
-		return nil, sc.Problems(problems)
+		return sc.Problems(problems)
 	}
 	if m, problems = sc.expand(m, b.in); len(problems) > 0 {
-		return nil, sc.Problems(problems)
+		return sc.Problems(problems)
 	}
 	sc.Model = m
-	return sc, nil
+	if errs = sc.pick(); len(errs) > 0 {
+		return errs.sorted()
+	}
+	return nil
 }
 
 // expand puts the releases of let-go series in the place of those that declare
@@ -137,8 +154,14 @@ func (sc *Scenario) find(key string) (place, string) {
 		}
 	}
 	n, depth := sc.root, 0
-	for _, p := range keyParts(key) {
+	parts := keyParts(key)
+	for i := 0; i < len(parts); i++ {
+		p := parts[i]
 		kid := n.kids[p.name]
+		if kid == nil && i+1 < len(parts) {
+			i++
+			kid = n.kids[p.name+"."+parts[i].name] // a key that holds a point
+		}
 		if kid == nil {
 			break
 		}

@@ -37,7 +37,7 @@ func Reference() string {
 			}
 		}
 	}
-	for _, s := range []*section{leg, walkTo, rideTo, carryKeys, station, throwKeys, velocityKeys, carriedKeys, reach, doorway, target, region} {
+	for _, s := range []*section{leg, walkTo, rideTo, carryKeys, station, throwKeys, velocityKeys, carriedKeys, reach, doorway, vary, spreadOf(length), target, region} {
 		write("*"+s.name+"*", s)
 	}
 	return b.String()
@@ -85,7 +85,9 @@ func (k *key) holds() string {
 	case wantBound:
 		return "quantity or number"
 	case wantOpen:
-		return "table"
+		return "*" + k.free.name + "*"
+	case wantNumbers:
+		return fmt.Sprintf("list of %d numbers", k.count)
 	}
 	return "text"
 }

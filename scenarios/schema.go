@@ -75,7 +75,8 @@ func valueSchema(k *key) schema {
 		}
 		return out
 	case wantBounds:
-		return schema{"type": "array", "items": boundSchema(), "minItems": 1}
+		any := []schema{{"type": "string"}, {"type": "number"}, {"type": "boolean"}}
+		return schema{"type": "array", "items": schema{"oneOf": any}, "minItems": 1}
 	case wantTable:
 		return objectSchema(k.sub)
 	case wantTables:
@@ -85,7 +86,9 @@ func valueSchema(k *key) schema {
 	case wantBound:
 		return boundSchema()
 	case wantOpen:
-		return schema{"type": "object"}
+		return objectSchema(k.free)
+	case wantNumbers:
+		return schema{"type": "array", "items": k.span.schema("number"), "minItems": k.count, "maxItems": k.count}
 	}
 	return schema{"type": "string"}
 }

@@ -249,6 +249,7 @@ func eachSection(f func(*section)) {
 		f(s)
 		for i := range s.keys {
 			walk(s.keys[i].sub)
+			walk(s.keys[i].free)
 		}
 	}
 	walk(file)
@@ -283,6 +284,8 @@ func TestSchemaHasEveryKey(t *testing.T) {
 			switch k.want {
 			case wantTable:
 				compare(path+"."+k.name, k.sub, p)
+			case wantOpen:
+				compare(path+"."+k.name, k.free, p)
 			case wantTables:
 				compare(path+"."+k.name, k.sub, p["items"].(map[string]any))
 			}

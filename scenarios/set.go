@@ -144,7 +144,7 @@ func put(at *node, s *section, parts []string, v *node, where place) (Error, boo
 		at.put(name, v)
 		return Error{}, true
 	case k.want == wantOpen:
-		return putOpen(at, name, rest, v, where), true
+		return putOpen(at, k, rest, v, where)
 	case k.want == wantTables:
 		return putEntry(at.kids[name], k, rest, v, where)
 	case k.want != wantTable:
@@ -174,15 +174,33 @@ func putEntry(list *node, k *key, parts []string, v *node, where place) (Error, 
 	return put(item, k.sub, parts[1:], v, where)
 }
 
-// putOpen sets a key of a free table.
-func putOpen(at *node, name string, rest []string, v *node, where place) Error {
-	kid, ok := at.kids[name]
-	if !ok || kid.kind != isTable {
-		kid = newTable(where)
-		at.put(name, kid)
+// putOpen sets a key of a table whose keys may hold points: the longest that
+// there is, and what is left of the setting's key below it.
+func putOpen(at *node, k *key, parts []string, v *node, where place) (Error, bool) {
+	table, ok := at.kids[k.name]
+	if !ok || table.kind != isTable {
+		table = newTable(where)
 	}
-	kid.put(strings.Join(rest, "."), v)
-	return Error{}
+	for n := len(parts) - 1; n > 0; n-- {
+		name := strings.Join(parts[:n], ".")
+		sub := k.free.find(name)
+		if sub == nil {
+			continue
+		}
+		kid, ok := table.kids[name]
+		if !ok || kid.kind != isTable {
+			kid = newTable(where)
+		}
+		fault, ok := put(kid, sub.sub, parts[n:], v, where)
+		if ok {
+			table.put(name, kid)
+			at.put(k.name, table)
+		}
+		return fault, ok
+	}
+	table.put(strings.Join(parts, "."), v)
+	at.put(k.name, table)
+	return Error{}, true
 }
 
 // named finds the entry of a list by its name, or by its number from 0 where

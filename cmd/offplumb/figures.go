@@ -6,6 +6,7 @@ import (
 	"math"
 	"strings"
 
+	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/plots"
 	"offplumb/sim/flight"
 	"offplumb/sim/frame"
@@ -43,14 +44,10 @@ func (j *job) figures() ([]task, error) {
 		}
 	}
 	all = append(all, j.sharedFigures()...)
-	var paths table.Namer
-	for i := range j.paths {
-		name := paths.Name(j.paths[i].plan.Path.Name)
-		if !j.paths[i].skipped {
-			all = append(all, drawing{"loads-" + name, "loads", j.paths[i].plan.Path.Name, func() (*plots.Figure, error) { return j.loadsChart(i) }})
-		}
-	}
+	all = append(all, j.pathFigures()...)
 	all = append(all, j.studyFigures()...)
+	all = append(all, scatterFigures(j)...)
+	all = append(all, sweepFigures(j)...)
 	return j.drawn(all), nil
 }
 
@@ -101,6 +98,7 @@ func moments(t *flight.Track, spin, end float64) []float64 {
 // seen is where a body is in the habitat at a moment.
 type seen struct {
 	t     float64
+	pos   r3.Vec
 	place frame.Polar // Phi counts from the release, and is not wrapped
 	phase string
 }
@@ -111,9 +109,10 @@ func (j *job) seenFrom(t *flight.Track, end float64) []seen {
 	var out []seen
 	for _, at := range moments(t, m.Habitat.Spin, end) {
 		a := m.Motion.At(t.Begin + at)
-		p := frame.PolarOf(a.In(t.At(at).Pos))
+		pos := a.In(t.At(at).Pos)
+		p := frame.PolarOf(pos)
 		p.Phi = w.To(at)
-		out = append(out, seen{at, p, t.Phases[t.PhaseAt(at)].Kind.String()})
+		out = append(out, seen{at, pos, p, t.Phases[t.PhaseAt(at)].Kind.String()})
 	}
 	return out
 }
@@ -125,18 +124,68 @@ func onSide(r, dist, phi float64) plots.Point {
 	return plots.Point{X: dist * sin, Y: r - dist*cos}
 }
 
+// side is how a side view looks at a release: from the foot of its plumb line,
+// with the floor below.
+type side struct {
+	measure.Ground
+	deck float64 // m, radius of the deck; 0 of a flat floor
+	foot float64 // m, along a flat floor, of the plumb foot
+	turn float64 // rad, of outlines
+	by   plots.Point
+}
+
+func (j *job) sideOf(t *flight.Track) side {
+	s := side{Ground: measure.GroundOf(j.model(), t)}
+	if f := s.Flat; f != nil {
+		s.foot = f.Radius * math.Tan(t.Start.Phi-f.Phi)
+		s.turn, s.by = -math.Pi/2-f.Phi, plots.Point{X: -s.foot, Y: f.Radius}
+		return s
+	}
+	s.deck = s.Radius
+	s.turn, s.by = -math.Pi/2-t.Start.Phi, plots.Point{Y: s.Radius}
+	return s
+}
+
+// point gives the place of a side view of a body that is seen.
+func (s *side) point(at seen) plots.Point {
+	if s.Flat != nil {
+		x, _, h := s.Place(at.pos, 0)
+		return plots.Point{X: x - s.foot, Y: h}
+	}
+	return onSide(s.deck, at.place.R, at.place.Phi)
+}
+
+// uniform gives the uniform-gravity path, which is one over a flat deck, bent
+// onto a curved one. One that rises to the axis cannot be drawn so.
+func (s *side) uniform(u *measure.Uniform) []plots.Point {
+	if !u.Lands || u.Top() >= s.Radius {
+		return nil
+	}
+	var out []plots.Point
+	for k := 0.0; k <= trackPoints; k++ {
+		along, _, h := u.At(u.Time * k / trackPoints)
+		if s.Flat == nil {
+			out = append(out, onSide(s.deck, s.deck-h, along/s.deck))
+			continue
+		}
+		// On a flat floor it falls along the plumb line, which leans.
+		sin, cos := math.Sincos(s.Start.Phi - s.Flat.Phi)
+		out = append(out, plots.Point{X: cos*along - sin*h, Y: sin*along + cos*h})
+	}
+	return out
+}
+
 func (j *job) sideView(i int) (*plots.Figure, error) {
 	m, r := j.model(), &j.results[i]
 	t, l := r.Track, &r.Landing
-	deck := &m.Decks[t.Start.Deck]
-	spec := plots.SideViewSpec{Title: sideTitle(l), Spin: m.Habitat.Spin, Deck: deck.Radius, Body: t.Body.Diameter / 2,
-		Outlines: j.section(t.Start.Z, -math.Pi/2-t.Start.Phi, plots.Point{Y: deck.Radius}), Surface: l.Surface, Offset: l.Offset, Deflection: l.Deflection,
-		Notes: j.sideNotes(l, deck)}
-	for _, s := range j.seenFrom(t, t.End) {
-		p := onSide(deck.Radius, s.place.R, s.place.Phi)
-		spec.Track = append(spec.Track, plots.TrackPoint{T: s.t, X: p.X, Y: p.Y, Phase: s.phase})
+	s := j.sideOf(t)
+	spec := plots.SideViewSpec{Title: sideTitle(l), Spin: m.Habitat.Spin, Deck: s.deck, Body: t.Body.Diameter / 2,
+		Outlines: j.section(t.Start.Z, s.turn, s.by), Surface: l.Surface, Offset: l.Offset, Deflection: l.Deflection,
+		Notes: j.sideNotes(l, &s), Uniform: s.uniform(&l.Uniform)}
+	for _, at := range j.seenFrom(t, t.End) {
+		p := s.point(at)
+		spec.Track = append(spec.Track, plots.TrackPoint{T: at.t, X: p.X, Y: p.Y, Phase: at.phase})
 	}
-	spec.Uniform = uniformPath(&l.Uniform, deck.Radius)
 	if l.Outcome == flight.Landed {
 		spec.Landing = landingOn(spec.Track, l.Time)
 	}
@@ -158,20 +207,6 @@ func landingOn(track []plots.TrackPoint, time float64) *plots.Point {
 	return nil
 }
 
-// uniformPath bends the uniform-gravity path, which is one over a flat deck,
-// onto a deck of radius r (m). One that rises to the axis cannot be drawn so.
-func uniformPath(u *measure.Uniform, r float64) []plots.Point {
-	if !u.Lands || u.Top() >= r {
-		return nil
-	}
-	var out []plots.Point
-	for k := 0.0; k <= trackPoints; k++ {
-		s, _, h := u.At(u.Time * k / trackPoints)
-		out = append(out, onSide(r, r-h, s/r))
-	}
-	return out
-}
-
 func sideTitle(l *measure.Landing) string { return l.Release + ": " + outcomeWords(l) }
 
 // outcomeWords tells a landing in a few words.
@@ -180,7 +215,7 @@ func outcomeWords(l *measure.Landing) string {
 	case l.Outcome == flight.Lost:
 		return "leaves the habitat after " + withUnit(l.Time, "s")
 	case l.Outcome == flight.TimeUp:
-		return "touches nothing in " + withUnit(l.Time, "s")
+		return "no landing within " + withUnit(l.Time, "s")
 	case math.IsNaN(l.Offset) || sigfig(l.Offset, 3) == "0":
 		return "lands on " + l.Surface + ", on the plumb line"
 	}
@@ -196,11 +231,11 @@ func sentence(l *measure.Landing) string {
 	return s
 }
 
-func (j *job) sideNotes(l *measure.Landing, deck *model.Deck) string {
-	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on deck %q: %s g.", deck.Name, table.Round(j.model().Gravity(deck.Radius)/model.StandardGravity, 3))
+func (j *job) sideNotes(l *measure.Landing, on *side) string {
+	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on %q: %s g.", on.Name, table.Round(l.Uniform.Gravity/model.StandardGravity, 3))
 	switch {
 	case !l.Uniform.Lands:
-	case l.Uniform.Top() >= deck.Radius:
+	case l.Uniform.Top() >= on.Radius:
 		s += " The path under uniform gravity of that strength would rise beyond the axis and is not drawn."
 	default:
 		s += " Dashed: the same release under uniform gravity of that strength, without air."
@@ -211,13 +246,13 @@ func (j *job) sideNotes(l *measure.Landing, deck *model.Deck) string {
 func (j *job) inertialView(i int) (*plots.Figure, error) {
 	m, r := j.model(), &j.results[i]
 	t, l := r.Track, &r.Landing
-	deck := &m.Decks[t.Start.Deck]
-	foot := frame.Polar{R: deck.Radius, Phi: t.Start.Phi}.Vec()
+	g := measure.GroundOf(m, t)
+	foot := frame.Polar{R: g.Foot(t.Start.Phi), Phi: t.Start.Phi}.Vec()
 	turned := m.Habitat.Spin
 	spec := plots.InertialViewSpec{Title: l.Release + ": the same motion from outside, in the inertial frame", Spin: m.Habitat.Spin,
 		Outlines: j.section(t.Start.Z, 0, plots.Point{}), Foot: plots.Point{X: foot.X, Y: foot.Y},
 		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + l.Time), Body: t.Body.Diameter / 2,
-		Surface: l.Surface, Offset: l.Offset, Notes: j.inertialNotes(t, l)}
+		Surface: l.Surface, Offset: l.Offset, Flat: g.Flat != nil, Notes: j.inertialNotes(t, l)}
 	for _, at := range moments(t, m.Habitat.Spin, l.Time) {
 		p := t.At(at).Pos
 		spec.Path = append(spec.Path, plots.TrackPoint{T: at, X: p.X, Y: p.Y, Phase: t.Phases[t.PhaseAt(at)].Kind.String()})

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"offplumb/plots"
 	"offplumb/sim/flight"
@@ -32,24 +33,46 @@ func (j *job) sharedFigures() []drawing {
 		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart(part) }})
 	}
 	var names table.Namer
-	for d := range j.model().Decks {
-		name := names.Name(j.model().Decks[d].Name)
-		if over := j.over(d); len(over) > 0 {
-			out = append(out, drawing{"plan-" + name, "deck plan", j.model().Decks[d].Name, func() (*plots.Figure, error) { return j.deckPlan(d, over) }})
-		}
+	for _, p := range j.plans() {
+		out = append(out, drawing{"plan-" + names.Name(p.ground.Name), "deck plan", p.ground.Name, func() (*plots.Figure, error) { return j.deckPlan(p) }})
 	}
 	return out
 }
 
-// over lists the releases above a deck.
-func (j *job) over(deck int) []int {
-	var out []int
-	for i := range j.results {
-		if j.results[i].Finished() && j.Lets[i].Place.Deck == deck {
-			out = append(out, i)
-		}
+// plan is a floor with the releases over it.
+type plan struct {
+	ground measure.Ground
+	deck   int // of a deck about the axis
+	over   []int
+}
+
+// title says what a plan shows.
+func (p *plan) title() string {
+	if len(p.over) == 0 {
+		return fmt.Sprintf("Crew paths on the plan of %q", p.ground.Name)
 	}
-	return out
+	return fmt.Sprintf("Landings on the plan of %q", p.ground.Name)
+}
+
+// plans lists the floors that releases are over, in the order of the releases.
+func (j *job) plans() []*plan {
+	var out []*plan
+	m := j.model()
+	for i := range j.results {
+		if !j.results[i].Finished() || j.inSeries(j.Lets[i].Release.Name) {
+			continue
+		}
+		let := &j.Lets[i]
+		d := m.DeckBeneath(let.Place.Polar)
+		g := measure.GroundAt(m, let.Place.Polar, d)
+		k := slices.IndexFunc(out, func(p *plan) bool { return p.ground.Name == g.Name })
+		if k < 0 {
+			k = len(out)
+			out = append(out, &plan{ground: g, deck: d})
+		}
+		out[k].over = append(out[k].over, i)
+	}
+	return j.pathPlans(out)
 }
 
 func (j *job) deflectionChart(which []int) (*plots.Figure, error) {
@@ -72,22 +95,55 @@ func (j *job) deflectionChart(which []int) (*plots.Figure, error) {
 // uniform-gravity path at the same time and, after that has landed, at its
 // landing.
 func (j *job) deflection(t *flight.Track, l *measure.Landing) plots.DeflectionSeries {
-	deck := j.model().Decks[t.Start.Deck].Radius
+	g := measure.GroundOf(j.model(), t)
 	out := plots.DeflectionSeries{Name: l.Release}
 	for _, s := range j.seenFrom(t, l.Time) {
 		u, _, _ := l.Uniform.At(math.Min(s.t, l.Uniform.Time))
 		out.Time = append(out.Time, s.t)
-		out.Height = append(out.Height, deck-s.place.R)
-		out.Deflection = append(out.Deflection, deck*s.place.Phi-u)
+		_, _, h := g.Place(s.pos, s.place.Phi)
+		out.Height = append(out.Height, h)
+		out.Deflection = append(out.Deflection, g.Offset(s.place.Phi)-u)
 	}
 	return out
 }
 
-func (j *job) deckPlan(d int, which []int) (*plots.Figure, error) {
+// pathPlans adds the decks that crew paths start on.
+func (j *job) pathPlans(out []*plan) []*plan {
 	m := j.model()
-	deck := &m.Decks[d]
-	spec := plots.DeckPlanSpec{Title: fmt.Sprintf("Landings on the plan of deck %q", deck.Name), Spin: m.Habitat.Spin, Radius: deck.Radius,
-		Round: deck.Whole, Notes: "Deck unrolled, seen from above by someone who stands on it. Open mark: plumb under the release. Numbered mark: plumb under the landing."}
+	for i := range j.paths {
+		d := j.paths[i].plan.Deck
+		if j.paths[i].skipped || !j.paths[i].roams() || m.FlatDeck(d) != nil || slices.ContainsFunc(out, func(p *plan) bool { return p.ground.Flat == nil && p.deck == d }) {
+			continue
+		}
+		out = append(out, &plan{ground: measure.Ground{Name: m.Decks[d].Name, Radius: m.Decks[d].Radius}, deck: d})
+	}
+	return out
+}
+
+func (j *job) deckPlan(p *plan) (*plots.Figure, error) {
+	m := j.model()
+	spec := plots.DeckPlanSpec{Title: p.title(), Spin: m.Habitat.Spin,
+		Notes: "Deck unrolled, seen from above by someone who stands on it. Open mark: plumb under the release. Numbered mark: plumb under the landing."}
+	if f := p.ground.Flat; f != nil {
+		spec.From, spec.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
+	} else {
+		j.deckSheet(&spec, &m.Decks[p.deck], p.deck)
+	}
+	words := ""
+	for _, i := range p.over {
+		spec.Releases = append(spec.Releases, j.planRelease(i, p))
+		words += " " + sentence(&j.results[i].Landing) + "."
+	}
+	if len(p.over) > rowsShown {
+		words = fmt.Sprintf(" %d releases.", len(p.over))
+	}
+	spec.Desc = described("Plan of %q with the landings.%s", p.ground.Name, words)
+	return plots.DeckPlan(spec)
+}
+
+// deckSheet fills in a deck about the axis: its extent, openings and fixtures.
+func (j *job) deckSheet(spec *plots.DeckPlanSpec, deck *model.Deck, d int) {
+	spec.Radius, spec.Round = deck.Radius, deck.Whole
 	if !math.IsInf(deck.Axial[0], 0) {
 		spec.From.Y, spec.To.Y = deck.Axial[0], deck.Axial[1]
 	}
@@ -100,21 +156,16 @@ func (j *job) deckPlan(d int, which []int) (*plots.Figure, error) {
 			Size: plots.Point{X: o.Size[0], Y: o.Size[1]}, Coaming: o.Coaming > 0, Closed: o.Closed})
 	}
 	spec.Fixtures = j.footprints(d)
-	words := ""
-	for _, i := range which {
-		spec.Releases = append(spec.Releases, j.planRelease(i, deck))
-		words += " " + sentence(&j.results[i].Landing) + "."
-	}
-	if len(which) > rowsShown {
-		words = fmt.Sprintf(" %d releases.", len(which))
-	}
-	spec.Desc = described("Plan of deck %q with the landings.%s", deck.Name, words)
-	return plots.DeckPlan(spec)
+	spec.Paths = j.planPaths(d)
 }
 
-func (j *job) planRelease(i int, deck *model.Deck) plots.PlanRelease {
+func (j *job) planRelease(i int, p *plan) plots.PlanRelease {
 	let, l := &j.Lets[i], &j.results[i].Landing
-	out := plots.PlanRelease{Name: l.Release, At: plots.Point{X: deck.Radius * let.Place.Phi, Y: let.Place.Z}, Surface: l.Surface}
+	g := measure.GroundAt(j.model(), let.Place.Polar, p.deck)
+	out := plots.PlanRelease{Name: l.Release, Surface: l.Surface, At: plots.Point{X: g.Radius * let.Place.Phi, Y: let.Place.Z}}
+	if f := g.Flat; f != nil {
+		out.At = plots.Point{X: f.Radius * math.Tan(let.Place.Phi-f.Phi), Y: let.Place.Z - f.Z}
+	}
 	if l.Outcome == flight.Landed && !math.IsNaN(l.Offset) {
 		out.Landing = &plots.Point{X: out.At.X + l.Offset, Y: out.At.Y + l.OffsetAxial}
 	}

@@ -29,6 +29,8 @@ type job struct {
 	letgo     []letGoSeries
 	serial    map[string]bool      // names of the releases in them
 	spacings  [][]measure.Platform // of each spacing of platforms; nil: not asked for
+	sweeps    []sweepResult
+	scatters  []scatterResult
 	verdicts  []measure.Verdict
 	unjudged  []string
 	files     []entry
@@ -80,6 +82,12 @@ func (j *job) choose() error {
 	for _, name := range measure.SeriesNames(j.model()) {
 		known[name] = true
 	}
+	for _, s := range j.Sweeps {
+		known[s.Name] = true
+	}
+	for i := range j.model().Scatters {
+		known[j.model().Scatters[i].Name] = true
+	}
 	for _, name := range j.flags.only {
 		if !known[name] {
 			return wrong(fmt.Errorf("--only: no release, crew path or study named %q", name))
@@ -97,7 +105,13 @@ func (j *job) compute(ctx context.Context, p *progress) (err error) {
 	if err != nil {
 		return err
 	}
-	return j.place(ctx)
+	if err := j.place(ctx); err != nil {
+		return err
+	}
+	if err := j.runScatters(ctx, p); err != nil {
+		return err
+	}
+	return j.runSweeps(ctx, p)
 }
 
 // place finds the platforms.

@@ -19,6 +19,7 @@ type runFlags struct {
 	out       string
 	only      []string
 	jobs      int
+	seed      uint64
 	noFigures bool
 	formats   []string
 	json      bool
@@ -48,6 +49,7 @@ or the scenario is wrong, 3 the run could not be completed.`),
 	fl.StringVar(&f.out, "out", "", "write into this `folder` (default: the scenario's name plus -out)")
 	fl.StringArrayVar(&f.only, "only", nil, "run this release or crew path only: its `NAME`, repeatable")
 	fl.IntVar(&f.jobs, "jobs", runtime.GOMAXPROCS(0), "how many `workers` compute at a time")
+	fl.Uint64Var(&f.seed, "seed", 1, "of the samples of scatters: a whole `number`")
 	fl.BoolVar(&f.noFigures, "no-figures", false, "write no figures")
 	fl.StringSliceVar(&f.formats, "figure-format", []string{"svg"}, "`formats` of the figures: svg, png, pdf, separated by commas")
 	fl.BoolVar(&f.json, "json", false, "print the contents of run.json in place of the summary")

@@ -54,6 +54,7 @@ type inputRecord struct {
 type optionRecord struct {
 	Set  []string `json:"set"`
 	Only []string `json:"only"`
+	Seed uint64   `json:"seed"`
 }
 
 type solverRecord struct {
@@ -111,7 +112,7 @@ type warningRecord struct {
 func (j *job) runJSON(w io.Writer, complete bool) error {
 	m := j.model()
 	r := record{Program: programName, Version: version, Go: runtime.Version(), Complete: complete,
-		Scenario: scenarioOf(j.Scenario), Options: optionRecord{Set: orEmpty(j.flags.sets), Only: orEmpty(j.flags.only)},
+		Scenario: scenarioOf(j.Scenario), Options: optionRecord{Set: orEmpty(j.flags.sets), Only: orEmpty(j.flags.only), Seed: j.flags.seed},
 		Solver: j.solver(m), Habitat: habitatRecord{number(m.Habitat.Spin), number(m.Habitat.FloorRadius), number(m.Gravity(m.Habitat.FloorRadius))},
 		Landings: []landingRecord{}, Paths: []pathRecord{}, Limits: []limitRecord{}, Warnings: []warningRecord{},
 		Caution: caution, Files: j.files}

@@ -27,6 +27,8 @@ func (j *job) summary(w io.Writer) error {
 	j.sumStories(&b)
 	j.sumPaths(&b)
 	j.sumStudies(&b)
+	sumScatter(j, &b)
+	sumSweeps(j, &b)
 	j.sumLimits(&b)
 	if len(j.notes) > 0 {
 		b.WriteString("\nWarnings\n")
@@ -115,7 +117,7 @@ func ending(l *measure.Landing) string {
 	case flight.Lost:
 		return fmt.Sprintf("lost, leaving the hull at %s deg, axial %s m", table.Fixed(l.Place.Phi*180/math.Pi, 1), table.Fixed(l.Place.Z, 1))
 	}
-	return "touched nothing"
+	return "no landing"
 }
 
 // leastShown is the least magnitude shown, in SI: what is below, no reader
@@ -171,7 +173,7 @@ func way(x float64) string {
 func (j *job) sumStories(b *strings.Builder) {
 	var lines []string
 	for i := range j.rests {
-		if r := &j.rests[i]; !j.inSeries(r.Release) && r.Outcome != flight.Landed && (r.Outcome != flight.TimeUp || r.Impacts > 0) {
+		if r := &j.rests[i]; !j.inSeries(r.Release) && r.Outcome != flight.Landed && (r.Outcome != flight.TimeUp || r.Impacts > 0 || r.Slid > 0) {
 			lines = append(lines, wrapped("  "+r.Release+": "+r.Story+".", "    "))
 		}
 	}

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"offplumb/sim/flight"
@@ -36,9 +37,11 @@ func (j *job) warn() {
 	if m.Habitat.Spin == 0 {
 		j.note("habitat", "there is no spin, so nothing falls")
 	}
-	if len(j.Studies) > 0 {
-		j.note("studies", "this version checks the studies of a scenario but does not run them: %s", someNames(studyNames(j)))
+	if names := idleStudies(j); len(names) > 0 {
+		j.note("studies", "this version checks these studies but does not run them: %s", someNames(names))
 	}
+	warnScatters(j)
+	warnSweeps(j)
 	j.warnReleases()
 	j.warnPaths()
 	if len(j.unjudged) > 0 {
@@ -46,9 +49,15 @@ func (j *job) warn() {
 	}
 }
 
-func studyNames(j *job) (out []string) {
+// runStudies are the kinds of studies that run.
+var runStudies = []string{"scatter", "sweep"}
+
+// idleStudies names the studies that do not run.
+func idleStudies(j *job) (out []string) {
 	for _, s := range j.Studies {
-		out = append(out, s.Name)
+		if !slices.Contains(runStudies, s.Kind) {
+			out = append(out, s.Name)
+		}
 	}
 	return out
 }

@@ -119,6 +119,8 @@ func (j *job) tables() []task {
 	out = append(out, tableTask("decks.csv", "decks", "", "A row for each deck.", measure.DeckTable(j.decks)))
 	out = append(out, tableTask("habitat.csv", "habitat", "", "Figures of the habitat as a whole, a single row.", measure.HabitatTable(measure.HabitatOf(j.model(), 0, 0))))
 	out = append(out, j.studyTables()...)
+	out = append(out, scatterTables(j)...)
+	out = append(out, sweepTables(j)...)
 	if len(j.Limits) > 0 {
 		out = append(out, tableTask("limits.csv", "limits", "", "A row for each limit.", measure.LimitTable(j.verdicts)))
 	}

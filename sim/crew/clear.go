@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/sim/frame"
 	"offplumb/sim/geom"
 	"offplumb/sim/model"
 )
@@ -94,14 +95,22 @@ func (p *Plan) Clearances(m *model.Model) []Clearance {
 	return out
 }
 
+// underfoot is the cosine to the upright from which on a surface is one to
+// stand on, to which no room is wanted.
+const underfoot = 0.7
+
 // near looks at the room about the person at a time.
 func (p *Plan) near(m *model.Model, t float64, best []Clearance) {
 	a := p.Crew.Breadth / 2
 	f := p.At(t)
+	up := frame.LocalAt(f.Phi).Up
 	for h := stepOver + a; h <= p.Crew.Stature-f.low.x-a/2; h += bodyStep {
 		pos := f.Point(model.Reach{Height: h}).Pos
 		for g := range m.Interior.Groups() {
 			c := m.Interior.ContactIn(pos, geom.Group(g))
+			if r3.Dot(c.Normal, up) > underfoot {
+				continue
+			}
 			if gap := c.Gap - a; c.Surface >= 0 && gap < best[c.Surface].Gap {
 				best[c.Surface].Gap, best[c.Surface].Time = gap, t
 			}

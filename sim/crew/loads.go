@@ -44,7 +44,7 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 	a := m.Motion.At(p.Path.Time + t)
 	f := p.At(t)
 	out := Loads{Time: t, Feet: f}
-	out.GravityFeet = r3.Norm(felt(&a, f.Body(0)))
+	out.GravityFeet = r3.Norm(felt(&a, f.Point(model.Reach{}))) // they stay where a sitting trunk sinks
 	out.GravityHead = r3.Norm(felt(&a, f.Body(p.Crew.Head*p.Crew.Stature)))
 	out.GravityDifference = out.GravityFeet - out.GravityHead
 	waist := f.Body(p.Crew.Waist * p.Crew.Stature)
@@ -56,7 +56,7 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 	ap := a.Apparent(waist.State)
 	out.Coriolis, out.Euler = r3.Norm(ap.Coriolis), r3.Norm(ap.Euler)
 	out.stand(gravity, force, a.Omega, f)
-	out.climb(p.legs[f.Leg].spec, force, &f)
+	out.climb(&p.legs[f.Leg], force, &f)
 	out.cross(r3.Cross(a.In(a.Omega), f.HeadTurn), f.Phi)
 	return out
 }
@@ -98,19 +98,16 @@ func (l *Loads) stand(gravity, force r3.Vec, omega r3.Vec, f Feet) {
 
 // climb splits the force along the ladder and across it. The ladder is in
 // front of the person, who faces it.
-func (l *Loads) climb(spec *model.Leg, force r3.Vec, f *Feet) {
+func (l *Loads) climb(leg *leg, force r3.Vec, f *Feet) {
 	l.AlongLadder, l.Pull = math.NaN(), math.NaN()
-	if spec.Kind != model.Climb && spec.Kind != model.Descend {
+	if leg.spec.Kind != model.Climb && leg.spec.Kind != model.Descend {
 		return
 	}
 	local := frame.LocalAt(f.Phi)
-	ahead := facing(spec.Facing, local)
-	sin, cos := 1.0, 0.0
-	if spec.Pitch > 0 {
-		sin, cos = math.Sincos(spec.Pitch)
+	rise, into := local.Up, facing(leg.spec.Facing, local)
+	if c, ok := leg.course.(line); ok {
+		rise, into = c.rise, c.into
 	}
-	rise := r3.Add(r3.Scale(sin, local.Up), r3.Scale(cos, ahead))
-	into := r3.Sub(r3.Scale(sin, ahead), r3.Scale(cos, local.Up))
 	l.AlongLadder, l.Pull = -r3.Dot(force, rise), -r3.Dot(force, into)
 }
 

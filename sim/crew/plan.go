@@ -136,11 +136,15 @@ func (b *builder) follow(key string, l *leg, c course) {
 	}
 	l.course = c
 	b.at = c.end()
-	if l.spec.Trapezoid && l.spec.Ramp > 0 {
-		l.way = newTrapezoid(c.length(), l.spec.Speed, l.spec.Ramp)
-		return
+	l.way = profileOf(l.spec, c.length())
+}
+
+// profileOf is how a leg's way of a length (m) is gone.
+func profileOf(spec *model.Leg, long float64) profile {
+	if spec.Trapezoid && spec.Ramp > 0 {
+		return newTrapezoid(long, spec.Speed, spec.Ramp)
 	}
-	l.way = newRamped(c.length(), l.spec.Speed, l.spec.Ramp)
+	return newRamped(long, spec.Speed, spec.Ramp)
 }
 
 // walkTo gives the angle (rad, not wrapped) that a walk ends at.
@@ -189,7 +193,7 @@ func (b *builder) rise(key string, l *leg) {
 		b.fault(key, "the waist, at %.3g m, would be lower than the feet", most)
 		return
 	}
-	l.way = newRamped(by, l.spec.Speed, l.spec.Ramp)
+	l.way = profileOf(l.spec, by)
 }
 
 func (b *builder) climb(key string, l *leg) {

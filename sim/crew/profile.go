@@ -12,6 +12,20 @@ type profile interface {
 	at(t float64) motion
 	// lasts gives the duration, s.
 	lasts() float64
+	// ramps gives how long the rate grows at the start, and falls at the end, s.
+	ramps() float64
+}
+
+// Breaks gives the times (s from the start of the path) between which the
+// motion is smooth, in order: where legs and their ramps begin and end.
+func (p *Plan) Breaks() []float64 {
+	var out []float64
+	for i := range p.legs {
+		l := &p.legs[i]
+		end, ramp := l.start+l.way.lasts(), l.way.ramps()
+		out = append(out, l.start, l.start+ramp, math.Max(l.start+ramp, end-ramp), end)
+	}
+	return out
 }
 
 // ramped is a way at a steady speed with smooth ramps at both ends: the speed
@@ -36,6 +50,7 @@ func newRamped(way, speed, ramp float64) ramped {
 }
 
 func (r ramped) lasts() float64 { return r.total }
+func (r ramped) ramps() float64 { return r.ramp }
 
 func (r ramped) at(t float64) motion {
 	switch {
@@ -91,6 +106,7 @@ type swing struct {
 }
 
 func (s swing) lasts() float64 { return s.over }
+func (s swing) ramps() float64 { return 0 }
 
 func (s swing) at(t float64) motion {
 	u := math.Min(1, math.Max(0, t/s.over))
@@ -105,4 +121,5 @@ func (s swing) at(t float64) motion {
 type pause float64
 
 func (p pause) lasts() float64    { return float64(p) }
+func (p pause) ramps() float64    { return 0 }
 func (p pause) at(float64) motion { return motion{} }

@@ -20,6 +20,7 @@ type meaning int
 const (
 	turns  meaning = iota // what follows shows from the state
 	loses                 // the body parts from a group
+	leans                 // it begins to be pressed on one
 	starts                // a rolling body begins to slip
 )
 
@@ -34,12 +35,19 @@ func (e *ends) ending(hits []integrator.Hit) ending {
 		switch e.means[h.Event] {
 		case loses:
 			out.parted = append(out.parted, e.groups[h.Event])
+		case leans:
+			out.leant = append(out.leant, e.groups[h.Event])
 		case starts:
 			out.skids = true
 		}
 	}
 	return out
 }
+
+// pressSlop is the acceleration, in m/s^2, by which a body is not yet pressed
+// on what it grazes: what drag makes of a motion slower than parting, in any
+// air that slows it within less than a second.
+const pressSlop = 1e-9
 
 // promise turns a time during which an event's value g stays above zero, or
 // within thin, into the rate that an [integrator.Bounded] event promises.
@@ -136,18 +144,24 @@ func (e reaches) Value(_ float64, y []float64) float64 {
 	return e.s.flier.m.Interior.ContactIn(e.s.place(y), e.g).Gap - e.s.flier.wide
 }
 
-// presses is the acceleration of the gap to a group that a sliding body
-// grazes: where it falls below zero, the body is pressed on it.
+// presses is the acceleration, but for friction, of the gap to a group that a
+// sliding body grazes: where it falls below zero, the body is pressed on it.
 type presses struct {
 	s *slide
 	g geom.Group
 }
 
 func (e presses) Value(t float64, y []float64) float64 {
-	f := e.s.flier
-	if f.m.Interior.ContactIn(e.s.place(y), e.g).Gap > f.wide+2*thin {
-		return 1 // it has left
+	q, v := e.s.place(y), vec(y[3:])
+	if e.s.flier.hasLeft(q, v, e.g) {
+		return 1
 	}
 	e.s.eval(t, y)
-	return f.gapAccel(e.s.place(y), vec(y[3:]), e.s.rub.acc, e.g)
+	return e.s.flier.gapAccel(q, v, e.s.rub.drive, e.g)
+}
+
+// hasLeft says whether a body no longer grazes a group, or moves off.
+func (f *Flier) hasLeft(q, v r3.Vec, g geom.Group) bool {
+	c := f.m.Interior.ContactIn(q, g)
+	return c.Gap > f.wide+2*thin || r3.Dot(v, c.Normal) > parting
 }

@@ -95,19 +95,19 @@ func (f *Flier) Fly(let *Let) (*Track, error) {
 // beneath gives the deck beneath a release and the height above it.
 func (f *Flier) beneath(let *Let) (int, float64) {
 	d := f.m.DeckBeneath(let.Place.Polar)
-	return d, f.m.Decks[d].Radius - let.Place.R
+	return d, f.m.Above(d, let.Place.Polar)
 }
 
 // fly integrates one flight, to a touch, the end of its time or its loss. The
 // spin of a body in flight stays in the inertial frame.
-func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) error {
+func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) (ending, error) {
 	base := f.inertial(t, now)
 	if now.t == 0 {
 		base = t.First
 	}
 	a := f.m.Motion.At(t.Begin + now.t)
 	spin := r3.Add(a.Out(now.w), a.Omega)
-	phase := Phase{Kind: Free, T0: now.t, base: base}
+	phase := Phase{Kind: Free, T0: now.t, base: base, spin: now.w}
 	f.free.base, f.free.begin = base, t.Begin+now.t
 	events := f.flightEvents(base, grazed)
 	var opts []integrator.Option
@@ -116,11 +116,12 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) error {
 		opts = append(opts, integrator.MaxStep(stepTurn/math.Max(omega, slowest)))
 	}
 	f.st.Reset(0, f.zero[:], opts...)
-	res, err := integrator.Solve(f.st, f.longest(t.Release)-now.t, events, phase.keep)
+	res, err := integrator.Solve(f.st, f.longest(t.Release)-now.t, events.specs, phase.keep)
 	if err != nil {
-		return err
+		return ending{}, err
 	}
 	t.Work.add(res.Stats)
+	debugEnds("fly", events.specs, res.T, res.Y, res.Hits) // DBG
 	now.t += res.T
 	phase.T1 = now.t
 	t.Phases = append(t.Phases, phase)
@@ -130,23 +131,21 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) error {
 	now.q, now.v, now.w = local.Pos, local.Vel, a.In(r3.Sub(spin, a.Omega))
 	f.arrival = last
 	f.settle(t, now, res)
-	return nil
+	return events.ending(res.Hits), nil
 }
 
 // flightEvents lists what ends a flight: a touch, the loss of the body.
-func (f *Flier) flightEvents(base frame.State, grazed []geom.Group) []integrator.EventSpec {
+func (f *Flier) flightEvents(base frame.State, grazed []geom.Group) *ends {
 	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Grazed: grazed}
 	f.touch.step, f.hull.step = never, never
-	events := []integrator.EventSpec{
-		{Event: f.touch, Slop: slop(base.Pos), Terminal: true},
-		{Event: f.hull, Terminal: true},
-	}
+	e := &ends{}
+	e.add(f.touch, slop(base.Pos), turns, 0)
+	e.add(f.hull, 0, turns, 0)
 	for _, g := range grazed {
-		events = append(events,
-			integrator.EventSpec{Event: flownInto{grazing{f, g}}, Slop: slop(base.Pos), Terminal: true},
-			integrator.EventSpec{Event: flownOnto{grazing{f, g}}, Slop: forceSlop, Terminal: true})
+		e.add(flownInto{grazing{f, g}}, slop(base.Pos), turns, g)
+		e.add(flownOnto{grazing{f, g}}, pressSlop, leans, g)
 	}
-	return events
+	return e
 }
 
 // settle ends a release that flew out of its time or out of the hull. Of a

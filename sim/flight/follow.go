@@ -34,15 +34,15 @@ func (f *Flier) follow(t *Track) error {
 		if f.over(t, &now) {
 			return nil
 		}
-		s := f.stand(t, &now, touches, last.parted)
+		s := f.stand(t, &now, touches, last)
 		f.touched(t, &now, s, known)
 		if f.over(t, &now) || f.rests(t, &now, s) {
 			return nil
 		}
 		var err error
-		known, last = groupsOf(s.on), ending{skids: last.skids}
+		known = groupsOf(s.on)
 		if len(s.on) == 0 {
-			err = f.fly(t, &now, groupsOf(s.grazed))
+			last, err = f.fly(t, &now, groupsOf(s.grazed))
 		} else {
 			last, err = f.slideOn(t, &now, s, last.skids)
 		}
@@ -102,7 +102,7 @@ func (f *Flier) rests(t *Track, now *moving, s stance) bool {
 		if f.rolls(len(s.on)) {
 			mu = level
 		}
-		all = append(all, push{normal: s.on[i].Normal, mu: mu})
+		all = append(all, push{normal: s.on[i].Normal, answer: s.on[i].Normal, mu: mu})
 	}
 	on := holds(all, pull)
 	if on == nil {

@@ -54,7 +54,7 @@ func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
 	}
 	wind := r3.Cross(f.motion.Omega(t), s.Pos)
 	rel := r3.Sub(s.Vel, wind)
-	return r3.Scale(-f.perMass*f.drag.PerVelocity(r3.Norm(rel)), rel)
+	return r3.Scale(-f.perMass*f.drag.PerVelocity2(r3.Norm2(rel)), rel)
 }
 
 // Accel gives the whole acceleration, m/s^2 in inertial components.

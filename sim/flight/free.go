@@ -128,8 +128,8 @@ type flownOnto struct{ grazing }
 
 func (e flownOnto) Value(t float64, y []float64) float64 {
 	s := e.local(t, y)
-	if e.f.m.Interior.ContactIn(s.Pos, e.g).Gap > e.f.wide+2*thin {
-		return 1 // it has left
+	if e.f.hasLeft(s.Pos, s.Vel, e.g) {
+		return 1
 	}
 	a := e.f.m.Motion.At(e.f.free.begin + t)
 	return e.f.gapAccel(s.Pos, s.Vel, e.f.pull(&a, e.f.free.begin+t, s), e.g)

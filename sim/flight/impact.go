@@ -83,7 +83,7 @@ func (f *Flier) collide(t float64, now *moving, touches []geom.Touch) (hits []st
 		}
 		hits = append(hits, struck{i, now.v})
 		e, mu := f.gripOf(touches[i].Surface)
-		if into := -r3.Dot(now.v, touches[i].Normal); k > mostStrikes/2 || !f.rises(t, now, &touches[i], e*into, mu, e) {
+		if into := -r3.Dot(now.v, touches[i].Normal); k > mostStrikes/2 || !f.rises(t, now, touches, i, e*into) {
 			e = 0
 		}
 		now.v, now.w = f.strike(touches[i].Normal, now.v, now.w, e, mu)
@@ -111,13 +111,8 @@ func deepest(v r3.Vec, touches []geom.Touch) int {
 func (f *Flier) stayDown(t float64, now *moving, touches []geom.Touch) {
 	for i := range touches {
 		n := touches[i].Normal
-		up := r3.Dot(now.v, n)
-		if up <= parting {
-			continue
-		}
-		v := r3.Sub(now.v, r3.Scale(up, n))
-		if press := f.presses(t, now.q, v, &touches[i]); up*up <= 2*press*leastRise {
-			now.v = v
+		if up := r3.Dot(now.v, n); up > parting && f.fallsBack(t, now, touches, touches[i], leastRise) {
+			now.v = r3.Sub(now.v, r3.Scale(up, n))
 		}
 	}
 }
@@ -136,20 +131,35 @@ func (f *Flier) yield(now *moving, touches []geom.Touch) {
 	now.v = r3.Vec{}
 }
 
-// rises says whether a rebound at the given speed (m/s) is one: it rises
-// leastRise before the surface has the body back, or nothing presses it there.
-func (f *Flier) rises(t float64, now *moving, c *geom.Touch, speed, mu, e float64) bool {
-	v, _ := f.strike(c.Normal, now.v, now.w, e, mu)
-	v = r3.Sub(v, r3.Scale(r3.Dot(v, c.Normal), c.Normal))
-	press := f.presses(t, now.q, v, c)
+// rises says whether a rebound from touch i at the given speed (m/s) is one:
+// it rises leastRise before the surface has the body back, or nothing presses
+// it there.
+func (f *Flier) rises(t float64, now *moving, touches []geom.Touch, i int, speed float64) bool {
+	e, mu := f.gripOf(touches[i].Surface)
+	n := touches[i].Normal
+	after := *now
+	after.v, after.w = f.strike(n, now.v, now.w, e, mu)
+	after.v = r3.Sub(after.v, r3.Scale(r3.Dot(after.v, n), n))
+	press := f.presses(t, after, touches, touches[i])
 	return press <= 0 || speed*speed > 2*press*leastRise
 }
 
-// presses is the acceleration (m/s^2) by which a body that moves along a
-// surface is pressed on it.
-func (f *Flier) presses(t float64, q, v r3.Vec, c *geom.Touch) float64 {
+// presses is the acceleration (m/s^2) by which a body that moves along the
+// touch c is pressed on it: also by the friction of what else it stands on, if it
+// rolls.
+func (f *Flier) presses(t float64, now moving, touches []geom.Touch, c geom.Touch) float64 {
 	a := f.m.Motion.At(t)
-	return -f.gapAccel(q, v, f.pull(&a, t, frame.State{Pos: q, Vel: v}), c.Group)
+	var others []geom.Touch
+	for k := range touches {
+		if touches[k].Group != c.Group && r3.Dot(now.v, touches[k].Normal) <= parting {
+			others = append(others, touches[k])
+		}
+	}
+	all, pull := f.pushes(&a, t, &now, others)
+	sub := subset(all, pressed(all, pull))
+	balance(sub, pull)
+	acc := f.rub(&a, sub, nil, pull, now.v, now.w, true).acc
+	return -f.gapAccel(now.q, now.v, acc, c.Group)
 }
 
 // meet lets the body rebound and records the impacts, each surface once.

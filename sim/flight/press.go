@@ -18,6 +18,7 @@ const singular = 1e-8
 // push is what one contact does, per kg of body.
 type push struct {
 	normal  r3.Vec  // unit, away from the surface
+	answer  r3.Vec  // what acceleration a unit of normal force gives, with the friction that it makes
 	turn    r3.Vec  // 1/s, dn/dt as the body moves
 	closing float64 // m/s^2, by which the gap's acceleration exceeds normal.(acceleration): v.(dn/dt)
 	mu      float64 // friction
@@ -29,16 +30,17 @@ type push struct {
 // while the acceleration pull (m/s^2) acts on it: the gaps' accelerations
 // vanish,
 //
-//	n_i . (pull + sum_j N_j n_j) + v . dn_i/dt = 0
+//	n_i . (pull + sum_j N_j a_j) + v . dn_i/dt = 0
 //
-// Friction, which is across the normals of all contacts, has no part in it. It
-// reports whether there is a solution.
+// a_j, the answer, is n_j where friction has no part in it: that of a sliding
+// body is across the normals of all contacts. It reports whether there is a
+// solution.
 func balance(p []push, pull r3.Vec) bool {
 	var m [mostContacts][mostContacts + 1]float64
 	n := len(p)
 	for i := range p {
 		for j := range p {
-			m[i][j] = r3.Dot(p[i].normal, p[j].normal)
+			m[i][j] = r3.Dot(p[i].normal, p[j].answer)
 		}
 		m[i][n] = -r3.Dot(p[i].normal, pull) - p[i].closing
 	}
@@ -66,21 +68,19 @@ func balance(p []push, pull r3.Vec) bool {
 // pressed gives the subset of contacts on which a body stays: the normal
 // forces do not pull, and the body does not sink into the others. It is the
 // linear complementarity problem of rigid contact (Lotstedt 1982; from
-// memory), small enough to try all subsets, the smaller first. whole is the
-// acceleration that a subset whose normal forces are known would give, friction
-// included. It reports whether there is such a subset.
-func pressed(all []push, pull r3.Vec, whole func([]push) r3.Vec) ([]int, bool) {
+// memory), small enough to try all subsets, the smaller first.
+func pressed(all []push, pull r3.Vec) []int {
 	for size := 0; size <= min(len(all), mostContacts); size++ {
 		for set := 0; set < 1<<len(all); set++ {
 			if bits.OnesCount(uint(set)) != size {
 				continue
 			}
-			if idx := members(set, len(all)); stays(all, idx, pull, whole) {
-				return idx, true
+			if idx := members(set, len(all)); stays(all, idx, pull) {
+				return idx
 			}
 		}
 	}
-	return nil, false
+	return nil
 }
 
 func members(set, n int) []int {
@@ -94,23 +94,21 @@ func members(set, n int) []int {
 }
 
 // stays tries one subset.
-func stays(all []push, idx []int, pull r3.Vec, whole func([]push) r3.Vec) bool {
+func stays(all []push, idx []int, pull r3.Vec) bool {
 	sub := subset(all, idx)
 	if !balance(sub, pull) {
 		return false
 	}
+	acc := pull
 	for i := range sub {
 		if sub[i].force <= 0 {
 			return false
 		}
+		acc = r3.Add(acc, r3.Scale(sub[i].force, sub[i].normal))
 	}
-	acc := whole(sub)
 	for i := range all {
-		if in(idx, i) {
-			continue
-		}
 		// A gap that would close, by more than what may be rounding.
-		if r3.Dot(all[i].normal, acc)+all[i].closing < -all[i].noise {
+		if !in(idx, i) && r3.Dot(all[i].normal, acc)+all[i].closing < -all[i].noise {
 			return false
 		}
 	}

@@ -2,6 +2,7 @@ package flight
 
 import (
 	"math"
+	"math/bits"
 
 	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/sim/frame"
@@ -42,13 +43,16 @@ type slide struct {
 	origin r3.Vec  // m, the place at the start of the phase
 	groups []geom.Group
 	mu     [mostContacts]float64
-	slips  bool // it rolls, and its contact point moves
+	slips  bool         // it rolls, and its contact point moves
+	grazed []geom.Group // touched without pressure
+	walls  []push       // space for what of that is near
 
 	// Of the last derivative.
 	vel, acc r3.Vec // acc without what brings the body back
 	push     [mostContacts]push
 	gap      [mostContacts]float64 // m, of the centre
 	rub      rubbing
+	back     r3.Vec // m/s^2, what brings the body back
 }
 
 // Dim implements [integrator.System].
@@ -57,7 +61,7 @@ func (s *slide) Dim() int { return dims }
 // Deriv implements [integrator.System].
 func (s *slide) Deriv(t float64, y, dy []float64) {
 	s.eval(t, y)
-	v, acc, spin := s.vel, r3.Add(s.rub.acc, s.recall()), s.rub.spin
+	v, acc, spin := s.vel, r3.Add(s.rub.acc, s.back), s.rub.spin
 	dy[0], dy[1], dy[2] = v.X, v.Y, v.Z
 	dy[3], dy[4], dy[5] = acc.X, acc.Y, acc.Z
 	dy[6], dy[7], dy[8] = spin.X, spin.Y, spin.Z
@@ -79,17 +83,32 @@ func (s *slide) eval(t float64, y []float64) {
 		p[i], s.gap[i] = f.pushOf(q, v, g, s.mu[i])
 	}
 	balance(p, pull)
-	s.vel, s.rub = v, f.rub(&a, p, pull, v, w, s.slips)
+	s.vel, s.back = v, r3.Vec{}
+	s.rub = f.rub(&a, p, s.fences(q, pull), pull, v, w, s.slips)
+	for i := range p {
+		s.recall(p[i].normal, s.gap[i])
+	}
 }
 
-// recall is what brings the body back onto its surfaces.
-func (s *slide) recall() r3.Vec {
-	var out r3.Vec
-	for i := range s.groups {
-		n := s.push[i].normal
-		off := s.gap[i] - s.flier.wide
-		out = r3.Add(out, r3.Scale(-2*regain*r3.Dot(s.vel, n)-regain*regain*off, n))
+// recall brings the body back onto a surface.
+func (s *slide) recall(n r3.Vec, gap float64) {
+	off := gap - s.flier.wide
+	s.back = r3.Add(s.back, r3.Scale(-2*regain*r3.Dot(s.vel, n)-regain*regain*off, n))
+}
+
+// fences are the contacts of a rolling body that it grazes.
+func (s *slide) fences(q, pull r3.Vec) []push {
+	out := s.walls[:0]
+	if !s.flier.rolls(len(s.groups)) {
+		return out
 	}
+	for _, g := range s.grazed {
+		if p, gap := s.flier.pushOf(q, s.vel, g, 0); gap <= s.flier.wide+2*thin {
+			p.noise = noise(pull, s.vel)
+			out = append(out, p)
+		}
+	}
+	s.walls = out
 	return out
 }
 
@@ -101,15 +120,31 @@ func (s *slide) slip(y []float64) r3.Vec {
 
 // rubbing is what friction does to a body in contact.
 type rubbing struct {
-	acc  r3.Vec  // m/s^2, whole acceleration of the body
-	spin r3.Vec  // rad/s^2, rate of its spin
-	need float64 // m/s^2, friction by mass that rolling without slip takes
-	most float64 // m/s^2, friction by mass that there is
+	drive r3.Vec  // m/s^2, acceleration but for friction
+	acc   r3.Vec  // m/s^2, whole acceleration of the body
+	spin  r3.Vec  // rad/s^2, rate of its spin
+	need  float64 // m/s^2, friction by mass that rolling without slip takes
+	most  float64 // m/s^2, friction by mass that there is
 }
 
 // rub gives the friction of contacts whose normal forces are known. A body
-// that does not roll has f = -sum(mu N) v/|v|. One that rolls, a solid sphere
-// of inertia 2/5 m a^2, has the contact point's velocity u = v - a W x n, and
+// that does not roll has f = -sum(mu N) v/|v|; for one that does see roll.
+func (f *Flier) rub(a *frame.Attitude, p, walls []push, pull, v, w r3.Vec, slips bool) rubbing {
+	out := rubbing{drive: pull}
+	for i := range p {
+		out.drive = r3.Add(out.drive, r3.Scale(p[i].force, p[i].normal))
+		out.most += p[i].mu * math.Max(0, p[i].force)
+	}
+	if f.rolls(len(p)) {
+		f.roll(&out, a, p[0], walls, pull, v, w, slips)
+	} else {
+		out.acc = r3.Add(out.drive, against(v, out.drive, out.most))
+	}
+	return out
+}
+
+// roll works out a body that rolls, a solid sphere of inertia 2/5 m a^2: with
+// the contact point's velocity u = v - a W x n,
 //
 //	W' = -5/(2a) n x f - omega x W - domega/dt
 //	f  = -mu N u/|u| while it slips, else such that u stays 0:
@@ -119,32 +154,110 @@ type rubbing struct {
 // memory). In a corner a rolling body slides like any other. Where slip as good
 // as vanishes there is no telling its direction: the friction is then what
 // keeps it so, as far as there is enough.
-func (f *Flier) rub(a *frame.Attitude, p []push, pull, v, w r3.Vec, slips bool) rubbing {
-	drive, most := pull, 0.0
-	for i := range p {
-		drive = r3.Add(drive, r3.Scale(p[i].force, p[i].normal))
-		most += p[i].mu * math.Max(0, p[i].force)
-	}
-	out := rubbing{most: most}
-	if !f.rolls(len(p)) {
-		out.acc = r3.Add(drive, against(v, drive, most))
-		return out
-	}
-	n := p[0].normal
+//
+// Walls are what the body touches without being pressed there by its weight,
+// such as a bulkhead that it rolled against. Where its friction on the floor
+// drives it into one, that gives way with a normal force, which is small and
+// taken to be without friction.
+func (f *Flier) roll(out *rubbing, a *frame.Attitude, p push, walls []push, pull, v, w r3.Vec, slips bool) {
+	u := f.slipOf(v, w, p.normal)
 	carried := f.carried(a, w)
-	u := f.slipOf(v, w, n)
-	want := r3.Scale(f.wide, r3.Add(r3.Cross(carried, n), r3.Cross(w, p[0].turn)))
-	want = r3.Sub(r3.Sub(want, drive), r3.Scale(regain, u))
-	grip := r3.Scale(2.0/7, r3.Sub(want, r3.Scale(r3.Dot(want, n), n)))
-	out.need = r3.Norm(grip)
+	var grip r3.Vec
 	if speed := r3.Norm(u); slips && speed > creep {
-		grip = r3.Scale(-most/speed, u)
-	} else if slips && out.need > most {
-		grip = r3.Scale(most/out.need, grip)
+		out.acc, grip = skid(p, walls, pull, r3.Scale(-1/speed, u))
+		out.most = r3.Norm(grip)
+	} else {
+		want := r3.Scale(f.wide, r3.Add(r3.Cross(carried, p.normal), r3.Cross(w, p.turn)))
+		out.acc, grip = clutch(p, walls, pull, r3.Sub(want, r3.Scale(regain, u)))
+		if out.need = r3.Norm(grip); slips && out.need > out.most {
+			out.acc, grip = skid(p, walls, pull, r3.Scale(1/out.need, grip))
+		}
 	}
-	out.acc = r3.Add(drive, grip)
-	out.spin = r3.Add(r3.Scale(-2.5/f.wide, r3.Cross(n, grip)), carried)
-	return out
+	out.spin = r3.Add(r3.Scale(-2.5/f.wide, r3.Cross(p.normal, grip)), carried)
+}
+
+// skid gives acceleration and friction of a rolling body that slips: the
+// friction has the direction dir.
+func skid(p push, walls []push, pull, dir r3.Vec) (acc, grip r3.Vec) {
+	p.answer = r3.Add(p.normal, r3.Scale(p.mu, dir))
+	for i := range walls {
+		walls[i].answer = walls[i].normal
+	}
+	return fend(p, walls, pull)
+}
+
+// clutch gives acceleration and friction of one that does not, for which the
+// contact point is to gain what want (m/s^2) tells.
+func clutch(p push, walls []push, pull, want r3.Vec) (acc, grip r3.Vec) {
+	free := r3.Scale(rollShare, p.along(r3.Sub(want, pull)))
+	for i := range walls {
+		walls[i].answer = r3.Sub(walls[i].normal, r3.Scale(rollShare, p.along(walls[i].normal)))
+	}
+	acc, grip = fend(p, walls, r3.Add(pull, free))
+	return acc, r3.Add(free, grip)
+}
+
+// along gives the part of v along a contact's surface.
+func (p *push) along(v r3.Vec) r3.Vec { return r3.Sub(v, r3.Scale(r3.Dot(v, p.normal), p.normal)) }
+
+// fend finds the normal forces of a floor and of the walls that give way to
+// what drives the body into them, and gives the acceleration, and the part of
+// it that is not along normals.
+func fend(floor push, walls []push, base r3.Vec) (acc, rest r3.Vec) {
+	var space [mostContacts]push
+	for size := 0; size < mostContacts; size++ {
+		for set := 0; set < 1<<len(walls); set++ {
+			if bits.OnesCount(uint(set)) != size {
+				continue
+			}
+			all := append(space[:0], floor)
+			for i := range walls {
+				if set&(1<<i) != 0 {
+					all = append(all, walls[i])
+				}
+			}
+			if !balance(all, base) || pulls(all[1:]) {
+				continue
+			}
+			if acc, rest = sum(all, base); !closes(walls, set, acc) {
+				return acc, rest
+			}
+		}
+	}
+	all := append(space[:0], floor)
+	balance(all, base)
+	return sum(all, base)
+}
+
+// pulls says whether one of the normal forces would have to pull.
+func pulls(p []push) bool {
+	for i := range p {
+		if p[i].force < 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// closes says whether the gap to a wall that is not of the set closes.
+func closes(walls []push, set int, acc r3.Vec) bool {
+	for i := range walls {
+		if set&(1<<i) == 0 && r3.Dot(walls[i].normal, acc)+walls[i].closing < -walls[i].noise {
+			return true
+		}
+	}
+	return false
+}
+
+// sum gives the acceleration by contacts whose normal forces are known, and the
+// part of theirs that is not along their normals.
+func sum(all []push, base r3.Vec) (acc, rest r3.Vec) {
+	acc = base
+	for i := range all {
+		acc = r3.Add(acc, r3.Scale(all[i].force, all[i].answer))
+		rest = r3.Add(rest, r3.Scale(all[i].force, r3.Sub(all[i].answer, all[i].normal)))
+	}
+	return acc, rest
 }
 
 // carried is the rate at which the spin of a body without torque changes in

@@ -16,24 +16,26 @@ const stepTurn = 0.3
 // ending is what the next phase must know of how the last one ended.
 type ending struct {
 	parted []geom.Group // left for want of force
+	leant  []geom.Group // grazed, and about to be pressed on
 	skids  bool         // a rolling body lost its grip
 }
 
 // slideOn moves a body along the surfaces that it is pressed on, until it
 // stops, parts from one, meets another, or its time ends.
 func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, error) {
-	s, kind := f.slideFrom(t, now, st.on, skids)
-	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q},
+	s, kind := f.slideFrom(t, now, st, skids)
+	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q}, spin: now.w,
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
 	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
 	f.contact.Reset(0, y, integrator.MaxStep(stepTurn/math.Max(spin, slowest)))
-	events := f.slideEvents(s, now, groupsOf(st.grazed))
+	events := f.slideEvents(s, now)
 	res, err := integrator.Solve(f.contact, f.longest(t.Release)-now.t, events.specs, phase.keep)
 	if err != nil {
 		return ending{}, err
 	}
 	t.Work.add(res.Stats)
+	debugEnds("slide", events.specs, res.T, res.Y, res.Hits) // DBG
 	now.t += res.T
 	now.q, now.v, now.w = s.place(res.Y), vec(res.Y[3:]), vec(res.Y[6:])
 	end := events.ending(res.Hits)
@@ -54,9 +56,9 @@ func (p *Phase) keep(s *integrator.Step, _ []integrator.Hit) error {
 
 // slideFrom prepares the equations, brings a body that has as good as stopped,
 // or as good as stopped slipping, to do so, and says what it does.
-func (f *Flier) slideFrom(t *Track, now *moving, on []geom.Touch, skids bool) (*slide, Kind) {
-	s := f.slide
-	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, groups: groupsOf(on)}
+func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide, Kind) {
+	s, on := f.slide, st.on
+	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, groups: groupsOf(on), grazed: groupsOf(st.grazed)}
 	for i := range on {
 		_, s.mu[i] = f.gripOf(on[i].Surface)
 	}
@@ -75,15 +77,20 @@ func (f *Flier) slideFrom(t *Track, now *moving, on []geom.Touch, skids bool) (*
 	if s.slips {
 		return s, Slide
 	}
-	f.grip(now, n, u)
+	f.grip(now, n, u, st.grazed)
 	return s, Roll
 }
 
-// grip ends the slip u (m/s) of a rolling body by the impulse that does so.
-func (f *Flier) grip(now *moving, n, u r3.Vec) {
+// grip ends the slip u (m/s) of a rolling body by the impulse that does so, as
+// far as what it grazes lets it.
+func (f *Flier) grip(now *moving, n, u r3.Vec, grazed []geom.Touch) {
 	j := r3.Scale(-rollShare, u)
 	now.v = r3.Add(now.v, j)
 	now.w = r3.Add(now.w, r3.Scale(-2.5/f.wide, r3.Cross(n, j)))
+	for i := range grazed {
+		into := math.Min(0, r3.Dot(now.v, grazed[i].Normal))
+		now.v = r3.Sub(now.v, r3.Scale(into, grazed[i].Normal))
+	}
 }
 
 // onto takes away what a phase has drifted from its surfaces, but for those
@@ -100,9 +107,9 @@ func (f *Flier) onto(now *moving, groups, parted []geom.Group) {
 }
 
 // slideEvents lists what ends a slide.
-func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Group) *ends {
+func (f *Flier) slideEvents(s *slide, now *moving) *ends {
 	e := &ends{}
-	watch := &geom.Beside{Wide: f.wide, Thin: thin, On: s.groups, Grazed: grazed}
+	watch := &geom.Beside{Wide: f.wide, Thin: thin, On: s.groups, Grazed: s.grazed}
 	e.add(besides{s, watch}, slop(s.origin), turns, 0)
 	e.add(stops{f.slowEnough(now, len(s.groups))}, 0, turns, 0)
 	for i, g := range s.groups {
@@ -117,9 +124,9 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Group) *ends {
 			e.add(skids{s}, forceSlop, starts, 0)
 		}
 	}
-	for _, g := range grazed {
+	for _, g := range s.grazed {
 		e.add(reaches{s, g}, slop(s.origin), turns, g)
-		e.add(presses{s, g}, forceSlop, turns, g)
+		e.add(presses{s, g}, pressSlop, leans, g)
 	}
 	return e
 }

@@ -39,24 +39,18 @@ type stance struct{ on, grazed []geom.Touch }
 
 // stand works out on what a body is pressed, of what it touches and neither
 // leaves nor has just parted from.
-func (f *Flier) stand(t *Track, now *moving, touches []geom.Touch, parted []geom.Group) stance {
+func (f *Flier) stand(t *Track, now *moving, touches []geom.Touch, last ending) stance {
 	var s stance
 	var slow []geom.Touch
-	for i := range touches {
-		c := &touches[i]
-		away := r3.Dot(now.v, c.Normal)
-		if away > parting {
-			continue
-		}
-		now.v = r3.Sub(now.v, r3.Scale(away, c.Normal))
-		if hasGroup(parted, c.Group) {
-			s.grazed = append(s.grazed, *c)
+	for _, c := range f.staysWith(t.Begin+now.t, now, touches) {
+		if hasGroup(last.parted, c.Group) {
+			s.grazed = append(s.grazed, c)
 		} else {
-			slow = append(slow, *c)
+			slow = append(slow, c)
 		}
 	}
 	on := f.pressedOn(t, now, slow)
-	on = f.leansOn(t, now, slow, on)
+	on = f.leansOn(t, now, slow, on, last.leant)
 	for i := range slow {
 		if in(on, i) {
 			s.on = append(s.on, slow[i])
@@ -67,42 +61,64 @@ func (f *Flier) stand(t *Track, now *moving, touches []geom.Touch, parted []geom
 	return s
 }
 
-// pressedOn gives the contacts that the body is pressed on. A rolling body
-// whose spin drives it from one into another loses that spin: there friction
-// of both stops it.
+// staysWith gives the touches that a body does not move off, or from which it
+// would rise by no more than what a search for contacts tells, and takes the
+// motion along their normals away. Standing on one may keep it on another.
+func (f *Flier) staysWith(t float64, now *moving, touches []geom.Touch) []geom.Touch {
+	var out []geom.Touch
+	var across []r3.Vec
+	left := append([]geom.Touch(nil), touches...)
+	for more := true; more; {
+		more = false
+		for i := 0; i < len(left); i++ {
+			up := r3.Dot(now.v, left[i].Normal)
+			if up > parting && !f.fallsBack(t, now, touches, left[i], 2*thin) {
+				continue
+			}
+			out = append(out, left[i])
+			across = orthogonal(across, left[i].Normal)
+			left = append(left[:i], left[i+1:]...)
+			i, more = i-1, true
+		}
+		for _, n := range across {
+			now.v = r3.Sub(now.v, r3.Scale(r3.Dot(now.v, n), n))
+		}
+	}
+	return out
+}
+
+// fallsBack says whether a touch has a body back that leaves it before it rose
+// by the height least (m).
+func (f *Flier) fallsBack(t float64, now *moving, touches []geom.Touch, c geom.Touch, least float64) bool {
+	n := c.Normal
+	up := r3.Dot(now.v, n)
+	v := r3.Sub(now.v, r3.Scale(up, n))
+	return up*up <= 2*least*f.presses(t, moving{now.t, now.q, v, now.w}, touches, c)
+}
+
+// orthogonal adds to vectors at right angles the part of n that is across them
+// all, if there is one.
+func orthogonal(list []r3.Vec, n r3.Vec) []r3.Vec {
+	for _, e := range list {
+		n = r3.Sub(n, r3.Scale(r3.Dot(n, e), e))
+	}
+	if l := r3.Norm(n); l*l > singular {
+		return append(list, r3.Scale(1/l, n))
+	}
+	return list
+}
+
+// pressedOn gives the contacts that the body is pressed on. Friction has no
+// part in it: that of a sliding body is across the normals of all contacts
+// that it stays on, and where a rolling body's drives it into another, that
+// one is a wall (see rub).
 func (f *Flier) pressedOn(t *Track, now *moving, slow []geom.Touch) []int {
 	if len(slow) == 0 {
 		return nil
 	}
 	a := f.m.Motion.At(t.Begin + now.t)
 	all, pull := f.pushes(&a, t.Begin+now.t, now, slow)
-	try := func() ([]int, bool) {
-		return pressed(all, pull, func(p []push) r3.Vec { return f.rub(&a, p, pull, now.v, now.w, true).acc })
-	}
-	idx, ok := try()
-	for i := 0; !ok && i < len(slow); i++ {
-		for j := range slow {
-			f.unspin(now, slow[i].Normal, slow[j].Normal)
-		}
-		idx, ok = try()
-	}
-	if !ok {
-		now.w = r3.Vec{}
-		idx, _ = try()
-	}
-	return idx
-}
-
-// unspin takes away the spin that drives a body which rolls on a surface of
-// normal n into one of normal m.
-func (f *Flier) unspin(now *moving, n, m r3.Vec) {
-	e := r3.Cross(n, m)
-	if l := r3.Norm(e); l > singular {
-		e = r3.Scale(1/l, e)
-		if s := r3.Dot(now.w, e); s > 0 {
-			now.w = r3.Sub(now.w, r3.Scale(s, e))
-		}
-	}
+	return pressed(all, pull)
 }
 
 // pushes gives the contacts as the equations want them, and the acceleration
@@ -121,12 +137,13 @@ func (f *Flier) pushes(a *frame.Attitude, t float64, now *moving, list []geom.To
 // pushOf describes the contact with a group, and gives its distance (m).
 func (f *Flier) pushOf(q, v r3.Vec, g geom.Group, mu float64) (push, float64) {
 	c, rate := f.bend(q, v, g)
-	return push{normal: c.Normal, turn: rate, closing: r3.Dot(v, rate), mu: mu}, c.Gap
+	return push{normal: c.Normal, answer: c.Normal, turn: rate, closing: r3.Dot(v, rate), mu: mu}, c.Gap
 }
 
 // leansOn adds to the contacts that a body is pressed on one that it is about
-// to be pressed on: the force there is none yet, but grows.
-func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int) []int {
+// to be pressed on: the force there is none yet, but grows. leant are those of
+// which an event of the last phase has told so.
+func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int, leant []geom.Group) []int {
 	if len(on) == len(slow) || len(on) >= mostContacts || r3.Norm(now.v) == 0 && len(on) > 0 {
 		return on
 	}
@@ -137,6 +154,8 @@ func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int) []in
 		}
 		if later := f.leans(t, now, slow, on, i); later < least {
 			least, lean = later, i
+		} else if lean < 0 && hasGroup(leant, slow[i].Group) {
+			lean = i
 		}
 	}
 	if lean < 0 {
@@ -161,8 +180,8 @@ func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int) []in
 // a moment, if it is none now.
 func (f *Flier) leans(t *Track, now *moving, slow []geom.Touch, on []int, i int) float64 {
 	acc := f.accelOn(t, now, slow, on)
-	g := f.gapAccel(now.q, now.v, acc, slow[i].Group)
-	least := noise(acc, now.v)
+	g := f.gapAccel(now.q, now.v, acc.drive, slow[i].Group)
+	least := noise(acc.drive, now.v)
 	if math.Abs(g) > 1e3*least {
 		return 0
 	}
@@ -170,22 +189,22 @@ func (f *Flier) leans(t *Track, now *moving, slow []geom.Touch, on []int, i int)
 	dt := aheadTurn / math.Max(spin, slowest)
 	soon := *now
 	soon.t += dt
-	soon.q = r3.Add(now.q, r3.Add(r3.Scale(dt, now.v), r3.Scale(dt*dt/2, acc)))
-	soon.v = r3.Add(now.v, r3.Scale(dt, acc))
-	later := f.gapAccel(soon.q, soon.v, f.accelOn(t, &soon, slow, on), slow[i].Group) - g
+	soon.q = r3.Add(now.q, r3.Add(r3.Scale(dt, now.v), r3.Scale(dt*dt/2, acc.acc)))
+	soon.v = r3.Add(now.v, r3.Scale(dt, acc.acc))
+	later := f.gapAccel(soon.q, soon.v, f.accelOn(t, &soon, slow, on).drive, slow[i].Group) - g
 	if later > -least {
 		return 0
 	}
 	return later
 }
 
-// accelOn is the acceleration (m/s^2) of a body on some of its contacts.
-func (f *Flier) accelOn(t *Track, now *moving, slow []geom.Touch, on []int) r3.Vec {
+// accelOn is what accelerates a body on some of its contacts.
+func (f *Flier) accelOn(t *Track, now *moving, slow []geom.Touch, on []int) rubbing {
 	a := f.m.Motion.At(t.Begin + now.t)
 	all, pull := f.pushes(&a, t.Begin+now.t, now, slow)
 	sub := subset(all, on)
 	balance(sub, pull)
-	return f.rub(&a, sub, pull, now.v, now.w, true).acc
+	return f.rub(&a, sub, nil, pull, now.v, now.w, true)
 }
 
 // gapAccel is the acceleration (m/s^2) of the gap to a group, of a body with

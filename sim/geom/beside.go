@@ -138,7 +138,9 @@ func (c *counter) aimed(s smooth, gap float64, v r3.Vec, acc, most float64) floa
 	if around == 0 {
 		return 0
 	}
-	most = math.Min(most, within(around, speed, acc))
+	if !math.IsInf(around, 1) {
+		most = math.Min(most, within(around, speed, acc))
+	}
 	if hollow > 0 && acc > 0 {
 		most = math.Min(most, speed/acc) // the speed doubles at most
 		acc += 4 * speed * speed * hollow

@@ -133,8 +133,8 @@ func solidAbout(w *world, p r3.Vec, d float64) bool {
 // boundaries of all pieces.
 func TestInteriorDistSampled(t *testing.T) {
 	eachWorld(t, 130, func(t *testing.T, rng *rand.Rand, _ *world, in *geom.Interior) {
-		all := coverPieces(in, 0.5)
-		for range 12 {
+		all := coverPieces(in, 1)
+		for range 8 {
 			p := somewhere(rng, all.edges)
 			d := in.Dist(p)
 			if d <= 0 {

@@ -222,44 +222,37 @@ func (v *Vault) Bounds() Box {
 // Section implements [Solid]: the plane cuts the piece of a ring in each half
 // plane in one stretch of radii.
 func (v *Vault) Section(z float64) []Seg {
-	h := z - v.Z
-	if math.Abs(h) > v.Outer {
-		return nil
-	}
 	sign := 1.0 // the way from the middle of the tube
-	if v.Theta0+v.Theta1 > math.Pi {
-		sign = -1
-	}
-	far := math.Sqrt(v.Outer*v.Outer - h*h)
-	near := math.Sqrt(math.Max(0, v.Inner*v.Inner-h*h))
-	// The ends of theta, as those of a half that opens outward.
 	lo, hi := v.Theta0, v.Theta1
-	if sign < 0 {
-		lo, hi = math.Pi-hi, math.Pi-lo
+	if lo+hi > math.Pi {
+		sign, lo, hi = -1, math.Pi-hi, math.Pi-lo
 	}
-	if h == 0 && (lo > 0 || hi < 0) {
-		return nil
-	}
-	// x = |h| cot(theta), nearer to the middle of the tube the larger theta is.
-	steep, flat := hi, lo
+	h := z - v.Z
 	if h < 0 {
-		steep, flat = -lo, -hi
+		h, lo, hi = -h, -hi, -lo
 	}
-	if h != 0 {
-		if steep <= 0 {
-			return nil
-		}
-		if steep < math.Pi/2 {
-			near = math.Max(near, math.Abs(h)*math.Cos(steep)/math.Sin(steep))
-		}
-		if flat > 0 {
-			far = math.Min(far, math.Abs(h)*math.Cos(flat)/math.Sin(flat))
-		}
-	}
-	if near >= far {
+	near, far, ok := v.stretch(h, lo, hi)
+	if !ok {
 		return nil
 	}
 	r0, r1 := v.Ring+sign*near, v.Ring+sign*far
 	ring := Sector{R0: math.Max(0, math.Min(r0, r1)), R1: math.Max(r0, r1), Phi0: v.Phi0, Phi1: v.Phi1, Whole: v.Whole, Z0: z, Z1: z}
 	return ring.Section(z)
+}
+
+// stretch gives how far from the middle of the tube the outer half of a ring,
+// theta from lo to hi, is cut at the height h, not negative, above it.
+func (v *Vault) stretch(h, lo, hi float64) (near, far float64, ok bool) {
+	if h > v.Outer || hi < 0 || h == 0 && lo > 0 || h > 0 && hi == 0 {
+		return 0, 0, false
+	}
+	near, far = chord(v.Inner, h), chord(v.Outer, h)
+	// x = h cot(theta): the steeper, the nearer.
+	if h > 0 && hi < math.Pi/2 {
+		near = math.Max(near, h*math.Cos(hi)/math.Sin(hi))
+	}
+	if h > 0 && lo > 0 {
+		far = math.Min(far, h*math.Cos(lo)/math.Sin(lo))
+	}
+	return near, far, near < far
 }

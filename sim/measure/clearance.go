@@ -3,6 +3,7 @@ package measure
 import (
 	"math"
 
+	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/sim/crew"
 	"offplumb/sim/flight"
 	"offplumb/sim/geom"
@@ -17,9 +18,16 @@ type Clearance struct {
 	Time    float64 // s since the release
 }
 
-// clearParts is how many times an integration step is looked at for a closest
-// approach, before it is refined.
-const clearParts = 6
+// A track is looked at for its closest approaches clearWay (m) of its way in
+// the habitat apart, before they are refined: what stands in the way is passed
+// at some distance, over which the gap falls and grows again. A very long track
+// is looked at mostLooks times, and at least clearParts times an integration
+// step.
+const (
+	clearWay   = 0.2
+	clearParts = 6
+	mostLooks  = 20_000
+)
 
 // clearLooks is how often a closest approach is refined: 60 thirds leave less
 // than a billionth of the stretch.
@@ -30,15 +38,16 @@ const clearLooks = 60
 // interior's surfaces.
 func Clearances(m *model.Model, t *flight.Track) []Clearance {
 	best := map[geom.SurfaceID]Clearance{}
-	times := looks(t)
-	for g := range m.Interior.Groups() {
-		closest(m, t, geom.Group(g), times, best)
+	times := looks(m, t)
+	at := make([]r3.Vec, len(times))
+	for i, time := range times {
+		at[i] = localAt(m, t, time).Pos
 	}
-	for i := range t.Impacts {
-		hit := &t.Impacts[i]
-		if old, ok := best[hit.Contact.Surface]; !ok || old.Gap > 0 {
-			best[hit.Contact.Surface] = Clearance{Gap: 0, Time: hit.Time}
-		}
+	for g := range m.Interior.Groups() {
+		closest(m, t, geom.Group(g), times, at, best)
+	}
+	for i := len(t.Impacts) - 1; i >= 0; i-- {
+		best[t.Impacts[i].Contact.Surface] = Clearance{Gap: 0, Time: t.Impacts[i].Time}
 	}
 	var out []Clearance
 	for id, s := range m.Interior.Surfaces() {
@@ -51,12 +60,20 @@ func Clearances(m *model.Model, t *flight.Track) []Clearance {
 }
 
 // looks gives the times at which a track is looked at.
-func looks(t *flight.Track) []float64 {
+func looks(m *model.Model, t *flight.Track) []float64 {
 	knots := t.Knots()
+	ways := make([]float64, len(knots))
+	all := 0.0
+	for i := 1; i < len(knots); i++ {
+		ways[i] = (knots[i] - knots[i-1]) * math.Max(quickest(m, t, knots[i-1]), quickest(m, t, knots[i]))
+		all += ways[i]
+	}
+	way := math.Max(clearWay, all/mostLooks)
 	out := []float64{0}
 	for i := 1; i < len(knots); i++ {
-		for k := 1.0; k <= clearParts; k++ {
-			if at := knots[i-1] + (knots[i]-knots[i-1])*k/clearParts; at > out[len(out)-1] {
+		n := math.Max(clearParts, math.Ceil(ways[i]/way))
+		for k := 1.0; k <= n; k++ {
+			if at := knots[i-1] + (knots[i]-knots[i-1])*k/n; at > out[len(out)-1] {
 				out = append(out, at)
 			}
 		}
@@ -64,16 +81,25 @@ func looks(t *flight.Track) []float64 {
 	return out
 }
 
-// closest finds the least gap to each surface of a group.
-func closest(m *model.Model, t *flight.Track, g geom.Group, times []float64, best map[geom.SurfaceID]Clearance) {
-	gap := func(time float64) geom.Contact {
-		a := m.Motion.At(t.Begin + time)
-		return m.Interior.ContactIn(a.In(t.At(time).Pos), g)
+// quickest bounds the speed (m/s, in the habitat) on an integration step by its
+// ends: of a straight flight, the inertial speed and that of the habitat where
+// it is farthest out; that of a body in contact changes little.
+func quickest(m *model.Model, t *flight.Track, time float64) float64 {
+	if len(t.Phases) > 0 && t.Phases[t.PhaseAt(time)].Kind != flight.Free {
+		return r3.Norm(localAt(m, t, time).Vel)
 	}
+	s, omega := t.At(time), m.Motion.Omega(t.Begin+time)
+	return r3.Norm(s.Vel) + r3.Norm(omega)*r3.Norm(s.Pos)
+}
+
+// closest finds the least gap to each surface of a group. The track is at some
+// places (m, habitat components) at some times.
+func closest(m *model.Model, t *flight.Track, g geom.Group, times []float64, at []r3.Vec, best map[geom.SurfaceID]Clearance) {
+	gap := func(time float64) geom.Contact { return m.Interior.ContactIn(localAt(m, t, time).Pos, g) }
 	least := map[geom.SurfaceID]int{}
 	gaps := make([]float64, len(times))
-	for i, time := range times {
-		c := gap(time)
+	for i := range times {
+		c := m.Interior.ContactIn(at[i], g)
 		gaps[i] = c.Gap
 		if old, ok := least[c.Surface]; !ok || c.Gap < gaps[old] {
 			least[c.Surface] = i

@@ -46,6 +46,7 @@ type column[T any] struct {
 	meaning string
 	num     func(*T) float64
 	text    func(*T) string
+	partly  bool // rows that it says nothing about have no value, and count in no limit
 }
 
 // header gives the column as the table package wants it.

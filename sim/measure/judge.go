@@ -160,15 +160,18 @@ func touched(surface string) string {
 	return "touched " + surface
 }
 
-// series judges a column at its worst row. A column without a value anywhere
-// breaks the limit: what has no value cannot be held.
+// series judges a column at its worst row. A row without a value breaks the
+// limit: what has no value cannot be held. Of a column that speaks of some rows
+// only, the others are left out, but one at least must have a value.
 func series[T any](c *Criterion, t Target, cols []column[T], rows []T, time func(*T) float64) Verdict {
 	v := c.blank(t)
 	col := numberColumn(cols, c.Key, c.unit)
 	for i := range rows {
-		c.judge(&v, c.unit.of(col.num(&rows[i])), time(&rows[i]))
+		if x := col.num(&rows[i]); !col.partly || !math.IsNaN(x) {
+			c.judge(&v, c.unit.of(x), time(&rows[i]))
+		}
 	}
-	if len(rows) == 0 {
+	if !v.seen {
 		v.Verdict, v.Found, v.badness = Broken, "no value", badness{rank: 2, over: math.Inf(1)}
 	}
 	return v

@@ -64,9 +64,7 @@ func Land(m *model.Model, t *flight.Track) Landing {
 }
 
 func (l *Landing) where(m *model.Model, s frame.State) {
-	l.Place = m.PlaceOf(s.Pos)
-	l.Deck = m.Decks[l.Place.Deck].Name
-	l.Arc = m.Arc(l.Place)
+	l.Place, l.Deck, l.Arc = stand(m, s.Pos)
 }
 
 // strike measures how a body arrives. The surface is at rest in the habitat.
@@ -89,8 +87,8 @@ func energy(mass, speed float64) float64 {
 }
 
 func (l *Landing) offsets(m *model.Model, t *flight.Track, hit *flight.Impact) {
-	deck := m.Decks[t.Start.Deck].Radius
-	l.Offset = deck * GoneRound(m, t, hit.Time)
+	g := GroundOf(m, t)
+	l.Offset = g.Offset(GoneRound(m, t, hit.Time))
 	l.OffsetAxial = hit.State.Pos.Z - t.Local.Pos.Z
 	if l.Uniform.Lands {
 		l.Deflection = l.Offset - l.Uniform.Offset

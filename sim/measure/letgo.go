@@ -10,17 +10,17 @@ import (
 // LetGo is one release of a let-go series: what it hits first, how it arrives
 // where it ends, and the worst of its impacts. NaN where there is none.
 type LetGo struct {
-	Release              string
-	Along                float64 // m along the path
-	PathTime             float64 // s into the path
-	Radius               float64 // m, distance from the axis where it is let go
-	First                Event
-	Arrival              Event // first impact on what it ends on
-	Worst                Event // fastest impact
-	Outcome, EndsOn      string
-	Time                 float64 // s, of the end
-	LeavesSpeed          float64 // m/s, at which it leaves a passage last
-	passage, hit, arrive bool
+	Release         string
+	Along           float64 // m along the path
+	PathTime        float64 // s into the path
+	Radius          float64 // m, distance from the axis where it is let go
+	First           Event
+	Arrival         Event // first impact on what it ends on
+	Worst           Event // fastest impact
+	Outcome, EndsOn string
+	Time            float64 // s, of the end
+	LeavesSpeed     float64 // m/s, at which it leaves a passage last
+	hit, arrive     bool
 }
 
 // LetGoOf measures a release of a series.

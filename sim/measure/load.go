@@ -1,6 +1,8 @@
 package measure
 
 import (
+	"math"
+
 	"gonum.org/v1/gonum/integrate/quad"
 	"offplumb/sim/crew"
 	"offplumb/sim/model"
@@ -15,9 +17,14 @@ type Load struct {
 	Work        float64 // J, of the support's force since the start of the path
 }
 
-// powerNodes is the order of the quadrature of the power over an output step,
-// in which it is smooth but where a ramp begins or ends.
-const powerNodes = 4
+// The power is integrated over stretches in which it is smooth, of at most
+// powerStretch (s), by a quadrature of the order powerNodes: exact for what a
+// ramp along a radius does, a polynomial of degree 7, and to rounding for the
+// gentle curves of walks and pitched ladders.
+const (
+	powerNodes   = 4
+	powerStretch = 0.25
+)
 
 // LoadSeries gives the loads along a path at the output step, its end last,
 // and the step taken.
@@ -25,14 +32,37 @@ func LoadSeries(m *model.Model, p *crew.Plan) ([]Load, float64) {
 	times, step := Times(p.Duration(), m.Output.Step)
 	deck := m.Decks[p.Deck].Radius
 	out := make([]Load, len(times))
-	power := func(t float64) float64 { return p.Loads(m, t).Power }
-	work := 0.0
+	w := worker{power: func(t float64) float64 { return p.Loads(m, t).Power }, breaks: p.Breaks()}
 	for i, t := range times {
-		if i > 0 {
-			work += quad.Fixed(power, times[i-1], t, powerNodes, nil, 0)
-		}
 		l := p.Loads(m, t)
-		out[i] = Load{Loads: l, Leg: p.LegName(l.Feet.Leg), Arc: deck * l.Feet.Phi, Height: deck - l.Feet.R, Work: work}
+		out[i] = Load{Loads: l, Leg: p.LegName(l.Feet.Leg), Arc: deck * l.Feet.Phi, Height: deck - l.Feet.R, Work: w.to(t)}
 	}
 	return out, step
+}
+
+// worker adds up the work of a power.
+type worker struct {
+	power  func(t float64) float64 // W
+	breaks []float64               // s, between which it is smooth; those to come
+	at     float64                 // s, up to which it is added up
+	sum    float64                 // J
+}
+
+// to adds up the work to a later time (s) and gives it, J.
+func (w *worker) to(t float64) float64 {
+	for len(w.breaks) > 0 && w.breaks[0] < t {
+		w.stretch(w.breaks[0])
+		w.breaks = w.breaks[1:]
+	}
+	w.stretch(t)
+	return w.sum
+}
+
+// stretch adds a stretch in which the power is smooth.
+func (w *worker) stretch(t float64) {
+	n := math.Ceil((t - w.at) / powerStretch)
+	for from, k := w.at, 1.0; k <= n; k++ {
+		w.sum += quad.Fixed(w.power, from+(t-from)*(k-1)/n, from+(t-from)*k/n, powerNodes, nil, 0)
+	}
+	w.at = math.Max(w.at, t)
 }

@@ -30,9 +30,9 @@ type Rest struct {
 func EndOf(m *model.Model, t *flight.Track) Rest {
 	a := m.Motion.At(t.Begin + t.End)
 	local := a.ToHabitat(t.Last)
-	p := m.PlaceOf(local.Pos)
-	out := Rest{Release: t.Release.Name, Outcome: t.Outcome, Time: t.End, Place: p, Deck: m.Decks[p.Deck].Name, Arc: m.Arc(p),
+	out := Rest{Release: t.Release.Name, Outcome: t.Outcome, Time: t.End,
 		Speed: r3.Norm(local.Vel), Impacts: len(t.Impacts), Surface: endSurface(t)}
+	out.Place, out.Deck, out.Arc = stand(m, local.Pos)
 	if t.Outcome == flight.Rested || t.Outcome == flight.Stuck {
 		out.Speed = 0
 	}
@@ -127,8 +127,9 @@ func Events(m *model.Model, t *flight.Track) []Event {
 }
 
 func eventAt(m *model.Model, s frame.State, time float64) Event {
-	p := m.PlaceOf(s.Pos)
-	return Event{Time: time, Place: p, Deck: m.Decks[p.Deck].Name, Arc: m.Arc(p)}
+	e := Event{Time: time}
+	e.Place, e.Deck, e.Arc = stand(m, s.Pos)
+	return e
 }
 
 // leavings finds where a track passes the outer end of a passage outward,

@@ -20,7 +20,7 @@ type Sample struct {
 	Phase                              string
 	Inertial, Local                    frame.State
 	Polar                              frame.Polar // Phi not wrapped
-	Arc, Offset, Height                float64
+	Arc, Axial, Offset, Height         float64
 	VSpinward, VAxial, VUp             float64
 	Centrifugal, Coriolis, Euler, Drag float64
 }
@@ -49,32 +49,32 @@ func Samples(m *model.Model, t *flight.Track, drag *flight.Forces) ([]Sample, fl
 	times, step := Times(t.End, m.Output.Step)
 	out := make([]Sample, len(times))
 	w := NewWinding(m, t)
+	g := GroundOf(m, t)
 	knots := append(t.Knots(), math.Inf(1))
 	for i, k := 0, 0; i < len(times); i++ {
 		for knots[k] < times[i] {
 			w.To(knots[k])
 			k++
 		}
-		out[i] = sampleAt(m, t, times[i], w.To(times[i]), drag)
+		out[i] = sampleAt(m, t, &g, times[i], w.To(times[i]), drag)
 	}
 	return out, step
 }
 
-func sampleAt(m *model.Model, t *flight.Track, time, round float64, forces *flight.Forces) Sample {
+func sampleAt(m *model.Model, t *flight.Track, g *Ground, time, round float64, forces *flight.Forces) Sample {
 	a := m.Motion.At(t.Begin + time)
 	s := t.At(time)
 	local := a.ToHabitat(s)
 	p := frame.PolarOf(local.Pos)
 	p.Phi = t.Start.Phi + round
-	deck := m.Decks[t.Start.Deck].Radius
-	out := Sample{Time: time, Inertial: s, Local: local, Polar: p,
-		Arc: deck * p.Phi, Offset: deck * round, Height: deck - p.R}
+	out := Sample{Time: time, Inertial: s, Local: local, Polar: p, Offset: g.Offset(round)}
+	out.Arc, out.Axial, out.Height = g.Place(local.Pos, round)
 	if n := len(t.Phases); n > 0 && time >= t.End {
 		out.Phase = t.Phases[n-1].Kind.String()
 	} else if n > 0 {
 		out.Phase = t.Phases[t.PhaseAt(time)].Kind.String()
 	}
-	out.VSpinward, out.VAxial, out.VUp = frame.LocalAt(p.Phi).Split(local.Vel)
+	out.VSpinward, out.VAxial, out.VUp = g.Split(local.Vel, p.Phi)
 	ap := a.Apparent(local)
 	out.Centrifugal, out.Coriolis, out.Euler = r3.Norm(ap.Centrifugal), r3.Norm(ap.Coriolis), r3.Norm(ap.Euler)
 	out.Drag = r3.Norm(forces.Drag(t.Begin+time, s))

@@ -70,6 +70,8 @@ func (s *teller) until(time float64) {
 		e := &s.events[0]
 		s.events = s.events[1:]
 		switch {
+		case e.Kind == Impact && e.NormalSpeed < leastTouch && e.Time > 0:
+			// A graze: it neither stops nor turns the body.
 		case e.Kind == Leaves:
 			s.say("leaves %s at %s with %s", e.Surface, seconds(e.Time), speeds(e.Speed, e.Energy))
 			s.last = ""
@@ -81,6 +83,10 @@ func (s *teller) until(time float64) {
 		}
 	}
 }
+
+// leastTouch is the least speed along the normal, in m/s, of a touch that a
+// story tells after the release: a hundredth of what the least bounce has.
+const leastTouch = 1e-3
 
 // along tells a slide or a roll.
 func (s *teller) along(p *flight.Phase) {

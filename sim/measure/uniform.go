@@ -10,7 +10,7 @@ import (
 
 // Uniform is the uniform-gravity path: the same release under uniform gravity
 // of the strength at rest on the deck beneath it, over a flat deck, without
-// air. Its frame is local to the plumb line: x spinward and y axial from the
+// air; on a flat floor it pulls along the plumb line. Its frame is local to the plumb line: x spinward and y axial from the
 // release, h above the deck.
 type Uniform struct {
 	Gravity                float64 // m/s^2
@@ -25,8 +25,9 @@ type Uniform struct {
 // UniformGravity works out the uniform-gravity path of a track's release: the
 // parabola of the schoolbooks, until the body's surface meets the deck.
 func UniformGravity(m *model.Model, t *flight.Track) Uniform {
-	deck := &m.Decks[t.Start.Deck]
-	u := Uniform{Gravity: m.Gravity(deck.Radius), Height: t.Start.Height}
+	g := GroundOf(m, t)
+	foot := g.Foot(t.Start.Phi)
+	u := Uniform{Gravity: m.Gravity(foot), Height: foot - t.Start.R}
 	u.VSpinward, u.VAxial, u.VUp = frame.LocalAt(t.Start.Phi).Split(t.Local.Vel)
 	drop := math.Max(0, u.Height-t.Body.Diameter/2)
 	if u.Gravity == 0 {

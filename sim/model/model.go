@@ -26,6 +26,7 @@ type Model struct {
 	Paths    []Path
 	Limits   []Limit
 	Spacings []Spacing
+	Scatters []Scatter
 	Solver   Solver
 	Output   Output
 

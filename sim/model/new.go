@@ -41,6 +41,7 @@ func New(in Model) (*Model, []Problem) {
 	c.releases()
 	c.paths()
 	c.spacings()
+	c.scatters()
 	if len(c.problems) > 0 {
 		return nil, c.problems
 	}

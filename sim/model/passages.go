@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 
+	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/sim/geom"
 )
 
@@ -66,14 +67,20 @@ func (c *checker) thickest(p *Passage) float64 {
 }
 
 // endRoom gives the room in which an end of a passage lies, r (m) from the
-// axis, or in whose hull, nil for none; of several the one whose hull is next
+// axis, or in the hull that the passage leads through; nil for none; of several the one whose hull is next
 // along the passage.
 func endRoom(rooms []housed, p *geom.Passage, r float64, inner bool) *housed {
 	var best *housed
 	var next float64
 	for i := range rooms {
 		s, ok := rooms[i].Span(p.Phi, p.Z, 0)
-		if !ok || r < s.From-DefaultThickness || r > s.To+DefaultThickness {
+		if inner {
+			s.To += DefaultThickness
+		} else {
+			s.From -= DefaultThickness
+		}
+		slack := levelSlack * r
+		if !ok || r < s.From-slack || r > s.To+slack {
 			continue
 		}
 		if best == nil || inner && s.To < next || !inner && s.From > next {
@@ -118,6 +125,14 @@ func (c *checker) fit(key, wide string, p *geom.Passage, inner, outer *housed) b
 	}
 	p.From = math.Min(p.From, math.Hypot(a.To, h))
 	p.To = math.Max(p.To, b.From)
+	switch {
+	case p.Ends().From < a.From-levelSlack*p.From:
+		c.fault(key+".from_radius", "", "reaches out of %s on its far side, %.6g m from the axis", inner.title(), a.From)
+		return false
+	case p.To > b.To+levelSlack*p.To:
+		c.fault(key+".to_radius", "", "reaches out of %s on its far side, %.6g m from the axis", outer.title(), b.To)
+		return false
+	}
 	if t, isTorus := inner.hull.(*geom.Torus); isTorus && t.Flat && p.To > t.Floor.R0 && math.Abs(p.Z-t.Z)+h > t.HalfWidth(t.Floor.R0) {
 		c.fault(key+".axial", "", "does not lead out of %s through its flat floor, which is %.6g m wide", inner.title(), 2*t.HalfWidth(t.Floor.R0))
 		return false
@@ -125,27 +140,41 @@ func (c *checker) fit(key, wide string, p *geom.Passage, inner, outer *housed) b
 	return true
 }
 
-// Looking along a passage for what stands in it: how many places are tried per
-// width, which finds what reaches into it by a thousandth of that, and how many
-// at most.
+// looks are the lines along which a passage is looked through, as shares of
+// half its width aside of its middle: what reaches into it by more than a tenth
+// of that is seen from one of them.
+var looks = [][2]float64{{0, 0}, {0.9, 0}, {-0.9, 0}, {0, 0.9}, {0, -0.9}, {0.9, 0.9}, {0.9, -0.9}, {-0.9, 0.9}, {-0.9, -0.9}}
+
 const (
-	looksPerWidth = 20
-	mostLooks     = 100_000
+	looksPerWidth = 10 // places along a line
+	mostLooks     = 10_000
 )
 
 // blocked tries that nothing is in the way of the passages: the side of a room
 // that one does not lead into, a wall, another passage.
 func (c *checker) blocked(in *geom.Interior, shafts []geom.Passage, keys []string) {
 	for i := range shafts {
-		p := &shafts[i]
-		w, h := p.Ends(), p.Width/2
-		n := int(math.Min(mostLooks, math.Ceil(looksPerWidth*(w.To-w.From)/p.Width))) + 1
+		if id := obstacle(in, &shafts[i]); id >= 0 {
+			c.fault(keys[i], "", "runs into %q", in.Surface(id).Name)
+		}
+	}
+}
+
+// obstacle gives a surface that stands in a passage, -1 for none.
+func obstacle(in *geom.Interior, p *geom.Passage) geom.SurfaceID {
+	w, h, at := p.Ends(), p.Width/2, geom.ShaftAt(p.Phi, p.Z)
+	n := int(math.Min(mostLooks, math.Ceil(looksPerWidth*(w.To-w.From)/p.Width))) + 1
+	for _, look := range looks {
+		if p.Round && look[0]*look[1] != 0 {
+			continue
+		}
+		aside := r3.Add(r3.Scale(look[0]*h, at.Spin), r3.Vec{Z: look[1] * h})
 		for k := range n + 1 {
-			at := p.Point(w.From + (w.To-w.From)*float64(k)/float64(n))
-			if near := in.Contact(at); near.Gap < h && p.Holds(near.Point, TouchSlack) {
-				c.fault(keys[i], "", "runs into %q", in.Surface(near.Surface).Name)
-				break
+			near := in.Contact(r3.Add(p.Point(w.From+(w.To-w.From)*float64(k)/float64(n)), aside))
+			if near.Gap < h && p.Holds(near.Point, TouchSlack) {
+				return near.Surface
 			}
 		}
 	}
+	return -1
 }

@@ -24,7 +24,7 @@ func randomRoom(rng *rand.Rand, r, top float64) (room model.Room, inner, outer f
 		room.Size = [3]float64{between(1, 6), between(1, 6), between(0.2, 0.9) * (r - top)}
 		return room, r, r - room.Size[2]
 	case model.Sphere:
-		return room, r, r
+		return room, r, between(top, 0.9*r)
 	}
 	room.Length = between(1, 10)
 	if rng.IntN(2) == 0 && top > 0 {
@@ -55,11 +55,15 @@ func randomJoined(rng *rand.Rand) model.Model {
 	return in
 }
 
+// graze is how deep, as a share of half its width, the checks let something
+// reach into the corner of a passage.
+const graze = 0.1
+
 // TestJoinedRoomsAreClosed tries rooms of all shapes with passages of all
 // sizes: whatever is taken is clear along the passage's middle line, and no walk
 // that keeps clear of matter leads out of it.
 func TestJoinedRoomsAreClosed(t *testing.T) {
-	const seed, tries = 0x0ff91a3b, 3000
+	const seed, tries = 0x0ff91a3b, 2000
 	rng := rand.New(rand.NewPCG(seed, 1))
 	taken := map[[2]model.Shape]int{}
 	for i := range tries {
@@ -77,7 +81,7 @@ func TestJoinedRoomsAreClosed(t *testing.T) {
 			at := geom.ShaftAt(phi, p.Axial)
 			w := p.FromRadius + (p.ToRadius-p.FromRadius)*rng.Float64()
 			q := r3.Add(clear.Point(w), r3.Add(r3.Scale(half*(2*rng.Float64()-1), at.Spin), r3.Vec{Z: half * (2*rng.Float64() - 1)}))
-			if clear.Holds(q, slack) && (m.Interior.Dist(q) < 0 || !m.Interior.Inside(q)) {
+			if clear.Holds(q, slack) && (m.Interior.Dist(q) < -graze*half || !m.Interior.Inside(q)) {
 				t.Fatalf("PCG(%#x, 1), number %d: %v, in the passage, %g m from the axis, is %g m from free\n%+v", seed, i, q, w, m.Interior.Dist(q), in)
 			}
 		}

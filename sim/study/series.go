@@ -11,6 +11,10 @@ import (
 // MaxSeries bounds the releases of one let-go series.
 const MaxSeries = 10_000
 
+// atEnd is the share of a path within which a release of a series is the one
+// at its end: above the roundings of its length, below any stretch.
+const atEnd = 1e-9
+
 // Expand puts the releases of each let-go series in the place of the one that
 // declares it: one at each stretch of the path, or of the time, from its start
 // to its end, in order. It gives the releases, and for each the index of the one
@@ -52,7 +56,7 @@ func series(m *model.Model, r *model.Release) ([]model.Release, model.Problem) {
 	var out []model.Release
 	for k := 0; ; k++ {
 		at := float64(k) * r.Carried.Every
-		last := at >= whole
+		last := at >= whole*(1-atEnd)
 		if last {
 			at = whole
 		}

@@ -1,9 +1,9 @@
 package table
 
 import (
-	"encoding/csv"
 	"io"
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 )
@@ -27,28 +27,9 @@ func appendExact(dst []byte, x float64) []byte {
 	return strconv.AppendFloat(dst, x, 'g', -1, 64)
 }
 
-// WriteCSV writes the table by RFC 4180: one header row, fields separated by
-// commas, lines ended by CR LF.
+// WriteCSV writes the table as StreamCSV does.
 func (t *Table) WriteCSV(w io.Writer) error {
-	out := csv.NewWriter(w)
-	out.UseCRLF = true
-	record := make([]string, len(t.Columns))
-	for i := range t.Columns {
-		record[i] = t.Columns[i].Name
-	}
-	if err := out.Write(record); err != nil {
-		return err
-	}
-	for _, row := range t.Rows {
-		for i := range row {
-			record[i] = t.Columns[i].field(row[i])
-		}
-		if err := out.Write(record); err != nil {
-			return err
-		}
-	}
-	out.Flush()
-	return out.Error()
+	return StreamCSV(w, t.Columns, slices.Values(t.Rows))
 }
 
 func (c *Column) field(cell Cell) string {

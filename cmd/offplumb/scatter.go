@@ -1,0 +1,198 @@
+package main
+
+import (
+	"context"
+	"fmt"
+	"io"
+	"strings"
+
+	"offplumb/sim/measure"
+	"offplumb/sim/model"
+	"offplumb/sim/study"
+	"offplumb/sim/table"
+)
+
+// scatterResult is a scatter and what it gave.
+type scatterResult struct {
+	of    *model.Scatter
+	cloud *measure.Cloud // nil: not asked for, or not finished
+	sum   *measure.Scattered
+}
+
+// runScatters runs the scatters that are asked for.
+func (j *job) runScatters(ctx context.Context, p *progress) error {
+	m := j.model()
+	j.scatters = make([]scatterResult, len(m.Scatters))
+	for i := range m.Scatters {
+		s := &m.Scatters[i]
+		j.scatters[i].of = s
+		if !j.wanted(s.Name) {
+			continue
+		}
+		cloud, err := j.Scatter(ctx, s, study.ScatterOptions{Workers: j.flags.jobs, Seed: j.flags.seed,
+			Done: func(done, of int) { p.tell("samples of "+s.Name, done, of) }})
+		if ctx.Err() != nil {
+			return context.Cause(ctx)
+		}
+		if err != nil {
+			return fmt.Errorf("scatter %q: %w", s.Name, err)
+		}
+		j.scatters[i].cloud, j.scatters[i].sum = cloud, measure.Scatter(m, cloud)
+	}
+	return nil
+}
+
+// scatterTables are the tables of the scatters.
+func scatterTables(j *job) []task {
+	var out []task
+	var names table.Namer
+	for i := range j.scatters {
+		s := &j.scatters[i]
+		file := "scatter/" + names.Name(s.of.Name)
+		if s.cloud == nil {
+			continue
+		}
+		columns := measure.CloudColumns(s.of)
+		out = append(out, task{entry: entry{File: file + ".csv", Of: "scatter", Name: s.of.Name}, table: columns,
+			title: s.of.Name + ": A row for each sample of a scatter.",
+			write: func(w io.Writer) error { return table.StreamCSV(w, columns, s.cloud.Rows()) }})
+		out = append(out, tableTask(file+"-summary.csv", "scatter summary", s.of.Name, "What the samples of a scatter come to.", measure.ScatterTable(s.sum)))
+		if s.sum.Contour != nil {
+			out = append(out, tableTask(file+"-contour.csv", "scatter contour", s.of.Name, "Corners of the smallest area that holds 95 % of the landings.", measure.ContourTable(s.sum.Contour)))
+		}
+	}
+	return out
+}
+
+// sumScatter tells each scatter in a few sentences.
+func sumScatter(j *job, b *strings.Builder) {
+	head := false
+	for i := range j.scatters {
+		s := &j.scatters[i]
+		if s.cloud == nil {
+			continue
+		}
+		if !head {
+			b.WriteString("\nScatter\n")
+			head = true
+		}
+		b.WriteString(wrapped("  "+s.sentence(j.flags.seed), "    "))
+	}
+}
+
+func (s *scatterResult) sentence(seed uint64) string {
+	words := fmt.Sprintf("%s: %s of %s, %s", s.of.Name, count(s.sum.Samples, "sample"), s.of.Of, s.sampled(seed))
+	if s.sum.Flown < s.sum.Samples {
+		words += fmt.Sprintf(", %d of them left out", s.sum.Samples-s.sum.Flown)
+	}
+	if s.sum.Landed > 0 {
+		words += fmt.Sprintf(". Median landing %s of plumb", s.median())
+	}
+	if e := s.sum.Ellipse; e != nil {
+		words += ". " + ellipseWords(e)
+	}
+	if c := s.sum.Contour; c != nil {
+		words += ". " + contourWords(c)
+	}
+	words += ". " + sharesTold("First touch", s.sum.Surfaces)
+	words += sharesTold("Fallen through", s.sum.Openings)
+	words += sharesTold("Not landed", s.sum.Outcomes)
+	if e := s.spread("energy"); e.Count > 0 {
+		words += fmt.Sprintf("Impact energy: median %s, 95 %% below %s, greatest %s.", withUnit(e.Median(), "J"), withUnit(e.High(), "J"), withUnit(e.Max, "J"))
+	}
+	return strings.TrimSpace(words)
+}
+
+// sampled says how samples were spread. Halton points have no seed.
+func (s *scatterResult) sampled(seed uint64) string {
+	switch s.of.Sampling {
+	case model.Halton:
+		return "Halton points"
+	case model.LatinHypercube:
+		return fmt.Sprintf("a Latin hypercube of seed %d", seed)
+	}
+	return fmt.Sprintf("random with seed %d", seed)
+}
+
+func (s *scatterResult) spread(key string) *measure.Spreading {
+	for i := range s.sum.Spreads {
+		if s.sum.Spreads[i].Key == key {
+			return &s.sum.Spreads[i]
+		}
+	}
+	return &measure.Spreading{}
+}
+
+// median says where the median landing is.
+func (s *scatterResult) median() string { return onPlan(s.sum.Median[0], s.sum.Median[1]) }
+
+// onPlan says where a place on a plan is.
+func onPlan(spinward, axial float64) string {
+	return way(spinward) + ", " + axially(axial)
+}
+
+func axially(x float64) string {
+	switch {
+	case x > leastShown:
+		return withUnit(x, "m") + " toward +axial"
+	case x < -leastShown:
+		return withUnit(-x, "m") + " toward -axial"
+	}
+	return "0 m axially"
+}
+
+func ellipseWords(e *measure.Ellipse) string {
+	return fmt.Sprintf("95 %% landing ellipse: semi-axes %s and %s, the major one %s deg from spinward toward +axial, about %s; it holds %s",
+		withUnit(e.Major, "m"), withUnit(e.Minor, "m"), table.Fixed(degreesOf(e.Angle), 1), onPlan(e.Spinward, e.Axial), percent(e.Inside))
+}
+
+func contourWords(c *measure.Contour) string {
+	if c.Line {
+		a, b := c.Pieces[0][0], c.Pieces[0][1]
+		return fmt.Sprintf("The landings lie on a line: the shortest stretch with 95 %% of them goes from %s to %s", onPlan(a[0], a[1]), onPlan(b[0], b[1]))
+	}
+	return fmt.Sprintf("95 %% contour, no distribution assumed: %s m^2 in %s; it holds %s", sigfig(c.Area, 3), count(len(c.Pieces), "outline"), percent(c.Inside))
+}
+
+// percent writes a share.
+func percent(share float64) string { return sigfig(100*share, 3) + " %" }
+
+// shareWords gives a share with its interval.
+func shareWords(s *measure.Share) string {
+	return fmt.Sprintf("%s %s (%s to %s)", s.Name, percent(s.Share), sigfig(100*s.Low, 3), percent(s.High))
+}
+
+// sharesTold lists shares with their 95 % confidence intervals.
+func sharesTold(what string, list []measure.Share) string {
+	if len(list) == 0 {
+		return ""
+	}
+	words := make([]string, 0, namesTold)
+	for i := range list {
+		if i == namesTold {
+			words = append(words, fmt.Sprintf("and %d more", len(list)-i))
+			break
+		}
+		words = append(words, shareWords(&list[i]))
+	}
+	return what + ": " + strings.Join(words, ", ") + ". "
+}
+
+// namesTold bounds the surfaces or openings that a sentence lists.
+const namesTold = 6
+
+// warnScatters notes what the reader of a scatter must know.
+func warnScatters(j *job) {
+	for i := range j.scatters {
+		s := &j.scatters[i]
+		if s.cloud == nil {
+			continue
+		}
+		for _, why := range s.sum.LeftOut {
+			j.note("study."+s.of.Name, "%s of %d left out: %s", count(why.Count, "sample"), s.sum.Samples, why.Name)
+		}
+		if least := study.HaltonLeast(s.of); s.of.Sampling == model.Halton && s.sum.Samples < least {
+			j.note("study."+s.of.Name, "Halton points of %d keys are spread unevenly below %d samples; a Latin hypercube is not", len(s.of.Vary), least)
+		}
+	}
+}

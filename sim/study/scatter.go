@@ -1,0 +1,170 @@
+package study
+
+import (
+	"context"
+	"fmt"
+	"sync"
+	"sync/atomic"
+
+	"offplumb/sim/flight"
+	"offplumb/sim/frame"
+	"offplumb/sim/measure"
+	"offplumb/sim/model"
+)
+
+// ScatterOptions say how a scatter is run.
+type ScatterOptions struct {
+	Workers int // at least 1
+	Seed    uint64
+	Done    func(done, of int) // progress, called from one worker at a time; may be nil
+}
+
+// Scatter flies the samples of a scatter. Only their numbers are kept, so that
+// samples may be many. The result depends on the scenario and the seed alone.
+// It stops early, with the context's error, when the context ends.
+func (p *Prepared) Scatter(ctx context.Context, s *model.Scatter, opt ScatterOptions) (*measure.Cloud, error) {
+	at, ok := p.Model.ReleaseNamed(s.Of)
+	if !ok {
+		return nil, fmt.Errorf("no release named %q", s.Of)
+	}
+	x := &scattering{p: p, s: s, of: &p.Lets[at]}
+	x.draw, x.side = newSampler(s, opt.Seed)
+	x.ground = measure.GroundAt(p.Model, x.of.Place.Polar, p.Model.DeckBeneath(x.of.Place.Polar))
+	x.out = measure.NewCloud(s, x.of.Place)
+	x.out.Draw = x.numbers
+	var next, done atomic.Int64
+	var tell sync.Mutex
+	spread(opt.Workers, func() {
+		w := x.worker()
+		for {
+			from := int(next.Add(chunk)) - chunk
+			to := min(from+chunk, s.Samples)
+			if from >= to || ctx.Err() != nil {
+				break
+			}
+			for i := from; i < to; i++ {
+				w.sample(i)
+			}
+			n := int(done.Add(int64(to - from)))
+			if opt.Done != nil {
+				tell.Lock()
+				opt.Done(n, s.Samples)
+				tell.Unlock()
+			}
+		}
+		tell.Lock()
+		x.out.Work.Steps += w.work.Steps
+		x.out.Work.Rejected += w.work.Rejected
+		x.out.Work.Derivs += w.work.Derivs
+		tell.Unlock()
+	})
+	return x.out, ctx.Err()
+}
+
+// chunk is how many samples a worker takes at once: a few milliseconds' worth.
+const chunk = 64
+
+// scattering is a scatter at work.
+type scattering struct {
+	p      *Prepared
+	s      *model.Scatter
+	of     *flight.Let    // the release as the scenario has it
+	ground measure.Ground // beneath it
+	draw   *sampler
+	side   []int // of each spread: its side of the unit cube
+	out    *measure.Cloud
+}
+
+// numbers gives the varied numbers of a sample.
+func (x *scattering) numbers(sample int, into []float64) {
+	for k := range into {
+		into[k] = quantile(&x.s.Vary[k], x.draw.at(sample, x.side[k]))
+	}
+}
+
+// thrower flies samples, one after another.
+type thrower struct {
+	*scattering
+	m     *model.Model
+	flier *flight.Flier
+	drawn []float64
+	work  flight.Work
+}
+
+func (x *scattering) worker() *thrower {
+	return &thrower{scattering: x, m: x.p.Model, flier: flight.NewFlier(x.p.Model), drawn: make([]float64, len(x.s.Vary))}
+}
+
+// sample flies one sample, or says why it cannot be.
+func (w *thrower) sample(i int) {
+	v := w.p.Model.VariantOf(w.of.Release)
+	w.numbers(i, w.drawn)
+	for k, x := range w.drawn {
+		if why := model.Possible(w.s.Vary[k].Key, x); why != "" {
+			w.out.LeaveOut(i, measure.ShotImpossible, why)
+			return
+		}
+		v.Set(&w.s.Vary[k], x)
+	}
+	v.Release.Own = &v.Body
+	w.spin(v.Spin)
+	let, why := w.let(&v)
+	if why != "" {
+		w.out.LeaveOut(i, measure.ShotImpossible, why)
+		return
+	}
+	track, err := w.flier.Fly(&let)
+	if err != nil {
+		w.out.LeaveOut(i, measure.ShotFailed, err.Error())
+		return
+	}
+	w.work.Steps += track.Work.Steps
+	w.work.Rejected += track.Work.Rejected
+	w.work.Derivs += track.Work.Derivs
+	l := measure.Land(w.m, track)
+	spinward, axial := w.moved(&let)
+	// The way gone, on the nominal ground where the sample starts above another.
+	spinward += l.Offset * w.ground.Radius / measure.GroundOf(w.m, track).Radius
+	w.out.Set(i, &l, spinward, axial+l.OffsetAxial)
+}
+
+// spin makes the habitat turn at a rate, rad/s.
+func (w *thrower) spin(rate float64) {
+	if rate == w.m.Habitat.Spin {
+		return
+	}
+	w.m = w.p.Model.Spun(rate)
+	w.flier = flight.NewFlier(w.m)
+}
+
+// let starts a variant, or says in words why it cannot start.
+func (w *thrower) let(v *model.Variant) (flight.Let, string) {
+	let, fault := flight.Release(w.m, &v.Release, w.p.carrier(w.of.Release))
+	if v.Release.Carried == nil && fault.Msg == "" {
+		fault.Msg = w.m.Obstructed(let.Place, v.Body.Diameter/2)
+	}
+	if fault.Msg == "" {
+		return let, ""
+	}
+	pos := let.Place.Vec()
+	near := w.m.Interior.Contact(pos)
+	switch {
+	case !w.m.Interior.Inside(pos):
+		return let, "is let go outside the rooms"
+	case near.Gap < 0:
+		return let, "is let go inside a solid"
+	}
+	return let, fmt.Sprintf("has no room beside %q", w.m.Interior.Surface(near.Surface).Name)
+}
+
+// moved says where the plumb line of a sample stands, m from that of the
+// nominal release: along its ground and axially.
+func (w *thrower) moved(let *flight.Let) (spinward, axial float64) {
+	from, to := w.of.Place, let.Place
+	if f := w.ground.Flat; f != nil {
+		s0, a0, _ := f.Place(from.Vec())
+		s1, a1, _ := f.Place(to.Vec())
+		return s1 - s0, a1 - a0
+	}
+	return w.ground.Radius * frame.WrapAngle(to.Phi-from.Phi), to.Z - from.Z
+}
