@@ -3,6 +3,7 @@ package plots
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"gonum.org/v1/plot/vg"
 )
@@ -17,7 +18,8 @@ type scatterPlan struct {
 // sideLine is a line of the text beside a plan.
 type sideLine struct {
 	words string
-	group int // whose mark stands before it; -1: none
+	group int  // whose mark stands before it; -1: none
+	gap   bool // stands before it
 	soft  bool
 }
 
@@ -28,6 +30,9 @@ var (
 
 func (s *scatterPlan) arrange() {
 	must := s.matters()
+	if c := s.spec.circumference(); c > 0 && must.size().X > c { // landings of several laps lie on one
+		must.min.X, must.max.X = -c/2, c/2
+	}
 	s.deck = s.bounds()
 	if s.spec.From.Y == s.spec.To.Y { // no bulkheads: as far as there is something
 		all := must
@@ -59,27 +64,48 @@ func (s *scatterPlan) drawn() string {
 	return fmt.Sprintf(" The first %d of %d landings are drawn.", n, s.of.Landed)
 }
 
-// write makes the text beside the plan, as far as there is room.
+// write makes the text beside the plan, as far as there is room: with gaps between its
+// pieces, without, and then without the last.
 func (s *scatterPlan) write() {
 	add := func(words string, group int) {
-		for k, l := range wrap(clean(words), planColumn-numberWide, sizeLabel, false, 3) {
-			if k > 0 {
-				group = -1
+		for k, l := range wrap(strings.ReplaceAll(clean(words), " -", " "+minus), planColumn-numberWide, sizeLabel, false, 3) {
+			line := sideLine{words: l, group: -1}
+			if k == 0 {
+				line.group, line.gap = group, group < 0
 			}
-			s.lines = append(s.lines, sideLine{words: l, group: group})
+			s.lines = append(s.lines, line)
 		}
 	}
 	for i, g := range s.of.Groups {
 		add(g.Name, i)
 	}
 	for _, w := range s.of.Words {
-		s.lines = append(s.lines, sideLine{group: -1})
 		add(w, -1)
 	}
-	if fits := int((s.side.Max.Y - s.side.Min.Y).Points() / entryPitch); len(s.lines) > fits {
+	high := (s.side.Max.Y - s.side.Min.Y).Points()
+	if s.height() > high {
+		for i := range s.lines {
+			s.lines[i].gap = false
+		}
+	}
+	if fits := int(high / entryPitch); len(s.lines) > fits {
 		s.lines = append(s.lines[:max(0, fits-1)], sideLine{words: "and more in the tables", group: -1, soft: true})
 	}
 }
+
+// height is that of the text beside the plan, pt.
+func (s *scatterPlan) height() float64 {
+	h := entryPitch * float64(len(s.lines))
+	for _, l := range s.lines {
+		if l.gap {
+			h += lineGap
+		}
+	}
+	return h
+}
+
+// lineGap stands before a piece of the text beside the plan, pt.
+const lineGap = 5.0
 
 // label finds places for the names.
 func (s *scatterPlan) label() {
@@ -93,21 +119,30 @@ func (s *scatterPlan) label() {
 		s.pl.mark(q, ringRadius)
 		s.pl.add(label{s: "plumb foot", size: sizeLabel, ink: inkText, at: q, clear: ringRadius + 1, need: true})
 	})
-	for i, c := range s.of.Contour {
-		s.laps(s.closed(c), func(line []vg.Point) {
-			s.pl.polyline(priceStrong, line...)
-			if i == 0 {
-				s.nameLine(line, "95 % contour")
-			}
-		})
+	name := "95 % contour"
+	if s.of.Line {
+		name = "shortest stretch with 95 %"
+	}
+	for _, c := range s.of.Contour {
+		name = s.nameOnce(s.closed(c), name, priceStrong)
 	}
 	if e := s.of.Ellipse; e != nil {
-		s.laps(e.outline(), func(line []vg.Point) {
-			s.pl.polyline(pricePlumb, line...)
-			s.nameLine(line, "95 % ellipse")
-		})
+		s.nameOnce(e.outline(), "95 % ellipse", pricePlumb)
 	}
 	s.plan.label()
+}
+
+// nameOnce keeps labels off a line and names the first copy of it that shows. It gives
+// the name if that is still to be given.
+func (s *scatterPlan) nameOnce(line []Point, name string, price float64) string {
+	s.laps(line, func(page []vg.Point) {
+		s.pl.polyline(price, page...)
+		if name != "" && len(clipLine(s.win, page)) > 0 {
+			s.nameLine(page, name)
+			name = ""
+		}
+	})
+	return name
 }
 
 // closed repeats the first corner of an outline.
@@ -223,6 +258,9 @@ func (p *pad) dots(group int, at []vg.Point) {
 func (s *scatterPlan) paintLines(p *pad) {
 	x, y := s.side.Min.X.Points(), s.side.Max.Y.Points()
 	for _, l := range s.lines {
+		if l.gap {
+			y -= lineGap
+		}
 		y -= entryPitch
 		if l.group >= 0 {
 			p.dots(l.group, []vg.Point{xy(x+numberWide/2, y+2+sizeLabel*capHeight/2)})

@@ -130,6 +130,9 @@ func wildFigures(w wild) []func() (*Figure, error) {
 	}
 	crew := wildPath(w)
 	deck.Paths = wildPlanPaths(w)
+	scattered := ScatterPlanSpec{Deck: deck, Foot: w.point(), Median: w.place(), Landed: w.IntN(5), Line: w.IntN(2) == 0,
+		Groups:  []ScatterGroup{{"a", []Point{w.point(), w.point()}}, {"b", []Point{w.point()}}},
+		Ellipse: &PlanEllipse{w.point(), math.Abs(w.number()), math.Abs(w.number()), w.NormFloat64()}, Contour: [][]Point{{w.point(), w.point(), w.point()}}}
 	n := w.IntN(9)
 	deflections := DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", w.times(n), w.list(n), w.list(n)}, {"b", w.times(n), w.list(n), w.list(n)}}}
 	loads := LoadsChartSpec{
@@ -140,5 +143,6 @@ func wildFigures(w wild) []func() (*Figure, error) {
 		func() (*Figure, error) { return SideView(side) }, func() (*Figure, error) { return InertialView(inertial) },
 		func() (*Figure, error) { return DeckPlan(deck) }, func() (*Figure, error) { return DeflectionChart(deflections) },
 		func() (*Figure, error) { return LoadsChart(loads) }, func() (*Figure, error) { return PathView(crew) },
+		func() (*Figure, error) { return ScatterPlan(scattered) },
 	}
 }

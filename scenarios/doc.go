@@ -13,7 +13,7 @@
 //	units.go     quantities with units
 //	build.go     typed values -> model.Model
 //	list.go      release lists in CSV; their rows in listrow.go
-//	sweep.go     sweeps: read in sweep_read.go, each point loaded in variant.go
+//	sweep.go     sweeps: read in sweep_read.go and sweep_values.go, each point loaded in variant.go
 //	load.go      all of it in order, and the places of later problems
 //	reference.go the format as a table for the README; schema.go as JSON Schema
 //	examples.go  the shipped scenarios

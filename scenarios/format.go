@@ -260,7 +260,7 @@ var crewPath = &section{name: "a crew path", doc: "A person's motion through sta
 var limit = &section{name: "a limit", doc: "An acceptance criterion of the project.",
 	keys: []key{
 		title(),
-		texts("of", "release.NAME, path.NAME or habitat; * stands for anything; or a list").need(),
+		texts("of", "release.NAME, path.NAME, study.NAME (of a scatter) or habitat; * stands for anything; or a list").need(),
 		text("measure", "table.column, without the unit").need(),
 		bound("min", "least value"),
 		bound("max", "greatest value"),
@@ -301,8 +301,10 @@ var scatter = &section{name: "a scatter", doc: "A release many times, its keys v
 	keys: []key{
 		title(),
 		text("of", "name of the release").need(),
-		{name: "samples", want: wantInteger, span: span{low: 1, high: 1e7}, required: true, doc: "how many; each takes about 100 bytes of memory"},
+		{name: "samples", want: wantInteger, span: span{low: 1, high: 1e7}, required: true, doc: "how many; each takes about 200 bytes of memory"},
 		word("sampling", `"random"`, "how they are spread", "random", "latin_hypercube", "halton"),
+		qty("precision", length, positive, "stop sooner, once the 95 % confidence interval of the mean deck offset reaches no further than this to either side").or("all samples"),
+		num("share_precision", span{low: 0, high: 0.5, open: true}, "stop sooner, once those of the probabilities of surfaces and openings reach no further than this to either side, half of their width").or("all samples"),
 		{name: "vary", want: wantOpen, free: vary, required: true, doc: "keys of the release and how each varies"},
 	}}
 

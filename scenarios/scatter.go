@@ -93,7 +93,11 @@ func (s *section) hasUnder(name string) bool {
 var samplings = map[string]model.Sampling{"random": model.Random, "latin_hypercube": model.LatinHypercube, "halton": model.Halton}
 
 func (b *builder) scatter(o *object, files reading) model.Scatter {
-	s := model.Scatter{Name: o.str("name"), Of: o.str("of"), Samples: int(o.num("samples")), Sampling: samplings[o.str("sampling")]}
+	s := model.Scatter{Name: o.str("name"), Of: o.str("of"), Samples: int(o.num("samples")), Sampling: samplings[o.str("sampling")],
+		Precision: o.num("precision"), SharePrecision: o.num("share_precision")}
+	if s.Sampling == model.LatinHypercube {
+		b.refuses(o, "a Latin hypercube is one of all its samples: it cannot stop sooner", "precision", "share_precision")
+	}
 	v := o.sub("vary")
 	if v == nil {
 		return s

@@ -6,8 +6,13 @@ import (
 	"offplumb/sim/measure"
 )
 
-// MaxPoints bounds the points of one sweep.
-const MaxPoints = 1_000_000
+const (
+	// MaxPoints bounds the points of all sweeps of a scenario: a quarter of an
+	// hour for the plainest.
+	MaxPoints = 1_000_000
+	// MaxSweeps bounds the sweeps of a scenario.
+	MaxSweeps = 1000
+)
 
 // Sweep is a sweep: one key or two, stepped through values, and what is
 // measured at each point.

@@ -14,7 +14,7 @@ import (
 	"offplumb/sim/study"
 )
 
-// head is a ring without air, 18 m in radius, with a drop in it.
+// sweepHead is a ring without air, 18 m in radius, with a drop in it.
 const sweepHead = `format = 1
 [habitat]
 floor_radius = "18 m"
@@ -225,7 +225,7 @@ name = "s"
 key = "release.drop 1.at.height"
 from = "0 m"
 to = "20 m"
-count = 41
+count = 17
 measures = ["rests.time", "landings.offset"]
 `
 	var first []study.Point
@@ -365,6 +365,25 @@ func landingsAs(t *testing.T, name string, sc *scenarios.Scenario, prepare func(
 		i := slices.IndexFunc(rows, func(l measure.Landing) bool { return l.Release == picks[k].Of })
 		if got, want := points[0].Values[k], table.Rows[i][c].Num; !(math.Abs(got-want) <= landingSlack) && !(math.IsNaN(got) && math.IsNaN(want)) {
 			t.Errorf("%s: %s: %v, want %v", name, picks[k].String(), got, want)
+		}
+	}
+}
+
+// TestTooManySweeps: a file full of sweeps, each of a release of its own, and
+// one that asks for more points than there may be, are refused before they
+// cost anything.
+func TestTooManySweeps(t *testing.T) {
+	many := sweepHead + entries(len(sweepHead), func(i int) string {
+		return fmt.Sprintf("[[release]]\nname=\"r%[1]d\"\nat={height=\"1 m\"}\n[[sweep]]\nname=\"s%[1]d\"\nkey=\"release.r%[1]d.at.height\"\nvalues=[\"1 m\"]\nmeasures=\"landings.time\"\n", i)
+	})
+	const large = "[[sweep]]\nname=\"%d\"\nkey=\"habitat.spin\"\nfrom=\"1 rpm\"\nto=\"2 rpm\"\ncount=600_000\nmeasures=\"landings.time\"\n"
+	for _, c := range []struct{ src, want string }{
+		{many, "h:8013:3: sweep[1000]: wants at most 1000 sweeps of together at most 1000000 points, got 1001 of 1001 "},
+		{sweepHead + fmt.Sprintf(large, 1) + fmt.Sprintf(large, 2), "h:17:3: sweep[1]: wants at most 1000 sweeps of together at most 1000000 points, got 2 of 1200000 "},
+	} {
+		_, err := scenarios.Load("h", []byte(c.src), scenarios.Options{})
+		if err == nil || !strings.HasPrefix(err.Error(), c.want) {
+			t.Errorf("got %.200v, want %s", err, c.want)
 		}
 	}
 }

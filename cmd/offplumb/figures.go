@@ -300,7 +300,9 @@ func carried(s geom.Seg, turn float64, by plots.Point) plots.Segment {
 	if s.Arc {
 		return plots.Arc(at(s.Centre), s.Radius, s.Phi0+turn, s.Phi1+turn)
 	}
-	return plots.Line(at(s.A), at(s.B))
+	l := plots.Line(at(s.A), at(s.B))
+	l.Bare = s.Bare
+	return l
 }
 
 // sealed joins the two circles of a whole ring by seams that are not drawn.

@@ -187,6 +187,7 @@ func (j *job) judge() {
 	e.Track = func(i int) ([]measure.Sample, bool) { return j.samples(i) }
 	e.PathClearance = func(i int) ([]measure.Clearance, bool) { return j.paths[i].near, !j.paths[i].skipped }
 	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
+	e.Scatter = func(i int) (*measure.Scattered, bool) { return j.scattered(i) }
 	for i := range j.Limits {
 		if v, ok := j.Limits[i].Judge(e); ok {
 			j.verdicts = append(j.verdicts, v)

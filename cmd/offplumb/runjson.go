@@ -33,6 +33,7 @@ type record struct {
 	Habitat  habitatRecord   `json:"habitat"`
 	Landings []landingRecord `json:"landings"`
 	Paths    []pathRecord    `json:"crew_paths"`
+	Scatters []scatterRecord `json:"scatters,omitempty"`
 	Limits   []limitRecord   `json:"limits"`
 	Warnings []warningRecord `json:"warnings"`
 	Caution  string          `json:"caution"`
@@ -102,6 +103,25 @@ type limitRecord struct {
 	Source  string `json:"source,omitempty"`
 }
 
+type scatterRecord struct {
+	Study    string        `json:"study"`
+	Of       string        `json:"of"`
+	Sampling string        `json:"sampling"`
+	Samples  int           `json:"samples"`
+	Flown    int           `json:"flown"`
+	Landed   int           `json:"landed"`
+	Surfaces []shareRecord `json:"surfaces"`
+	Openings []shareRecord `json:"openings"`
+}
+
+type shareRecord struct {
+	Name  string `json:"name"`
+	Count int    `json:"count"`
+	Share number `json:"share"`
+	Low   number `json:"low"`
+	High  number `json:"high"`
+}
+
 type warningRecord struct {
 	Of      string `json:"of"`
 	Message string `json:"message"`
@@ -126,6 +146,7 @@ func (j *job) runJSON(w io.Writer, complete bool) error {
 			r.Paths = append(r.Paths, pathRecord{p.plan.Path.Name, p.plan.Crew.Name, number(p.plan.Duration()), number(p.clearance.Gap)})
 		}
 	}
+	r.Scatters = j.scatterRecords()
 	for i := range j.verdicts {
 		v := &j.verdicts[i]
 		r.Limits = append(r.Limits, limitRecord{v.Limit, v.Of, v.Measure, number(v.Value), v.Unit, v.Verdict, v.Source})

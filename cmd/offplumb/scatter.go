@@ -81,14 +81,17 @@ func sumScatter(j *job, b *strings.Builder) {
 }
 
 func (s *scatterResult) sentence(seed uint64) string {
-	words := fmt.Sprintf("%s: %s of %s, %s", s.of.Name, count(s.sum.Samples, "sample"), s.of.Of, s.sampled(seed))
+	words := fmt.Sprintf("%s: %s of %q, %s", s.of.Name, count(s.sum.Samples, "sample"), s.of.Of, s.sampled(seed))
+	if s.of.Stops() {
+		words += fmt.Sprintf(", of at most %d", s.of.Samples)
+	}
 	if s.sum.Flown < s.sum.Samples {
 		words += fmt.Sprintf(", %d of them left out", s.sum.Samples-s.sum.Flown)
 	}
 	if s.sum.Landed > 0 {
 		words += fmt.Sprintf(". Median landing %s of plumb", s.median())
 	}
-	if e := s.sum.Ellipse; e != nil {
+	if e := s.ellipse(); e != nil {
 		words += ". " + ellipseWords(e)
 	}
 	if c := s.sum.Contour; c != nil {
@@ -97,10 +100,19 @@ func (s *scatterResult) sentence(seed uint64) string {
 	words += ". " + sharesTold("First touch", s.sum.Surfaces)
 	words += sharesTold("Fallen through", s.sum.Openings)
 	words += sharesTold("Not landed", s.sum.Outcomes)
-	if e := s.spread("energy"); e.Count > 0 {
+	if e := s.sum.Spread("energy"); e.Count > 0 {
 		words += fmt.Sprintf("Impact energy: median %s, 95 %% below %s, greatest %s.", withUnit(e.Median(), "J"), withUnit(e.High(), "J"), withUnit(e.Max, "J"))
 	}
 	return strings.TrimSpace(words)
+}
+
+// ellipse is the landing ellipse; nil where there is none worth telling, since
+// the landings lie on a line.
+func (s *scatterResult) ellipse() *measure.Ellipse {
+	if c := s.sum.Contour; c != nil && c.Line {
+		return nil
+	}
+	return s.sum.Ellipse
 }
 
 // sampled says how samples were spread. Halton points have no seed.
@@ -114,13 +126,12 @@ func (s *scatterResult) sampled(seed uint64) string {
 	return fmt.Sprintf("random with seed %d", seed)
 }
 
-func (s *scatterResult) spread(key string) *measure.Spreading {
-	for i := range s.sum.Spreads {
-		if s.sum.Spreads[i].Key == key {
-			return &s.sum.Spreads[i]
-		}
+// scattered gives what a scatter came to, if it ran.
+func (j *job) scattered(i int) (*measure.Scattered, bool) {
+	if i >= len(j.scatters) || j.scatters[i].cloud == nil {
+		return nil, false
 	}
-	return &measure.Spreading{}
+	return j.scatters[i].sum, true
 }
 
 // median says where the median landing is.
@@ -128,17 +139,13 @@ func (s *scatterResult) median() string { return onPlan(s.sum.Median[0], s.sum.M
 
 // onPlan says where a place on a plan is.
 func onPlan(spinward, axial float64) string {
-	return way(spinward) + ", " + axially(axial)
-}
-
-func axially(x float64) string {
 	switch {
-	case x > leastShown:
-		return withUnit(x, "m") + " toward +axial"
-	case x < -leastShown:
-		return withUnit(-x, "m") + " toward -axial"
+	case axial > leastShown:
+		return way(spinward) + ", " + withUnit(axial, "m") + " toward +axial"
+	case axial < -leastShown:
+		return way(spinward) + ", " + withUnit(-axial, "m") + " toward -axial"
 	}
-	return "0 m axially"
+	return way(spinward)
 }
 
 func ellipseWords(e *measure.Ellipse) string {
@@ -195,4 +202,21 @@ func warnScatters(j *job) {
 			j.note("study."+s.of.Name, "Halton points of %d keys are spread unevenly below %d samples; a Latin hypercube is not", len(s.of.Vary), least)
 		}
 	}
+}
+
+// scatterRecords are the scatters for run.json.
+func (j *job) scatterRecords() (out []scatterRecord) {
+	shares := func(list []measure.Share) []shareRecord {
+		out := []shareRecord{}
+		for _, s := range list {
+			out = append(out, shareRecord{s.Name, s.Count, number(s.Share), number(s.Low), number(s.High)})
+		}
+		return out
+	}
+	for i := range j.scatters {
+		if s := &j.scatters[i]; s.cloud != nil {
+			out = append(out, scatterRecord{s.of.Name, s.of.Of, s.of.Sampling.String(), s.sum.Samples, s.sum.Flown, s.sum.Landed, shares(s.sum.Surfaces), shares(s.sum.Openings)})
+		}
+	}
+	return out
 }

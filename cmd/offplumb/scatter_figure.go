@@ -38,7 +38,7 @@ func (j *job) scatterPlan(s *scatterResult) (*plots.Figure, error) {
 	deck := &spec.Deck
 	deck.Title, deck.Spin = fmt.Sprintf("%s: landings on the plan of %q", s.of.Name, g.Name), m.Habitat.Spin
 	deck.Notes = "Deck unrolled, seen from above by someone who stands on it. A mark for each landing, plumb under it, whatever it lands on. " +
-		"Dashed: the ellipse that would hold 95 % of a normal distribution. Heavy line: the smallest area that holds 95 % of these landings. Shares with their 95 % confidence intervals."
+		"Dashed: the ellipse that would hold 95 % of a normal distribution. Heavy line: the smallest area that holds 95 % of these landings, by their density, smoothed. Shares with their 95 % confidence intervals."
 	if f := g.Flat; f != nil {
 		deck.From, deck.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
 	} else {
@@ -95,10 +95,10 @@ func (s *scatterResult) groups(on func(x, y float64) plots.Point) []plots.Scatte
 
 // outlines gives the ellipse and the contour.
 func (s *scatterResult) outlines(spec *plots.ScatterPlanSpec, on func(x, y float64) plots.Point) {
-	if e := s.sum.Ellipse; e != nil {
+	c := s.sum.Contour
+	if e := s.ellipse(); e != nil {
 		spec.Ellipse = &plots.PlanEllipse{Centre: on(e.Spinward, e.Axial), Major: e.Major, Minor: e.Minor, Angle: e.Angle}
 	}
-	c := s.sum.Contour
 	if c == nil {
 		return
 	}
@@ -121,13 +121,13 @@ func (s *scatterResult) beside() []string {
 		}
 	}
 	out = append(out, "median: "+s.median()+" of plumb")
-	if e := s.sum.Ellipse; e != nil {
+	if e := s.ellipse(); e != nil {
 		out = append(out, fmt.Sprintf("95 %% ellipse: semi-axes %s and %s, at %s deg; holds %s", withUnit(e.Major, "m"), withUnit(e.Minor, "m"), table.Fixed(degreesOf(e.Angle), 1), percent(e.Inside)))
 	}
 	if c := s.sum.Contour; c != nil && !c.Line {
 		out = append(out, fmt.Sprintf("95 %% contour: %s m², holds %s", sigfig(c.Area, 3), percent(c.Inside)))
 	}
-	if e := s.spread("energy"); e.Count > 0 {
+	if e := s.sum.Spread("energy"); e.Count > 0 {
 		out = append(out, fmt.Sprintf("energy: median %s, 95 %% below %s", withUnit(e.Median(), "J"), withUnit(e.High(), "J")))
 	}
 	words := count(s.sum.Samples, "sample")

@@ -40,7 +40,7 @@ func (j *job) runSweeps(ctx context.Context, p *progress) error {
 	return nil
 }
 
-// sweepColumns are the keys, the measures and a note.
+// columns are the keys, the measures and a note.
 func (s *sweepResult) columns() []table.Column {
 	var out []table.Column
 	for i := range s.Keys {

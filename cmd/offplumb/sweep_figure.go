@@ -154,5 +154,8 @@ func (s *sweepResult) panel(order []int, first, next int) (plots.PanelSpec, bool
 	for i := first; i < next; i++ {
 		add(s.Picks[i].Of, i, 0, 1)
 	}
+	if len(out.Curves) == 1 {
+		out.Curves[0].Name = "" // the title names it
+	}
 	return out, any
 }

@@ -29,7 +29,9 @@ func (CliftGauvin) CdRe(re float64) float64 {
 		return stokes
 	}
 	log := math.Log(re)
-	return stokes*(1+0.15*math.Exp(0.687*log)) + 0.42*re/(1+formFactor*math.Exp(-1.16*log))
+	// Products are rounded before they are added, lest a compiler fuses them.
+	skin := float64(stokes * (1 + float64(0.15*math.Exp(0.687*log))))
+	return skin + 0.42*re/(1+float64(formFactor*math.Exp(-1.16*log)))
 }
 
 // Constant is a drag coefficient that does not depend on the speed: for a

@@ -21,7 +21,7 @@ func (p pair) plus(q pair) pair {
 }
 
 func (p pair) times(q pair) pair {
-	h := p.hi * q.hi
+	h := float64(p.hi * q.hi)
 	rest := math.FMA(p.hi, q.hi, -h)
 	return exactly(h, rest+(float64(p.hi*q.lo)+float64(p.lo*q.hi)))
 }

@@ -202,6 +202,34 @@ func TestPitchedThroughHatch(t *testing.T) {
 	}
 }
 
+// TestHeadFirstThroughHatch tries the same for someone who goes down head
+// first: the head, outward of the feet, passes while these are still as far up.
+func TestHeadFirstThroughHatch(t *testing.T) {
+	const pitch, wide, from = 1.2, 2.0, 13.3 // rad; m, the hatch; m, where the feet start
+	spread, room := 1.78/math.Tan(pitch), wide/2-model.DefaultBreadth/2
+	for _, c := range []struct {
+		name string
+		feet float64
+		ok   bool
+	}{
+		{"in the middle", -spread / 2, true},
+		{"head near the rim", room - spread - 1e-9, true},
+		{"head too near", room - spread + 1e-9, false},
+		{"feet near the rim", -room + 1e-9, true},
+		{"feet too near", -room - 1e-9, false},
+	} {
+		in := house(model.Leg{Kind: model.Descend, Distance: (15.4 - from) / math.Sin(pitch), Speed: 0.4, Ramp: 0.5, Pitch: pitch,
+			Facing: model.PlusAxial, Through: "hatch", HeadFirst: true})
+		in.Decks[0].Openings[0].Size[1] = wide
+		start := &in.Paths[0].Start
+		start.HasRadius, start.Radius = true, from
+		start.Axial += c.feet + (15.3-from)/math.Tan(pitch)
+		if _, problems := planIn(t, in); c.ok != (len(problems) == 0) {
+			t.Errorf("%s: %+v", c.name, problems)
+		}
+	}
+}
+
 // TestClimbJoinsDeck tries that a climb or a ride that ends level with a deck,
 // within a millimetre, joins it: the feet arrive on it without a jump, and a
 // walk goes on from there.

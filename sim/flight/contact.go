@@ -18,6 +18,16 @@ type moving struct {
 // slop is how far a body may be from a surface that it touches, m.
 func slop(q r3.Vec) float64 { return model.TouchSlack * math.Max(1, r3.Norm(q)*1e-5) }
 
+// hover is how far a body in contact is kept off its surface, m: a point, which
+// a rounding would bring into the matter, where all faces are near, the seams
+// of its pieces too.
+func (f *Flier) hover(q r3.Vec) float64 {
+	if f.wide > thin {
+		return 0
+	}
+	return slop(q) / 2
+}
+
 // mostShoves bounds the tries to bring a body out of what it reaches into, in
 // a corner.
 const mostShoves = 8
@@ -63,17 +73,27 @@ func hasNormal(list []geom.Touch, n r3.Vec) bool {
 	return false
 }
 
-func groupsOf(list []geom.Touch) []geom.Group {
-	var out []geom.Group
+func patchesOf(list []geom.Touch) []geom.Patch {
+	var out []geom.Patch
 	for i := range list {
-		out = append(out, list[i].Group)
+		out = append(out, list[i].Patch)
 	}
 	return out
 }
 
-func hasGroup(list []geom.Group, g geom.Group) bool {
+func hasPatch(list []geom.Patch, p geom.Patch) bool {
 	for _, x := range list {
-		if x == g {
+		if p.Within(x) || x.Within(p) {
+			return true
+		}
+	}
+	return false
+}
+
+// hasGroup says whether one of the patches belongs to a group.
+func hasGroup(list []geom.Patch, g geom.Group) bool {
+	for _, x := range list {
+		if x.Group == g {
 			return true
 		}
 	}
@@ -114,16 +134,16 @@ const (
 // bend gives the contact of a group at q, and the rate at which its normal
 // turns as the body moves with the velocity v. A side on which the normal
 // jumps does not count.
-func (f *Flier) bend(q, v r3.Vec, g geom.Group) (geom.Contact, r3.Vec) {
+func (f *Flier) bend(q, v r3.Vec, g geom.Patch) (geom.Contact, r3.Vec) {
 	in := f.m.Interior
-	c := in.ContactIn(q, g)
+	c := in.ContactOn(q, g)
 	speed := r3.Norm(v)
 	if speed == 0 {
 		return c, r3.Vec{}
 	}
 	way := math.Min(probe, math.Max(leastProbe, probeShare*f.wide))
 	step := r3.Scale(way/speed, v)
-	fore, aft := in.ContactIn(r3.Add(q, step), g).Normal, in.ContactIn(r3.Sub(q, step), g).Normal
+	fore, aft := in.ContactOn(r3.Add(q, step), g).Normal, in.ContactOn(r3.Sub(q, step), g).Normal
 	most := sharpest * way / math.Max(f.wide, probe)
 	switch ahead, behind := r3.Norm(r3.Sub(fore, c.Normal)) > most, r3.Norm(r3.Sub(c.Normal, aft)) > most; {
 	case ahead && behind:

@@ -5,14 +5,15 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/integrator"
+	"offplumb/sim/frame"
 	"offplumb/sim/geom"
 )
 
 // ends are the events that end a phase, and what they mean.
 type ends struct {
-	specs  []integrator.EventSpec
-	means  []meaning
-	groups []geom.Group
+	specs []integrator.EventSpec
+	means []meaning
+	of    []geom.Patch
 }
 
 type meaning int
@@ -21,12 +22,14 @@ const (
 	turns  meaning = iota // what follows shows from the state
 	loses                 // the body parts from a group
 	leans                 // it begins to be pressed on one
+	leaves                // it no longer grazes one: the phase goes on
 	starts                // a rolling body begins to slip
 )
 
-func (e *ends) add(ev integrator.Event, slop float64, m meaning, g geom.Group) {
+func (e *ends) add(ev integrator.Event, slop float64, m meaning, of ...geom.Patch) {
 	e.specs = append(e.specs, integrator.EventSpec{Event: ev, Slop: slop, Terminal: true})
-	e.means, e.groups = append(e.means, m), append(e.groups, g)
+	e.means = append(e.means, m)
+	e.of = append(e.of, append(of, geom.Patch{})[0])
 }
 
 func (e *ends) ending(hits []integrator.Hit) ending {
@@ -34,9 +37,11 @@ func (e *ends) ending(hits []integrator.Hit) ending {
 	for _, h := range hits {
 		switch e.means[h.Event] {
 		case loses:
-			out.parted = append(out.parted, e.groups[h.Event])
+			out.parted = append(out.parted, e.of[h.Event])
+		case leaves:
+			out.left = append(out.left, e.of[h.Event])
 		case leans:
-			out.leant = append(out.leant, e.groups[h.Event])
+			out.leant = append(out.leant, e.of[h.Event])
 		case starts:
 			out.skids = true
 		}
@@ -84,15 +89,15 @@ func (e parts) Value(t float64, y []float64) float64 {
 	return e.s.push[e.i].force
 }
 
-// leaves is how near the body is to a contact, within thin: a point that goes
+// strays is how near the body is to a contact, within thin: a point that goes
 // over an edge leaves its surface, whatever the force.
-type leaves struct {
+type strays struct {
 	s *slide
-	g geom.Group
+	g geom.Patch
 }
 
-func (e leaves) Value(_ float64, y []float64) float64 {
-	return e.s.flier.wide + thin - e.s.flier.m.Interior.ContactIn(e.s.place(y), e.g).Gap
+func (e strays) Value(_ float64, y []float64) float64 {
+	return e.s.flier.wide + thin - e.s.flier.m.Interior.ContactOn(e.s.place(y), e.g).Gap
 }
 
 // stops is the speed above that at which a body counts as having stopped.
@@ -134,34 +139,62 @@ func (e skids) Value(t float64, y []float64) float64 {
 	return e.s.rub.most - e.s.rub.need
 }
 
-// reaches is the gap to a group that a sliding body grazes.
-type reaches struct {
-	s *slide
-	g geom.Group
+// grazing is a body along a patch that it touches without being pressed on it.
+// at gives the body's state in the habitat.
+type grazing struct {
+	f  *Flier
+	of geom.Patch
+	at func(t float64, y []float64) frame.State
 }
 
-func (e reaches) Value(_ float64, y []float64) float64 {
-	return e.s.flier.m.Interior.ContactIn(e.s.place(y), e.g).Gap - e.s.flier.wide
+func (g *grazing) gap(t float64, y []float64) float64 {
+	return g.f.m.Interior.ContactOn(g.at(t, y).Pos, g.of).Gap - g.f.wide
 }
 
-// presses is the acceleration, but for friction, of the gap to a group that a
-// sliding body grazes: where it falls below zero, the body is pressed on it.
+// reaches is the gap to what a body grazes.
+type reaches struct{ *grazing }
+
+func (e reaches) Value(t float64, y []float64) float64 { return e.gap(t, y) }
+
+// parted is how near a body is to what it grazes, within twice thin: from
+// there on it counts among what else there is.
+type parted struct{ *grazing }
+
+func (e parted) Value(t float64, y []float64) float64 { return 2*thin - e.gap(t, y) }
+
+// Bound has the event looked at soon after the start of a step, and then each
+// time that the time since then has doubled. It is no bound of the rate: a
+// body that grazes something does so for long, or moves off from the start.
+func (e parted) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, least float64) {
+	return promise(e.Value(t, y), math.Max(t-s.T0, (s.T1-s.T0)*firstLook)), 0, thin
+}
+
+// firstLook is the share of a step at which it is first asked whether a body
+// moves off from what it grazes: less than a microsecond.
+const firstLook = 0x1p-20
+
+// presses is the acceleration, but for friction, of the gap to what a body
+// grazes: where it falls below zero, the body is pressed on it.
 type presses struct {
-	s *slide
-	g geom.Group
+	*grazing
+	drive func(t float64, y []float64) r3.Vec
 }
 
 func (e presses) Value(t float64, y []float64) float64 {
-	q, v := e.s.place(y), vec(y[3:])
-	if e.s.flier.hasLeft(q, v, e.g) {
-		return 1
+	s := e.at(t, y)
+	c := e.f.m.Interior.ContactOn(s.Pos, e.of)
+	if c.Gap > e.f.wide+2*thin || r3.Dot(s.Vel, c.Normal) > parting {
+		return 1 // it has left, or moves off
 	}
-	e.s.eval(t, y)
-	return e.s.flier.gapAccel(q, v, e.s.rub.drive, e.g)
+	return e.f.gapAccel(s.Pos, s.Vel, e.drive(t, y), e.of)
 }
 
-// hasLeft says whether a body no longer grazes a group, or moves off.
-func (f *Flier) hasLeft(q, v r3.Vec, g geom.Group) bool {
-	c := f.m.Interior.ContactIn(q, g)
-	return c.Gap > f.wide+2*thin || r3.Dot(v, c.Normal) > parting
+// graze adds the events of what a body grazes.
+func (e *ends) graze(f *Flier, list []geom.Patch, slop float64, at func(float64, []float64) frame.State, drive func(float64, []float64) r3.Vec) {
+	for _, p := range list {
+		g := &grazing{f, p, at}
+		e.add(reaches{g}, slop, turns, p)
+		e.add(parted{g}, 0, leaves, p)
+		e.add(presses{g, drive}, pressSlop, leans, p)
+	}
 }

@@ -100,7 +100,7 @@ func (f *Flier) beneath(let *Let) (int, float64) {
 
 // fly integrates one flight, to a touch, the end of its time or its loss. The
 // spin of a body in flight stays in the inertial frame.
-func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) (ending, error) {
+func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) {
 	base := f.inertial(t, now)
 	if now.t == 0 {
 		base = t.First
@@ -109,19 +109,17 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) (ending, error) 
 	spin := r3.Add(a.Out(now.w), a.Omega)
 	phase := Phase{Kind: Free, T0: now.t, base: base, spin: now.w}
 	f.free.base, f.free.begin = base, t.Begin+now.t
-	events := f.flightEvents(base, grazed)
 	var opts []integrator.Option
 	if len(grazed) > 0 {
 		omega, _ := f.m.Motion.Bounds(t.Begin+now.t, t.Begin+now.t)
 		opts = append(opts, integrator.MaxStep(stepTurn/math.Max(omega, slowest)))
 	}
-	f.st.Reset(0, f.zero[:], opts...)
-	res, err := integrator.Solve(f.st, f.longest(t.Release)-now.t, events.specs, phase.keep)
+	r := run{st: f.st, limit: f.longest(t.Release) - now.t, grazed: grazed, opts: opts,
+		events: func(grazed []geom.Patch) *ends { return f.flightEvents(base, grazed) }}
+	res, end, err := r.solve(t, &phase, f.zero[:])
 	if err != nil {
 		return ending{}, err
 	}
-	t.Work.add(res.Stats)
-	debugEnds("fly", events.specs, res.T, res.Y, res.Hits) // DBG
 	now.t += res.T
 	phase.T1 = now.t
 	t.Phases = append(t.Phases, phase)
@@ -131,20 +129,20 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Group) (ending, error) 
 	now.q, now.v, now.w = local.Pos, local.Vel, a.In(r3.Sub(spin, a.Omega))
 	f.arrival = last
 	f.settle(t, now, res)
-	return events.ending(res.Hits), nil
+	return end, nil
 }
 
 // flightEvents lists what ends a flight: a touch, the loss of the body.
-func (f *Flier) flightEvents(base frame.State, grazed []geom.Group) *ends {
+func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch) *ends {
 	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Grazed: grazed}
 	f.touch.step, f.hull.step = never, never
 	e := &ends{}
-	e.add(f.touch, slop(base.Pos), turns, 0)
-	e.add(f.hull, 0, turns, 0)
-	for _, g := range grazed {
-		e.add(flownInto{grazing{f, g}}, slop(base.Pos), turns, g)
-		e.add(flownOnto{grazing{f, g}}, pressSlop, leans, g)
-	}
+	e.add(f.touch, slop(base.Pos), turns)
+	e.add(f.hull, 0, turns)
+	e.graze(f, grazed, slop(base.Pos), f.free.local, func(at float64, y []float64) r3.Vec {
+		a := f.m.Motion.At(f.free.begin + at)
+		return f.pull(&a, f.free.begin+at, f.free.local(at, y))
+	})
 	return e
 }
 

@@ -26,7 +26,7 @@ const (
 // pressed on what is left, and slides, rolls or rests there, or it flies.
 func (f *Flier) follow(t *Track) error {
 	now := f.start(t)
-	known := groupsOf(f.touches(&now))
+	known := patchesOf(f.touches(&now))
 	var last ending
 	for range mostPhases {
 		touches := f.touches(&now)
@@ -40,9 +40,9 @@ func (f *Flier) follow(t *Track) error {
 			return nil
 		}
 		var err error
-		known = groupsOf(s.on)
+		known = patchesOf(s.on)
 		if len(s.on) == 0 {
-			last, err = f.fly(t, &now, groupsOf(s.grazed))
+			last, err = f.fly(t, &now, patchesOf(s.grazed))
 		} else {
 			last, err = f.slideOn(t, &now, s, last.skids)
 		}

@@ -33,6 +33,12 @@ func (f *free) Deriv(t float64, y, dy []float64) {
 	dy[3], dy[4], dy[5] = a.X, a.Y, a.Z
 }
 
+// local gives the state in the habitat.
+func (f *free) local(t float64, y []float64) frame.State {
+	a := f.forces.motion.At(f.begin + t)
+	return a.ToHabitat(depart(f.base, t, y))
+}
+
 // depart gives the inertial state of a departure y from the uniform motion of
 // base at the time t (s).
 func depart(base frame.State, t float64, y []float64) frame.State {
@@ -103,34 +109,3 @@ func inside(f *free, in *geom.Interior) *apart {
 
 // never is the span of no step.
 var never = [2]float64{math.Inf(1), math.Inf(-1)}
-
-// grazing is a body in flight along a group that it touches.
-type grazing struct {
-	f *Flier
-	g geom.Group
-}
-
-func (e grazing) local(t float64, y []float64) frame.State {
-	a := e.f.m.Motion.At(e.f.free.begin + t)
-	return a.ToHabitat(depart(e.f.free.base, t, y))
-}
-
-// flownInto is the gap to it.
-type flownInto struct{ grazing }
-
-func (e flownInto) Value(t float64, y []float64) float64 {
-	return e.f.m.Interior.ContactIn(e.local(t, y).Pos, e.g).Gap - e.f.wide
-}
-
-// flownOnto is the acceleration of the gap to it: where it falls below zero,
-// the body is pressed on it.
-type flownOnto struct{ grazing }
-
-func (e flownOnto) Value(t float64, y []float64) float64 {
-	s := e.local(t, y)
-	if e.f.hasLeft(s.Pos, s.Vel, e.g) {
-		return 1
-	}
-	a := e.f.m.Motion.At(e.f.free.begin + t)
-	return e.f.gapAccel(s.Pos, s.Vel, e.f.pull(&a, e.f.free.begin+t, s), e.g)
-}

@@ -151,7 +151,7 @@ func (f *Flier) presses(t float64, now moving, touches []geom.Touch, c geom.Touc
 	a := f.m.Motion.At(t)
 	var others []geom.Touch
 	for k := range touches {
-		if touches[k].Group != c.Group && r3.Dot(now.v, touches[k].Normal) <= parting {
+		if touches[k].Patch != c.Patch && r3.Dot(now.v, touches[k].Normal) <= parting {
 			others = append(others, touches[k])
 		}
 	}
@@ -159,11 +159,11 @@ func (f *Flier) presses(t float64, now moving, touches []geom.Touch, c geom.Touc
 	sub := subset(all, pressed(all, pull))
 	balance(sub, pull)
 	acc := f.rub(&a, sub, nil, pull, now.v, now.w, true).acc
-	return -f.gapAccel(now.q, now.v, acc, c.Group)
+	return -f.gapAccel(now.q, now.v, acc, c.Patch)
 }
 
 // meet lets the body rebound and records the impacts, each surface once.
-func (f *Flier) meet(t *Track, now *moving, touches []geom.Touch, known []geom.Group) {
+func (f *Flier) meet(t *Track, now *moving, touches []geom.Touch, known []geom.Patch) {
 	before := *now
 	for _, hit := range f.collide(t.Begin+now.t, now, touches) {
 		c := &touches[hit.i]
@@ -177,7 +177,7 @@ func (f *Flier) meet(t *Track, now *moving, touches []geom.Touch, known []geom.G
 
 // touched records as impacts the surfaces that the body has come to be pressed
 // on without an impact.
-func (f *Flier) touched(t *Track, now *moving, s stance, known []geom.Group) {
+func (f *Flier) touched(t *Track, now *moving, s stance, known []geom.Patch) {
 	for i := range s.on {
 		if !hasGroup(known, s.on[i].Group) && !t.hitNow(now.t, s.on[i].Surface) {
 			f.record(t, *now, &s.on[i])

@@ -57,7 +57,7 @@ func (j *judge) spinAt(p *Phase, time float64) r3.Vec {
 		return p.spin // in flight its size stays
 	}
 	for i := range p.steps {
-		if u := time - p.T0; u <= p.steps[i].T1 {
+		if u := time - p.T0; u <= p.steps[i].T1 || i == len(p.steps)-1 {
 			var y [dims]float64
 			p.steps[i].At(u, y[:])
 			return vec(y[6:])

@@ -10,11 +10,11 @@ import (
 )
 
 const (
-	// regain is the rate, 1/s, at which a body in contact is brought back onto
-	// its surface from the drift of the integration (Baumgarte 1972; from
-	// memory). Slow, since a fast one would govern the steps; what is left at
-	// the end of a phase is taken away at once.
-	regain = 0.5
+	// regain is the rate, in 1/s for each rad/s of spin, at which a body in
+	// contact is brought back onto its surface from the drift of the
+	// integration (Baumgarte 1972; from memory): once in the longest step. A
+	// faster one would govern the steps.
+	regain = 1 / stepTurn
 	// creep is the speed, in m/s, below which a sliding body counts as having
 	// stopped: it would come to rest within a nanometre.
 	creep = 1e-5
@@ -41,10 +41,11 @@ type slide struct {
 	flier  *Flier
 	begin  float64 // s, habitat time at t = 0
 	origin r3.Vec  // m, the place at the start of the phase
-	groups []geom.Group
+	on     []geom.Patch
 	mu     [mostContacts]float64
+	regain float64      // 1/s
 	slips  bool         // it rolls, and its contact point moves
-	grazed []geom.Group // touched without pressure
+	grazed []geom.Patch // touched without pressure
 	walls  []push       // space for what of that is near
 
 	// Of the last derivative.
@@ -69,6 +70,11 @@ func (s *slide) Deriv(t float64, y, dy []float64) {
 
 func vec(y []float64) r3.Vec { return r3.Vec{X: y[0], Y: y[1], Z: y[2]} }
 
+// local gives a state in the habitat.
+func (s *slide) local(_ float64, y []float64) frame.State {
+	return frame.State{Pos: s.place(y), Vel: vec(y[3:])}
+}
+
 // place is where a state is, m.
 func (s *slide) place(y []float64) r3.Vec { return r3.Add(s.origin, vec(y)) }
 
@@ -78,8 +84,8 @@ func (s *slide) eval(t float64, y []float64) {
 	q, v, w := s.place(y), vec(y[3:]), vec(y[6:])
 	a := f.m.Motion.At(s.begin + t)
 	pull := f.pull(&a, s.begin+t, frame.State{Pos: q, Vel: v})
-	p := s.push[:len(s.groups)]
-	for i, g := range s.groups {
+	p := s.push[:len(s.on)]
+	for i, g := range s.on {
 		p[i], s.gap[i] = f.pushOf(q, v, g, s.mu[i])
 	}
 	balance(p, pull)
@@ -92,14 +98,14 @@ func (s *slide) eval(t float64, y []float64) {
 
 // recall brings the body back onto a surface.
 func (s *slide) recall(n r3.Vec, gap float64) {
-	off := gap - s.flier.wide
-	s.back = r3.Add(s.back, r3.Scale(-2*regain*r3.Dot(s.vel, n)-regain*regain*off, n))
+	off := gap - s.flier.wide - s.flier.hover(s.origin)
+	s.back = r3.Add(s.back, r3.Scale(-s.regain*(2*r3.Dot(s.vel, n)+s.regain*off), n))
 }
 
 // fences are the contacts of a rolling body that it grazes.
 func (s *slide) fences(q, pull r3.Vec) []push {
 	out := s.walls[:0]
-	if !s.flier.rolls(len(s.groups)) {
+	if !s.flier.rolls(len(s.on)) {
 		return out
 	}
 	for _, g := range s.grazed {
@@ -168,7 +174,7 @@ func (f *Flier) roll(out *rubbing, a *frame.Attitude, p push, walls []push, pull
 		out.most = r3.Norm(grip)
 	} else {
 		want := r3.Scale(f.wide, r3.Add(r3.Cross(carried, p.normal), r3.Cross(w, p.turn)))
-		out.acc, grip = clutch(p, walls, pull, r3.Sub(want, r3.Scale(regain, u)))
+		out.acc, grip = clutch(p, walls, pull, r3.Sub(want, r3.Scale(f.slide.regain, u)))
 		if out.need = r3.Norm(grip); slips && out.need > out.most {
 			out.acc, grip = skid(p, walls, pull, r3.Scale(1/out.need, grip))
 		}

@@ -13,13 +13,6 @@ import (
 // most: the events without a bound are looked at once a step.
 const stepTurn = 0.3
 
-// ending is what the next phase must know of how the last one ended.
-type ending struct {
-	parted []geom.Group // left for want of force
-	leant  []geom.Group // grazed, and about to be pressed on
-	skids  bool         // a rolling body lost its grip
-}
-
 // slideOn moves a body along the surfaces that it is pressed on, until it
 // stops, parts from one, meets another, or its time ends.
 func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, error) {
@@ -27,38 +20,28 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q}, spin: now.w,
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
-	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
-	f.contact.Reset(0, y, integrator.MaxStep(stepTurn/math.Max(spin, slowest)))
-	events := f.slideEvents(s, now)
-	res, err := integrator.Solve(f.contact, f.longest(t.Release)-now.t, events.specs, phase.keep)
+	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, opts: []integrator.Option{integrator.MaxStep(1 / s.regain)},
+		events: func(grazed []geom.Patch) *ends { return f.slideEvents(s, now, grazed) }}
+	res, end, err := r.solve(t, &phase, y)
 	if err != nil {
 		return ending{}, err
 	}
-	t.Work.add(res.Stats)
-	debugEnds("slide", events.specs, res.T, res.Y, res.Hits) // DBG
 	now.t += res.T
 	now.q, now.v, now.w = s.place(res.Y), vec(res.Y[3:]), vec(res.Y[6:])
-	end := events.ending(res.Hits)
-	f.onto(now, s.groups, end.parted)
+	f.onto(now, s.on, end.parted)
 	f.arrival = f.inertial(t, now)
 	phase.T1 = now.t
 	t.Phases = append(t.Phases, phase)
 	return end, nil
 }
 
-// keep stores a step of a phase.
-func (p *Phase) keep(s *integrator.Step, _ []integrator.Hit) error {
-	if s.T1 > s.T0 {
-		p.steps = append(p.steps, s.Clone())
-	}
-	return nil
-}
-
 // slideFrom prepares the equations, brings a body that has as good as stopped,
 // or as good as stopped slipping, to do so, and says what it does.
 func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide, Kind) {
 	s, on := f.slide, st.on
-	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, groups: groupsOf(on), grazed: groupsOf(st.grazed)}
+	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, on: patchesOf(on), grazed: patchesOf(st.grazed)}
+	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
+	s.regain = regain * math.Max(spin, slowest)
 	for i := range on {
 		_, s.mu[i] = f.gripOf(on[i].Surface)
 	}
@@ -93,41 +76,44 @@ func (f *Flier) grip(now *moving, n, u r3.Vec, grazed []geom.Touch) {
 	}
 }
 
-// onto takes away what a phase has drifted from its surfaces, but for those
-// that the body has left.
-func (f *Flier) onto(now *moving, groups, parted []geom.Group) {
+// onto takes away what a phase has drifted from its surfaces, if it is more
+// than what counts as touching, but for those that the body has left.
+func (f *Flier) onto(now *moving, groups, parted []geom.Patch) {
 	for _, g := range groups {
-		if hasGroup(parted, g) {
+		if hasPatch(parted, g) {
 			continue
 		}
-		c := f.m.Interior.ContactIn(now.q, g)
-		now.q = r3.Add(now.q, r3.Scale(f.wide-c.Gap, c.Normal))
+		c := f.m.Interior.ContactOn(now.q, g)
+		if off := f.wide + f.hover(now.q) - c.Gap; math.Abs(off) > slop(now.q)/2 {
+			now.q = r3.Add(now.q, r3.Scale(off, c.Normal))
+		}
 		now.v = r3.Sub(now.v, r3.Scale(r3.Dot(now.v, c.Normal), c.Normal))
 	}
 }
 
 // slideEvents lists what ends a slide.
-func (f *Flier) slideEvents(s *slide, now *moving) *ends {
+func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
+	s.grazed = grazed
 	e := &ends{}
-	watch := &geom.Beside{Wide: f.wide, Thin: thin, On: s.groups, Grazed: s.grazed}
-	e.add(besides{s, watch}, slop(s.origin), turns, 0)
-	e.add(stops{f.slowEnough(now, len(s.groups))}, 0, turns, 0)
-	for i, g := range s.groups {
+	watch := &geom.Beside{Wide: f.wide, Thin: thin, On: s.on, Grazed: s.grazed}
+	e.add(besides{s, watch}, slop(s.origin), turns)
+	e.add(stops{f.slowEnough(now, len(s.on))}, 0, turns)
+	for i, g := range s.on {
 		e.add(parts{s, i}, forceSlop, loses, g)
-		e.add(leaves{s, g}, 0, loses, g)
+		e.add(strays{s, g}, 0, loses, g)
 	}
-	if f.rolls(len(s.groups)) && s.mu[0] > 0 {
+	if f.rolls(len(s.on)) && s.mu[0] > 0 {
 		if s.slips {
-			e.add(grips{s}, 0, turns, 0)
-			e.add(holdsFast{s}, forceSlop, turns, 0)
+			e.add(grips{s}, 0, turns)
+			e.add(holdsFast{s}, forceSlop, turns)
 		} else {
-			e.add(skids{s}, forceSlop, starts, 0)
+			e.add(skids{s}, forceSlop, starts)
 		}
 	}
-	for _, g := range s.grazed {
-		e.add(reaches{s, g}, slop(s.origin), turns, g)
-		e.add(presses{s, g}, pressSlop, leans, g)
-	}
+	e.graze(f, s.grazed, slop(s.origin), s.local, func(at float64, y []float64) r3.Vec {
+		s.eval(at, y)
+		return s.rub.drive
+	})
 	return e
 }
 

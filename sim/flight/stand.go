@@ -43,7 +43,7 @@ func (f *Flier) stand(t *Track, now *moving, touches []geom.Touch, last ending) 
 	var s stance
 	var slow []geom.Touch
 	for _, c := range f.staysWith(t.Begin+now.t, now, touches) {
-		if hasGroup(last.parted, c.Group) {
+		if hasPatch(last.parted, c.Patch) {
 			s.grazed = append(s.grazed, c)
 		} else {
 			slow = append(slow, c)
@@ -128,14 +128,14 @@ func (f *Flier) pushes(a *frame.Attitude, t float64, now *moving, list []geom.To
 	all := make([]push, len(list))
 	for i := range list {
 		_, mu := f.gripOf(list[i].Surface)
-		all[i], _ = f.pushOf(now.q, now.v, list[i].Group, mu)
+		all[i], _ = f.pushOf(now.q, now.v, list[i].Patch, mu)
 		all[i].noise = noise(pull, now.v)
 	}
 	return all, pull
 }
 
 // pushOf describes the contact with a group, and gives its distance (m).
-func (f *Flier) pushOf(q, v r3.Vec, g geom.Group, mu float64) (push, float64) {
+func (f *Flier) pushOf(q, v r3.Vec, g geom.Patch, mu float64) (push, float64) {
 	c, rate := f.bend(q, v, g)
 	return push{normal: c.Normal, answer: c.Normal, turn: rate, closing: r3.Dot(v, rate), mu: mu}, c.Gap
 }
@@ -143,7 +143,7 @@ func (f *Flier) pushOf(q, v r3.Vec, g geom.Group, mu float64) (push, float64) {
 // leansOn adds to the contacts that a body is pressed on one that it is about
 // to be pressed on: the force there is none yet, but grows. leant are those of
 // which an event of the last phase has told so.
-func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int, leant []geom.Group) []int {
+func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int, leant []geom.Patch) []int {
 	if len(on) == len(slow) || len(on) >= mostContacts || r3.Norm(now.v) == 0 && len(on) > 0 {
 		return on
 	}
@@ -154,7 +154,7 @@ func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int, lean
 		}
 		if later := f.leans(t, now, slow, on, i); later < least {
 			least, lean = later, i
-		} else if lean < 0 && hasGroup(leant, slow[i].Group) {
+		} else if lean < 0 && hasPatch(leant, slow[i].Patch) {
 			lean = i
 		}
 	}
@@ -180,7 +180,7 @@ func (f *Flier) leansOn(t *Track, now *moving, slow []geom.Touch, on []int, lean
 // a moment, if it is none now.
 func (f *Flier) leans(t *Track, now *moving, slow []geom.Touch, on []int, i int) float64 {
 	acc := f.accelOn(t, now, slow, on)
-	g := f.gapAccel(now.q, now.v, acc.drive, slow[i].Group)
+	g := f.gapAccel(now.q, now.v, acc.drive, slow[i].Patch)
 	least := noise(acc.drive, now.v)
 	if math.Abs(g) > 1e3*least {
 		return 0
@@ -191,7 +191,7 @@ func (f *Flier) leans(t *Track, now *moving, slow []geom.Touch, on []int, i int)
 	soon.t += dt
 	soon.q = r3.Add(now.q, r3.Add(r3.Scale(dt, now.v), r3.Scale(dt*dt/2, acc.acc)))
 	soon.v = r3.Add(now.v, r3.Scale(dt, acc.acc))
-	later := f.gapAccel(soon.q, soon.v, f.accelOn(t, &soon, slow, on).drive, slow[i].Group) - g
+	later := f.gapAccel(soon.q, soon.v, f.accelOn(t, &soon, slow, on).drive, slow[i].Patch) - g
 	if later > -least {
 		return 0
 	}
@@ -209,7 +209,7 @@ func (f *Flier) accelOn(t *Track, now *moving, slow []geom.Touch, on []int) rubb
 
 // gapAccel is the acceleration (m/s^2) of the gap to a group, of a body with
 // the acceleration acc.
-func (f *Flier) gapAccel(q, v, acc r3.Vec, g geom.Group) float64 {
+func (f *Flier) gapAccel(q, v, acc r3.Vec, g geom.Patch) float64 {
 	c, rate := f.bend(q, v, g)
 	return r3.Dot(c.Normal, acc) + r3.Dot(v, rate)
 }

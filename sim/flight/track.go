@@ -47,7 +47,7 @@ type Phase struct {
 
 	local bool // steps are in the habitat frame, else inertial
 	base  frame.State
-	spin  r3.Vec // rad/s, of a rolling body at the start, relative to the habitat
+	spin  r3.Vec               // rad/s, of a rolling body at the start, relative to the habitat
 	steps []integrator.Segment // from T0: departures from base, in flight from its uniform motion
 }
 

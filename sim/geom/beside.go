@@ -10,66 +10,63 @@ import (
 type Beside struct {
 	Wide float64 // m, radius of the sphere
 	Thin float64 // m, the depth that counts as nothing
-	// On are the groups that the sphere slides on. Neither they count nor what
-	// lies flush with them: the next piece of the same floor, up to the depth
-	// Thin.
-	On []Group
-	// Grazed are the groups that the sphere touches without being pressed on
-	// them. They count from a gap of more than twice Thin on, since along a
-	// gap of nothing there is no telling how soon it closes.
-	Grazed []Group
+	// On are the patches that the sphere slides on. Neither they count nor what
+	// goes on from them without an edge.
+	On []Patch
+	// Grazed are the patches that the sphere touches without being pressed on
+	// them. They, and what goes on from them, count from a gap of more than
+	// twice Thin on, since along a gap of nothing there is no telling how soon
+	// it closes.
+	Grazed []Patch
 }
-
-// parallel is the cosine above which two normals count as one: a sphere of
-// the radius a that meets the next piece of a flat floor at an angle of 4 mrad
-// is a hundred thousandth of a away from it.
-const parallel = 1 - 1e-5
 
 // counter decides which pieces count at one place.
 type counter struct {
 	*Beside
-	in      *Interior
-	p       r3.Vec
-	normals [mostOn]r3.Vec // of the groups On, once they are known
-	known   bool
+	in    *Interior
+	p     r3.Vec
+	touch [mostTouched]contact // on, then grazed, once they are known
+	known int                  // how many; -1: not known
 }
 
-// mostOn is how many groups a sphere may slide on.
-const mostOn = 3
+// mostTouched is how many patches are told apart.
+const mostTouched = 8
+
+func (b *Beside) counter(in *Interior, p r3.Vec) counter {
+	return counter{Beside: b, in: in, p: p, known: -1}
+}
 
 // counts says whether piece i, at the distance d, counts.
 func (c *counter) counts(i int, d float64) bool {
-	g := c.in.pieces[i].Group
-	for _, x := range c.On {
-		if x == g {
+	if c.known < 0 {
+		c.learn()
+	}
+	on := min(len(c.On), mostTouched)
+	for k := 0; k < c.known; k++ {
+		if k >= on && d > c.Wide+2*c.Thin {
+			break
+		}
+		if c.in.joins(c.p, c.Wide, i, &c.touch[k]) {
 			return false
 		}
 	}
-	if d <= c.Wide+2*c.Thin {
-		for _, x := range c.Grazed {
-			if x == g {
-				return false
-			}
-		}
-	}
-	return d < c.Wide-c.Thin || len(c.On) == 0 || !c.flush(i)
+	return true
 }
 
-// flush says whether the sphere is to piece i as it is to what it slides on.
-func (c *counter) flush(i int) bool {
-	if !c.known {
-		c.known = true
-		for k, g := range c.On {
-			c.normals[k] = c.in.ContactIn(c.p, g).Normal
+// learn finds what the sphere touches.
+func (c *counter) learn() {
+	c.known = 0
+	for _, list := range [2][]Patch{c.On, c.Grazed} {
+		for _, t := range list {
+			if c.known == mostTouched {
+				return
+			}
+			i := c.in.nearestOn(c.p, t)
+			_, n, _ := c.in.pieces[i].Solid.Nearest(c.p)
+			c.touch[c.known] = contact{i, n}
+			c.known++
 		}
 	}
-	_, n, _ := c.in.pieces[i].Solid.Nearest(c.p)
-	for k := range c.On {
-		if r3.Dot(n, c.normals[k]) > parallel {
-			return true
-		}
-	}
-	return false
 }
 
 // DistBeside gives the distance (m) from p to the nearest solid that counts;
@@ -78,7 +75,7 @@ func (c *counter) flush(i int) bool {
 // Law: but for jumps, it changes by no more than p does.
 func (in *Interior) DistBeside(p r3.Vec, b *Beside) float64 {
 	best := math.Inf(1)
-	c := counter{Beside: b, in: in, p: p}
+	c := b.counter(in, p)
 	in.tree.each(in.pieces, p, &best, func(i int, d float64) float64 {
 		if d < best && c.counts(i, d) {
 			return d
@@ -101,7 +98,7 @@ func (in *Interior) DistBeside(p r3.Vec, b *Beside) float64 {
 func (in *Interior) TimeBeside(p, v r3.Vec, acc, limit float64, b *Beside) float64 {
 	speed := r3.Norm(v)
 	reach := func(t float64) float64 { return b.Wide + speed*t + acc*t*t/2 }
-	c := counter{Beside: b, in: in, p: p}
+	c := b.counter(in, p)
 	best, bound := limit, reach(limit)
 	in.tree.each(in.pieces, p, &bound, func(i int, d float64) float64 {
 		gap := math.Max(d-b.Wide, b.Thin)

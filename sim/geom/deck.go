@@ -48,7 +48,7 @@ func (b *Builder) AddShell(s Shell) {
 }
 
 func (b *Builder) addBands(s *Shell) {
-	defer b.together()()
+	defer b.Together()()
 	zs := []float64{s.Z0, s.Z1}
 	for _, h := range s.Holes {
 		zs = append(zs, clamp(h.Z0, s.Z0, s.Z1), clamp(h.Z1, s.Z0, s.Z1))
@@ -60,8 +60,8 @@ func (b *Builder) addBands(s *Shell) {
 	}
 }
 
-// span is a stretch of angles with what bounds it at each end: a hole's name,
-// or none.
+// span is a stretch of angles with what bounds it at each end: the name of a
+// hole or an edge, or none where it goes on in another piece.
 type span struct {
 	from, to     float64
 	atFrom, atTo string
@@ -94,7 +94,22 @@ func remaining(s *Shell, cuts []Hole) []span {
 	for _, h := range cuts {
 		left = cut(left, h)
 	}
-	return left
+	return halved(left)
+}
+
+// halved divides the spans of more than half a turn, so that no piece faces
+// itself across a hole: a sphere has one contact with a piece.
+func halved(spans []span) []span {
+	var out []span
+	for _, s := range spans {
+		if s.to-s.from <= math.Pi {
+			out = append(out, s)
+			continue
+		}
+		mid := (s.from + s.to) / 2
+		out = append(out, span{from: s.from, to: mid, atFrom: s.atFrom}, span{from: mid, to: s.to, atTo: s.atTo})
+	}
+	return out
 }
 
 // cut takes a hole out of spans, wherever round the circle and however many
@@ -135,6 +150,7 @@ func (b *Builder) addSector(s *Shell, piece Sector, at span) {
 	faces[SectorInner], faces[SectorOuter] = name(s.Inner), name(s.Outer)
 	faces[SectorAntispinward], faces[SectorSpinward] = name(at.atFrom), name(at.atTo)
 	faces[SectorMinusAxial], faces[SectorPlusAxial] = name(s.Edge), name(s.Edge)
+	piece.open0, piece.open1 = at.atFrom == "", at.atTo == ""
 	b.Add(&piece, faces...)
 	added := &b.in.pieces[len(b.in.pieces)-1]
 	for _, h := range s.Holes {
@@ -172,13 +188,21 @@ func (b *Builder) AddDeck(d Deck) {
 		d.Holes = append(d.Holes, Hole{Name: rimName(o), Phi: o.Phi, Half: HalfAngle(o.Spinward, d.R0),
 			Z0: o.Z - o.Axial/2, Z1: o.Z + o.Axial/2})
 	}
+	b.addFloor(&d)
+	for _, o := range d.Openings {
+		if o.Coaming > 0 {
+			b.addCoaming(&d, o)
+		}
+	}
+}
+
+// addFloor adds the deck and its lids, one body that is slid over unawares.
+func (b *Builder) addFloor(d *Deck) {
+	defer b.Together()()
 	b.AddShell(d.Shell)
 	for _, o := range d.Openings {
 		if o.Closed {
-			b.addLid(&d, o)
-		}
-		if o.Coaming > 0 {
-			b.addCoaming(&d, o)
+			b.addLid(d, o)
 		}
 	}
 }

@@ -13,12 +13,6 @@ import (
 // space.
 type Group int
 
-// Touch is a contact with one group.
-type Touch struct {
-	Group
-	Contact
-}
-
 // group gives the group of the piece that is added next.
 func (b *Builder) group() Group {
 	if b.within > 0 {
@@ -28,8 +22,8 @@ func (b *Builder) group() Group {
 	return b.groups - 1
 }
 
-// together puts the pieces added until its result is called into one group.
-func (b *Builder) together() func() {
+// Together puts the pieces added until its result is called into one group.
+func (b *Builder) Together() func() {
 	b.within++
 	return func() {
 		if b.within--; b.within == 0 {
@@ -54,50 +48,25 @@ func (in *Interior) Groups() [][]int { return in.groups }
 
 // ContactIn gives the nearest point of one group.
 func (in *Interior) ContactIn(p r3.Vec, g Group) Contact {
-	at, best := -1, math.Inf(1)
-	for _, i := range in.groups[g] {
-		if d := in.pieces[i].Solid.Dist(p); d < best {
-			at, best = i, d
-		}
-	}
+	at, best := in.nearestIn(p, g)
 	if at < 0 {
 		return Contact{Gap: best, Surface: -1}
 	}
 	return in.contactOf(at, p, best)
 }
 
+// nearestIn gives the nearest piece of one group, and its distance (m).
+func (in *Interior) nearestIn(p r3.Vec, g Group) (int, float64) {
+	at, best := -1, math.Inf(1)
+	for _, i := range in.groups[g] {
+		if d := in.pieces[i].Solid.Dist(p); d < best {
+			at, best = i, d
+		}
+	}
+	return at, best
+}
+
 func (in *Interior) contactOf(i int, p r3.Vec, d float64) Contact {
 	point, normal, face := in.pieces[i].Solid.Nearest(p)
 	return Contact{Gap: d, Point: point, Normal: normal, Surface: in.pieces[i].surface(face, point)}
-}
-
-// Touching appends to dst a contact with each group within the distance reach
-// (m) of p, those nearest first.
-func (in *Interior) Touching(p r3.Vec, reach float64, dst []Touch) []Touch {
-	from := len(dst)
-	in.tree.within(in.pieces, p, reach, func(i int, d float64) {
-		g := in.pieces[i].Group
-		for k := from; k < len(dst); k++ {
-			if dst[k].Group == g {
-				if d < dst[k].Gap {
-					dst[k].Contact = in.contactOf(i, p, d)
-				}
-				return
-			}
-		}
-		dst = append(dst, Touch{g, in.contactOf(i, p, d)})
-	})
-	for i := from + 1; i < len(dst); i++ {
-		for k := i; k > from && before(&dst[k], &dst[k-1]); k-- {
-			dst[k], dst[k-1] = dst[k-1], dst[k]
-		}
-	}
-	return dst
-}
-
-func before(a, b *Touch) bool {
-	if a.Gap != b.Gap {
-		return a.Gap < b.Gap
-	}
-	return a.Group < b.Group
 }

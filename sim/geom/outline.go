@@ -11,6 +11,7 @@ type Seg struct {
 	Centre     [2]float64
 	Radius     float64
 	Phi0, Phi1 float64
+	Bare       bool // no face: the solid goes on in another piece
 }
 
 // Outline is the section of one solid.
@@ -30,18 +31,21 @@ func (s *Sector) Section(z float64) []Seg {
 	}
 	segs := []Seg{{Arc: true, Radius: s.R1, Phi0: p0, Phi1: p1}}
 	if !s.Whole {
-		segs = append(segs, line(onAngle2(p1, s.R1), onAngle2(p1, s.R0)))
+		segs = append(segs, end(onAngle2(p1, s.R1), onAngle2(p1, s.R0), s.open1))
 	}
 	if s.R0 > 0 {
 		segs = append(segs, Seg{Arc: true, Radius: s.R0, Phi0: p1, Phi1: p0})
 	}
 	if !s.Whole {
-		segs = append(segs, line(onAngle2(p0, s.R0), onAngle2(p0, s.R1)))
+		segs = append(segs, end(onAngle2(p0, s.R0), onAngle2(p0, s.R1), s.open0))
 	}
 	return segs
 }
 
 func line(a, b [2]float64) Seg { return Seg{A: a, B: b} }
+
+// end is the end of a sector, bare where it goes on.
+func end(a, b [2]float64, bare bool) Seg { return Seg{A: a, B: b, Bare: bare} }
 
 func onAngle2(phi, r float64) [2]float64 {
 	sin, cos := math.Sincos(phi)

@@ -108,7 +108,7 @@ func (b *Builder) addWalls(p *Passage) {
 
 // addPipe adds the wall of a round shaft.
 func (b *Builder) addPipe(p *Passage) {
-	defer b.together()()
+	defer b.Together()()
 	s := p.Ends()
 	id := b.Surface(p.Name+" wall", math.NaN(), math.NaN())
 	for _, spinward := range []bool{false, true} {
@@ -120,7 +120,7 @@ func (b *Builder) addPipe(p *Passage) {
 // addCollar fills the corners of a mouth of a round shaft, from one place
 // along its middle line to another.
 func (b *Builder) addCollar(p *Passage, from, to float64) {
-	defer b.together()()
+	defer b.Together()()
 	wall, mouth := b.Surface(p.Name+" wall", math.NaN(), math.NaN()), b.Surface(p.mouthName(), math.NaN(), math.NaN())
 	for _, spinward := range []bool{false, true} {
 		b.Add(&Collar{Shaft: ShaftAt(p.Phi, p.Z), Bore: p.Width / 2, Half: p.Width/2 + p.Wall, From: from, To: to, Spinward: spinward},

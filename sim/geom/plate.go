@@ -36,7 +36,7 @@ func (s *Shaft) block(u, v, w [2]float64) *Block {
 // between the axial places at which holes begin or end, each cut where its
 // holes are.
 func (b *Builder) addPlate(s *plate) {
-	defer b.together()()
+	defer b.Together()()
 	vs := []float64{s.v[0], s.v[1]}
 	for _, h := range s.holes {
 		vs = append(vs, clamp(h.v[0], s.v[0], s.v[1]), clamp(h.v[1], s.v[0], s.v[1]))

@@ -24,6 +24,8 @@ type Sector struct {
 	Phi0, Phi1 float64 // rad, Phi0 < Phi1 <= Phi0 + 2 pi
 	Whole      bool    // the whole way round; Phi0 and Phi1 do not count
 	Z0, Z1     float64 // m
+
+	open0, open1 bool // at Phi0, Phi1 another piece goes on
 }
 
 // clamp gives the number nearest to x between lo and hi.

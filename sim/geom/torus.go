@@ -91,7 +91,7 @@ func (b *Builder) addVaults(shells []*vaultShell, passages []Passage) {
 		Span
 	}
 	var corners []corner
-	done := b.together()
+	done := b.Together()
 	for _, s := range shells {
 		for i := range passages {
 			if at, ok := s.pierce(&passages[i]); ok && passages[i].Round {

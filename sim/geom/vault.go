@@ -28,6 +28,8 @@ type Vault struct {
 	Theta0, Theta1 float64 // rad, Theta0 < Theta1, both within [-pi/2, pi/2] or within [pi/2, 3/2 pi]
 	Phi0, Phi1     float64 // rad, Phi0 < Phi1 <= Phi0 + 2 pi
 	Whole          bool    // the whole way round; Phi0 and Phi1 do not count
+
+	open0, open1 bool // at Phi0, Phi1 another piece goes on
 }
 
 // arc is a range of angles.
@@ -236,7 +238,8 @@ func (v *Vault) Section(z float64) []Seg {
 		return nil
 	}
 	r0, r1 := v.Ring+sign*near, v.Ring+sign*far
-	ring := Sector{R0: math.Max(0, math.Min(r0, r1)), R1: math.Max(r0, r1), Phi0: v.Phi0, Phi1: v.Phi1, Whole: v.Whole, Z0: z, Z1: z}
+	ring := Sector{R0: math.Max(0, math.Min(r0, r1)), R1: math.Max(r0, r1), Phi0: v.Phi0, Phi1: v.Phi1, Whole: v.Whole, Z0: z, Z1: z,
+		open0: v.open0, open1: v.open1}
 	return ring.Section(z)
 }
 

@@ -51,6 +51,7 @@ func (b *Builder) addVaultBand(s *vaultShell, t0, t1 float64) {
 	}
 	for _, left := range remaining(&Shell{Whole: true}, cuts) {
 		piece.Whole, piece.Phi0, piece.Phi1 = false, left.from, left.to
+		piece.open0, piece.open1 = left.atFrom == "", left.atTo == ""
 		b.addVaultPiece(s, piece, left)
 	}
 }

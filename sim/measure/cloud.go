@@ -47,13 +47,13 @@ type Cloud struct {
 	Draw func(sample int, into []float64)
 
 	surface, through, why []uint32
-	words                 wordList
+	words                 *wordList
 }
 
 // NewCloud makes room for the samples of a scatter.
 func NewCloud(s *model.Scatter, nominal model.Place) *Cloud {
 	n := s.Samples
-	c := &Cloud{Scatter: s, Nominal: nominal, Fates: make([]Fate, n), surface: make([]uint32, n), through: make([]uint32, n), why: make([]uint32, n)}
+	c := &Cloud{Scatter: s, Nominal: nominal, Fates: make([]Fate, n), surface: make([]uint32, n), through: make([]uint32, n), why: make([]uint32, n), words: &wordList{}}
 	for _, col := range c.columns() {
 		*col = make([]float64, n)
 		for i := range *col {
@@ -121,6 +121,14 @@ func (c *Cloud) Set(sample int, l *Landing, spinward, axial float64) {
 		c.Fates[sample] = ShotTime
 	default:
 		c.Fates[sample] = ShotLanded
+	}
+}
+
+// Keep drops the samples from a number on.
+func (c *Cloud) Keep(n int) {
+	c.Fates, c.surface, c.through, c.why = c.Fates[:n], c.surface[:n], c.through[:n], c.why[:n]
+	for _, col := range c.columns() {
+		*col = (*col)[:n]
 	}
 }
 

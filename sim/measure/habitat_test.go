@@ -85,7 +85,8 @@ func TestWalkRunTransition(t *testing.T) {
 
 // TestGravityTimes tries the times below and above a level of gravity on a
 // climb at a steady speed without ramps, on which the waist's gravity falls
-// evenly: from 17.021 to 12.021 m, and the level between.
+// evenly, from 17.021 m to 12.021 m, and on the way down again, on which it
+// grows.
 func TestGravityTimes(t *testing.T) {
 	const spin, v = 0.6, 0.5
 	in := ring(18, spin)
@@ -93,16 +94,16 @@ func TestGravityTimes(t *testing.T) {
 	// Coriolis, 2 spin v, is across: the magnitude is a hypotenuse.
 	level := math.Hypot(spin*spin*15, 2*spin*v)
 	m, p := planned(t, in, model.Path{GravityLevels: []float64{level, 1, 100},
-		Legs: []model.Leg{{Kind: model.Climb, Distance: 5, Speed: v}}})
+		Legs: []model.Leg{{Kind: model.Climb, Distance: 5, Speed: v}, {Kind: model.Descend, Distance: 5, Speed: v}}})
 	rows, _ := measure.LoadSeries(m, p)
 	got := measure.GravityTimes(p.Path, rows)
-	// The first and the last row stand still, without Coriolis: half a step each
-	// may be counted wrong, no more, and only beside the level.
-	above := (17.021 - 15) / v
-	for i, want := range []float64{10 - above, 0, 10} {
+	// Between rows the gravity is taken as even, which it is but for a thousandth;
+	// the rows at both ends, which stand still, are far from the level.
+	above := 2 * (17.021 - 15) / v
+	for i, want := range []float64{20 - above, 0, 20} {
 		g := got[i]
-		if math.Abs(g.Below-want) > 1e-3 || math.Abs(g.Below+g.Above-10) > 1e-9 || g.Path != "path" {
-			t.Errorf("level %g m/s^2: %g s below and %g s above, want %g and the rest of 10", g.Level, g.Below, g.Above, want)
+		if math.Abs(g.Below-want) > 1e-3 || math.Abs(g.Below+g.Above-20) > 1e-9 || g.Path != "path" {
+			t.Errorf("level %g m/s^2: %g s below and %g s above, want %g and the rest of 20", g.Level, g.Below, g.Above, want)
 		}
 	}
 }

@@ -16,6 +16,7 @@ type Evidence struct {
 	Events    func(release int) ([]Event, bool)
 	Clearance func(release int) ([]Clearance, bool)
 	Loads     func(path int) ([]Load, bool)
+	Scatter   func(scatter int) (*Scattered, bool)
 	Decks     []DeckFigure
 
 	PathClearance func(path int) ([]Clearance, bool)
@@ -63,6 +64,12 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 	case "tracks":
 		rows, ok := e.Track(t.Index)
 		return series(c, t, sampleColumns, rows, func(s *Sample) float64 { return s.Time }), ok
+	case "scatter":
+		s, ok := e.Scatter(t.Index)
+		if !ok {
+			return Verdict{}, false
+		}
+		return series(c, t, scatterColumns, []Scattered{*s}, func(*Scattered) float64 { return math.NaN() }), true
 	case "crew":
 		rows, ok := e.Loads(t.Index)
 		return series(c, t, crewColumns, rows, func(l *Load) float64 { return l.Time }), ok

@@ -100,6 +100,7 @@ func judgedTables() map[string]judged {
 // a name or a column that does not exist is a problem.
 func Criteria(m *model.Model) (out []Criterion, problems []model.Problem) {
 	tables := judgedTables()
+	tables["scatter"] = judgedTable("study", scatterColumns)
 	for i := range m.Limits {
 		c, faults := criterion(m, &m.Limits[i], tables)
 		for _, f := range faults {
@@ -117,7 +118,7 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	c.Table, key, _ = strings.Cut(l.Measure, ".")
 	t, ok := tables[c.Table]
 	if !ok {
-		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat; got %q", l.Measure)
+		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, scatter; got %q", l.Measure)
 	}
 	u, num := t.nums[key]
 	if !num && !t.text[key] {
@@ -245,7 +246,7 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		return []Target{{Kind: "habitat"}}, ""
 	}
 	prefix, name, _ := strings.Cut(of, ".")
-	if prefix != "release" && prefix != "path" {
+	if prefix != "release" && prefix != "path" && (prefix != "study" || kind != "study") {
 		return nil, fmt.Sprintf("wants release.NAME, path.NAME or habitat, got %q", of)
 	}
 	if prefix != kind {
@@ -278,9 +279,15 @@ func escapeName(name string) string { return strings.ReplaceAll(name, "/", "\x00
 
 func names(m *model.Model, kind string) []string {
 	var out []string
-	if kind == "path" {
+	switch kind {
+	case "path":
 		for i := range m.Paths {
 			out = append(out, m.Paths[i].Name)
+		}
+		return out
+	case "study":
+		for i := range m.Scatters {
+			out = append(out, m.Scatters[i].Name)
 		}
 		return out
 	}

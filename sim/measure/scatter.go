@@ -3,6 +3,7 @@ package measure
 import (
 	"math"
 	"slices"
+	"strings"
 
 	"gonum.org/v1/gonum/stat"
 	"gonum.org/v1/gonum/stat/distuv"
@@ -54,6 +55,7 @@ type Scattered struct {
 	Covariance []Covariance // of pairs of them
 	Surfaces   []Share      // first touched, of those flown
 	Openings   []Share      // fallen through, of those flown
+	Through    Share        // fallen through any opening
 	Ellipse    *Ellipse     // nil: too few landed
 	Contour    *Contour     // nil: too few landed
 	Median     [2]float64   // m, spinward and axial, of the landings; NaN without one
@@ -89,6 +91,31 @@ func Scatter(m *model.Model, c *Cloud) *Scattered {
 	s.spreads(c, landed)
 	s.landings()
 	return s
+}
+
+// Settled says whether the first samples give the figures as closely as their
+// scatter asks for.
+func (c *Cloud) Settled(m *model.Model, n int) bool {
+	part := *c
+	part.Keep(n)
+	s := &Scattered{}
+	var offsets []float64
+	for i, f := range part.Fates {
+		if f == ShotLanded {
+			offsets = append(offsets, part.Offset[i])
+		}
+		if f == ShotLanded || f == ShotTime || f == ShotLost {
+			s.Flown++
+		}
+	}
+	if want := c.Scatter.Precision; want > 0 && !(spreadingOf("offset", metre, offsets).Error <= want) {
+		return false
+	}
+	if c.Scatter.SharePrecision == 0 {
+		return true
+	}
+	s.hits(m, &part)
+	return !slices.ContainsFunc(append(s.Surfaces, s.Openings...), func(h Share) bool { return !(h.High-h.Low <= 2*c.Scatter.SharePrecision) })
 }
 
 // leftOut counts the samples that were left out, by reason.
@@ -127,6 +154,11 @@ func (s *Scattered) hits(m *model.Model, c *Cloud) {
 			byOpenings[c.through[i]]++
 		}
 	}
+	n := 0
+	for w := 1; w < len(c.words.texts); w++ {
+		n += byOpenings[w]
+	}
+	s.Through = shareOf("any opening", n, s.Flown)
 	touched, passed := map[string]int{}, map[string]int{}
 	for n := 1; n < len(c.words.texts); n++ {
 		touched[c.words.text(uint32(n))] += bySurface[n]
@@ -207,10 +239,13 @@ func (s *Scattered) spreads(c *Cloud, landed []int) {
 }
 
 func productOf(a, b unit) string {
-	if a == b {
+	switch {
+	case a != b:
+		return a.name + " " + b.name
+	case strings.Contains(a.name, "/"):
 		return "(" + a.name + ")^2"
 	}
-	return a.name + " " + b.name
+	return a.name + "^2"
 }
 
 func spreadingOf(key string, u unit, values []float64) Spreading {
@@ -254,13 +289,14 @@ func quantile(sorted []float64, p float64) float64 {
 
 // landings works out where on the deck the landings are.
 func (s *Scattered) landings() {
-	x, y := s.spread("plan_spinward"), s.spread("plan_axial")
+	x, y := s.Spread("plan_spinward"), s.Spread("plan_axial")
 	s.Median = [2]float64{x.Median(), y.Median()}
 	s.Ellipse = LandingEllipse(x.values, y.values)
 	s.Contour = DensityContour(x.values, y.values, landingShare)
 }
 
-func (s *Scattered) spread(key string) *Spreading {
+// Spread is that of a measure, such as energy.
+func (s *Scattered) Spread(key string) *Spreading {
 	for i := range s.Spreads {
 		if s.Spreads[i].Key == key {
 			return &s.Spreads[i]

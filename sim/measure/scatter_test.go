@@ -167,7 +167,7 @@ func TestScatterCounts(t *testing.T) {
 	wantShares(t, "outcomes", s.Outcomes, Share{Name: "lost", Count: 1, Share: 0.25})
 	wantShares(t, "surfaces", s.Surfaces, Share{Name: "floor", Count: 1, Share: 0.25}, Share{Name: "upper", Count: 2, Share: 0.5})
 	wantShares(t, "openings", s.Openings, Share{Name: "hatch", Count: 1, Share: 0.25})
-	x := s.spread("plan_spinward")
+	x := s.Spread("plan_spinward")
 	if x.Count != 3 || x.Mean != 2 || x.Std != 1 || x.Min != 1 || x.Max != 3 || s.Median[0] != 2 {
 		t.Errorf("%+v, median %v", *x, s.Median)
 	}

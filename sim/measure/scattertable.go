@@ -20,8 +20,8 @@ var summaryColumns = []column[SummaryRow]{
 	{key: "figure", meaning: "what is told", text: func(r *SummaryRow) string { return r.Figure }},
 	{key: "of", meaning: "measure, surface, opening or reason", text: func(r *SummaryRow) string { return r.Of }},
 	{key: "value", meaning: "its value, in the unit of the row", num: func(r *SummaryRow) float64 { return r.Value }},
-	{key: "low", meaning: "low end of its 95 % confidence interval", num: func(r *SummaryRow) float64 { return r.Low }},
-	{key: "high", meaning: "high end of its 95 % confidence interval", num: func(r *SummaryRow) float64 { return r.High }},
+	{key: "low", meaning: "low end of its 95 % confidence interval, that of independent samples; those of a Latin hypercube and Halton points vary less", num: func(r *SummaryRow) float64 { return r.Low }},
+	{key: "high", meaning: "high end of that interval", num: func(r *SummaryRow) float64 { return r.High }},
 	{key: "count", meaning: "how many samples it is about", num: func(r *SummaryRow) float64 { return r.Count }},
 	{key: "unit", meaning: "unit of the row; empty: a ratio or a number of samples", text: func(r *SummaryRow) string { return r.Unit }},
 }

@@ -124,6 +124,7 @@ type wallLine struct {
 }
 
 func (c *checker) wallParts(b *geom.Builder, key string, f *Fixture, w wallLine) {
+	defer b.Together()()
 	for i, u := range []float64{inset, 1 - inset} {
 		if !b.Inside(w.point(u*w.length, inset*f.Height)) {
 			c.outsideFault(key+[]string{".from", ".to"}[i], f)

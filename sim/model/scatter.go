@@ -20,7 +20,15 @@ type Scatter struct {
 	Samples  int
 	Sampling Sampling
 	Vary     []Spread // in the order of the file
+
+	// It may stop before all samples, once the 95 % confidence intervals are as
+	// narrow: half of that of the mean deck offset, m, and half of those of the
+	// probabilities of surfaces and openings; 0: not looked at.
+	Precision, SharePrecision float64
 }
+
+// Stops says whether a scatter may stop before all its samples.
+func (s *Scatter) Stops() bool { return s.Precision > 0 || s.SharePrecision > 0 }
 
 // SpreadKind names a distribution.
 type SpreadKind int

@@ -98,15 +98,16 @@ func TestEveryFallIsSlow(t *testing.T) {
 	for _, c := range []struct {
 		name                  string
 		friction, restitution float64
-		most                  float64
+		width, most           float64
 		least, greatest       int // platforms
 	}{
-		{"bouncing", 0.2, 0.6, 4, 4, 20},
-		{"rough", 2, 0, 4, 2, 20},
-		{"rough, slow enough", 2, 0, 5, 1, 1},
+		{"bouncing", 0.2, 0.6, 1.8, 4, 4, 20},
+		{"rough", 2, 0, 1.8, 4, 2, 20},
+		{"rough, slow enough", 2, 0, 1.8, 5, 1, 1},
+		{"narrow and rough", 3, 0, 0.9, 2.5, 2, 20},
 	} {
 		const spin, hub, ring, d = 0.37, 4.0, 31.0, 0.5
-		m, rows := platforms(t, shaft(spin, hub, ring, 1.8, model.Body{Mass: 96, Diameter: d, Friction: c.friction, Restitution: c.restitution}, c.most))
+		m, rows := platforms(t, shaft(spin, hub, ring, c.width, model.Body{Mass: 96, Diameter: d, Friction: c.friction, Restitution: c.restitution}, c.most))
 		if len(rows) < c.least || len(rows) > c.greatest {
 			t.Errorf("%s: %d platforms, want %d to %d", c.name, len(rows), c.least, c.greatest)
 		}

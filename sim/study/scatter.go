@@ -19,38 +19,64 @@ type ScatterOptions struct {
 	Done    func(done, of int) // progress, called from one worker at a time; may be nil
 }
 
-// Scatter flies the samples of a scatter. Only their numbers are kept, so that
-// samples may be many. The result depends on the scenario and the seed alone.
-// It stops early, with the context's error, when the context ends.
+// Scatter flies the samples of a scatter: all, or those that its stated
+// precision takes. Only their numbers are kept, so that samples may be many. The
+// result depends on the scenario and the seed alone. It stops early, with the
+// context's error, when the context ends.
 func (p *Prepared) Scatter(ctx context.Context, s *model.Scatter, opt ScatterOptions) (*measure.Cloud, error) {
 	at, ok := p.Model.ReleaseNamed(s.Of)
 	if !ok {
 		return nil, fmt.Errorf("no release named %q", s.Of)
 	}
-	x := &scattering{p: p, s: s, of: &p.Lets[at]}
+	x := &scattering{p: p, s: s, of: &p.Lets[at], opt: opt}
 	x.draw, x.side = newSampler(s, opt.Seed)
 	x.ground = measure.GroundAt(p.Model, x.of.Place.Polar, p.Model.DeckBeneath(x.of.Place.Polar))
 	x.out = measure.NewCloud(s, x.of.Place)
 	x.out.Draw = x.numbers
-	var next, done atomic.Int64
+	if !s.Stops() {
+		x.fly(ctx, 0, s.Samples)
+		return x.out, ctx.Err()
+	}
+	for n := min(firstLook, s.Samples); ; n = min(n+n/4, s.Samples) {
+		x.fly(ctx, int(x.done.Load()), n)
+		if ctx.Err() != nil || n == s.Samples || x.out.Settled(p.Model, n) {
+			x.out.Keep(n)
+			return x.out, ctx.Err()
+		}
+	}
+}
+
+const (
+	// chunk is how many samples a worker takes at once: a few milliseconds'
+	// worth.
+	chunk = 64
+	// firstLook is after how many samples the precision is looked at first;
+	// later looks come after a quarter more each, so that they cost little.
+	firstLook = 400
+)
+
+// fly flies the samples from one up to another on several workers.
+func (x *scattering) fly(ctx context.Context, from, to int) {
+	var next atomic.Int64
 	var tell sync.Mutex
-	spread(opt.Workers, func() {
+	next.Store(int64(from))
+	spread(x.opt.Workers, func() {
 		w := x.worker()
 		for {
-			from := int(next.Add(chunk)) - chunk
-			to := min(from+chunk, s.Samples)
-			if from >= to || ctx.Err() != nil {
+			i := int(next.Add(chunk)) - chunk
+			end := min(i+chunk, to)
+			if i >= end || ctx.Err() != nil {
 				break
 			}
-			for i := from; i < to; i++ {
+			x.done.Add(int64(end - i))
+			for ; i < end; i++ {
 				w.sample(i)
 			}
-			n := int(done.Add(int64(to - from)))
-			if opt.Done != nil {
-				tell.Lock()
-				opt.Done(n, s.Samples)
-				tell.Unlock()
+			tell.Lock()
+			if x.opt.Done != nil {
+				x.opt.Done(int(x.done.Load()), x.s.Samples)
 			}
+			tell.Unlock()
 		}
 		tell.Lock()
 		x.out.Work.Steps += w.work.Steps
@@ -58,11 +84,7 @@ func (p *Prepared) Scatter(ctx context.Context, s *model.Scatter, opt ScatterOpt
 		x.out.Work.Derivs += w.work.Derivs
 		tell.Unlock()
 	})
-	return x.out, ctx.Err()
 }
-
-// chunk is how many samples a worker takes at once: a few milliseconds' worth.
-const chunk = 64
 
 // scattering is a scatter at work.
 type scattering struct {
@@ -73,6 +95,8 @@ type scattering struct {
 	draw   *sampler
 	side   []int // of each spread: its side of the unit cube
 	out    *measure.Cloud
+	opt    ScatterOptions
+	done   atomic.Int64
 }
 
 // numbers gives the varied numbers of a sample.

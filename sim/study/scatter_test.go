@@ -346,6 +346,50 @@ func TestSamplingGain(t *testing.T) {
 	}
 }
 
+// TestStopsAtPrecision: a scatter with a stated precision takes as many samples
+// as that needs and not many more, the same for any number of workers, and they
+// are the first of those that it would take.
+func TestStopsAtPrecision(t *testing.T) {
+	s := model.Scatter{Name: "s", Samples: 20_000, Vary: []model.Spread{normal("velocity.spinward", 0, 0.2)}}
+	r := model.Release{At: model.Station{Height: 1.9}}
+	all := scattered(t, ring(t, r, model.Scatter{Name: "s", Samples: 3000, Vary: s.Vary}), 1)
+	dev := stat.StdDev(all.Offset, nil)
+	for _, c := range []struct {
+		precision, share float64
+		need             float64 // samples
+	}{
+		{precision: 1.96 * dev / math.Sqrt(1000), need: 1000},
+		{precision: 1, need: 1},
+		{share: 0.002, need: 956}, // of a share of 1: z^2/(n+z^2) wide (Wilson)
+		{precision: 1e-9, need: 20_000},
+	} {
+		if s.Precision, s.SharePrecision = c.precision, c.share; c.precision == 1e-9 {
+			s.Samples = 1000
+			c.need = 1000
+		}
+		p := ring(t, r, s)
+		var first int
+		for _, workers := range []int{1, 7} {
+			got, err := p.Scatter(context.Background(), &p.Model.Scatters[0], study.ScatterOptions{Workers: workers, Seed: 1})
+			if err != nil {
+				t.Fatal(err)
+			}
+			n := len(got.Fates)
+			// It looks after 400 samples and then after a quarter more each; the
+			// deviation itself is known to a few in a hundred.
+			if least, most := 0.9*c.need, max(400, 1.4*c.need); float64(n) < least || float64(n) > most {
+				t.Errorf("precision %g, of shares %g: %d samples, want about %g", c.precision, c.share, n, c.need)
+			}
+			if first == 0 {
+				first = n
+			}
+			if n != first || got.Offset[n-1] != all.Offset[n-1] || len(got.Offset) != n {
+				t.Errorf("precision %g, of shares %g: %d workers take %d samples, 1 takes %d, or others", c.precision, c.share, workers, n, first)
+			}
+		}
+	}
+}
+
 func TestScatterStops(t *testing.T) {
 	p := ring(t, model.Release{At: model.Station{Height: 1.9}}, model.Scatter{Name: "s", Samples: 2e5, Vary: []model.Spread{normal("at.height", 1.9, 0.1)}})
 	ctx, cancel := context.WithCancel(context.Background())

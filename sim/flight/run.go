@@ -1,0 +1,61 @@
+package flight
+
+import (
+	"offplumb/integrator"
+	"offplumb/sim/geom"
+)
+
+// ending is what the next phase must know of how the last one ended.
+type ending struct {
+	parted []geom.Patch // left for want of force
+	leant  []geom.Patch // grazed, and about to be pressed on
+	left   []geom.Patch // no longer grazed
+	skids  bool         // a rolling body lost its grip
+}
+
+// run is the integration of one phase.
+type run struct {
+	st     *integrator.Stepper
+	limit  float64 // s
+	grazed []geom.Patch
+	events func(grazed []geom.Patch) *ends
+	opts   []integrator.Option
+}
+
+// solve integrates from the state y to the end of the phase. It goes on where
+// the body has only left something that it grazed.
+func (r *run) solve(t *Track, p *Phase, y []float64) (integrator.Result, ending, error) {
+	for at := 0.0; ; {
+		r.st.Reset(at, y, r.opts...)
+		e := r.events(r.grazed)
+		res, err := integrator.Solve(r.st, r.limit, e.specs, p.keep)
+		if err != nil {
+			return res, ending{}, err
+		}
+		t.Work.add(res.Stats)
+		end := e.ending(res.Hits)
+		if len(end.left) == 0 || len(end.left) < len(res.Hits) {
+			return res, end, nil
+		}
+		r.grazed = without(r.grazed, end.left)
+		at, y = res.T, res.Y
+	}
+}
+
+func without(list, gone []geom.Patch) []geom.Patch {
+	var out []geom.Patch
+	for _, p := range list {
+		if !hasPatch(gone, p) {
+			out = append(out, p)
+		}
+	}
+	return out
+}
+
+// keep stores a step of a phase.
+func (p *Phase) keep(s *integrator.Step, _ []integrator.Hit) error {
+	if s.T1 > s.T0 {
+		p.steps = append(p.steps, s.Clone())
+	}
+	return nil
+}
