@@ -9,7 +9,9 @@
 //	tree.go      TOML text -> a tree of nodes with their positions
 //	set.go       settings from the command line, put into the tree
 //	keys.go      the format as data: every key, its unit, range and meaning
-//	check.go     the tree held against the format -> typed values in SI
+//	check.go     the tree held against the format
+//	values.go    each kind of value: words, numbers, lists, quantities
+//	object.go    the typed values in SI that come of it
 //	units.go     quantities with units
 //	build.go     typed values -> model.Model
 //	list.go      release lists in CSV; their rows in listrow.go
