@@ -3,6 +3,7 @@ package scenarios
 import (
 	"fmt"
 	"math"
+	"regexp"
 	"slices"
 	"strconv"
 	"strings"
