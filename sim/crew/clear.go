@@ -104,7 +104,7 @@ func (p *Plan) near(m *model.Model, t float64, best []Clearance) {
 	a := p.Crew.Breadth / 2
 	f := p.At(t)
 	up := frame.LocalAt(f.Phi).Up
-	for h := stepOver + a; h <= p.Crew.Stature-f.low.x-a/2; h += bodyStep {
+	for h := stepOver + a; h <= math.Max(stepOver+a, p.Crew.Stature-f.low.x-a); h += bodyStep {
 		pos := f.Point(model.Reach{Height: h}).Pos
 		for g := range m.Interior.Groups() {
 			c := m.Interior.ContactIn(pos, geom.Group(g))

@@ -133,7 +133,7 @@ func TestSittersSitLower(t *testing.T) {
 
 // TestCrossCouplingParts tries the parts of the spin times the rate of the
 // head, for the three axes of a turn of the head and for a turn of the body to
-// the right: about the vertical it is spinward or against, about the spinward
+// the left: about the vertical it is spinward or against, about the spinward
 // direction vertical, and about the axis there is none.
 func TestCrossCouplingParts(t *testing.T) {
 	const angle, over = 1.2, 0.5
@@ -146,7 +146,7 @@ func TestCrossCouplingParts(t *testing.T) {
 			{"head about the vertical", model.Leg{Kind: model.TurnHead, About: model.AboutVertical}, -1, 0, 0},
 			{"head about spinward", model.Leg{Kind: model.TurnHead, About: model.AboutSpinward}, 0, 0, 1},
 			{"head about the axis", model.Leg{Kind: model.TurnHead, About: model.AboutAxial}, 0, 0, 0},
-			{"body to the right", model.Leg{Kind: model.Turn}, 1, 0, 0},
+			{"body to the left", model.Leg{Kind: model.Turn}, -1, 0, 0},
 		} {
 			c.leg.Angle, c.leg.Duration = angle, over
 			start := model.Station{Spinward: model.Arc{Value: 2.2, IsAngle: true}}

@@ -198,7 +198,7 @@ func (p *Plan) At(t float64) Feet {
 	case l.spec.Kind == model.TurnHead:
 		f.HeadTurn = r3.Scale(s.v, headAxis(l.spec.About, f.Phi))
 	case l.spec.Kind == model.Turn:
-		f.HeadTurn = r3.Scale(-s.v, frame.LocalAt(f.Phi).Up)
+		f.HeadTurn = r3.Scale(s.v, frame.LocalAt(f.Phi).Up)
 	case l.course != nil:
 		l.course.put(&f, s)
 		f.Along += s.x

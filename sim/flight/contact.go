@@ -15,8 +15,9 @@ type moving struct {
 	q, v, w r3.Vec  // m, m/s, rad/s relative to the habitat
 }
 
-// slop is how far a body may be from a surface that it touches, m.
-func slop(q r3.Vec) float64 { return model.TouchSlack * math.Max(1, r3.Norm(q)*1e-5) }
+// slop is how far a body may be from a surface that it touches, m: some times
+// what a release may be, or a slide drifts.
+func slop(q r3.Vec) float64 { return 4 * model.TouchSlack * math.Max(1, r3.Norm(q)*1e-5) }
 
 // hover is how far a body in contact is kept off its surface, m: a point, which
 // a rounding would bring into the matter, where all faces are near, the seams
@@ -25,7 +26,7 @@ func (f *Flier) hover(q r3.Vec) float64 {
 	if f.wide > thin {
 		return 0
 	}
-	return slop(q) / 2
+	return slop(q) / 8
 }
 
 // mostShoves bounds the tries to bring a body out of what it reaches into, in
@@ -33,25 +34,28 @@ func (f *Flier) hover(q r3.Vec) float64 {
 const mostShoves = 8
 
 // touches lists the surfaces that the body touches, each direction once. A
-// body that reaches into one by more than half the slop is brought out of it
-// first: an event of its gap would else count it as being on the far side.
+// body that reaches into one by more than a quarter of the slop, or a point
+// that reaches into one at all, is brought out of it first: an event of its gap
+// would else count it as being on the far side.
 func (f *Flier) touches(now *moving) []geom.Touch {
-	s := slop(now.q)
+	s, out := slop(now.q), f.hover(now.q)
+	least := f.wide - s/4
+	if out > 0 {
+		least = f.wide + out/2
+	}
 	var all []geom.Touch
 	for range mostShoves {
 		all = f.m.Interior.Touching(now.q, f.wide+s, all[:0])
-		deep := false
-		for i := range all {
-			if all[i].Gap < f.wide-s/2 {
-				now.q = r3.Add(now.q, r3.Scale(f.wide-all[i].Gap, all[i].Normal))
-				deep = true
-				break
-			}
-		}
-		if !deep {
+		if len(all) == 0 || all[0].Gap >= least {
 			break
 		}
+		now.q = r3.Add(now.q, r3.Scale(f.wide+out-all[0].Gap, all[0].Normal))
 	}
+	return eachWay(all)
+}
+
+// eachWay drops contacts of a direction that an earlier one has.
+func eachWay(all []geom.Touch) []geom.Touch {
 	out := all[:0]
 	for _, c := range all {
 		if !hasNormal(out, c.Normal) {

@@ -122,7 +122,7 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 	}
 	now.t += res.T
 	phase.T1 = now.t
-	t.Phases = append(t.Phases, phase)
+	t.add(phase)
 	last := depart(base, res.T, res.Y)
 	a = f.m.Motion.At(t.Begin + now.t)
 	local := a.ToHabitat(last)
@@ -134,12 +134,12 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 
 // flightEvents lists what ends a flight: a touch, the loss of the body.
 func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch) *ends {
-	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Grazed: grazed}
+	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Slop: slop(base.Pos) / 2, Grazed: grazed}
 	f.touch.step, f.hull.step = never, never
 	e := &ends{}
-	e.add(f.touch, slop(base.Pos), turns)
+	e.add(f.touch, slop(base.Pos)/4, turns)
 	e.add(f.hull, 0, turns)
-	e.graze(f, grazed, slop(base.Pos), f.free.local, func(at float64, y []float64) r3.Vec {
+	e.graze(f, grazed, slop(base.Pos)/4, f.free.local, func(at float64, y []float64) r3.Vec {
 		a := f.m.Motion.At(f.free.begin + at)
 		return f.pull(&a, f.free.begin+at, f.free.local(at, y))
 	})

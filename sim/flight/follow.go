@@ -28,7 +28,8 @@ func (f *Flier) follow(t *Track) error {
 	now := f.start(t)
 	known := patchesOf(f.touches(&now))
 	var last ending
-	for range mostPhases {
+	since := now.t
+	for k := range mostPhases {
 		touches := f.touches(&now)
 		f.meet(t, &now, touches, known)
 		if f.over(t, &now) {
@@ -49,18 +50,15 @@ func (f *Flier) follow(t *Track) error {
 		if err != nil || f.ended {
 			return err
 		}
-		if t.Work.Steps > mostSteps || t.hurries() {
+		if t.Work.Steps > mostSteps || k%patience == patience-1 && now.t-since < hurry {
 			break
+		}
+		if k%patience == patience-1 {
+			since = now.t
 		}
 	}
 	f.end(t, &now, Stuck)
 	return nil
-}
-
-// hurries says whether the last phases took no time to speak of.
-func (t *Track) hurries() bool {
-	n := len(t.Phases)
-	return n > patience && t.Phases[n-1].T1-t.Phases[n-patience].T0 < hurry
 }
 
 // start is the body at its release.

@@ -52,6 +52,13 @@ func without(list, gone []geom.Patch) []geom.Patch {
 	return out
 }
 
+// add adds a phase, unless it took no time.
+func (t *Track) add(p Phase) {
+	if p.T1 > p.T0 {
+		t.Phases = append(t.Phases, p)
+	}
+}
+
 // keep stores a step of a phase.
 func (p *Phase) keep(s *integrator.Step, _ []integrator.Hit) error {
 	if s.T1 > s.T0 {

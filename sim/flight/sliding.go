@@ -17,10 +17,10 @@ const stepTurn = 0.3
 // stops, parts from one, meets another, or its time ends.
 func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, error) {
 	s, kind := f.slideFrom(t, now, st, skids)
-	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q}, spin: now.w,
+	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q, Vel: now.v}, spin: now.w,
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
-	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, opts: []integrator.Option{integrator.MaxStep(1 / s.regain)},
+	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, opts: []integrator.Option{integrator.MaxStep(regain * stepTurn / s.regain)},
 		events: func(grazed []geom.Patch) *ends { return f.slideEvents(s, now, grazed) }}
 	res, end, err := r.solve(t, &phase, y)
 	if err != nil {
@@ -31,7 +31,7 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 	f.onto(now, s.on, end.parted)
 	f.arrival = f.inertial(t, now)
 	phase.T1 = now.t
-	t.Phases = append(t.Phases, phase)
+	t.add(phase)
 	return end, nil
 }
 
@@ -84,7 +84,7 @@ func (f *Flier) onto(now *moving, groups, parted []geom.Patch) {
 			continue
 		}
 		c := f.m.Interior.ContactOn(now.q, g)
-		if off := f.wide + f.hover(now.q) - c.Gap; math.Abs(off) > slop(now.q)/2 {
+		if off := f.wide + f.hover(now.q) - c.Gap; math.Abs(off) > slop(now.q)/4 {
 			now.q = r3.Add(now.q, r3.Scale(off, c.Normal))
 		}
 		now.v = r3.Sub(now.v, r3.Scale(r3.Dot(now.v, c.Normal), c.Normal))
@@ -95,8 +95,8 @@ func (f *Flier) onto(now *moving, groups, parted []geom.Patch) {
 func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 	s.grazed = grazed
 	e := &ends{}
-	watch := &geom.Beside{Wide: f.wide, Thin: thin, On: s.on, Grazed: s.grazed}
-	e.add(besides{s, watch}, slop(s.origin), turns)
+	watch := &geom.Beside{Wide: f.wide, Thin: thin, Slop: slop(s.origin) / 2, On: s.on, Grazed: s.grazed}
+	e.add(besides{s, watch}, slop(s.origin)/4, turns)
 	e.add(stops{f.slowEnough(now, len(s.on))}, 0, turns)
 	for i, g := range s.on {
 		e.add(parts{s, i}, forceSlop, loses, g)
@@ -110,7 +110,7 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 			e.add(skids{s}, forceSlop, starts)
 		}
 	}
-	e.graze(f, s.grazed, slop(s.origin), s.local, func(at float64, y []float64) r3.Vec {
+	e.graze(f, s.grazed, slop(s.origin)/4, s.local, func(at float64, y []float64) r3.Vec {
 		s.eval(at, y)
 		return s.rub.drive
 	})

@@ -10,6 +10,11 @@ import (
 type Beside struct {
 	Wide float64 // m, radius of the sphere
 	Thin float64 // m, the depth that counts as nothing
+	// Slop is how far, in m, the sphere may be from what it touches. What it
+	// reaches into by more than that counts, whatever else it touches. Another
+	// place of a group that it slides on counts from a gap of Slop on: the
+	// sphere, kept on the nearest place of all, would never reach into it.
+	Slop float64
 	// On are the patches that the sphere slides on. Neither they count nor what
 	// goes on from them without an edge.
 	On []Patch
@@ -36,8 +41,9 @@ func (b *Beside) counter(in *Interior, p r3.Vec) counter {
 	return counter{Beside: b, in: in, p: p, known: -1}
 }
 
-// counts says whether piece i, at the distance d, counts.
-func (c *counter) counts(i int, d float64) bool {
+// counts says at which distance a piece i that is d away counts; infinite if
+// it does not.
+func (c *counter) counts(i int, d float64) float64 {
 	if c.known < 0 {
 		c.learn()
 	}
@@ -46,11 +52,16 @@ func (c *counter) counts(i int, d float64) bool {
 		if k >= on && d > c.Wide+2*c.Thin {
 			break
 		}
-		if c.in.joins(c.p, c.Wide, i, &c.touch[k]) {
-			return false
+		if i == c.touch[k].piece || d >= c.Wide-c.Slop && c.in.joins(c.p, c.Wide, i, &c.touch[k]) {
+			return math.Inf(1)
 		}
 	}
-	return true
+	for k := range c.On {
+		if c.On[k].Piece < 0 && c.On[k].Group == c.in.pieces[i].Group {
+			return d - c.Slop
+		}
+	}
+	return d
 }
 
 // learn finds what the sphere touches.
@@ -77,8 +88,8 @@ func (in *Interior) DistBeside(p r3.Vec, b *Beside) float64 {
 	best := math.Inf(1)
 	c := b.counter(in, p)
 	in.tree.each(in.pieces, p, &best, func(i int, d float64) float64 {
-		if d < best && c.counts(i, d) {
-			return d
+		if d-c.Slop < best {
+			return math.Min(best, c.counts(i, d))
 		}
 		return best
 	})
@@ -97,15 +108,18 @@ func (in *Interior) DistBeside(p r3.Vec, b *Beside) float64 {
 // hollow curvature k at least -acc - k v^2.
 func (in *Interior) TimeBeside(p, v r3.Vec, acc, limit float64, b *Beside) float64 {
 	speed := r3.Norm(v)
-	reach := func(t float64) float64 { return b.Wide + speed*t + acc*t*t/2 }
+	reach := func(t float64) float64 { return b.Wide + b.Slop + speed*t + acc*t*t/2 }
 	c := b.counter(in, p)
 	best, bound := limit, reach(limit)
 	in.tree.each(in.pieces, p, &bound, func(i int, d float64) float64 {
-		gap := math.Max(d-b.Wide, b.Thin)
-		t := within(gap, speed, acc)
-		if t >= best || !c.counts(i, d) {
+		if within(math.Max(d-b.Wide-b.Slop, b.Thin), speed, acc) >= best {
 			return bound
 		}
+		gap := math.Max(c.counts(i, d)-b.Wide, b.Thin)
+		if math.IsInf(gap, 1) {
+			return bound
+		}
+		t := within(gap, speed, acc)
 		if s, ok := in.pieces[i].Solid.(smooth); ok {
 			t = math.Max(t, c.aimed(s, gap, v, acc, best))
 		}

@@ -290,7 +290,7 @@ type Leg struct {
 	Distance float64  // m: climb and descend; stand up and sit down: by which the head rises or sinks
 	Duration float64  // s, stand and turn of the head
 	Facing   Direction
-	Angle    float64 // rad, turn of the head, turn of the body (toward the right, seen from above)
+	Angle    float64 // rad, turn of the head or of the body, by the right-hand rule about the axis: about the vertical, to the left
 	About    Axis
 
 	Pitch     float64 // rad, climb and descend: of the ladder above the deck; 0: a radial one

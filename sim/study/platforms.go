@@ -140,19 +140,12 @@ func (f *faller) highest(at, in float64) (float64, error) {
 // worst looks at falls from all heights between two platforms.
 func (f *faller) worst(at, from float64) (measure.Platform, error) {
 	out := measure.Platform{Radius: at, Fall: at - from, From: from}
-	try := func(r float64) (float64, error) {
-		v, err := f.speed(r, at)
-		if v > out.Speed {
-			out.Speed, out.From = v, r
-		}
-		return v, err
-	}
 	long := at - f.body.Diameter/2 - from
 	height := func(k float64) float64 { return at - f.body.Diameter/2 - long*k*k/tried/tried }
 	top := 0.0
 	for k := float64(tried); k > 0; k-- {
 		before := out.Speed
-		if _, err := try(height(k)); err != nil {
+		if _, err := f.try(&out, height(k)); err != nil {
 			return out, err
 		}
 		if out.Speed > before {
@@ -160,16 +153,32 @@ func (f *faller) worst(at, from float64) (measure.Platform, error) {
 		}
 	}
 	// The fastest lies between the neighbours of the fastest that was tried.
-	lo, hi := height(math.Min(tried, top+1)), height(math.Max(0, top-1))
+	err := f.sharpen(&out, height(math.Min(tried, top+1)), height(math.Max(0, top-1)))
+	out.Energy = f.body.Mass * out.Speed * out.Speed / 2
+	return out, err
+}
+
+// try lets a fall onto a platform begin at a distance from the axis, keeps it
+// if it is the worst so far, and gives its speed.
+func (f *faller) try(p *measure.Platform, r float64) (float64, error) {
+	v, err := f.speed(r, p.Radius)
+	if v > p.Speed {
+		p.Speed, p.From = v, r
+	}
+	return v, err
+}
+
+// sharpen narrows the stretch in which the worst fall begins, by thirds.
+func (f *faller) sharpen(p *measure.Platform, lo, hi float64) error {
 	for range sharpened {
 		u, v := lo+(hi-lo)/3, hi-(hi-lo)/3
-		a, err := try(u)
+		a, err := f.try(p, u)
 		if err != nil {
-			return out, err
+			return err
 		}
-		b, err := try(v)
+		b, err := f.try(p, v)
 		if err != nil {
-			return out, err
+			return err
 		}
 		if a > b {
 			hi = v
@@ -177,6 +186,5 @@ func (f *faller) worst(at, from float64) (measure.Platform, error) {
 			lo = u
 		}
 	}
-	out.Energy = f.body.Mass * out.Speed * out.Speed / 2
-	return out, nil
+	return nil
 }
