@@ -100,13 +100,66 @@ func local(m *model.Model, track *flight.Track, time float64) frame.State {
 	return a.ToHabitat(track.At(time))
 }
 
+// along is the closed form of a bead on a turning rod with friction (Kleppner &
+// Kolenkow, An Introduction to Mechanics, for mu = 0): from rest, x - mu b
+// follows exp(omega (-mu +- sqrt(1 + mu^2)) t). It gives place (m) and speed
+// (m/s) along the rod.
+func (r rod) along(time float64) (x, v float64) {
+	w, root := math.Abs(r.spin), math.Sqrt(1+r.mu*r.mu)
+	l1, l2 := w*(root-r.mu), -w*(root+r.mu)
+	y := r.r0 - r.mu*r.off
+	a, b := -l2*y/(l1-l2), l1*y/(l1-l2)
+	return r.mu*r.off + a*math.Exp(l1*time) + b*math.Exp(l2*time), a*l1*math.Exp(l1*time) + b*l2*math.Exp(l2*time)
+}
+
+// Published checks B6 and B7: place, speed and side force of a body that is
+// pressed on the wall of a turning spoke, with and without friction, on the
+// radial line and beside it, at either spin.
 func TestBeadOnRod(t *testing.T) {
 	const w, r0 = 0.6, 8.0
-	for _, spin := range []float64{w, -w} {
-		m, track := fromFile(t, rod{spin: spin, a: 0.05, r0: r0}.toml())
-		t.Log(kinds(track))
-		end := 1.31695790 / w
-		s := local(m, track, end)
-		t.Log(s.Pos.X/r0-2, r3.Norm(s.Vel)/(w*r0)-math.Sqrt(3), s.Pos.Y)
+	for _, c := range []struct{ mu, off float64 }{{0, 0}, {0.1, 0}, {0.3, 0}, {0, 0.5}, {0.3, 0.5}} {
+		for _, spin := range []float64{w, -w} {
+			r := rod{spin: spin, mu: c.mu, a: 0.05, r0: r0, off: c.off}
+			m, track := fromFile(t, r.toml())
+			slides(t, track, 2/w)
+			for _, time := range []float64{0.3 / w, 1 / w, 1.31695790 / w, 2 / w} {
+				s := local(m, track, time)
+				x, v := r.along(time)
+				if math.Abs(s.Pos.X-x) > 1e-7*x || math.Abs(s.Vel.X-v) > 1e-7*v {
+					t.Errorf("%+v, %g s: at %.12g m with %.12g m/s, want %.12g and %.12g", c, time, s.Pos.X, s.Vel.X, x, v)
+				}
+				side := force(m, track, time)
+				if want := 2*w*v + w*w*c.off; math.Abs(side-want) > 1e-4*want {
+					t.Errorf("%+v, %g s: side force %.8g N/kg, want %.8g", c, time, side, want)
+				}
+			}
+		}
+	}
+}
+
+// force is the magnitude of the force by mass (m/s^2) across the spoke, by the
+// second difference of the inertial motion.
+func force(m *model.Model, track *flight.Track, time float64) float64 {
+	const h = 1e-3 // s: the difference errs by h^2/12 of the fourth derivative, 1e-7 of it here
+	acc := r3.Add(r3.Sub(track.At(time+h).Pos, r3.Scale(2, track.At(time).Pos)), track.At(time-h).Pos)
+	a := m.Motion.At(track.Begin + time)
+	return math.Abs(a.In(r3.Scale(1/(h*h), acc)).Y)
+}
+
+// The printed figures: 2 r0 at omega t = 1.31695790 with speed sqrt(3) omega
+// r0 (Kleppner & Kolenkow); r/r0 at omega t = 2 for three frictions (derived;
+// textbook form).
+func TestBeadFigures(t *testing.T) {
+	const w, r0 = 0.6, 8.0
+	m, track := fromFile(t, rod{spin: w, a: 0.05, r0: r0}.toml())
+	s := local(m, track, 1.31695790/w)
+	if math.Abs(s.Pos.X/r0-2) > 1e-8 || math.Abs(s.Vel.X/(w*r0)-math.Sqrt(3)) > 1e-8 {
+		t.Errorf("at %.10g r0 with %.10g omega r0, want 2 and sqrt(3)", s.Pos.X/r0, s.Vel.X/(w*r0))
+	}
+	for mu, want := range map[float64]float64{0: 3.76219569, 0.1: 3.40854002, 0.3: 2.87474581} {
+		m, track := fromFile(t, rod{spin: w, mu: mu, a: 0.05, r0: r0}.toml())
+		if got := local(m, track, 2/w).Pos.X / r0; math.Abs(got-want) > 2e-8 {
+			t.Errorf("friction %g: r/r0 is %.9g, want %.9g", mu, got, want)
+		}
 	}
 }

@@ -175,5 +175,3 @@ func (j *judge) place(i int, p *Phase, time float64, s frame.State) {
 		j.fault("phase %d %v, %.9g s: %.3g m off every surface", i, p.Kind, time, gap)
 	}
 }
-
-func fmtMost(j *judge) string { return fmt.Sprintf("%+.3g", j.most) }

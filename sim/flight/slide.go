@@ -49,11 +49,11 @@ type slide struct {
 	walls  []push       // space for what of that is near
 
 	// Of the last derivative.
-	vel, acc r3.Vec // acc without what brings the body back
-	push     [mostContacts]push
-	gap      [mostContacts]float64 // m, of the centre
-	rub      rubbing
-	back     r3.Vec // m/s^2, what brings the body back
+	vel  r3.Vec
+	push [mostContacts]push
+	gap  [mostContacts]float64 // m, of the centre
+	rub  rubbing
+	back r3.Vec // m/s^2, what brings the body back
 }
 
 // Dim implements [integrator.System].
