@@ -48,7 +48,7 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 	if !f.rolls(len(on)) {
 		now.w = r3.Vec{}
 		if r3.Norm(now.v) <= 2*creep {
-			now.v = r3.Vec{}
+			s.setOff(now)
 		}
 		return s, Slide
 	}
@@ -62,6 +62,22 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 	}
 	f.grip(now, n, u, st.grazed)
 	return s, Roll
+}
+
+// hardlySlides is the share of the friction below which what is left of the
+// pull counts as little: the body then creeps off so slowly that the direction
+// of friction makes the equations stiff.
+const hardlySlides = 0.2
+
+// setOff stops a body that has as good as stopped, but is not held. Where
+// friction all but holds it, it gets a creep the way that it is driven.
+func (s *slide) setOff(now *moving) {
+	var y, dy [dims]float64
+	now.v = r3.Vec{}
+	s.Deriv(0, y[:], dy[:])
+	if a := vec(dy[3:]); r3.Norm(a) > 0 && r3.Norm(a) < hardlySlides*s.rub.most {
+		now.v = r3.Scale(2*creep/r3.Norm(a), a)
+	}
 }
 
 // grip ends the slip u (m/s) of a rolling body by the impulse that does so, as
