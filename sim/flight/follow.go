@@ -89,7 +89,13 @@ func (f *Flier) over(t *Track, now *moving) bool {
 
 // rests ends a release whose body has stopped where friction holds it.
 func (f *Flier) rests(t *Track, now *moving, s stance) bool {
-	if len(s.on) == 0 || !f.stands(now, s.on) {
+	if len(s.on) == 0 {
+		return false
+	}
+	if r3.Norm(now.v) <= 2*creep && s.wedges() {
+		now.w = r3.Vec{} // a ball that is jammed does not spin on
+	}
+	if !f.stands(now, s.on) {
 		return false
 	}
 	a := f.m.Motion.At(t.Begin + now.t)
@@ -123,6 +129,19 @@ func (f *Flier) restOutcome(t *Track, all []push, on []int) Outcome {
 		return Landed
 	}
 	return Rested
+}
+
+// wedges says whether what a body is pressed on and what it grazes face each
+// other.
+func (s *stance) wedges() bool {
+	for i := range s.on {
+		for k := range s.grazed {
+			if r3.Dot(s.on[i].Normal, s.grazed[k].Normal) < -wedge {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // stands says whether a body in contact has stopped. A rolling one that

@@ -167,8 +167,8 @@ func (f *Flier) meet(t *Track, now *moving, touches []geom.Touch, known []geom.P
 	before := *now
 	for _, hit := range f.collide(t.Begin+now.t, now, touches) {
 		c := &touches[hit.i]
-		// A slide into its own surface is a matter of rounding.
-		if hasGroup(known, c.Group) && -r3.Dot(before.v, c.Normal) <= parting || t.hitNow(now.t, c.Surface) {
+		// A slide into its own surface is a matter of the integration's error.
+		if hasGroup(known, c.Group) && -r3.Dot(before.v, c.Normal) <= creep || t.hitNow(now.t, c.Surface) {
 			continue
 		}
 		f.record(t, moving{t: now.t, q: now.q, v: hit.v}, c)

@@ -7,6 +7,7 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 
 	"offplumb/sim/frame"
+	"offplumb/sim/geom"
 	"offplumb/sim/model"
 )
 
@@ -23,13 +24,17 @@ const (
 )
 
 // judge holds a track against the laws of motion in contact, by its dense
-// output and the interior alone.
+// output and the interior alone: time goes on and phases join; impacts are at
+// joints, and go into surfaces; the body is in nothing, and slides along a
+// surface; its energy in the turning frame (the Jacobi integral v'^2/2 - omega^2
+// r^2/2, and that of the spin where it rolls) never grows; surfaces push and do
+// not pull, and friction neither exceeds mu N nor helps the motion.
 type judge struct {
 	m      *model.Model
 	t      *Track
 	forces *Forces
 	faults []string
-	most   struct{ grow, join, deep, off, pull, rub float64 } // the largest deviations
+	pushes int // that were judged
 }
 
 func newJudge(m *model.Model, t *Track) *judge {
@@ -93,12 +98,14 @@ func (j *judge) track() []string {
 			e := j.energy(s, j.spinAt(p, time))
 			// Bringing a body onto its surface moves it by gapTol at most.
 			slack := 1e-8*(1+r3.Norm2(s.Vel)) + gapTol*j.m.Gravity(r3.Norm(s.Pos))
-			j.most.grow = math.Max(j.most.grow, e-last)
 			if e > last+slack {
 				j.fault("phase %d %v, %.9g s: energy grows by %.3g J/kg", i, p.Kind, time, e-last)
 			}
 			last = e
 			j.place(i, p, time, s)
+		}
+		if p.Kind == Slide || p.Kind == Roll {
+			j.push(i, p)
 		}
 	}
 	return j.faults
@@ -154,7 +161,6 @@ func (j *judge) order() {
 // joint judges where two phases meet.
 func (j *judge) joint(p, q *Phase) {
 	off := r3.Norm(r3.Sub(j.local(p, p.T1).Pos, j.local(q, q.T0).Pos))
-	j.most.join = math.Max(j.most.join, off)
 	if most := joinTol; off > most && j.t.Body.Diameter > 0 || off > moveTol {
 		j.fault("%v to %v at %.9g s: place jumps by %.3g m", p.Kind, q.Kind, q.T0, off)
 	}
@@ -163,15 +169,92 @@ func (j *judge) joint(p, q *Phase) {
 // place judges where a body is and what its surroundings do to it.
 func (j *judge) place(i int, p *Phase, time float64, s frame.State) {
 	gap := j.m.Interior.Dist(s.Pos) - j.wide()
-	j.most.deep = math.Max(j.most.deep, -gap)
 	if gap < -gapTol*1.01 {
 		j.fault("phase %d %v, %.9g s: %.3g m within %q", i, p.Kind, time, -gap, j.m.Interior.Surface(j.m.Interior.Contact(s.Pos).Surface).Name)
 	}
 	if p.Kind == Free {
 		return
 	}
-	j.most.off = math.Max(j.most.off, gap)
 	if gap > gapTol*1.01 {
 		j.fault("phase %d %v, %.9g s: %.3g m off every surface", i, p.Kind, time, gap)
+	}
+}
+
+// push judges what surfaces do to a body along a phase: at the start of each
+// step, where the dense output's derivative is that of the equations.
+func (j *judge) push(i int, p *Phase) {
+	for k := range p.steps {
+		var y, dy [dims]float64
+		step := &p.steps[k]
+		step.At(step.T0, y[:])
+		step.Rate(step.T0, dy[:])
+		j.pushAt(i, p, p.T0+step.T0, frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}, vec(dy[3:]), vec(y[6:]))
+	}
+}
+
+const (
+	// forceTol is what a force by mass may be off by, as a share of the
+	// accelerations at hand: the difference of two of them, along a normal that
+	// is good to the gap's tolerance over a metre.
+	forceTol = 1e-7
+	// edgeTol is the same on an edge, about which the normal turns a thousand
+	// times as fast; sharp is the curvature, 1/m, from which on it is one.
+	edgeTol = 1e-4
+	sharp   = 3
+)
+
+// between says whether more than one solid is near, such as at a seam: which
+// of them touches is a matter of the gap's tolerance.
+func (j *judge) between(p r3.Vec) bool {
+	near := 0
+	for _, piece := range j.m.Interior.Pieces() {
+		if piece.Solid.Dist(p) < j.wide()+10*gapTol {
+			near++
+		}
+	}
+	return near > 1
+}
+
+// onEdge says whether a body slides over an edge.
+func (j *judge) onEdge(s frame.State, c geom.Patch) bool {
+	const way = 1e-6
+	step := r3.Scale(way/math.Max(r3.Norm(s.Vel), way), s.Vel)
+	fore, aft := j.m.Interior.ContactOn(r3.Add(s.Pos, step), c), j.m.Interior.ContactOn(r3.Sub(s.Pos, step), c)
+	return r3.Norm(r3.Sub(fore.Normal, aft.Normal)) > 2*way*sharp
+}
+
+func (j *judge) pushAt(i int, p *Phase, time float64, s frame.State, acc, spin r3.Vec) {
+	a := j.m.Motion.At(j.t.Begin + time)
+	pull := r3.Add(a.Apparent(s).Sum(), a.In(j.forces.Accel(j.t.Begin+time, a.ToInertial(s))))
+	by := r3.Sub(acc, pull) // what the surfaces do
+	touches := j.m.Interior.Touching(s.Pos, j.wide()+gapTol, nil)
+	if len(touches) != 1 || j.between(s.Pos) {
+		return // more unknowns than this can tell
+	}
+	j.pushes++
+	n := touches[0].Normal
+	normal := r3.Dot(by, n)
+	rub := r3.Sub(by, r3.Scale(normal, n))
+	tol := forceTol
+	if j.onEdge(s, touches[0].Patch) {
+		tol = edgeTol
+	}
+	tol *= 1 + r3.Norm(pull) + r3.Norm(by)
+	if normal < -tol {
+		j.fault("phase %d %v, %.9g s: pulled with %.3g m/s^2 by %q", i, p.Kind, time, -normal, p.Surface)
+	}
+	mu := j.t.Body.Friction
+	if own := j.m.Interior.Surface(touches[0].Surface).Friction; !math.IsNaN(own) {
+		mu = own
+	}
+	if over := r3.Norm(rub) - mu*math.Max(0, normal); over > tol {
+		j.fault("phase %d %v, %.9g s: friction %.3g m/s^2 beyond mu N = %.3g", i, p.Kind, time, over, mu*normal)
+	}
+	u := s.Vel // of the contact point
+	if j.t.Body.Rolls && j.wide() > 0 {
+		u = r3.Sub(u, r3.Scale(j.wide(), r3.Cross(spin, n)))
+	}
+	if r3.Norm(u) > 10*creep && r3.Dot(rub, u) > tol*r3.Norm(u) {
+		j.fault("phase %d %v, %.9g s: friction %v helps the slip %v", i, p.Kind, time, rub, u)
 	}
 }

@@ -5,8 +5,10 @@ import (
 	"os"
 	"strconv"
 	"testing"
+	"time"
 
 	"offplumb/sim/flight"
+	"offplumb/sim/model"
 )
 
 // Random releases in random habitats end in a stated outcome within the step
@@ -15,11 +17,11 @@ import (
 // and nothing gets into or off a surface. OFFPLUMB_WORLDS asks for more than the
 // usual number of habitats.
 func TestRandomTracksKeepTheLaws(t *testing.T) {
-	n := 150
+	n := 320
 	if more, err := strconv.Atoi(os.Getenv("OFFPLUMB_WORLDS")); err == nil {
 		n = more
 	}
-	tracks := 0
+	s := tally{outcomes: map[string]int{}}
 	for i := range n {
 		m := worlds(rand.New(rand.NewPCG(7, uint64(i))), 5)
 		if m == nil {
@@ -27,25 +29,59 @@ func TestRandomTracksKeepTheLaws(t *testing.T) {
 		}
 		f := flight.NewFlier(m)
 		for k := range m.Releases {
-			let, problem := flight.Release(m, &m.Releases[k], nil)
-			if problem.Msg != "" {
-				t.Fatal(problem)
-			}
-			track, err := f.Fly(&let)
-			if err != nil {
-				t.Errorf("PCG(7, %d), release %d: %v", i, k, err)
-				continue
-			}
-			tracks++
-			if track.Work.Steps > flight.MostSteps {
-				t.Errorf("PCG(7, %d), release %d: %d steps", i, k, track.Work.Steps)
-			}
-			if faults := flight.Judge(m, track); len(faults) > 0 {
-				t.Errorf("PCG(7, %d), release %d: %q\n%s", i, k, faults, kinds(track))
-			}
+			s.fly(t, m, f, i, k)
 		}
 	}
-	if tracks < n {
-		t.Errorf("only %d tracks of %d habitats", tracks, n)
+	t.Logf("%d tracks of %d habitats: %v; the slowest took %v, the one of most steps %d; %d forces",
+		s.tracks, n, s.outcomes, s.slowest, s.steps, s.forces)
+	if s.tracks < n || s.forces < n {
+		t.Errorf("only %d tracks and %d forces of %d habitats", s.tracks, s.forces, n)
+	}
+	for _, o := range []flight.Outcome{flight.Rested, flight.TimeUp} {
+		if s.outcomes[o.String()] == 0 {
+			t.Errorf("none ends by %q", o)
+		}
+	}
+}
+
+// tally counts random tracks.
+type tally struct {
+	tracks, steps, forces int
+	outcomes              map[string]int
+	slowest               time.Duration
+}
+
+// mostRandomSteps is what a minute may take in integration steps: a tenth of
+// the budget of a release of an hour.
+const mostRandomSteps = flight.MostSteps / 10
+
+func (s *tally) fly(t *testing.T, m *model.Model, f *flight.Flier, i, k int) {
+	t.Helper()
+	let, problem := flight.Release(m, &m.Releases[k], nil)
+	if problem.Msg != "" {
+		t.Fatal(problem)
+	}
+	start := time.Now()
+	track, err := f.Fly(&let)
+	s.slowest = max(s.slowest, time.Since(start))
+	if err != nil {
+		t.Errorf("PCG(7, %d), release %d: %v", i, k, err)
+		return
+	}
+	s.tracks++
+	s.outcomes[track.Outcome.String()]++
+	s.steps = max(s.steps, track.Work.Steps)
+	if track.Work.Steps > mostRandomSteps {
+		t.Errorf("PCG(7, %d), release %d: %d steps", i, k, track.Work.Steps)
+	}
+	faults, forces := flight.Judge(m, track)
+	s.forces += forces
+	if len(faults) > 0 {
+		t.Errorf("PCG(7, %d), release %d: %q\n%s", i, k, faults, kinds(track))
+	}
+	// One that is stuck is wedged, and not lost in phases without end.
+	ends := track.Outcome == flight.Rested || track.Outcome == flight.Stuck
+	if rests := len(track.Phases) > 0 && track.Phases[len(track.Phases)-1].Kind == flight.Rest; rests != ends {
+		t.Errorf("PCG(7, %d), release %d: ends by %v: %s", i, k, track.Outcome, kinds(track))
 	}
 }

@@ -9,14 +9,22 @@ import (
 	"offplumb/sim/model"
 )
 
+// longestRandom is how long a random release may take, s.
+const longestRandom = 60
+
 // world makes a random habitat: a cylinder that may have bulkheads, a ceiling,
-// further decks with openings and coamings, boxes, walls with doorways, a hub
-// and spokes. Some of it may not fit: see [worlds].
+// further decks with openings and coamings, boxes, walls with doorways, posts, a
+// hub and spokes; or a room of another shape. Some of it may not fit: see
+// [worlds].
 func world(rng *rand.Rand) model.Model {
 	r := math.Exp(between(rng, math.Log(4), math.Log(80)))
 	gravity := math.Exp(between(rng, math.Log(0.2), math.Log(12)))
 	in := ring(r, sign(rng)*math.Sqrt(gravity/r))
-	in.Solver.MaxTime = 300
+	in.Solver.MaxTime = longestRandom
+	if rng.IntN(4) == 0 {
+		otherShape(rng, &in)
+		return in
+	}
 	h := &in.Habitat
 	if rng.IntN(4) > 0 {
 		h.Length = between(rng, 2, 12)
@@ -45,9 +53,40 @@ func world(rng *rand.Rand) model.Model {
 			in.Passages = append(in.Passages, model.Passage{Name: fmt.Sprint("spoke ", i),
 				Spinward:   model.Arc{Value: between(rng, -0.5, 0.5) + 2*float64(i), IsAngle: true},
 				FromRadius: hub, ToRadius: h.CeilingRadius, Width: between(rng, 0.2, 0.6) * hub})
+			if p := &in.Passages[i]; rng.IntN(3) == 0 {
+				p.Width, p.Diameter = 0, p.Width
+			}
 		}
 	}
 	return in
+}
+
+// otherShape makes the habitat a torus, a sphere or a cabin, with fixtures and
+// perhaps a hub and a spoke.
+func otherShape(rng *rand.Rand, in *model.Model) {
+	h := &in.Habitat
+	r := h.FloorRadius
+	top := r * between(rng, 0.6, 0.9)
+	switch h.Shape = []model.Shape{model.Torus, model.Sphere, model.Cabin}[rng.IntN(3)]; h.Shape {
+	case model.Torus:
+		h.TubeRadius, h.FlatFloor = between(rng, 0.1, 0.3)*r, rng.IntN(2) == 0
+		top = r - 2*h.TubeRadius
+	case model.Cabin:
+		h.Size = [3]float64{between(rng, 1, 6), between(rng, 1, 6), r - top}
+	}
+	for i := range rng.IntN(3) {
+		in.Fixtures = append(in.Fixtures, randomFixture(rng, in, i))
+	}
+	if rng.IntN(2) == 0 {
+		hub := top * between(rng, 0.2, 0.5)
+		in.Rooms = []model.Room{{Name: "hub", FloorRadius: hub, Length: between(rng, 1, 5)}}
+		in.Passages = []model.Passage{{Name: "spoke", FromRadius: hub, ToRadius: top + between(rng, 0, 0.1), Spinward: model.Arc{Value: between(rng, -0.1, 0.1), IsAngle: true}}}
+		if w := between(rng, 0.1, 0.6) * hub; rng.IntN(2) == 0 {
+			in.Passages[0].Width = w
+		} else {
+			in.Passages[0].Diameter = w
+		}
+	}
 }
 
 // sign gives 1 or -1.
@@ -111,6 +150,11 @@ func randomFixture(rng *rand.Rand, in *model.Model, i int) model.Fixture {
 		f.Turn = float64(rng.IntN(2)) * between(rng, -2, 2)
 		return f
 	}
+	if rng.IntN(3) == 0 {
+		f.Kind, f.From, f.To, f.Diameter = model.Post, at, at, between(rng, 0.02, 0.2)
+		f.To.Height, f.To.Axial = between(rng, 0.3, 2), f.To.Axial+float64(rng.IntN(2))*between(rng, -1, 1)
+		return f
+	}
 	f.Kind, f.From, f.To, f.Height, f.Thickness = model.Wall, at, at, between(rng, 0.2, 0.9)*math.Min(2, r), between(rng, 0.02, 0.2)
 	long := between(rng, 0.5, 4)
 	if rng.IntN(2) == 0 {
@@ -143,8 +187,11 @@ func randomBody(rng *rand.Rand, i int) model.Body {
 func randomRelease(rng *rand.Rand, in *model.Model, i int) model.Release {
 	h := &in.Habitat
 	r := model.Release{Name: fmt.Sprint("release ", i), Body: in.Bodies[rng.IntN(len(in.Bodies))].Name}
-	high := h.FloorRadius * math.Pow(rng.Float64(), 2)
-	r.At = model.Station{Spinward: model.Arc{Value: between(rng, -0.7, 0.7), IsAngle: true}, Axial: along(rng, h.Length), Radius: h.FloorRadius - high, HasRadius: true}
+	high, aside := h.FloorRadius*math.Pow(rng.Float64(), 2), 0.7
+	if h.Shape == model.Cabin {
+		high, aside = h.Size[2]*rng.Float64(), h.Size[0]/2/h.FloorRadius
+	}
+	r.At = model.Station{Spinward: model.Arc{Value: between(rng, -aside, aside), IsAngle: true}, Axial: along(rng, h.Length), Radius: h.FloorRadius - high, HasRadius: true}
 	switch rng.IntN(4) {
 	case 0:
 		r.Start.Kind = model.Still

@@ -1,6 +1,8 @@
 package flight
 
 import (
+	"errors"
+
 	"offplumb/integrator"
 	"offplumb/sim/geom"
 )
@@ -20,19 +22,30 @@ type run struct {
 	grazed []geom.Patch
 	events func(grazed []geom.Patch) *ends
 	opts   []integrator.Option
+	tidy   func(y []float64) bool // corrects a state after a step, and tells whether it did
+	y      []float64              // the state corrected
 }
+
+// errTidied stops the integration after a step whose end was corrected.
+var errTidied = errors.New("flight: corrected")
 
 // solve integrates from the state y to the end of the phase. It goes on where
 // the body has only left something that it grazed.
 func (r *run) solve(t *Track, p *Phase, y []float64) (integrator.Result, ending, error) {
-	for at := 0.0; ; {
-		r.st.Reset(at, y, r.opts...)
+	at, next := 0.0, 0.0
+	for {
+		r.st.Reset(at, y, append(r.opts, integrator.FirstStep(next))...)
 		e := r.events(r.grazed)
-		res, err := integrator.Solve(r.st, r.limit, e.specs, p.keep)
-		if err != nil {
+		res, err := integrator.Solve(r.st, r.limit, e.specs, r.keep(p))
+		if err != nil && err != errTidied {
 			return res, ending{}, err
 		}
 		t.Work.add(res.Stats)
+		next = r.st.NextStep()
+		if err == errTidied && t.Work.Steps <= mostSteps {
+			at, y = res.T, r.y
+			continue
+		}
 		end := e.ending(res.Hits)
 		if len(end.left) == 0 || len(end.left) < len(res.Hits) {
 			return res, end, nil
@@ -59,10 +72,19 @@ func (t *Track) add(p Phase) {
 	}
 }
 
-// keep stores a step of a phase.
-func (p *Phase) keep(s *integrator.Step, _ []integrator.Hit) error {
-	if s.T1 > s.T0 {
-		p.steps = append(p.steps, s.Clone())
+// keep stores the steps of a phase. Where a step's end was corrected, the
+// integration stops, to go on from there.
+func (r *run) keep(p *Phase) func(*integrator.Step, []integrator.Hit) error {
+	return func(s *integrator.Step, hits []integrator.Hit) error {
+		if s.T1 > s.T0 {
+			p.steps = append(p.steps, s.Clone())
+		}
+		if len(hits) > 0 || r.tidy == nil {
+			return nil
+		}
+		if r.y = append(r.y[:0], s.Y1...); r.tidy(r.y) {
+			return errTidied
+		}
+		return nil
 	}
-	return nil
 }

@@ -10,11 +10,6 @@ import (
 )
 
 const (
-	// regain is the rate, in 1/s for each rad/s of spin, at which a body in
-	// contact is brought back onto its surface from the drift of the
-	// integration (Baumgarte 1972; from memory): twice in the longest step. One
-	// three times as fast would govern the steps.
-	regain = 0.5 / stepTurn
 	// creep is the speed, in m/s, below which a sliding body counts as having
 	// stopped: it would come to rest within a nanometre.
 	creep = 1e-5
@@ -36,24 +31,25 @@ const dims = 9
 //	q'' = A + sum N_i n_i + f
 //
 // with A the apparent accelerations and drag, and N_i such that the gaps stay
-// (see balance). The friction f is that of rub.
+// (see balance). The friction f is that of rub. What the gaps drift by is taken
+// away between steps (see tidy): a force that did it would govern their length.
 type slide struct {
 	flier  *Flier
 	begin  float64 // s, habitat time at t = 0
 	origin r3.Vec  // m, the place at the start of the phase
 	on     []geom.Patch
 	mu     [mostContacts]float64
-	regain float64      // 1/s
 	slips  bool         // it rolls, and its contact point moves
 	grazed []geom.Patch // touched without pressure
 	walls  []push       // space for what of that is near
 
-	// Of the last derivative.
-	vel  r3.Vec
-	push [mostContacts]push
-	gap  [mostContacts]float64 // m, of the centre
-	rub  rubbing
-	back r3.Vec // m/s^2, what brings the body back
+	// Of the last evaluation, which the events at the end of a step share.
+	known bool
+	when  float64
+	state [dims]float64
+	vel   r3.Vec
+	push  [mostContacts]push
+	rub   rubbing
 }
 
 // Dim implements [integrator.System].
@@ -62,7 +58,7 @@ func (s *slide) Dim() int { return dims }
 // Deriv implements [integrator.System].
 func (s *slide) Deriv(t float64, y, dy []float64) {
 	s.eval(t, y)
-	v, acc, spin := s.vel, r3.Add(s.rub.acc, s.back), s.rub.spin
+	v, acc, spin := s.vel, s.rub.acc, s.rub.spin
 	dy[0], dy[1], dy[2] = v.X, v.Y, v.Z
 	dy[3], dy[4], dy[5] = acc.X, acc.Y, acc.Z
 	dy[6], dy[7], dy[8] = spin.X, spin.Y, spin.Z
@@ -80,26 +76,21 @@ func (s *slide) place(y []float64) r3.Vec { return r3.Add(s.origin, vec(y)) }
 
 // eval works out forces and accelerations at a state.
 func (s *slide) eval(t float64, y []float64) {
+	if s.known && s.when == t && s.state == [dims]float64(y) {
+		return
+	}
+	s.known, s.when, s.state = true, t, [dims]float64(y)
 	f := s.flier
 	q, v, w := s.place(y), vec(y[3:]), vec(y[6:])
 	a := f.m.Motion.At(s.begin + t)
 	pull := f.pull(&a, s.begin+t, frame.State{Pos: q, Vel: v})
 	p := s.push[:len(s.on)]
 	for i, g := range s.on {
-		p[i], s.gap[i] = f.pushOf(q, v, g, s.mu[i])
+		p[i], _ = f.pushOf(q, v, g, s.mu[i])
 	}
 	balance(p, pull)
-	s.vel, s.back = v, r3.Vec{}
+	s.vel = v
 	s.rub = f.rub(&a, p, s.fences(q, pull), pull, v, w, s.slips)
-	for i := range p {
-		s.recall(p[i].normal, s.gap[i])
-	}
-}
-
-// recall brings the body back onto a surface.
-func (s *slide) recall(n r3.Vec, gap float64) {
-	off := gap - s.flier.wide - s.flier.hover(s.origin)
-	s.back = r3.Add(s.back, r3.Scale(-s.regain*(2*r3.Dot(s.vel, n)+s.regain*off), n))
 }
 
 // fences are the contacts of a rolling body that it grazes.
@@ -174,7 +165,7 @@ func (f *Flier) roll(out *rubbing, a *frame.Attitude, p push, walls []push, pull
 		out.most = r3.Norm(grip)
 	} else {
 		want := r3.Scale(f.wide, r3.Add(r3.Cross(carried, p.normal), r3.Cross(w, p.turn)))
-		out.acc, grip = clutch(p, walls, pull, r3.Sub(want, r3.Scale(f.slide.regain, u)))
+		out.acc, grip = clutch(p, walls, pull, want)
 		if out.need = r3.Norm(grip); slips && out.need > out.most {
 			out.acc, grip = skid(p, walls, pull, r3.Scale(1/out.need, grip))
 		}

@@ -20,7 +20,9 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q, Vel: now.v}, spin: now.w,
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
-	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, opts: []integrator.Option{integrator.MaxStep(regain * stepTurn / s.regain)},
+	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
+	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, tidy: s.tidy,
+		opts:   []integrator.Option{integrator.MaxStep(stepTurn / math.Max(spin, slowest))},
 		events: func(grazed []geom.Patch) *ends { return f.slideEvents(s, now, grazed) }}
 	res, end, err := r.solve(t, &phase, y)
 	if err != nil {
@@ -28,7 +30,6 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 	}
 	now.t += res.T
 	now.q, now.v, now.w = s.place(res.Y), vec(res.Y[3:]), vec(res.Y[6:])
-	f.onto(now, s.on, end.parted)
 	f.arrival = f.inertial(t, now)
 	phase.T1 = now.t
 	t.add(phase)
@@ -40,8 +41,6 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide, Kind) {
 	s, on := f.slide, st.on
 	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, on: patchesOf(on), grazed: patchesOf(st.grazed)}
-	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
-	s.regain = regain * math.Max(spin, slowest)
 	for i := range on {
 		_, s.mu[i] = f.gripOf(on[i].Surface)
 	}
@@ -54,13 +53,15 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 	}
 	n := on[0].Normal
 	u := f.slipOf(now.v, now.w, n)
-	s.slips = true
-	s.eval(0, []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z})
-	s.slips = skids || s.mu[0] == 0 || r3.Norm(u) > 2*creep || s.rub.need > s.rub.most
-	if s.slips {
+	if s.slips = s.mu[0] == 0 || r3.Norm(u) > 2*creep; s.slips {
 		return s, Slide
 	}
 	f.grip(now, n, u, st.grazed)
+	s.eval(0, []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z})
+	s.slips, s.known = skids || s.rub.need > s.rub.most, false
+	if s.slips {
+		return s, Slide
+	}
 	return s, Roll
 }
 
@@ -92,20 +93,36 @@ func (f *Flier) grip(now *moving, n, u r3.Vec, grazed []geom.Touch) {
 	}
 }
 
-// onto takes away what a phase has drifted from its surfaces, if it is more
-// than what counts as touching, but for those that the body has left.
-func (f *Flier) onto(now *moving, groups, parted []geom.Patch) {
-	for _, g := range groups {
-		if hasPatch(parted, g) {
-			continue
+// tidy takes away what a body has drifted from the surfaces that it slides on,
+// or into those that it grazes, if that is worth it, and what of its velocity
+// is along their normals. It tells whether.
+func (s *slide) tidy(y []float64) bool {
+	f, q, v := s.flier, s.place(y), vec(y[3:])
+	most := slop(s.origin) / drifts
+	moved := false
+	shift := func(p geom.Patch, back bool) {
+		c := f.m.Interior.ContactOn(q, p)
+		off := f.wide + f.hover(q) - c.Gap
+		if off > most || back && off < -most {
+			q, moved = r3.Add(q, r3.Scale(off, c.Normal)), true
+			v = r3.Sub(v, r3.Scale(r3.Dot(v, c.Normal), c.Normal))
 		}
-		c := f.m.Interior.ContactOn(now.q, g)
-		if off := f.wide + f.hover(now.q) - c.Gap; math.Abs(off) > slop(now.q)/4 {
-			now.q = r3.Add(now.q, r3.Scale(off, c.Normal))
-		}
-		now.v = r3.Sub(now.v, r3.Scale(r3.Dot(now.v, c.Normal), c.Normal))
 	}
+	for _, p := range s.on {
+		shift(p, true)
+	}
+	for _, p := range s.grazed {
+		shift(p, false)
+	}
+	if moved {
+		y[0], y[1], y[2] = q.X-s.origin.X, q.Y-s.origin.Y, q.Z-s.origin.Z
+		y[3], y[4], y[5] = v.X, v.Y, v.Z
+	}
+	return moved
 }
+
+// drifts is the share of the slop that a drift may be: half a nanometre.
+const drifts = 80
 
 // slideEvents lists what ends a slide.
 func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {

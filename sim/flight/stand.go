@@ -13,9 +13,9 @@ const (
 	// neither meets nor leaves it: slower, it would stay within a nanometre for
 	// a second.
 	parting = 1e-9
-	// aheadTurn is how far, in rad of the habitat's turning, that question looks:
-	// an acceleration that is to grow as the Coriolis one does, from 0 to g in
-	// about a rad, is then 1e-5 g.
+	// aheadTurn is how far ahead, in rad of the habitat's turning, it is asked
+	// whether a contact without force is about to get one: a force that grows as
+	// the Coriolis one does, from 0 to g in about a rad, is then 1e-5 g.
 	aheadTurn = 1e-5
 	// slowest is the spin, in rad/s, of a habitat that as good as stands.
 	slowest = 1e-3
@@ -29,8 +29,11 @@ func noise(pull, v r3.Vec) float64 {
 }
 
 const (
+	// forceSlop is the acceleration, in m/s^2, that counts as none beside one of
+	// about 1: thousands of roundings.
 	forceSlop = 1e-12
-	turnNoise = 1e-10 // 1/m
+	// turnNoise is the same of a normal's turning, in 1/m.
+	turnNoise = 1e-10
 )
 
 // stance is how a body touches its surroundings: it is pressed on some
@@ -68,11 +71,15 @@ func (f *Flier) staysWith(t float64, now *moving, touches []geom.Touch) []geom.T
 	var out []geom.Touch
 	var across []r3.Vec
 	left := append([]geom.Touch(nil), touches...)
+	slow := parting
+	if f.rolls(1) && len(touches) > 1 {
+		slow = 2 * creep // slower, its friction on one may yet drive it into another
+	}
 	for more := true; more; {
 		more = false
 		for i := 0; i < len(left); i++ {
 			up := r3.Dot(now.v, left[i].Normal)
-			if up > parting && !f.fallsBack(t, now, touches, left[i], 2*thin) {
+			if up > slow && !f.fallsBack(t, now, touches, left[i], 2*thin) {
 				continue
 			}
 			out = append(out, left[i])
