@@ -5,6 +5,7 @@
 //
 //	cmd/offplumb     the command line: flags -> load -> run -> write
 //	scenarios        the only package that knows TOML
+//	  published      published figures, and the scenarios that they are held against
 //	plots            tables and outlines -> figures; knows no models
 //	sim/study        many runs, the worker pool
 //	sim/measure      pure functions of tracks: landings, deflection, samples, limits

@@ -152,7 +152,7 @@ type skids struct{ s *slide }
 
 func (e skids) Value(t float64, y []float64) float64 {
 	e.s.eval(t, y)
-	return e.s.rub.most - e.s.rub.need
+	return e.s.rub.most*(1+2*holdShare) - e.s.rub.need
 }
 
 // grazing is a body along a patch that it touches without being pressed on it.

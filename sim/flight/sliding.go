@@ -58,7 +58,7 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 	}
 	f.grip(now, n, u, st.grazed)
 	s.eval(0, []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z})
-	s.slips, s.known = skids || s.rub.need > s.rub.most, false
+	s.slips, s.known = skids || s.rub.need > s.rub.most*(1+holdShare), false
 	if s.slips {
 		return s, Slide
 	}
@@ -69,6 +69,12 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 // pull counts as little: the body then creeps off so slowly that the direction
 // of friction makes the equations stiff.
 const hardlySlides = 0.2
+
+// holdShare is how far, as a share, the friction of a rolling body may exceed
+// what there is before it begins to slip; twice that while it rolls. Without
+// it a body that needs just what there is would slip and roll by turns without
+// end.
+const holdShare = 1e-9
 
 // setOff stops a body that has as good as stopped, but is not held. Where
 // friction all but holds it, it gets a creep the way that it is driven.
