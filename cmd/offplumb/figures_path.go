@@ -4,8 +4,10 @@ import (
 	"math"
 
 	"offplumb/plots"
+	"offplumb/sim/crew"
 	"offplumb/sim/frame"
 	"offplumb/sim/measure"
+	"offplumb/sim/model"
 	"offplumb/sim/table"
 )
 
@@ -21,8 +23,10 @@ const (
 func (j *job) pathView(i int) (*plots.Figure, error) {
 	p := &j.paths[i]
 	m := j.model()
-	deck := m.Decks[p.plan.Deck].Radius
-	first := p.loads[0].Feet.Phi
+	deck, first := m.Decks[p.plan.Deck].Radius, p.loads[0].Feet.Phi
+	if f := p.plan.Flat; f != nil {
+		deck, first = f.Radius, f.Phi
+	}
 	name := p.plan.Path.Name
 	spec := plots.PathViewSpec{Title: name + ": the way of " + p.plan.Crew.Name + " and the force on the structure", Spin: m.Habitat.Spin, Deck: deck,
 		Outlines: j.section(p.loads[0].Feet.Z, -math.Pi/2-first, plots.Point{Y: deck}),
@@ -49,6 +53,9 @@ func station(l *measure.Load, head, deck, first float64) plots.PathStation {
 	at := frame.PolarOf(l.Feet.Body(head).Pos)
 	turn := l.Feet.Phi - first
 	sin, cos := math.Sincos(turn)
+	if l.Feet.OnFlat() {
+		sin, cos = 0, 1
+	}
 	return plots.PathStation{T: l.Time, Leg: l.Leg, Feet: onSide(deck, l.Feet.R, turn),
 		Head:  onSide(deck, at.R, turn+frame.WrapAngle(at.Phi-l.Feet.Phi)),
 		Force: plots.Point{X: cos*l.SideSpinward + sin*l.Weight, Y: sin*l.SideSpinward - cos*l.Weight}}
@@ -86,21 +93,30 @@ func (j *job) pathFigures() []drawing {
 	return out
 }
 
-// planPaths gives the ways of the crew paths that start on a deck.
-func (j *job) planPaths(deck int) []plots.PlanPath {
+// planPaths gives the ways of the crew paths that start on a deck, or on a flat
+// floor.
+func (j *job) planPaths(deck int, flat *model.Flat) []plots.PlanPath {
 	var out []plots.PlanPath
 	for i := range j.paths {
 		p := &j.paths[i]
-		if p.skipped || p.plan.Deck != deck || !p.roams() {
+		if p.skipped || !walksOn(p.plan, deck, flat) || !p.roams() {
 			continue
 		}
 		way := plots.PlanPath{Name: p.plan.Path.Name}
 		for _, k := range spread(len(p.loads), wayPoints) {
-			way.Points = append(way.Points, plots.Point{X: p.loads[k].Arc, Y: p.loads[k].Feet.Z})
+			way.Points = append(way.Points, plots.Point{X: p.loads[k].Arc, Y: p.loads[k].Axial})
 		}
 		out = append(out, way)
 	}
 	return out
+}
+
+// walksOn says whether a path starts on a deck, or on a flat floor.
+func walksOn(p *crew.Plan, deck int, flat *model.Flat) bool {
+	if flat == nil || p.Flat == nil {
+		return p.Deck == deck && flat == nil && p.Flat == nil
+	}
+	return flat.Name == p.Flat.Name
 }
 
 // leastWay is the way, in m, below which a crew path is a point on a plan.
@@ -110,7 +126,7 @@ const leastWay = 0.05
 func (p *pathResult) roams() bool {
 	for i := range p.loads {
 		l := &p.loads[i]
-		if math.Hypot(l.Arc-p.loads[0].Arc, l.Feet.Z-p.loads[0].Feet.Z) > leastWay {
+		if math.Hypot(l.Arc-p.loads[0].Arc, l.Axial-p.loads[0].Axial) > leastWay {
 			return true
 		}
 	}

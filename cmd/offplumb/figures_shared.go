@@ -126,6 +126,7 @@ func (j *job) deckPlan(p *plan) (*plots.Figure, error) {
 		Notes: "Deck unrolled, seen from above by someone who stands on it. Open mark: plumb under the release. Numbered mark: plumb under the landing."}
 	if f := p.ground.Flat; f != nil {
 		spec.From, spec.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
+		spec.Paths = j.planPaths(p.deck, f)
 	} else {
 		j.deckSheet(&spec, &m.Decks[p.deck], p.deck)
 	}
@@ -156,7 +157,7 @@ func (j *job) deckSheet(spec *plots.DeckPlanSpec, deck *model.Deck, d int) {
 			Size: plots.Point{X: o.Size[0], Y: o.Size[1]}, Coaming: o.Coaming > 0, Closed: o.Closed})
 	}
 	spec.Fixtures = j.footprints(d)
-	spec.Paths = j.planPaths(d)
+	spec.Paths = j.planPaths(d, nil)
 }
 
 func (j *job) planRelease(i int, p *plan) plots.PlanRelease {

@@ -32,11 +32,26 @@ func (f *Feet) Body(height float64) Point {
 	return f.point(model.Reach{}, motion{x: height - f.low.x, v: -f.low.v, a: -f.low.a})
 }
 
+// Local gives the directions by which the body stands: those at the feet, or
+// of the flat floor.
+func (f *Feet) Local() frame.Local {
+	if f.flat != nil {
+		return f.flat.Local()
+	}
+	return frame.LocalAt(f.Phi)
+}
+
+// OnFlat says whether the body stands along the normal of a flat floor.
+func (f *Feet) OnFlat() bool { return f.flat != nil }
+
 // point is the point at a reach, its height moving as given.
 func (f *Feet) point(reach model.Reach, height motion) Point {
-	l := frame.LocalAt(f.Phi)
 	if f.HeadFirst {
 		height = motion{-height.x, -height.v, -height.a}
+	}
+	l := frame.LocalAt(f.Phi)
+	if f.flat != nil {
+		return f.upright(l, reach, height)
 	}
 	q, vq, aq, s := f.R-height.x, f.VR-height.v, f.AR-height.a, reach.Spinward
 	return Point{
@@ -45,6 +60,19 @@ func (f *Feet) point(reach model.Reach, height motion) Point {
 			Vel: l.Vec(q*f.VPhi, f.VZ, -(vq - s*f.VPhi)),
 		},
 		Acc: l.Vec(2*vq*f.VPhi+q*f.APhi-s*f.VPhi*f.VPhi, f.AZ, -(aq - q*f.VPhi*f.VPhi - s*f.APhi)),
+	}
+}
+
+// upright is the point of a body that stands along the normal of a flat floor,
+// and does not turn: it moves as the feet do, whose local directions are l.
+func (f *Feet) upright(l frame.Local, reach model.Reach, height motion) Point {
+	floor := f.flat.Local()
+	return Point{
+		State: frame.State{
+			Pos: r3.Add(frame.Polar{R: f.R, Phi: f.Phi, Z: f.Z}.Vec(), floor.Vec(reach.Spinward, reach.Axial, height.x)),
+			Vel: r3.Add(l.Vec(f.R*f.VPhi, f.VZ, -f.VR), floor.Vec(0, 0, height.v)),
+		},
+		Acc: r3.Add(l.Vec(2*f.VR*f.VPhi+f.R*f.APhi, f.AZ, f.R*f.VPhi*f.VPhi-f.AR), floor.Vec(0, 0, height.a)),
 	}
 }
 

@@ -5,7 +5,6 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/spatial/r3"
-	"offplumb/sim/frame"
 	"offplumb/sim/geom"
 	"offplumb/sim/model"
 )
@@ -103,7 +102,7 @@ const underfoot = 0.7
 func (p *Plan) near(m *model.Model, t float64, best []Clearance) {
 	a := p.Crew.Breadth / 2
 	f := p.At(t)
-	up := frame.LocalAt(f.Phi).Up
+	up := f.Local().Up
 	for h := stepOver + a; h <= math.Max(stepOver+a, p.Crew.Stature-f.low.x-a); h += bodyStep {
 		pos := f.Point(model.Reach{Height: h}).Pos
 		for g := range m.Interior.Groups() {

@@ -62,7 +62,7 @@ func (c arc) put(f *Feet, s motion) {
 	f.AR, f.APhi, f.AZ = dr*s.a, dphi*s.a, dz*s.a
 }
 
-// line is a straight course: a pitched ladder or a stair.
+// line is a straight course: a pitched ladder, a stair, or any on a flat floor.
 type line struct {
 	from spot
 	way  r3.Vec // unit, habitat components
@@ -72,9 +72,9 @@ type line struct {
 }
 
 // newLine starts at a spot and rises at the pitch (rad) above the deck there,
-// toward the way that the person faces; down it goes back the same way.
-func newLine(from spot, pitch float64, toward model.Direction, long float64, down bool) line {
-	l := frame.LocalAt(from.phi)
+// toward the way that the person faces; down it goes back the same way. The
+// deck's directions are l.
+func newLine(from spot, l frame.Local, pitch float64, toward model.Direction, long float64, down bool) line {
 	ahead := facing(toward, l)
 	sin, cos := math.Sincos(pitch)
 	rise := r3.Add(r3.Scale(cos, ahead), r3.Scale(sin, l.Up))

@@ -8,6 +8,10 @@ import (
 )
 
 func (b *builder) walk(key string, l *leg) {
+	if b.plan.Flat != nil {
+		b.cross(key+".walk", l)
+		return
+	}
 	if b.deck < 0 || math.Abs(b.at.r-b.m.Decks[b.deck].Radius) > levelSlack {
 		b.fault(key+".walk", "no deck underfoot: the feet are %.4g m from the axis", b.at.r)
 		return
@@ -105,8 +109,11 @@ func (b *builder) climb(key string, l *leg) {
 
 // ladder gives the course of a climb.
 func (b *builder) ladder(spec *model.Leg, down bool) course {
-	if spec.Pitch > 0 && spec.Pitch < math.Pi/2 {
-		return newLine(b.at, spec.Pitch, spec.Facing, spec.Distance, down)
+	if pitch := spec.Pitch; pitch > 0 && pitch < math.Pi/2 {
+		return newLine(b.at, b.local(), pitch, spec.Facing, spec.Distance, down)
+	}
+	if b.plan.Flat != nil {
+		return newLine(b.at, b.local(), math.Pi/2, spec.Facing, spec.Distance, down)
 	}
 	to := b.at
 	to.r -= spec.Distance
@@ -119,6 +126,10 @@ func (b *builder) ladder(spec *model.Leg, down bool) course {
 // arrive checks the end of a climb or a ride, and joins the deck that it is
 // level with.
 func (b *builder) arrive(key string) {
+	if b.plan.Flat != nil {
+		b.arriveFlat(key)
+		return
+	}
 	if b.at.r > b.m.Decks[0].Radius+levelSlack {
 		b.fault(key, "leads below the reference floor")
 	}
@@ -130,6 +141,10 @@ func (b *builder) arrive(key string) {
 
 // ride moves the person in a lift, radially or along the ring.
 func (b *builder) ride(key string, l *leg) {
+	if b.plan.Flat != nil {
+		b.rideFlat(key+".ride", l)
+		return
+	}
 	to := b.at
 	long := math.Abs(l.spec.Up)
 	to.r -= l.spec.Up

@@ -57,7 +57,7 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 	out.Coriolis, out.Euler = r3.Norm(ap.Coriolis), r3.Norm(ap.Euler)
 	out.stand(gravity, force, a.Omega, f)
 	out.climb(&p.legs[f.Leg], force, &f)
-	out.cross(r3.Cross(a.In(a.Omega), f.HeadTurn), f.Phi)
+	out.cross(r3.Cross(a.In(a.Omega), f.HeadTurn), f.Local())
 	return out
 }
 
@@ -81,7 +81,7 @@ func (l *Loads) carry(a *frame.Attitude, c model.Carry, f *Feet) r3.Vec {
 // stand splits the force on the structure along the deck's directions, and
 // gives the tilt of the apparent gravity at the waist.
 func (l *Loads) stand(gravity, force r3.Vec, omega r3.Vec, f Feet) {
-	local := frame.LocalAt(f.Phi)
+	local := f.Local()
 	spinward, axial, up := local.Split(force)
 	l.Weight, l.SideSpinward, l.SideAxial = -up, spinward, axial
 	l.FrictionDemand, l.TiltSpinward, l.TiltAxial = math.NaN(), math.NaN(), math.NaN()
@@ -103,7 +103,7 @@ func (l *Loads) climb(leg *leg, force r3.Vec, f *Feet) {
 	if leg.spec.Kind != model.Climb && leg.spec.Kind != model.Descend {
 		return
 	}
-	local := frame.LocalAt(f.Phi)
+	local := f.Local()
 	rise, into := local.Up, facing(leg.spec.Facing, local)
 	if c, ok := leg.course.(line); ok {
 		rise, into = c.rise, c.into
@@ -124,7 +124,7 @@ func facing(d model.Direction, l frame.Local) r3.Vec {
 	return r3.Scale(-1, l.Axial)
 }
 
-func (l *Loads) cross(c r3.Vec, phi float64) {
+func (l *Loads) cross(c r3.Vec, local frame.Local) {
 	l.HeadCross = r3.Norm(c)
-	l.CrossSpinward, l.CrossAxial, l.CrossUp = frame.LocalAt(phi).Split(c)
+	l.CrossSpinward, l.CrossAxial, l.CrossUp = local.Split(c)
 }

@@ -16,8 +16,9 @@ const levelSlack = 1e-3
 type Plan struct {
 	Path *model.Path
 	Crew model.Crew
-	Deck int     // index of the deck beneath the start
-	Arc0 float64 // m, arc of the start on that deck
+	Deck int         // index of the deck beneath the start
+	Arc0 float64     // m, arc of the start on that deck, or straight length from the middle of a flat floor
+	Flat *model.Flat // the flat floor of the cabin that the path starts in; nil for decks about the axis
 
 	legs []leg
 }
@@ -54,6 +55,10 @@ func NewPlan(m *model.Model, p *model.Path) (*Plan, []model.Problem) {
 	b := builder{m: m, plan: &Plan{Path: p, Crew: m.CrewOf(p), Deck: start.Deck}, deck: start.Deck}
 	b.at = spot{r: start.R, phi: start.Phi, z: start.Z}
 	b.plan.Arc0 = m.Decks[start.Deck].Radius * start.Phi
+	if f := m.FlatBeneath(start.Vec()); f != nil {
+		b.plan.Flat = f
+		b.plan.Arc0, _, _ = f.Place(start.Vec())
+	}
 	for i := range p.Legs {
 		b.add(i, &p.Legs[i])
 	}
@@ -175,10 +180,11 @@ type Feet struct {
 	VR, VPhi, VZ float64 // m/s, rad/s, m/s
 	AR, APhi, AZ float64 // m/s^2, rad/s^2, m/s^2
 	Leg          int
-	Along        float64 // m since the start of the path
-	HeadTurn     r3.Vec  // rad/s, rate of the head relative to the body, habitat components
-	HeadFirst    bool    // the head is outward of the feet
-	low          motion  // m, by which waist and head are lower than standing
+	Along        float64     // m since the start of the path
+	HeadTurn     r3.Vec      // rad/s, rate of the head relative to the body, habitat components
+	HeadFirst    bool        // the head is outward of the feet
+	flat         *model.Flat // stood on along its normal; nil: along the radius
+	low          motion      // m, by which waist and head are lower than standing
 }
 
 // At gives the feet at a time (s from the start of the path), held at its ends.
@@ -186,7 +192,7 @@ func (p *Plan) At(t float64) Feet {
 	i := p.legAt(t)
 	l := &p.legs[i]
 	s := l.way.at(t - l.start)
-	f := Feet{R: l.from.r, Phi: l.from.phi, Z: l.from.z, Leg: i, Along: p.before(i), HeadFirst: l.spec.HeadFirst}
+	f := Feet{R: l.from.r, Phi: l.from.phi, Z: l.from.z, Leg: i, Along: p.before(i), HeadFirst: l.spec.HeadFirst, flat: p.Flat}
 	f.low.x = l.low
 	switch l.spec.Kind {
 	case model.StandUp:
@@ -196,14 +202,15 @@ func (p *Plan) At(t float64) Feet {
 	}
 	switch {
 	case l.spec.Kind == model.TurnHead:
-		f.HeadTurn = r3.Scale(s.v, headAxis(l.spec.About, f.Phi))
+		f.HeadTurn = r3.Scale(s.v, headAxis(l.spec.About, f.Local()))
 	case l.spec.Kind == model.Turn:
-		f.HeadTurn = r3.Scale(s.v, frame.LocalAt(f.Phi).Up)
+		f.HeadTurn = r3.Scale(s.v, f.Local().Up)
 	case l.course != nil:
 		l.course.put(&f, s)
 		f.Along += s.x
-		// A body that goes round turns with it.
-		f.HeadTurn = r3.Vec{Z: f.VPhi}
+		if f.flat == nil { // a body that goes round the axis turns with it
+			f.HeadTurn = r3.Vec{Z: f.VPhi}
+		}
 	}
 	return f
 }
@@ -216,8 +223,7 @@ func (p *Plan) before(i int) float64 {
 	return sum
 }
 
-func headAxis(about model.Axis, phi float64) r3.Vec {
-	l := frame.LocalAt(phi)
+func headAxis(about model.Axis, l frame.Local) r3.Vec {
 	switch about {
 	case model.AboutSpinward:
 		return l.Spinward

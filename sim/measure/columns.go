@@ -108,7 +108,7 @@ var crewColumns = []column[Load]{
 	{key: "leg", meaning: "number and kind of the leg", text: func(l *Load) string { return l.Leg }},
 	{key: "along", unit: metre, meaning: "way of the feet along the path", num: func(l *Load) float64 { return l.Feet.Along }},
 	{key: "spinward", unit: metre, meaning: "arc of the feet on the deck beneath the start, not wrapped", num: func(l *Load) float64 { return l.Arc }},
-	{key: "axial", unit: metre, meaning: "axial place of the feet", num: func(l *Load) float64 { return l.Feet.Z }},
+	{key: "axial", unit: metre, meaning: "axial place of the feet", num: func(l *Load) float64 { return l.Axial }},
 	{key: "height", unit: metre, meaning: "height of the feet above the deck beneath the start", num: func(l *Load) float64 { return l.Height }},
 	{key: "gravity_feet", unit: gravity, meaning: "apparent gravity at the feet, magnitude", num: func(l *Load) float64 { return l.GravityFeet }},
 	{key: "gravity_waist", unit: gravity, meaning: "apparent gravity at the waist, magnitude", num: func(l *Load) float64 { return l.GravityWaist }},

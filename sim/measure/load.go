@@ -12,9 +12,9 @@ import (
 // the tables. SI units.
 type Load struct {
 	crew.Loads
-	Leg         string
-	Arc, Height float64
-	Work        float64 // J, of the support's force since the start of the path
+	Leg                string
+	Arc, Axial, Height float64 // m, of the feet
+	Work               float64 // J, of the support's force since the start of the path
 }
 
 // The power is integrated over stretches in which it is smooth, of at most
@@ -30,12 +30,12 @@ const (
 // and the step taken.
 func LoadSeries(m *model.Model, p *crew.Plan) ([]Load, float64) {
 	times, step := Times(p.Duration(), m.Output.Step)
-	deck := m.Decks[p.Deck].Radius
 	out := make([]Load, len(times))
 	w := worker{power: func(t float64) float64 { return p.Loads(m, t).Power }, breaks: p.Breaks()}
 	for i, t := range times {
 		l := p.Loads(m, t)
-		out[i] = Load{Loads: l, Leg: p.LegName(l.Feet.Leg), Arc: deck * l.Feet.Phi, Height: deck - l.Feet.R, Work: w.to(t)}
+		out[i] = Load{Loads: l, Leg: p.LegName(l.Feet.Leg), Work: w.to(t)}
+		out[i].Arc, out[i].Axial, out[i].Height = p.Place(m, &l.Feet)
 	}
 	return out, step
 }

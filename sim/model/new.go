@@ -199,17 +199,6 @@ func (c *checker) paths() {
 		if _, err := m.Resolve(p.Start); err != nil {
 			c.fault(key+".start", "", "%v", err)
 		}
-		c.walksFlat(key, p)
-	}
-}
-
-// walksFlat refuses walks in a habitat that is a cabin.
-func (c *checker) walksFlat(key string, p *Path) {
-	for i := range p.Legs {
-		if c.m.Decks[0].Flat && p.Legs[i].Kind == Walk {
-			c.fault(fmt.Sprintf("%s.legs[%d].walk", key, i), "", "a walk on a flat floor is not computed: the ways that are lead round the axis")
-			return
-		}
 	}
 }
 

@@ -66,7 +66,6 @@ func TestRefusals(t *testing.T) {
 		{"spoke across a spoke", model.Model{Habitat: cylinder, Rooms: hub, Passages: append(spoke(3, 12.8, 0), spoke(3, 12.8, 0.7)...)}, "passage[0]", `runs into "spoke `},
 		{"arm beside its cabin's floor", model.Model{Habitat: cylinder, Rooms: []model.Room{{Name: "pod", Shape: model.Cabin, FloorRadius: 6, Size: [3]float64{1.9, 4, 2}, Spinward: deg(24)}}, Passages: spoke(6, 12.8, 0)}, "passage[0]", `runs into "pod spinward wall"`},
 		{"trunk beside the floor", model.Model{Habitat: flatTorus, Rooms: []model.Room{pod}, Passages: spoke(17.5, 27.5, 1.4)}, "passage[0].axial", "through its flat floor, which is 3 m wide"},
-		{"walk in a cabin", model.Model{Habitat: cabin, Crews: []model.Crew{{Name: "rigger"}}, Paths: []model.Path{{Name: "way", Crew: "rigger", Legs: []model.Leg{{Kind: model.Stand}, {Kind: model.Walk}}}}}, "crew_path[0].legs[1].walk", "not computed"},
 		{"post of no length", post(1, 1, 0), "fixture[0].to", "wants a place apart"},
 		{"post from below", post(-1, 1, 0), "fixture[0].from", "stands outside the habitat"},
 		{"post through a bulkhead", post(1, 1, 8), "fixture[0].to", "stands outside the habitat"},
