@@ -29,8 +29,9 @@ var allowed = map[string][]string{
 	"sim/measure":        {"sim/flight", "sim/crew", "sim/model", "sim/frame", "sim/geom", "sim/table"},
 	"sim/study":          {"sim/measure", "sim/flight", "sim/crew", "sim/model", "sim/frame", "sim/table"},
 	"plots":              {"sim/table", "sim/geom"},
+	"plots/motion":       {"plots", "sim/table"},
 	"scenarios":          {"sim/study", "sim/measure", "sim/model", "sim/air", "sim/frame", "sim/geom", "sim/table"},
-	"cmd/offplumb": {"scenarios", "plots", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model",
+	"cmd/offplumb": {"scenarios", "plots", "plots/motion", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model",
 		"sim/air", "sim/frame", "sim/geom", "sim/table"},
 }
 
@@ -113,6 +114,7 @@ func TestPolicyRefuses(t *testing.T) {
 	for _, c := range [][2]string{
 		{"integrator", "offplumb/sim/model"},
 		{"plots", "offplumb/sim/model"},
+		{"plots/motion", "offplumb/sim/measure"},
 		{"sim/model", "offplumb/sim/flight"},
 		{"sim/flight", "github.com/pelletier/go-toml/v2"},
 	} {

@@ -6,6 +6,7 @@
 //	cmd/offplumb     the command line: flags -> load -> run -> write
 //	scenarios        the only package that knows TOML
 //	plots            tables and outlines -> figures; knows no models
+//	plots/motion     tracks and outlines -> the moving picture, in a page and alone
 //	sim/study        many runs, the worker pool
 //	sim/measure      pure functions of tracks: landings, deflection, samples, limits
 //	sim/flight       releases: flight, impact, slide, roll, rest
