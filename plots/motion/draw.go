@@ -49,7 +49,6 @@ func (s *show) bodySize(v view) float64 { return math.Max(leastBody, s.film.Body
 func (b *sheet) scaleBar(v view) {
 	l := nice(110 / v.perM)
 	w, x, y := l*v.perM, viewWidth-14, viewHeight-12.0
-	b.put(`<rect class="f-plate" x="%s" y="%s" width="%s" height="22"/>`, num(x-w-8), num(y-15), num(w+16))
 	b.put(`<path class="f-bar" d="M%s %sv-6m0 3h%sm0 -3v6"/>`, num(x-w), num(y+1), num(w))
 	b.text("f-label f-mid", x-w/2, y-5, length(l, 2))
 }
@@ -57,7 +56,6 @@ func (b *sheet) scaleBar(v view) {
 // compass draws the directions of a habitat view.
 func (b *sheet) compass() {
 	x, y := 14.0, viewHeight-12.0
-	b.put(`<rect class="f-plate" x="6" y="%s" width="88" height="40"/>`, num(y-34))
 	b.put(`<path class="f-bar" d="M%s %sv-22m-2.5 6l2.5 -6l2.5 6m-2.5 16h24m-6 -2.5l6 2.5l-6 2.5"/>`, num(x), num(y))
 	b.text("f-label", x+28, y+3.5, "spinward")
 	b.text("f-label", x+6, y-16, "up")

@@ -42,7 +42,6 @@ const looks = `
 .f-axis{fill:none;stroke:$line;stroke-width:.9}
 .f-head{fill:$line}
 .f-bar{fill:none;stroke:$text;stroke-width:1}
-.f-plate{fill:$paper;opacity:.82}
 .f-label{font-size:11px;fill:$text;stroke:$paper;stroke-width:3px;paint-order:stroke;stroke-linejoin:round}
 .f-mid{text-anchor:middle}
 .f-title{font-size:16px;font-weight:bold;fill:$text}

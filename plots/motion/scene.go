@@ -58,7 +58,7 @@ func (s *show) uniformLine() string {
 func (s *show) drawMotion(b *sheet, v view, of func(spot) plots.Point, m moves, mask string) {
 	b.put(`<path class="f-ahead"/>`)
 	if m.mask != "" {
-		b.put(`<mask id="%s" maskUnits="userSpaceOnUse" width="%s" height="%s">%s</mask>`, mask, num(viewWidth), num(viewHeight), m.mask)
+		b.put(`<mask id="%s" maskUnits="userSpaceOnUse" x="0" y="0" width="%s" height="%s">%s</mask>`, mask, num(viewWidth), num(viewHeight), m.mask)
 		b.put(`<g mask="url(#%s)">`, mask)
 	} else {
 		b.put(`<g>`)
