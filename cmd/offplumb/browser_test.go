@@ -55,7 +55,7 @@ func (b *browser) listen(ev any) {
 	defer b.mu.Unlock()
 	switch e := ev.(type) {
 	case *runtime.EventExceptionThrown:
-		b.said = append(b.said, e.ExceptionDetails.Error())
+		b.said = append(b.said, "exception: " + e.ExceptionDetails.Text)
 	case *runtime.EventConsoleAPICalled:
 		b.said = append(b.said, "console."+string(e.Type))
 	case *log.EventEntryAdded:
