@@ -55,7 +55,11 @@ func (b *browser) listen(ev any) {
 	defer b.mu.Unlock()
 	switch e := ev.(type) {
 	case *runtime.EventExceptionThrown:
-		b.said = append(b.said, "exception: " + e.ExceptionDetails.Text)
+		words := e.ExceptionDetails.Text
+		if x := e.ExceptionDetails.Exception; x != nil {
+			words += " " + x.Description
+		}
+		b.said = append(b.said, words)
 	case *runtime.EventConsoleAPICalled:
 		b.said = append(b.said, "console."+string(e.Type))
 	case *log.EventEntryAdded:

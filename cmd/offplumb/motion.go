@@ -55,7 +55,7 @@ func (j *job) film(i int) (*motion.Film, error) {
 		return nil, fmt.Errorf("release %q has no track", j.Lets[i].Release.Name)
 	}
 	g := measure.GroundOf(m, t)
-	f := &motion.Film{Name: l.Release, Title: sideTitle(l), Notes: j.inertialNotes(t, l),
+	f := &motion.Film{Name: l.Release, Title: sideTitle(l), Notes: j.filmNotes(t),
 		Spin: m.Habitat.Spin, Radius: g.Radius, Body: t.Body.Diameter / 2, Step: m.Output.Step,
 		Desc: described("Moving picture in the habitat frame and, in step, in the inertial frame, both seen from the +axial end: %s.", sentence(l))}
 	down := t.Start.Phi // of what points down on the drawing
@@ -68,6 +68,13 @@ func (j *job) film(i int) (*motion.Film, error) {
 	f.Events = filmEvents(r.Events, l, t)
 	f.Uniform = filmUniform(&l.Uniform, &g)
 	return f, nil
+}
+
+func (j *job) filmNotes(t *flight.Track) string {
+	if j.model().Air.Vacuum() || t.Body.Diameter == 0 {
+		return "Without air a flight is a straight line in the inertial frame."
+	}
+	return "Drag of the air, which turns with the habitat, bends the flight in the inertial frame."
 }
 
 // filmParts is how often a track is sampled within an integration step, which is smooth and

@@ -234,7 +234,7 @@ func (a *loop) document() string {
 	b.put(`<rect class="f-ground" width="%s" height="%s"/>`, num(w), num(h))
 	b.text("f-title", edge, edge+14, a.film.Title)
 	b.text("f-name", edge, top-6, "On board: the habitat frame")
-	b.text("f-name", edge+viewWidth+between, top-6, "From outside: the inertial frame")
+	b.text("f-name", edge+viewWidth+between, top-6, "From outside: "+a.turningWords())
 	b.put("\n<g transform=\"translate(%s %s)\">", num(edge), num(top))
 	a.drawBoard(&b, a.boardMoves())
 	b.put("</g>\n<g transform=\"translate(%s %s)\">", num(edge+viewWidth+between), num(top))
@@ -250,11 +250,7 @@ func (a *loop) document() string {
 }
 
 func (a *loop) notes() []string {
-	out := wrap(spinWords(a.film.Spin)+" "+rateWords(a.rate)+" Seen from the +axial end. "+a.film.Notes, 150)
-	if a.reel.cut {
-		out = append(out, "The picture ends at "+plain(a.reel.end, 4)+" s; the motion goes on.")
-	}
-	return out
+	return wrap(spinWords(a.film.Spin)+" "+rateWords(a.rate)+" Both seen from the +axial end. "+a.show.notes(), 150)
 }
 
 // strip draws the ruler of time with its marker, and the clock.
@@ -274,18 +270,22 @@ func (a *loop) strip(b *sheet, w float64) {
 		b.text("f-note f-mid", at(i*step), y+19, plain(i*step, 4))
 	}
 	b.text("f-note", x1+8, y+4, "s")
-	for i := range a.film.Events {
-		if e := &a.film.Events[i]; e.T <= a.reel.end && i < mostTicks {
-			b.put(`<path class="f-strip" d="M%s %sv-7"/>`, num(at(e.T)), num(y))
+	for _, t := range a.impacts() {
+		b.put(`<path class="f-strip" d="M%s %sv-7"/>`, num(at(t)), num(y))
+	}
+	for _, k := range marked {
+		switch e := a.shown(k); {
+		case e == nil:
+		case k == Rest:
+			b.put(`<rect class="f-ring" x="%s" y="%s" width="8" height="8"/>`, num(at(e.T)-4), num(y-4))
+		default:
+			b.circle(map[Kind]string{Release: "f-ring", Landing: "f-dot"}[k], at(e.T), y, 4.5)
 		}
 	}
 	move := `<animateTransform attributeName="transform" type="translate"` + a.timing(frames{[]float64{0, a.reel.end}, []string{num(x0) + " 24", num(x1) + " 24"}}, "linear") + `/>`
 	b.put(`<g transform="translate(%s 24)">%s<circle class="f-thumb" r="6"/></g>`, num(at(a.reel.end)), move)
 	a.clock(b)
 }
-
-// mostTicks bounds the events with a tick on the strip.
-const mostTicks = 80
 
 // clock is a column of times behind a slit, moved line by line.
 func (a *loop) clock(b *sheet) {

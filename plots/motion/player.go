@@ -138,7 +138,7 @@ func (s *show) element(data string) string {
 	b.put(`<figure class="film" id="%s" role="group" aria-label="%s" data-film="%s">`, s.id, html.EscapeString("Moving picture: "+f.Name), html.EscapeString(data))
 	b.put("\n<figcaption class=\"film-caption\"><strong>%s</strong> <span>%s</span></figcaption>\n<div class=\"film-views\">", html.EscapeString(f.Title), html.EscapeString(spinWords(f.Spin)+" Both seen from the +axial end."))
 	s.framed(&b, "board", "On board", "the habitat frame", func() { s.drawBoard(&b, moves{}) })
-	s.framed(&b, "beyond", "From outside", "the inertial frame", func() { s.drawBeyond(&b, moves{}) })
+	s.framed(&b, "beyond", "From outside", s.turningWords(), func() { s.drawBeyond(&b, moves{}) })
 	b.put("</div>\n<p class=\"film-notes\" data-film-still>A still drawing: the whole motion, and where it ends. With scripts allowed it moves.</p>\n")
 	s.stripPart(&b)
 	s.desk(&b)
@@ -177,15 +177,17 @@ func (s *show) stripPart(b *sheet) {
 		}
 		b.put(`<line class="f-strip" x1="%s%%" x2="%s%%" y1="20" y2="27"/><text class="f-note f-mid" x="%s%%" y="40">%s</text>`, at(i*step), at(i*step), at(i*step), plain(i*step, 4)+unit)
 	}
-	for i := range s.film.Events {
-		if e := &s.film.Events[i]; e.Kind == Impact && e.T <= end && i < mostTicks {
-			b.put(`<line class="f-strip" x1="%s%%" x2="%s%%" y1="13" y2="20"/>`, at(e.T), at(e.T))
-		}
+	for _, t := range s.impacts() {
+		b.put(`<line class="f-strip" x1="%s%%" x2="%s%%" y1="13" y2="20"/>`, at(t), at(t))
 	}
 	b.put(`<line class="f-gone" x1="%g%%" x2="%g%%" y1="20" y2="20"/>`, stripEnds[0], stripEnds[0])
 	for _, k := range marked {
-		if e := s.shown(k); e != nil {
-			b.put(`<circle class="%s" cx="%s%%" cy="20" r="4.5"/>`, map[Kind]string{Release: "f-ring", Landing: "f-dot", Rest: "f-ring"}[k], at(e.T))
+		switch e := s.shown(k); {
+		case e == nil:
+		case k == Rest:
+			b.put(`<svg x="%s%%" overflow="visible"><rect class="f-ring" x="-4" y="16" width="8" height="8"/></svg>`, at(e.T))
+		default:
+			b.put(`<circle class="%s" cx="%s%%" cy="20" r="4.5"/>`, map[Kind]string{Release: "f-ring", Landing: "f-dot"}[k], at(e.T))
 		}
 	}
 	b.put(`<circle class="f-thumb" cx="%g%%" cy="20" r="8.5"/></svg></div>`+"\n", stripEnds[0])
@@ -273,11 +275,11 @@ func (s *show) numbersPart(b *sheet) {
 		{"time", "Time since the release", ""}, {"phase", "Phase", ""},
 		{"offset", "Deck offset", ""}, {"height", "Height above the deck", ""},
 		{"speed", "Speed relative to the habitat", ""}, {"inertial", "Inertial speed", ""},
-		{"axial", "Axial place", ""}, {"accel", "Apparent acceleration", "parts"},
+		{"axial", "Axial place", ""}, {"accel", "Apparent acceleration", "centrifugal coriolis"},
 	} {
 		b.put(`<div><dt>%s</dt><dd><span class="film-n-%s"></span>`, n[1], n[0])
-		if n[2] != "" {
-			b.put(`<small class="film-n-%s"></small>`, n[2])
+		for _, part := range strings.Fields(n[2]) {
+			b.put(`<small class="film-n-%s"></small>`, part)
 		}
 		b.put(`</dd></div>`)
 	}
@@ -287,6 +289,9 @@ func (s *show) numbersPart(b *sheet) {
 // notes say what the picture cannot show.
 func (s *show) notes() string {
 	out := s.film.Notes
+	if l := s.shown(Landing); l != nil && l.T > 0 {
+		out += fmt.Sprintf(" Until the landing the habitat turns by %s°.", signif(math.Abs(s.film.Spin*l.T)*180/math.Pi, 3))
+	}
 	say := func(format string, args ...any) { out = strings.TrimSpace(out + " " + fmt.Sprintf(format, args...)) }
 	if u := s.film.Uniform; u != nil && u.WhyNotDrawn != "" {
 		say("The uniform-gravity path is not drawn: %s.", u.WhyNotDrawn)
@@ -296,6 +301,44 @@ func (s *show) notes() string {
 	if s.reel.cut {
 		say("The film ends at %s s; the motion goes on.", plain(s.reel.end, 4))
 	}
-	say("Places are within %s of the computed track, speeds within %s m/s.", length(math.Max(s.reel.posErr, 1e-9), 1), signif(math.Max(s.reel.velErr, 1e-9), 1))
+	s.small(say)
+	say("Places are within %s of the computed track, speeds within %s/s.", length(math.Max(s.reel.posErr, 1e-9), 1), length(math.Max(s.reel.velErr, 1e-9), 1))
 	return out
+}
+
+// small says what is too small to be seen at the scale of a drawing.
+func (s *show) small(say func(string, ...any)) {
+	const hair = 2.0 // units
+	if l := s.shown(Landing); l != nil {
+		at := s.reel.spot(l.T).board
+		start := s.film.plumb(1)
+		if off := math.Abs(at.X*start.Y - at.Y*start.X); off > 0 && off*s.board.perM < hair && s.gone < 1 {
+			say("At this scale the deck offset is narrower than the lines: read it from the numbers.")
+		}
+	}
+	if s.reel.extent*s.beyond.perM < 3*hair && s.reel.extent > 1e-3 {
+		say("In the inertial frame the fall of %s is too small to be seen beside the way that the habitat carries it.", length(s.reel.extent, 2))
+	}
+}
+
+// impacts are the times of impacts on the strip, s, those that would run together left out.
+func (s *show) impacts() (out []float64) {
+	apart, last := s.reel.end*0.004, math.Inf(-1)
+	for i := range s.film.Events {
+		if e := &s.film.Events[i]; e.Kind == Impact && e.T <= s.reel.end && e.T-last >= apart {
+			out, last = append(out, e.T), e.T
+		}
+	}
+	return out
+}
+
+// turningWords name the inertial frame, and how the habitat turns in it.
+func (s *show) turningWords() string {
+	switch {
+	case s.film.Spin > 0:
+		return "the inertial frame: the habitat turns counterclockwise"
+	case s.film.Spin < 0:
+		return "the inertial frame: the habitat turns clockwise"
+	}
+	return "the inertial frame"
 }

@@ -145,7 +145,7 @@ function Drawing(film, svg, spec, key) {
   this.ahead = svg.querySelector(".f-ahead");
   this.body = svg.querySelector(".f-body");
   this.turn = svg.querySelector(".f-turn");
-  this.marks = [1, 2, 3].map(function (k) { return svg.querySelector(".f-mark-" + k); });
+  this.marks = [1, 2, 3].map(function (k) { return Array.prototype.slice.call(svg.querySelectorAll(".f-mark-" + k)); });
   this.arrows = {};
   this.legends = make("g", "f-legends", svg);
 }
@@ -185,7 +185,7 @@ Drawing.prototype.turned = function (a) {
 };
 Drawing.prototype.arrow = function (name, xy, v, perUnit, on) {
   var e = this.arrows[name];
-  if (!e) e = this.arrows[name] = make("path", "f-arrow f-arrow-" + name, this.svg.insertBefore(document.createElementNS(NS, "g"), this.body));
+  if (!e) e = this.arrows[name] = make("path", "f-arrow f-arrow-" + name, this.body.parentNode.insertBefore(document.createElementNS(NS, "g"), this.body));
   var dx = v[0] * perUnit, dy = -v[1] * perUnit, l = Math.sqrt(dx * dx + dy * dy);
   if (!on || !(l > 1.5)) { e.setAttribute("d", ""); return; }
   var ux = dx / l, uy = dy / l, h = Math.min(8, l * 0.6), x = xy[0] + dx, y = xy[1] + dy;
@@ -265,7 +265,9 @@ Player.prototype.draw = function () {
     if (trail) d.trail(s, xy);
     d.trails.forEach(function (e) { e.setAttribute("visibility", trail ? "visible" : "hidden"); });
     d.ahead.setAttribute("visibility", self.on("path") ? "visible" : "hidden");
-    d.marks.forEach(function (e, k) { if (e && k > 0) e.setAttribute("visibility", self.t >= film.marks[k] ? "visible" : "hidden"); });
+    d.marks.forEach(function (list, k) {
+      list.forEach(function (e) { e.setAttribute("visibility", self.t >= film.marks[k] ? "visible" : "hidden"); });
+    });
   });
   this.beyond.turn.setAttribute("transform", this.beyond.turned(film.spin * s.t));
   if (this.ghost) {
@@ -295,7 +297,8 @@ Player.prototype.numbers = function (s, b, o) {
   set("speed", speed(norm(s.rel)));
   set("inertial", speed(norm(s.vel)));
   set("accel", accel(norm(s.apparent)));
-  set("parts", "centrifugal " + accel(norm(s.centrifugal)) + ", Coriolis " + accel(norm(s.coriolis)));
+  set("centrifugal", "centrifugal " + accel(norm(s.centrifugal)));
+  set("coriolis", "Coriolis " + accel(norm(s.coriolis)));
   root.setAttribute("data-time", this.t);
   root.setAttribute("data-phase", s.phase);
   root.setAttribute("data-habitat", s.board.join(" "));

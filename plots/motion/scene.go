@@ -42,7 +42,7 @@ func (s *show) drawBoard(b *sheet, m moves) {
 	}
 	s.drawBody(b, v, onBoard, m)
 	b.shut()
-	s.boardLabels(b, differs)
+	s.boardLabels(b, m, differs)
 }
 
 func (s *show) uniformLine() string {
@@ -120,19 +120,20 @@ func (v view) turn(a float64) string {
 	return fmt.Sprintf("matrix(%.9g %.9g %.9g %.9g %.4f %.4f)", cos, -sin, sin, cos, ax*less-sin*ay, ay*less+sin*ax)
 }
 
-func (s *show) boardLabels(b *sheet, differs bool) {
+func (s *show) boardLabels(b *sheet, m moves, differs bool) {
 	v := s.board
 	b.scaleBar(v)
 	b.compass()
 	b.taken = append(b.taken, rect{0, viewHeight - 48, 96, viewHeight}, rect{viewWidth - 150, viewHeight - 30, viewWidth, viewHeight})
 	start, foot := s.spots[0].board, s.film.plumb(s.film.foot())
-	paths := [][][2]float64{s.dense(v, onBoard), straight(v, start, foot)}
+	paths := [][][2]float64{s.dense(v, onBoard), straight(v, start, foot), s.built(v)}
 	for _, p := range s.uniform {
 		x, y := v.at(p)
 		paths = append(paths, [][2]float64{{x, y}})
 	}
-	s.markLabels(b, v, onBoard, paths)
-	if s.visible(v, foot) {
+	s.markLabels(b, v, onBoard, m, paths)
+	const short = 40.0 // units: a line that needs no name
+	if s.visible(v, foot) && math.Hypot(start.X-foot.X, start.Y-foot.Y)*v.perM > short {
 		x, y := v.at(plots.Point{X: (start.X + foot.X) / 2, Y: (start.Y + foot.Y) / 2})
 		b.label("f-label", x, y, 6, "plumb line", paths...)
 	}
@@ -143,13 +144,54 @@ func (s *show) boardLabels(b *sheet, differs bool) {
 }
 
 // markLabels names the marks.
-func (s *show) markLabels(b *sheet, v view, of func(spot) plots.Point, paths [][][2]float64) {
+func (s *show) markLabels(b *sheet, v view, of func(spot) plots.Point, m moves, paths [][][2]float64) {
 	for _, k := range marked {
 		if e := s.shown(k); e != nil {
 			x, y := v.at(of(s.reel.spot(e.T)))
+			b.put(`<g class="f-mark-%d">%s`, k, m.revealed(e))
 			b.label("f-label", x, y, s.bodySize(v)+5, e.Name, paths...)
+			b.put(`</g>`)
 		}
 	}
+}
+
+// built are places along the structure, units, for labels to keep off.
+func (s *show) built(v view) (out [][2]float64) {
+	const apart = 8.0
+	add := func(p plots.Point) {
+		if x, y := v.at(p); x > 0 && y > 0 && x < viewWidth && y < viewHeight {
+			out = append(out, [2]float64{x, y})
+		}
+	}
+	for _, o := range s.bare() {
+		for _, g := range o.Path {
+			switch {
+			case g.Bare:
+			case g.Radius > 0:
+				// Only the part that the drawing shows, as seen from the arc's centre.
+				mid := math.Atan2(v.cy-g.Centre.Y, v.cx-g.Centre.X)
+				half := math.Min(math.Pi, viewWidth/(g.Radius*v.perM))
+				for a := mid - half; a <= mid+half; a += math.Max(apart/(g.Radius*v.perM), half/400) {
+					if inArc(g, a) {
+						add(onArc(g, a))
+					}
+				}
+			default:
+				n := math.Min(200, 1+math.Hypot(g.To.X-g.From.X, g.To.Y-g.From.Y)*v.perM/apart)
+				for k := 0.0; k <= n; k++ {
+					add(plots.Point{X: g.From.X + (g.To.X-g.From.X)*k/n, Y: g.From.Y + (g.To.Y-g.From.Y)*k/n})
+				}
+			}
+		}
+	}
+	return out
+}
+
+// inArc says whether an arc passes an angle.
+func inArc(g plots.Segment, a float64) bool {
+	lo, hi := math.Min(g.Start, g.End), math.Max(g.Start, g.End)
+	a += 2 * math.Pi * math.Ceil((lo-a)/(2*math.Pi))
+	return a <= hi
 }
 
 func (s *show) visible(v view, p plots.Point) bool {

@@ -59,12 +59,18 @@ func (p *path) line(pts [][2]float64) {
 // about the axis in itself, fixed is true.
 func (v view) structure(outlines []plots.Outline) (moving, fixed string) {
 	var tints, lines, rings [3]path
+	var far [2][3]path // of rings of which only a part is near: tints and lines
 	for _, o := range outlines {
 		if v.size(o) < smallest {
 			continue
 		}
-		if v.wholeRing(o) {
+		if v.wholeRing(o) && v.largest(o) <= mostRadius {
 			v.trace(&rings[o.Kind], o, true, true)
+			continue
+		}
+		if v.wholeRing(o) {
+			v.trace(&far[0][o.Kind], o, false, true)
+			v.trace(&far[1][o.Kind], o, true, false)
 			continue
 		}
 		v.trace(&tints[o.Kind], o, false, true)
@@ -74,6 +80,9 @@ func (v view) structure(outlines []plots.Outline) (moving, fixed string) {
 	for k, name := range kindNames {
 		if rings[k].Len() > 0 {
 			f.WriteString(`<path class="tint-` + name + ` line-` + name + `" fill-rule="evenodd" d="` + rings[k].String() + `"/>`)
+		}
+		if far[0][k].Len() > 0 {
+			f.WriteString(`<path class="tint-` + name + `" d="` + far[0][k].String() + `"/><path class="line-` + name + `" d="` + far[1][k].String() + `"/>`)
 		}
 		if tints[k].Len() > 0 {
 			m.WriteString(`<path class="tint-` + name + `" d="` + tints[k].String() + `"/>`)
@@ -100,6 +109,14 @@ func (v view) size(o plots.Outline) float64 {
 	return math.Max(b.x1-b.x0, b.y1-b.y0) * v.perM
 }
 
+// largest is the greatest radius of an outline's arcs, in units.
+func (v view) largest(o plots.Outline) (r float64) {
+	for _, s := range o.Path {
+		r = math.Max(r, s.Radius*v.perM)
+	}
+	return r
+}
+
 // wholeRing says whether an outline is a ring about the axis, which looks the same however it turns.
 func (v view) wholeRing(o plots.Outline) bool {
 	arcs := 0
@@ -122,12 +139,17 @@ func onArc(s plots.Segment, a float64) plots.Point {
 // trace adds an outline to a path, as drawn lines or as an area to be tinted.
 func (v view) trace(p *path, o plots.Outline, drawn, tinted bool) {
 	pen := pencil{v: v, p: p}
-	ring := v.wholeRing(o)
 	for _, s := range o.Path {
 		switch {
-		case s.Bare && (drawn || ring):
+		case s.Bare && drawn:
 			pen.lift()
+		case s.Bare && v.largest(o) > mostRadius && v.wholeRing(o):
+			// The arcs' ends far away bound the tint.
 		case s.Radius > 0 && math.Abs(s.End-s.Start) >= 2*math.Pi*(1-1e-12):
+			if !drawn {
+				pen.circle(s)
+				continue
+			}
 			pen.lift()
 			pen.circle(s)
 			pen.lift()
@@ -193,8 +215,9 @@ func (d *pencil) arc(s plots.Segment) {
 func (d *pencil) circle(s plots.Segment) {
 	if s.Radius*d.v.perM > mostRadius {
 		// The seam goes to the far side.
-		s.Start = d.toward(s) - math.Pi
-		s.End = s.Start + 2*math.Pi
+		turn := math.Copysign(math.Pi, s.End-s.Start)
+		mid := d.toward(s)
+		s.Start, s.End = mid-turn, mid+turn
 		d.flat(s)
 		return
 	}
