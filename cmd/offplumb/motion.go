@@ -10,6 +10,7 @@ import (
 	"offplumb/plots"
 	"offplumb/plots/motion"
 	"offplumb/sim/flight"
+	"offplumb/sim/frame"
 	"offplumb/sim/measure"
 	"offplumb/sim/table"
 )
@@ -79,39 +80,57 @@ func (j *job) filmNotes(t *flight.Track) string {
 
 // filmParts is how often a track is sampled within an integration step, which is smooth and
 // known to a fourth-order polynomial.
-const filmParts = 4
+const filmParts = 12
 
-// filmPieces gives the states of a track, turned about the axis by an angle (rad).
+// filmPieces gives the states of a track, turned about the axis by an angle (rad). At a
+// joint of phases a track gives the earlier one, at its ends what it began and ended with:
+// phases are sampled just within their own ends, and what differs at the ends is a piece of
+// no duration, so that the film tells of each moment what the table tells.
 func filmPieces(t *flight.Track, turn float64) (out []motion.Piece) {
-	state := func(at, label float64) motion.State {
-		s := t.At(at)
-		return motion.State{T: label, Pos: turnedBy(s.Pos, turn), Vel: turnedBy(s.Vel, turn)}
+	add := func(kind flight.Kind, states ...motion.State) {
+		out = append(out, motion.Piece{Phase: kind.String(), States: states})
+	}
+	n := len(t.Phases)
+	if n == 0 {
+		add(flight.Rest, filmState(t.First, 0, turn))
+		return out
 	}
 	for i := range t.Phases {
 		p := &t.Phases[i]
-		// At a joint the track gives the earlier phase: this one begins just after.
-		begin := state(math.Nextafter(p.T0, math.Inf(1)), p.T0)
-		first := state(p.T0, p.T0)
-		if i == 0 && begin.Vel != first.Vel || p.T1 == p.T0 && i == len(t.Phases)-1 {
-			out = append(out, motion.Piece{Phase: p.Kind.String(), States: []motion.State{first}})
-		}
 		if p.T1 == p.T0 {
 			continue
 		}
-		piece := motion.Piece{Phase: p.Kind.String(), States: []motion.State{begin}}
-		knots := p.Knots()
-		for k := 1; k < len(knots); k++ {
-			for n := 1.0; n <= filmParts && knots[k] > knots[k-1]; n++ {
-				at := knots[k-1] + (knots[k]-knots[k-1])*n/filmParts
-				piece.States = append(piece.States, state(at, at))
-			}
+		states := phaseStates(t, p, turn)
+		if first := filmState(t.First, 0, turn); p.T0 <= 0 && states[0].Vel != first.Vel {
+			add(p.Kind, first)
 		}
-		out = append(out, piece)
+		add(p.Kind, states...)
 	}
-	if len(out) == 0 {
-		out = []motion.Piece{{Phase: flight.Rest.String(), States: []motion.State{state(0, 0)}}}
+	last := filmState(t.Last, t.End, turn)
+	if k := len(out) - 1; k < 0 || t.Phases[n-1].T1 == t.Phases[n-1].T0 || out[k].States[len(out[k].States)-1].Vel != last.Vel {
+		add(t.Phases[n-1].Kind, last)
 	}
 	return out
+}
+
+// phaseStates samples a phase.
+func phaseStates(t *flight.Track, p *flight.Phase, turn float64) []motion.State {
+	inside := func(at float64) frame.State {
+		return t.At(math.Max(math.Nextafter(p.T0, math.Inf(1)), math.Min(at, math.Nextafter(p.T1, 0))))
+	}
+	out := []motion.State{filmState(inside(p.T0), p.T0, turn)}
+	knots := p.Knots()
+	for k := 1; k < len(knots); k++ {
+		for n := 1.0; n <= filmParts && knots[k] > knots[k-1]; n++ {
+			at := math.Min(p.T1, knots[k-1]+(knots[k]-knots[k-1])*n/filmParts)
+			out = append(out, filmState(inside(at), at, turn))
+		}
+	}
+	return out
+}
+
+func filmState(s frame.State, at, turn float64) motion.State {
+	return motion.State{T: at, Pos: turnedBy(s.Pos, turn), Vel: turnedBy(s.Vel, turn)}
 }
 
 func turnedBy(v r3.Vec, a float64) [3]float64 {

@@ -250,7 +250,7 @@ func (a *loop) document() string {
 }
 
 func (a *loop) notes() []string {
-	return wrap(spinWords(a.film.Spin)+" "+rateWords(a.rate)+" Both seen from the +axial end. "+a.show.notes(), 150)
+	return wrap(spinWords(a.film.Spin)+" "+rateWords(a.rate)+" Both seen from the +axial end. "+a.show.notes(), 170)
 }
 
 // strip draws the ruler of time with its marker, and the clock.

@@ -13,7 +13,7 @@ import (
 const (
 	fineness   = 1e-7
 	coarseness = 1e-4
-	packBudget = 11_000 // bytes, before base64 adds a third
+	packBudget = 8_000 // bytes, before base64 adds a third
 )
 
 // turnBetween is the angle about the axis, rad, that neighbouring knots may be apart: the
@@ -40,8 +40,13 @@ type packedPiece struct {
 	knots   []knot // none: uniform motion; else the first is at t0 and the last at t1
 }
 
-// knot is time since the piece's start, departure of place and of velocity.
-type knot [7]float32
+// knot is time since the piece's start, departure of place and of velocity. It is written as
+// floats by which it differs from the knot before: 32 bits then do for what a piece departs by
+// from knot to knot, not in all.
+type knot struct {
+	at [7]float64
+	by [7]float32
+}
 
 const (
 	headBytes = 11 * 8
@@ -131,18 +136,22 @@ func packPiece(spin float64, p *Piece, turning bool, tolPos, tolVel float64) (ou
 		return out, posErr, velErr
 	}
 	c := chooser{out: &out, states: states, tolPos: tolPos, tolVel: tolVel}
-	out.knots = append(out.knots, out.knotAt(states[0]))
+	out.knots = append(out.knots, out.knotAt(states[0], knot{}))
 	c.choose(0, n-1)
 	return out, c.posErr, c.velErr
 }
 
-// knotAt is a state as a departure from the uniform motion.
-func (p *packedPiece) knotAt(s State) (k knot) {
+// knotAt is a state as a departure from the uniform motion, after another knot.
+func (p *packedPiece) knotAt(s State, after knot) (k knot) {
 	u := s.T - p.t0
-	k[0] = float32(u)
+	k.at[0] = u
 	for i := range 3 {
-		k[1+i] = float32(s.Pos[i] - p.base[i] - p.base[3+i]*u)
-		k[4+i] = float32(s.Vel[i] - p.base[3+i])
+		k.at[1+i] = s.Pos[i] - p.base[i] - p.base[3+i]*u
+		k.at[4+i] = s.Vel[i] - p.base[3+i]
+	}
+	for i, v := range k.at {
+		k.by[i] = float32(v - after.at[i])
+		k.at[i] = after.at[i] + float64(k.by[i])
 	}
 	return k
 }
@@ -169,7 +178,8 @@ type chooser struct {
 
 // choose adds the knots after lo up to hi.
 func (c *chooser) choose(lo, hi int) {
-	a, b := c.out.knotAt(c.states[lo]), c.out.knotAt(c.states[hi])
+	a := c.out.knots[len(c.out.knots)-1] // at lo
+	b := c.out.knotAt(c.states[hi], a)
 	trial := packedPiece{t0: c.out.t0, t1: c.out.t1, base: c.out.base, knots: []knot{a, b}}
 	pos, vel, _ := trial.errors(c.states[lo : hi+1])
 	met := pos <= c.tolPos && vel <= c.tolVel && turnOf(c.states[lo], c.states[hi]) <= turnBetween
@@ -193,7 +203,7 @@ func (c *chooser) middle(lo, hi int) int {
 }
 
 // encode writes the pieces as the player reads them: little-endian, a head of doubles (t0, t1,
-// phase, turning, number of knots, base) and the knots as floats.
+// phase, turning, number of knots, base) and the knots' differences as floats.
 func (r *reel) encode() string {
 	var b []byte
 	double := func(v float64) { b = binary.LittleEndian.AppendUint64(b, math.Float64bits(v)) }
@@ -207,7 +217,7 @@ func (r *reel) encode() string {
 			double(v)
 		}
 		for _, k := range p.knots {
-			for _, v := range k {
+			for _, v := range k.by {
 				b = binary.LittleEndian.AppendUint32(b, math.Float32bits(v))
 			}
 		}

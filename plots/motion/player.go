@@ -114,7 +114,7 @@ func (s *show) data() (string, error) {
 	}
 	for i := range f.Events {
 		if e := &f.Events[i]; e.T <= s.reel.end && i < mostEvents {
-			d.Events = append(d.Events, e.T)
+			d.Events = append(d.Events, e.time())
 		}
 	}
 	if u := f.Uniform; u != nil && u.WhyNotDrawn == "" {
@@ -125,7 +125,15 @@ func (s *show) data() (string, error) {
 }
 
 // mostEvents bounds the events that the keys stop at.
-const mostEvents = 150
+const mostEvents = 120
+
+// time is an event's, exact where it has a mark, else to a microsecond.
+func (e *Event) time() float64 {
+	if e.Kind == Impact {
+		return math.Round(e.T*1e6) / 1e6
+	}
+	return e.T
+}
 
 func (v view) spec() [5]float64 {
 	return [5]float64{v.perM, v.cx, v.cy, viewWidth / 2, (viewHeight - viewFoot + viewEdge) / 2}
@@ -153,7 +161,7 @@ func (s *show) element(data string) string {
 func (s *show) framed(b *sheet, class, name, frame string, draw func()) {
 	b.put("\n<div class=\"film-view\"><p>%s <span>%s</span></p>", name, frame)
 	b.put(`<svg class="film-%s" viewBox="0 0 %s %s" role="img" aria-label="%s">`, class, num(viewWidth), num(viewHeight),
-		html.EscapeString(name+", "+frame+": "+s.film.Desc))
+		html.EscapeString(name+", "+frame+". "+s.film.Title))
 	draw()
 	b.put("</svg></div>")
 }
@@ -167,7 +175,7 @@ func (s *show) stripPart(b *sheet) {
 		if end == 0 {
 			return trimmed(stripEnds[0])
 		}
-		return trimmed(stripEnds[0] + (stripEnds[1]-stripEnds[0])*t/end)
+		return num(stripEnds[0] + (stripEnds[1]-stripEnds[0])*t/end)
 	}
 	step := tickStep(end, 8)
 	for i := 0.0; step > 0 && i*step <= end*(1+1e-9); i++ {
@@ -316,14 +324,14 @@ func (s *show) small(say func(string, ...any)) {
 			say("At this scale the deck offset is narrower than the lines: read it from the numbers.")
 		}
 	}
-	if s.reel.extent*s.beyond.perM < 3*hair && s.reel.extent > 1e-3 {
+	if s.shown(Landing) != nil && s.reel.extent*s.beyond.perM < 3*hair && s.reel.extent > 1e-3 {
 		say("In the inertial frame the fall of %s is too small to be seen beside the way that the habitat carries it.", length(s.reel.extent, 2))
 	}
 }
 
 // impacts are the times of impacts on the strip, s, those that would run together left out.
 func (s *show) impacts() (out []float64) {
-	apart, last := s.reel.end*0.004, math.Inf(-1)
+	apart, last := s.reel.end*0.008, math.Inf(-1)
 	for i := range s.film.Events {
 		if e := &s.film.Events[i]; e.Kind == Impact && e.T <= s.reel.end && e.T-last >= apart {
 			out, last = append(out, e.T), e.T

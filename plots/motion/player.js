@@ -14,7 +14,7 @@ function reel(text) {
   while (at < bytes.length) {
     var p = { t0: double(), t1: double(), phase: double(), turning: double() > 0, n: double(), base: [], knots: [] };
     for (i = 0; i < 6; i++) p.base.push(double());
-    for (i = 0; i < 7 * p.n; i++) { p.knots.push(data.getFloat32(at, true)); at += 4; }
+    for (i = 0; i < 7 * p.n; i++) { p.knots.push(data.getFloat32(at, true) + (i < 7 ? 0 : p.knots[i - 7])); at += 4; }
     out.push(p);
   }
   return out;

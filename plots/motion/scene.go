@@ -47,9 +47,13 @@ func (s *show) drawBoard(b *sheet, m moves) {
 
 func (s *show) uniformLine() string {
 	var d path
-	for i, p := range s.uniform {
+	var pts []plots.Point
+	for _, p := range s.uniform {
 		x, y := s.board.at(p)
-		d.op("ML"[min(i, 1)], x, y)
+		pts = append(pts, plots.Point{X: x, Y: y})
+	}
+	for i, p := range plots.Thin(pts, 0.1) {
+		d.op("ML"[min(i, 1)], p.X, p.Y)
 	}
 	return d.String()
 }
@@ -124,7 +128,7 @@ func (s *show) boardLabels(b *sheet, m moves, differs bool) {
 	v := s.board
 	b.scaleBar(v)
 	b.compass()
-	b.taken = append(b.taken, rect{0, viewHeight - 48, 96, viewHeight}, rect{viewWidth - 150, viewHeight - 30, viewWidth, viewHeight})
+	b.taken = append(b.taken, rect{0, viewHeight - 48, 96, viewHeight}, rect{viewWidth - 150, viewHeight - 30, viewWidth, viewHeight}, legendRoom)
 	start, foot := s.spots[0].board, s.film.plumb(s.film.foot())
 	paths := [][][2]float64{s.dense(v, onBoard), straight(v, start, foot), s.built(v)}
 	for _, p := range s.uniform {
@@ -132,8 +136,7 @@ func (s *show) boardLabels(b *sheet, m moves, differs bool) {
 		paths = append(paths, [][2]float64{{x, y}})
 	}
 	s.markLabels(b, v, onBoard, m, paths)
-	const short = 40.0 // units: a line that needs no name
-	if s.visible(v, foot) && math.Hypot(start.X-foot.X, start.Y-foot.Y)*v.perM > short {
+	if s.visible(v, foot) && math.Hypot(start.X-foot.X, start.Y-foot.Y)*v.perM > shortLine {
 		x, y := v.at(plots.Point{X: (start.X + foot.X) / 2, Y: (start.Y + foot.Y) / 2})
 		b.label("f-label", x, y, 6, "plumb line", paths...)
 	}
@@ -142,6 +145,12 @@ func (s *show) boardLabels(b *sheet, m moves, differs bool) {
 		b.label("f-label", x, y, 8, "uniform gravity", paths...)
 	}
 }
+
+// shortLine is the length, units, below which a line needs no name.
+const shortLine = 40.0
+
+// legendRoom is where the player states the scale of arrows.
+var legendRoom = rect{0, 0, 190, 58}
 
 // markLabels names the marks.
 func (s *show) markLabels(b *sheet, v view, of func(spot) plots.Point, m moves, paths [][][2]float64) {
@@ -202,8 +211,11 @@ func (s *show) visible(v view, p plots.Point) bool {
 func (s *show) beyondLabels(b *sheet) {
 	v := s.beyond
 	b.scaleBar(v)
-	b.taken = append(b.taken, rect{viewWidth - 150, viewHeight - 30, viewWidth, viewHeight})
+	b.taken = append(b.taken, rect{viewWidth - 150, viewHeight - 30, viewWidth, viewHeight}, legendRoom)
 	start, foot := s.spots[0].board, s.film.plumb(s.film.foot())
+	if math.Hypot(start.X-foot.X, start.Y-foot.Y)*v.perM < shortLine {
+		return
+	}
 	x, y := v.at(plots.Point{X: (start.X + foot.X) / 2, Y: (start.Y + foot.Y) / 2})
 	b.label("f-label", x, y, 6, "plumb line at release", s.dense(v, outside), straight(v, start, foot))
 }

@@ -96,10 +96,20 @@ func (s *show) shown(k Kind) *Event {
 	return nil
 }
 
-// runs are the drawn paths by phase, thinned to a sixth of a unit, in units: what went on in
-// flight, sliding, rolling.
+// runs are the drawn paths by phase, in units: what went on in flight, sliding, rolling. They
+// are thinned to finest, and further where they would take more than runsBudget: the still
+// drawing of many laps, which covers the ring anyway.
 func (s *show) runs(v view, of func(spot) plots.Point) (out [4]path) {
-	const tolerance = 0.15
+	const finest, coarsest, runsBudget = 0.15, 5.0, 2500 // units, units, bytes
+	for tolerance := finest; ; tolerance *= 1.5 {
+		var size int
+		if out, size = s.runsTo(tolerance, v, of); size <= runsBudget || tolerance > coarsest {
+			return out
+		}
+	}
+}
+
+func (s *show) runsTo(tolerance float64, v view, of func(spot) plots.Point) (out [4]path, size int) {
 	for lo := 0; lo < len(s.spots)-1; {
 		hi, phase := lo+1, s.spots[lo+1].phase
 		for hi < len(s.spots)-1 && s.spots[hi+1].phase == phase {
@@ -115,7 +125,10 @@ func (s *show) runs(v view, of func(spot) plots.Point) (out [4]path) {
 		}
 		lo = hi
 	}
-	return out
+	for k := range out {
+		size += out[k].Len()
+	}
+	return out, size
 }
 
 func onBoard(p spot) plots.Point { return p.board }

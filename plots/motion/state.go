@@ -50,14 +50,14 @@ func (p *packedPiece) at(t float64) (pos, vel [3]float64) {
 		return pos, vel
 	}
 	k := p.interval(u)
-	a, b := p.knots[k], p.knots[min(k+1, len(p.knots)-1)]
-	h := float64(b[0]) - float64(a[0])
+	a, b := &p.knots[k].at, &p.knots[min(k+1, len(p.knots)-1)].at
+	h := b[0] - a[0]
 	w := 0.0
 	if h > 0 {
-		w = math.Max(0, math.Min(1, (u-float64(a[0]))/h))
+		w = math.Max(0, math.Min(1, (u-a[0])/h))
 	}
 	for i := range 3 {
-		d, dv := hermite(float64(a[1+i]), float64(b[1+i]), float64(a[4+i]), float64(b[4+i]), h, w)
+		d, dv := hermite(a[1+i], b[1+i], a[4+i], b[4+i], h, w)
 		pos[i] += d
 		vel[i] += dv
 	}
@@ -66,7 +66,7 @@ func (p *packedPiece) at(t float64) (pos, vel [3]float64) {
 
 // interval is the knot that begins the interval of time u.
 func (p *packedPiece) interval(u float64) int {
-	k := sort.Search(len(p.knots), func(i int) bool { return float64(p.knots[i][0]) >= u }) - 1
+	k := sort.Search(len(p.knots), func(i int) bool { return p.knots[i].at[0] >= u }) - 1
 	return max(0, min(k, len(p.knots)-2))
 }
 
@@ -149,4 +149,29 @@ func (r *reel) spots() []spot {
 		out[i] = r.spot(t)
 	}
 	return out
+}
+
+// Print is a film as a player has it: for those who hold films against tracks.
+type Print struct {
+	End                float64 // s
+	PosError, VelError float64 // m and m/s, the greatest found at the states given
+	reel               *reel
+}
+
+// NewPrint packs a film.
+func NewPrint(f *Film) (*Print, error) {
+	if err := f.check(); err != nil {
+		return nil, err
+	}
+	r, err := pack(f)
+	if err != nil {
+		return nil, err
+	}
+	return &Print{End: r.end, PosError: r.posErr, VelError: r.velErr, reel: r}, nil
+}
+
+// At gives state and phase at a time, s since the release.
+func (p *Print) At(t float64) (State, string) {
+	s, phase := p.reel.at(t)
+	return s, phaseNames[phase]
 }

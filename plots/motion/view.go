@@ -12,7 +12,7 @@ const (
 	viewWidth  = 420.0
 	viewHeight = 320.0
 	viewEdge   = 30.0 // kept free round what must be seen, for labels
-	viewFoot   = 34.0 // and at the foot, for the scale bar
+	viewFoot   = 44.0 // and at the foot, for the scale bar
 )
 
 // view maps m about the axis onto a drawing.
