@@ -7,6 +7,7 @@ import (
 	"strings"
 	"sync"
 	"testing"
+	"time"
 
 	"github.com/chromedp/cdproto/log"
 	"github.com/chromedp/cdproto/runtime"
@@ -67,10 +68,15 @@ func (b *browser) listen(ev any) {
 	}
 }
 
-// run runs an action and gives its value.
+// patience is how long a browser may take over one action on a busy machine.
+const patience = 20 * time.Second
+
+// run1 runs an action and gives its value.
 func run1[T any](t *testing.T, b *browser, action chromedp.Action[T]) T {
 	t.Helper()
-	v, err := chromedp.Run(b.ctx, action)
+	ctx, cancel := context.WithTimeout(b.ctx, patience)
+	defer cancel()
+	v, err := chromedp.Run(ctx, action)
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -80,7 +86,9 @@ func run1[T any](t *testing.T, b *browser, action chromedp.Action[T]) T {
 // do runs steps, one after the other.
 func (b *browser) do(t *testing.T, steps ...chromedp.Action[chromedp.Void]) {
 	t.Helper()
-	if err := chromedp.Do(b.ctx, steps...); err != nil {
+	ctx, cancel := context.WithTimeout(b.ctx, patience)
+	defer cancel()
+	if err := chromedp.Do(ctx, steps...); err != nil {
 		t.Fatal(err)
 	}
 }

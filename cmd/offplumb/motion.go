@@ -122,7 +122,10 @@ func phaseStates(t *flight.Track, p *flight.Phase, turn float64) []motion.State 
 	knots := p.Knots()
 	for k := 1; k < len(knots); k++ {
 		for n := 1.0; n <= filmParts && knots[k] > knots[k-1]; n++ {
-			at := math.Min(p.T1, knots[k-1]+(knots[k]-knots[k-1])*n/filmParts)
+			at := knots[k-1] + (knots[k]-knots[k-1])*n/filmParts
+			if n == filmParts {
+				at = knots[k] // to the last digit
+			}
 			out = append(out, filmState(inside(at), at, turn))
 		}
 	}

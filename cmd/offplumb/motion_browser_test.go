@@ -16,31 +16,48 @@ import (
 	"offplumb/sim/measure"
 )
 
-// seekTo shows a moment of player k.
-func seekTo(t *testing.T, b *browser, k int, at float64) {
+// seekTo shows a moment of player k and gives what it then says it shows, by name.
+func seekTo(t *testing.T, b *browser, k int, at float64) map[string][]float64 {
 	t.Helper()
-	run1(t, b, chromedp.Evaluate[chromedp.Void](fmt.Sprintf(
-		`(e=>{e.dataset.seek=%v;e.dispatchEvent(new Event("film-seek"))})(document.querySelectorAll(".film")[%d])`, at, k)))
+	words := run1(t, b, chromedp.Evaluate[map[string]string](fmt.Sprintf(
+		`(e=>{e.dataset.seek=%v;e.dispatchEvent(new Event("film-seek"));let d={...e.dataset};delete d.film;delete d.phase;return d})(document.querySelectorAll(".film")[%d])`, at, k)))
+	out := map[string][]float64{}
+	for name, w := range words {
+		out[name] = numbers(t, w)
+	}
+	return out
 }
 
-// told is what player k says it shows.
-func told(t *testing.T, b *browser, k int, name string) (out []float64) {
+func numbers(t *testing.T, words string) (out []float64) {
 	t.Helper()
-	words := run1(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelectorAll(".film")[%d].getAttribute("data-%s")`, k, name)))
 	for _, w := range strings.Fields(words) {
 		v, err := strconv.ParseFloat(w, 64)
 		if err != nil {
-			t.Fatalf("data-%s says %q", name, words)
+			t.Fatalf("%q is no list of numbers", words)
 		}
 		out = append(out, v)
 	}
 	return out
 }
 
-// TestPlayersAgreeWithTables opens players under a strict policy and holds what they show
-// against rows of the tables: places in both frames, offset, height, speeds, accelerations.
-func TestPlayersAgreeWithTables(t *testing.T) {
+// told is what player k says it shows.
+func told(t *testing.T, b *browser, k int, name string) []float64 {
+	t.Helper()
+	return numbers(t, run1(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelectorAll(".film")[%d].getAttribute("data-%s")`, k, name))))
+}
+
+// TestMotionInBrowser tries players and moving pictures in one browser, whose start takes
+// most of the time.
+func TestMotionInBrowser(t *testing.T) {
 	b := newBrowser(t)
+	t.Run("picture", func(t *testing.T) { pictureMoves(t, b) })
+	t.Run("player", func(t *testing.T) { playerPlays(t, b) })
+	t.Run("tables", func(t *testing.T) { playersAgree(t, b) })
+}
+
+// playersAgree opens players under a strict policy and holds what they show
+// against rows of the tables: places in both frames, offset, height, speeds, accelerations.
+func playersAgree(t *testing.T, b *browser) {
 	for _, c := range []struct {
 		scenario string
 		sets     []string
@@ -83,8 +100,8 @@ func agrees(t *testing.T, b *browser, j *job, k, i int) {
 	tol := 2e-5*extent + 1e-13*landing.Place.R*(1+math.Abs(spin)*track.End)
 	for _, at := range []int{0, len(rows) / 3, len(rows) * 2 / 3, len(rows) - 1} {
 		r := rows[at]
-		seekTo(t, b, k, r.Time)
-		if got := told(t, b, k, "time")[0]; got != r.Time {
+		shown := seekTo(t, b, k, r.Time)
+		if got := shown["time"][0]; got != r.Time {
 			if run1(t, b, chromedp.Evaluate[bool](fmt.Sprintf(`/The film ends at/.test(document.querySelectorAll(".film")[%d].textContent)`, k))) {
 				continue
 			}
@@ -100,17 +117,17 @@ func agrees(t *testing.T, b *browser, j *job, k, i int) {
 		board := turnedBy(p, -math.Pi/2-down)
 		beyond := turnedBy(q, -math.Pi/2-down-spin*track.Begin)
 		for n := range 3 {
-			near("place on board", told(t, b, k, "habitat")[n], board[n], tol)
-			near("place outside", told(t, b, k, "inertial")[n], beyond[n], tol)
+			near("place on board", shown["habitat"][n], board[n], tol)
+			near("place outside", shown["inertial"][n], beyond[n], tol)
 		}
-		near("offset", told(t, b, k, "offset")[0], r.Offset, tol*math.Max(1, rowRatio(j, track.Start.Deck, r)))
-		near("height", told(t, b, k, "height")[0], r.Height, tol)
+		near("offset", shown["offset"][0], r.Offset, tol*math.Max(1, rowRatio(j, track.Start.Deck, r)))
+		near("height", shown["height"][0], r.Height, tol)
 		speed := math.Sqrt(r.VSpinward*r.VSpinward + r.VAxial*r.VAxial + r.VUp*r.VUp)
-		near("speed", told(t, b, k, "speed")[0], speed, 2e-5*quick+1e-9)
+		near("speed", shown["speed"][0], speed, 2e-5*quick+1e-9)
 		v := r.Inertial.Vel
-		near("inertial speed", told(t, b, k, "inertial-speed")[0], math.Sqrt(v.X*v.X+v.Y*v.Y+v.Z*v.Z), 2e-5*quick+1e-9)
-		near("centrifugal", told(t, b, k, "centrifugal")[0], r.Centrifugal, spin*spin*tol+1e-9)
-		near("Coriolis", told(t, b, k, "coriolis")[0], r.Coriolis, 4e-5*math.Abs(spin)*quick+1e-9)
+		near("inertial speed", shown["inertialSpeed"][0], math.Sqrt(v.X*v.X+v.Y*v.Y+v.Z*v.Z), 2e-5*quick+1e-9)
+		near("centrifugal", shown["centrifugal"][0], r.Centrifugal, spin*spin*tol+1e-9)
+		near("Coriolis", shown["coriolis"][0], r.Coriolis, 4e-5*math.Abs(spin)*quick+1e-9)
 	}
 }
 
@@ -119,10 +136,9 @@ func rowRatio(j *job, deck int, r measure.Sample) float64 {
 	return j.model().Decks[deck].Radius / math.Max(1e-3, math.Hypot(r.Local.Pos.X, r.Local.Pos.Y))
 }
 
-// TestPlayerPlays plays, drags, steps and keys one player of several, and holds what its
+// playerPlays plays, drags, steps and keys one player of several, and holds what its
 // numbers say at the landing against the landings table.
-func TestPlayerPlays(t *testing.T) {
-	b := newBrowser(t)
+func playerPlays(t *testing.T, b *browser) {
 	j := computed(t, "../../scenarios/shipped/overhead-locker.toml")
 	b.do(t, chromedp.Navigate("file://"+pageOf(t, j, 0, 1)))
 	landing := &j.results[0].Landing
@@ -131,11 +147,11 @@ func TestPlayerPlays(t *testing.T) {
 	}
 
 	before := told(t, b, 0, "drawn")
-	b.do(t, chromedp.Click(".film-play"), chromedp.Sleep(400*time.Millisecond))
+	b.do(t, press(".film-play"), chromedp.Sleep(400*time.Millisecond))
 	if words(".film-play") != "Pause" {
 		t.Errorf("playing, the button says %q", words(".film-play"))
 	}
-	b.do(t, chromedp.Click(".film-play"))
+	b.do(t, press(".film-play"))
 	after := told(t, b, 0, "drawn")
 	for n, name := range []string{"x on board", "y on board", "x outside"} {
 		if n := []int{0, 1, 2}[n]; before[n] == after[n] {
@@ -149,11 +165,11 @@ func TestPlayerPlays(t *testing.T) {
 	// One step forward is the next multiple of the output step; two back are before it.
 	at := told(t, b, 0, "time")[0]
 	step := j.model().Output.Step
-	b.do(t, chromedp.Click(".film-forth"))
+	b.do(t, press(".film-forth"))
 	if got, want := told(t, b, 0, "time")[0], (math.Floor(at/step+1e-6)+1)*step; math.Abs(got-want) > 1e-9 {
 		t.Errorf("a step from %g s leads to %g s, wants %g s", at, got, want)
 	}
-	b.do(t, chromedp.Click(".film-back"), chromedp.Click(".film-back"))
+	b.do(t, press(".film-back"), press(".film-back"))
 	if got := told(t, b, 0, "time")[0]; got >= at && at > step {
 		t.Errorf("steps back from %g s lead to %g s", at, got)
 	}
@@ -170,7 +186,6 @@ func TestPlayerPlays(t *testing.T) {
 			t.Errorf("%s: speed %q, wants %q", how, got, want)
 		}
 	}
-	b.do(t, chromedp.Focus(".film-strip"))
 	home(t, b)
 	drag(t, b)
 	landed("dragging to the right end")
@@ -189,6 +204,11 @@ func TestPlayerPlays(t *testing.T) {
 		t.Errorf("the slider says %q", got)
 	}
 	b.quiet(t)
+}
+
+// press clicks the first element of a class.
+func press(css string) chromedp.Action[chromedp.Void] {
+	return chromedp.Evaluate[chromedp.Void](fmt.Sprintf(`document.querySelector(%q).click()`, css))
 }
 
 func key(t *testing.T, b *browser, name string) {
@@ -220,10 +240,9 @@ func drag(t *testing.T, b *browser) {
 		chromedp.MouseEvent(input.DispatchMouseEventTypeMouseReleased, box[0]+box[2]*0.999, y, chromedp.ButtonLeft))
 }
 
-// TestMovingPictureMoves shows a moving picture as an image, whose document runs no script,
+// pictureMoves shows a moving picture as an image, whose document runs no script,
 // and looks twice.
-func TestMovingPictureMoves(t *testing.T) {
-	b := newBrowser(t)
+func pictureMoves(t *testing.T, b *browser) {
 	j := computed(t, "../../scenarios/shipped/overhead-locker.toml")
 	dir := t.TempDir()
 	page := `<!DOCTYPE html><meta charset="utf-8"><title>Image</title><img width="880" alt="" src="picture.svg">`
