@@ -34,11 +34,11 @@ func Style() template.CSS {
 	light := vars(func(h hue) string { return h.light }, "#767676", "#D55E00")
 	dark := vars(func(h hue) string { return h.dark }, "#8A9199", "#F58A45")
 	drawn := rules(func(h hue) string { return "var(--film-" + h.name + ")" })
-	return template.CSS(light + "\n@media screen and (prefers-color-scheme:dark){" + dark + "}\n" + within1(drawn) + "\n" + style)
+	return template.CSS(light + "\n@media screen and (prefers-color-scheme:dark){" + dark + "}\n" + scoped(drawn) + "\n" + style)
 }
 
-// within1 puts each rule under the class of films, so that none touches the rest of a page.
-func within1(css string) string {
+// scoped puts each rule under the class of films, so that none touches the rest of a page.
+func scoped(css string) string {
 	var b strings.Builder
 	for _, rule := range strings.SplitAfter(css, "}") {
 		selectors, body, ok := strings.Cut(strings.TrimSpace(rule), "{")
