@@ -44,17 +44,6 @@ func (p *path) op(c byte, vs ...float64) {
 	}
 }
 
-// line goes through points, which are in units.
-func (p *path) line(pts [][2]float64) {
-	for i, q := range pts {
-		if i == 0 {
-			p.op('M', q[0], q[1])
-		} else {
-			p.op('L', q[0], q[1])
-		}
-	}
-}
-
 // structure gives the structure as SVG: tints first, so that none covers a line. Of what turns
 // about the axis in itself, fixed is true.
 func (v view) structure(outlines []plots.Outline) (moving, fixed string) {
