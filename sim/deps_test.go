@@ -29,10 +29,10 @@ var allowed = map[string][]string{
 	"sim/measure":         {"sim/flight", "sim/crew", "sim/model", "sim/frame", "sim/geom", "sim/table"},
 	"sim/study":           {"sim/measure", "sim/flight", "sim/crew", "sim/model", "sim/frame", "sim/table"},
 	"plots":               {"sim/table", "sim/geom"},
+	"plots/motion":        {"plots", "sim/table"},
 	"scenarios":           {"sim/study", "sim/measure", "sim/model", "sim/air", "sim/frame", "sim/geom", "sim/table"},
 	"scenarios/published": {"scenarios", "sim/study", "sim/measure", "sim/model", "sim/air", "sim/frame"},
-	"cmd/offplumb": {"scenarios", "scenarios/published", "plots", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model",
-		"sim/air", "sim/frame", "sim/geom", "sim/table"},
+	"cmd/offplumb":        {"scenarios", "scenarios/published", "plots", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model", "integrator", "plots/motion", "sim/air", "sim/frame", "sim/geom", "sim/table"},
 }
 
 // outside is which modules each package may import beside the standard
@@ -115,6 +115,7 @@ func TestPolicyRefuses(t *testing.T) {
 	for _, c := range [][2]string{
 		{"integrator", "offplumb/sim/model"},
 		{"plots", "offplumb/sim/model"},
+		{"plots/motion", "offplumb/sim/measure"},
 		{"sim/model", "offplumb/sim/flight"},
 		{"sim/flight", "github.com/pelletier/go-toml/v2"},
 	} {

@@ -7,6 +7,7 @@
 //	scenarios        the only package that knows TOML
 //	  published      published figures, and the scenarios that they are held against
 //	plots            tables and outlines -> figures; knows no models
+//	plots/motion     tracks and outlines -> the moving picture, in a page and alone
 //	sim/study        many runs, the worker pool
 //	sim/measure      pure functions of tracks: landings, deflection, samples, limits
 //	sim/flight       releases: flight, impact, slide, roll, rest

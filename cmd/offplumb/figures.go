@@ -48,7 +48,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, j.studyFigures()...)
 	all = append(all, scatterFigures(j)...)
 	all = append(all, sweepFigures(j)...)
-	return j.drawn(all), nil
+	return j.withFilms(j.drawn(all)), nil
 }
 
 func (j *job) drawn(all []drawing) []task {
