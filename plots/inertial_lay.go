@@ -1,6 +1,7 @@
 package plots
 
 import (
+	"errors"
 	"math"
 
 	"gonum.org/v1/plot/vg"
@@ -15,12 +16,20 @@ type inertial struct {
 	turned float64   // rad, from release to landing
 }
 
-func newInertial(spec InertialViewSpec, head headline, tr track) *inertial {
+func newInertial(spec InertialViewSpec) (*inertial, error) {
+	head := headline{spec.Title, spec.Desc, spec.Notes, spec.Spin}
+	tr, trErr := newTrack(spec.Path)
+	if err := errors.Join(head.check(), spec.check(), trErr); err != nil {
+		return nil, err
+	}
 	r := spec.Foot.norm()
 	turn := -math.Pi/2 - math.Atan2(spec.Foot.Y, spec.Foot.X) - spec.ReleaseAngle
 	up := Point{0, r}
 	s := &inertial{spec: spec, turned: spec.LandingAngle - spec.ReleaseAngle}
 	s.scene = scene{head: head, radius: r, body: spec.Body, every: spec.TickEvery, surface: spec.Surface}
+	if spec.Flat {
+		s.normal = &spec.Height
+	}
 	s.track = track{t: tr.t, ph: tr.ph}
 	for _, p := range tr.at {
 		s.track.at = append(s.track.at, p.turned(turn).add(up))
@@ -36,7 +45,7 @@ func newInertial(spec InertialViewSpec, head headline, tr track) *inertial {
 	if len(spec.Outlines) == 0 {
 		s.outlines = []Outline{{Kind: Deck, Path: Circle(up, r)}}
 	}
-	return s
+	return s, nil
 }
 
 // foot is where the foot of the plumb line at release has moved to.
@@ -101,6 +110,20 @@ func (s *inertial) offsetDrawn() bool {
 }
 
 func (s *inertial) paint(p *pad) {
+	s.paintView(p)
+	s.drawStrip(p, "spinward", "up", s.statement(s.dashed()))
+	s.sheet.draw(p)
+}
+
+// dashed says what the dashed outlines are.
+func (s *inertial) dashed() string {
+	if len(s.before) == 0 {
+		return ""
+	}
+	return " Dashed: the structure at release."
+}
+
+func (s *inertial) paintView(p *pad) {
 	for _, o := range s.before {
 		s.v.edges(p, penGhost, o)
 	}
@@ -111,12 +134,6 @@ func (s *inertial) paint(p *pad) {
 	s.paintMotion(p)
 	s.footMark(p, Point{})
 	s.footMark(p, s.foot())
-	dashed := ""
-	if len(s.before) > 0 {
-		dashed = " Dashed: the structure at release."
-	}
-	s.drawStrip(p, "spinward", "up", s.statement(dashed))
-	s.sheet.draw(p)
 }
 
 // footMark is a small triangle that stands on the deck, point down on the plumb foot.

@@ -20,6 +20,8 @@ type scene struct {
 	landing  *Point
 	rest     *Point
 	surface  string
+	normal   *float64 // m, height of the release along the normal of a flat deck, where the view is along a plumb line
+	part     *part // of a sheet with several views; nil: the view has the sheet for itself
 
 	whole bool // the whole ring is shown
 	deck  deckLine
@@ -146,7 +148,11 @@ func (s *scene) lay(must area, column float64, wanted []dimension) {
 		f = frame{left: round, right: round, top: round, bottom: round}
 		must.addArc(Point{0, s.radius}, s.radius, 0, 2*math.Pi)
 	}
-	s.stage = newStage(sheetPlan{title: s.head.title, notes: s.head.notes, side: column, strip: true}, must, f)
+	plan := sheetPlan{title: s.head.title, notes: s.head.notes, side: column, strip: true}
+	if s.part != nil {
+		plan = sheetPlan{strip: true, part: s.part}
+	}
+	s.stage = newStage(plan, must, f)
 	s.deck = deckLine{v: s.v, radius: s.radius}
 	s.dims = dimensioner{deck: s.deck, win: s.win, below: s.depth()}
 	s.ticks, s.step = s.track.timeMarks(s.v, s.every)

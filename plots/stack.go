@@ -3,6 +3,7 @@ package plots
 import (
 	"errors"
 	"fmt"
+	"math"
 )
 
 // StackChartSpec is what StackChart draws: panels above one another with one axis along.
@@ -29,6 +30,7 @@ type PanelSpec struct {
 type CurveSpec struct {
 	Name string
 	Y    []float64
+	X    []float64 // its own places along, never decreasing; nil: those of the chart
 }
 
 // Level is a line across a panel, such as a limit.
@@ -70,7 +72,7 @@ func (s StackChartSpec) check() error {
 
 func (p PanelSpec) check(n int) error {
 	for _, c := range p.Curves {
-		if err := checkValues(p.Title+" "+c.Name, n, c.Y); err != nil {
+		if err := c.check(p.Title+" "+c.Name, n); err != nil {
 			return err
 		}
 	}
@@ -80,6 +82,19 @@ func (p PanelSpec) check(n int) error {
 		}
 	}
 	return nil
+}
+
+// check wants n values, or as many as the curve has places of its own.
+func (c CurveSpec) check(name string, n int) error {
+	for i, x := range c.X {
+		if !finite(x) || math.Abs(x) > maxValue || i > 0 && x < c.X[i-1] {
+			return fmt.Errorf("%s: value %d along, %g, cannot be drawn or runs back", name, i, x)
+		}
+	}
+	if c.X != nil {
+		n = len(c.X)
+	}
+	return checkValues(name, n, c.Y)
 }
 
 // StackChart draws panels above one another. It is an error if the values along are not
@@ -101,9 +116,13 @@ func StackChart(spec StackChartSpec) (*Figure, error) {
 func (s StackChartSpec) panels() (out []*panel) {
 	for _, p := range s.Panels {
 		q := &panel{title: p.Title, most: p.Most, levels: p.Levels}
-		for _, c := range p.Curves {
-			if _, _, ok := span(c.Y); ok {
-				q.curves = append(q.curves, curve{c.Name, s.X, c.Y, seriesPen(len(q.curves)), false})
+		for i, c := range p.Curves {
+			x := s.X
+			if c.X != nil {
+				x = c.X
+			}
+			if _, _, ok := span(c.Y); ok { // one line has the same pen in all panels
+				q.curves = append(q.curves, curve{c.Name, x, c.Y, seriesPen(i), false})
 			}
 		}
 		if len(q.curves) > 0 {

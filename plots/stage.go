@@ -42,6 +42,9 @@ func newStage(plan sheetPlan, must area, f frame) stage {
 	size := must.size()
 	winW := math.Min(w, math.Max(leastWide-plan.side, size.X*perM+f.wide()))
 	winH := math.Min(h, math.Max(leastHigh, size.Y*perM+f.high()))
+	if plan.part != nil {
+		winW = w // all parts are of one width
+	}
 	s := stage{sheet: plan.lay(winW, winH)}
 	s.win.Min = s.win.Min.Add(xy(f.numbersLeft, f.numbersLow))
 	free := vg.Rectangle{Min: s.win.Min.Add(xy(f.left, f.bottom)), Max: s.win.Max.Sub(xy(f.right, f.top))}

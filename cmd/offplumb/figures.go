@@ -33,6 +33,9 @@ type drawing struct {
 
 // figures lists the figures of the run, in each of the formats asked for.
 func (j *job) figures() ([]task, error) {
+	if j.Asked {
+		return j.drawn(j.askedFigures()), nil
+	}
 	var all []drawing
 	var names table.Namer
 	for i := range j.results {
@@ -48,6 +51,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, j.studyFigures()...)
 	all = append(all, scatterFigures(j)...)
 	all = append(all, sweepFigures(j)...)
+	all = append(all, j.askedFigures()...)
 	return j.drawn(all), nil
 }
 
@@ -175,7 +179,9 @@ func (s *side) uniform(u *measure.Uniform) []plots.Point {
 	return out
 }
 
-func (j *job) sideView(i int) (*plots.Figure, error) {
+func (j *job) sideView(i int) (*plots.Figure, error) { return plots.SideView(j.sideSpec(i)) }
+
+func (j *job) sideSpec(i int) plots.SideViewSpec {
 	m, r := j.model(), &j.results[i]
 	t, l := r.Track, &r.Landing
 	s := j.sideOf(t)
@@ -193,7 +199,7 @@ func (j *job) sideView(i int) (*plots.Figure, error) {
 		spec.Rest = landingOn(spec.Track, t.End)
 	}
 	spec.Desc = described("Side view in the habitat frame, seen from the +axial end: %s.", sentence(l))
-	return plots.SideView(spec)
+	return spec
 }
 
 // landingOn gives the point of a drawn track at a time, which is one of its
@@ -243,16 +249,31 @@ func (j *job) sideNotes(l *measure.Landing, on *side) string {
 	return s
 }
 
-func (j *job) inertialView(i int) (*plots.Figure, error) {
+func (j *job) inertialView(i int) (*plots.Figure, error) { return plots.InertialView(j.inertialSpec(i)) }
+
+// bothViews draws a release on board and from outside.
+func (j *job) bothViews(i int) (*plots.Figure, error) {
+	spec := plots.BothViewsSpec{Side: j.sideSpec(i), Inertial: j.inertialSpec(i)}
+	spec.Title = spec.Side.Title
+	spec.Desc = described("One release in two views above one another: on board, and from outside in the inertial frame. %s.", sentence(&j.results[i].Landing))
+	spec.Notes = spec.Side.Notes + " " + strings.TrimPrefix(spec.Inertial.Notes, "Inertial frame, seen from the +axial end. ") + " Both are seen from the +axial end."
+	return plots.BothViews(spec)
+}
+
+func (j *job) inertialSpec(i int) plots.InertialViewSpec {
 	m, r := j.model(), &j.results[i]
 	t, l := r.Track, &r.Landing
 	g := measure.GroundOf(m, t)
 	foot := frame.Polar{R: g.Foot(t.Start.Phi), Phi: t.Start.Phi}.Vec()
 	turned := m.Habitat.Spin
-	spec := plots.InertialViewSpec{Title: l.Release + ": the same motion from outside, in the inertial frame", Spin: m.Habitat.Spin,
+	spec := plots.InertialViewSpec{Title: l.Release + ": from outside, in the inertial frame", Spin: m.Habitat.Spin,
 		Outlines: j.section(t.Start.Z, 0, plots.Point{}), Foot: plots.Point{X: foot.X, Y: foot.Y},
 		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + l.Time), Body: t.Body.Diameter / 2,
 		Surface: l.Surface, Offset: l.Offset, Flat: g.Flat != nil, Notes: j.inertialNotes(t, l)}
+	if g.Flat != nil {
+		begin := j.seenFrom(t, l.Time)[0]
+		_, _, spec.Height = g.Place(begin.pos, begin.place.Phi)
+	}
 	for _, at := range moments(t, m.Habitat.Spin, l.Time) {
 		p := t.At(at).Pos
 		spec.Path = append(spec.Path, plots.TrackPoint{T: at, X: p.X, Y: p.Y, Phase: t.Phases[t.PhaseAt(at)].Kind.String()})
@@ -262,7 +283,7 @@ func (j *job) inertialView(i int) (*plots.Figure, error) {
 	}
 	spec.Desc = described("View in the inertial frame from the +axial end: %s, while the habitat turns by %s deg.",
 		sentence(l), table.Round(math.Abs(turned*l.Time)*180/math.Pi, 3))
-	return plots.InertialView(spec)
+	return spec
 }
 
 func (j *job) inertialNotes(t *flight.Track, l *measure.Landing) string {

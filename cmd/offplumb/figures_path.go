@@ -88,12 +88,20 @@ func (j *job) pathFigures() []drawing {
 
 // planPaths gives the ways of the crew paths that start on a deck.
 func (j *job) planPaths(deck int) []plots.PlanPath {
-	var out []plots.PlanPath
+	var which []int
 	for i := range j.paths {
-		p := &j.paths[i]
-		if p.skipped || p.plan.Deck != deck || !p.roams() {
-			continue
+		if p := &j.paths[i]; !p.skipped && p.plan.Deck == deck && p.roams() {
+			which = append(which, i)
 		}
+	}
+	return j.waysOf(which)
+}
+
+// waysOf gives the ways of crew paths on a plan.
+func (j *job) waysOf(which []int) []plots.PlanPath {
+	var out []plots.PlanPath
+	for _, i := range which {
+		p := &j.paths[i]
 		way := plots.PlanPath{Name: p.plan.Path.Name}
 		for _, k := range spread(len(p.loads), wayPoints) {
 			way.Points = append(way.Points, plots.Point{X: p.loads[k].Arc, Y: p.loads[k].Feet.Z})

@@ -30,11 +30,11 @@ func (j *job) sharedFigures() []drawing {
 			file = fmt.Sprintf("deflection-%d", n+1)
 		}
 		part := shown[n*seriesShown : min(len(shown), (n+1)*seriesShown)]
-		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart(part) }})
+		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart("", part) }})
 	}
 	var names table.Namer
 	for _, p := range j.plans() {
-		out = append(out, drawing{"plan-" + names.Name(p.ground.Name), "deck plan", p.ground.Name, func() (*plots.Figure, error) { return j.deckPlan(p) }})
+		out = append(out, drawing{"plan-" + names.Name(p.ground.Name), "deck plan", p.ground.Name, func() (*plots.Figure, error) { return j.deckPlan(p.title(), p) }})
 	}
 	return out
 }
@@ -44,6 +44,7 @@ type plan struct {
 	ground measure.Ground
 	deck   int // of a deck about the axis
 	over   []int
+	paths  []int // crew paths; nil: all that start on the deck
 }
 
 // title says what a plan shows.
@@ -75,8 +76,10 @@ func (j *job) plans() []*plan {
 	return j.pathPlans(out)
 }
 
-func (j *job) deflectionChart(which []int) (*plots.Figure, error) {
-	spec := plots.DeflectionChartSpec{Title: "Apparent deflection against height and time", Spin: j.model().Habitat.Spin,
+// deflectionChart draws what releases are off from uniform gravity; a title of its
+// own may be empty.
+func (j *job) deflectionChart(title string, which []int) (*plots.Figure, error) {
+	spec := plots.DeflectionChartSpec{Title: title, Spin: j.model().Habitat.Spin,
 		Notes: "Deck offset less that of the uniform-gravity path, spinward positive."}
 	words := ""
 	for _, i := range which {
@@ -84,7 +87,11 @@ func (j *job) deflectionChart(which []int) (*plots.Figure, error) {
 		spec.Series = append(spec.Series, j.deflection(r.Track, &r.Landing))
 		words += " " + sentence(&r.Landing) + "."
 	}
-	if len(which) == 1 {
+	switch {
+	case title != "":
+	case len(which) > 1:
+		spec.Title = "Apparent deflection against height and time"
+	default:
 		spec.Title = j.results[which[0]].Landing.Release + ": apparent deflection against height and time"
 	}
 	spec.Desc = described("Apparent deflection of each release as it falls.%s", words)
@@ -120,14 +127,17 @@ func (j *job) pathPlans(out []*plan) []*plan {
 	return out
 }
 
-func (j *job) deckPlan(p *plan) (*plots.Figure, error) {
+func (j *job) deckPlan(title string, p *plan) (*plots.Figure, error) {
 	m := j.model()
-	spec := plots.DeckPlanSpec{Title: p.title(), Spin: m.Habitat.Spin,
+	spec := plots.DeckPlanSpec{Title: title, Spin: m.Habitat.Spin,
 		Notes: "Deck unrolled, seen from above by someone who stands on it. Open mark: plumb under the release. Numbered mark: plumb under the landing."}
 	if f := p.ground.Flat; f != nil {
 		spec.From, spec.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
 	} else {
 		j.deckSheet(&spec, &m.Decks[p.deck], p.deck)
+		if p.paths != nil {
+			spec.Paths = j.waysOf(p.paths)
+		}
 	}
 	words := ""
 	for _, i := range p.over {
