@@ -84,10 +84,20 @@ func newDeflection(spec DeflectionChartSpec) *deflection {
 	for i, s := range spec.Series {
 		heights, times = append(heights, s.Height), append(times, s.Time)
 		c.heights.curves = append(c.heights.curves, curve{s.Name, s.Height, s.Deflection, seriesPen(i), true})
-		c.times.curves = append(c.times.curves, curve{s.Name, s.Time, s.Deflection, seriesPen(i), true})
+		c.times.curves = append(c.times.curves, curve{s.Name + lastOf(s.Deflection), s.Time, s.Deflection, seriesPen(i), true})
 	}
 	c.place(heights, times)
 	return c
+}
+
+// lastOf gives the last value of a line, which the reader came for.
+func lastOf(deflection []float64) string {
+	for i := len(deflection) - 1; i >= 0; i-- {
+		if finite(deflection[i]) {
+			return ": " + signedLength(deflection[i])
+		}
+	}
+	return ""
 }
 
 // place sets the panels beside each other, the left one right of its numbers.

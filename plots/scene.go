@@ -21,7 +21,7 @@ type scene struct {
 	rest     *Point
 	surface  string
 	normal   *float64 // m, height of the release along the normal of a flat deck, where the view is along a plumb line
-	part     *part // of a sheet with several views; nil: the view has the sheet for itself
+	part     *part    // of a sheet with several views; nil: the view has the sheet for itself
 
 	whole bool // the whole ring is shown
 	deck  deckLine
@@ -130,9 +130,21 @@ func (s *scene) gone(a area) float64 {
 	return most
 }
 
-// lay makes the sheet on which must is shown with dimension lines below the deck.
+// lay makes the sheet on which must is shown with dimension lines below the deck, and
+// below the solid that the deck is the top of.
 func (s *scene) lay(must area, column float64, wanted []dimension) {
-	f := frame{left: 26, right: 26, top: 24, bottom: dimFirst + dimPitch*float64(len(wanted)) + 12}
+	s.layWith(must, column, wanted, 0)
+	if deep := s.solid(); deep > 0 {
+		s.layWith(must, column, wanted, deep)
+	}
+	s.deck = deckLine{v: s.v, radius: s.radius}
+	s.dims = dimensioner{deck: s.deck, win: s.win, below: math.Max(s.depth(), s.solid())}
+	s.ticks, s.step = s.track.timeMarks(s.v, s.every)
+}
+
+// layWith keeps deep pt more free below the deck.
+func (s *scene) layWith(must area, column float64, wanted []dimension, deep float64) {
+	f := frame{left: 26, right: 26, top: 24, bottom: deep + dimFirst + dimPitch*float64(len(wanted)) + 12}
 	laps := 0.0
 	for _, d := range wanted {
 		if s.radius == 0 {
@@ -153,9 +165,6 @@ func (s *scene) lay(must area, column float64, wanted []dimension) {
 		plan = sheetPlan{strip: true, part: s.part}
 	}
 	s.stage = newStage(plan, must, f)
-	s.deck = deckLine{v: s.v, radius: s.radius}
-	s.dims = dimensioner{deck: s.deck, win: s.win, below: s.depth()}
-	s.ticks, s.step = s.track.timeMarks(s.v, s.every)
 }
 
 // depth is how far below the deck, pt, the track gets in the window, as it does through

@@ -44,7 +44,7 @@ func (s sheetPlan) limits() (w, h float64) {
 }
 
 func (s sheetPlan) texts(w float64) (title, notes []string) {
-	return wrap(clean(s.title), w, sizeTitle, true, maxTitle), wrap(clean(s.notes), w, sizeNote, false, maxNotes)
+	return balanced(clean(s.title), w, sizeTitle, true, maxTitle), wrap(clean(s.notes), w, sizeNote, false, maxNotes)
 }
 
 func (s sheetPlan) extras(title, notes []string) (w, h float64) {

@@ -33,7 +33,8 @@ func (s *side) arrange() {
 		}
 	}
 	if s.hairy {
-		s.detail, words = newDetail(s, words), nil
+		near := closeUp{landing: *s.landing, top: s.track.at[0], offset: s.spec.Offset, body: s.body, outlines: s.outlines, track: s.track}
+		s.detail, words = newDetail(&s.scene, s.v.pt(*s.landing), near, words), nil
 		s.pl.polyline(priceThin, s.detail.pointer()...)
 	}
 	s.obstacles()

@@ -141,7 +141,7 @@ func (s *several) marksSay() string {
 	if s.step == 0 {
 		return ""
 	}
-	return " A mark each " + seconds(s.step) + "."
+	return " A mark each " + tickText(s.step, s.step) + " s."
 }
 
 func (s *several) paintMarks(p *pad, i int) {

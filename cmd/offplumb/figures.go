@@ -225,14 +225,14 @@ func outcomeWords(l *measure.Landing) string {
 	case math.IsNaN(l.Offset) || sigfig(l.Offset, 3) == "0":
 		return "lands on " + l.Surface + ", on the plumb line"
 	}
-	return "lands on " + l.Surface + ", " + way(l.Offset) + " off plumb"
+	return "lands on " + l.Surface + ", " + plots.SignedLength(l.Offset) + " off plumb"
 }
 
 // sentence tells a landing with its figures.
 func sentence(l *measure.Landing) string {
 	s := sideTitle(l) + ", after " + withUnit(l.Time, "s") + " at " + withUnit(l.Speed, "m/s")
 	if l.Outcome == flight.Landed && !math.IsNaN(l.Deflection) {
-		s += "; apparent deflection " + way(l.Deflection)
+		s += "; apparent deflection " + plots.SignedLength(l.Deflection)
 	}
 	return s
 }
