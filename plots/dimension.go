@@ -182,7 +182,7 @@ func (m *dimensioner) cover(d dimension, at dimPlace) []vg.Rectangle {
 
 func (m *dimensioner) free(cover []vg.Rectangle) bool {
 	text := cover[0]
-	if !within(m.win, text.Min) || !within(m.win, text.Max) {
+	if !within(m.win, text.Min) || !within(m.win, text.Max) || m.onDeck(text) {
 		return false
 	}
 	for _, a := range cover {
@@ -193,6 +193,19 @@ func (m *dimensioner) free(cover []vg.Rectangle) bool {
 		}
 	}
 	return true
+}
+
+// onDeck reports whether a text lies on the deck, as a level one does where the deck is steep.
+func (m *dimensioner) onDeck(text vg.Rectangle) bool {
+	if text.Max.X <= text.Min.X+4 { // no text
+		return false
+	}
+	if m.deck.radius == 0 {
+		return text.Max.Y > m.deck.at(0, 0).Y
+	}
+	c, r := m.deck.v.pt(Point{0, m.deck.radius}), m.deck.v.len(m.deck.radius)
+	near := nearest(text, c)
+	return math.Hypot((near.X - c.X).Points(), (near.Y - c.Y).Points()) < r.Points()
 }
 
 // draw draws a dimension: extension lines, line, arrows, text.

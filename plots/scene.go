@@ -151,12 +151,15 @@ func (s *scene) layWith(must area, column float64, wanted []dimension, deep floa
 			break
 		}
 		a := d.s1 / s.radius
-		laps = math.Max(laps, math.Abs(d.s1-d.s0)/(2*math.Pi*s.radius))
+		if turns := math.Abs(d.s1-d.s0) / (2 * math.Pi * s.radius); turns <= mostLaps { // more are not drawn
+			laps = math.Max(laps, turns)
+		}
 		f.left = math.Max(f.left, 26-math.Sin(a)*f.bottom) // up a flank, below the deck is sideways
 		f.right = math.Max(f.right, 26+math.Sin(a)*f.bottom)
 	}
 	if s.whole {
-		round := f.bottom + lap*math.Min(mostLaps, laps)
+		const least = 64.0 // pt: labels stand outside the ring
+		round := math.Max(least, f.bottom+lap*laps)
 		f = frame{left: round, right: round, top: round, bottom: round}
 		must.addArc(Point{0, s.radius}, s.radius, 0, 2*math.Pi)
 	}
@@ -184,7 +187,7 @@ func (s *scene) depth() float64 {
 	if deep < least {
 		return 0
 	}
-	return deep
+	return deep + s.body*s.v.perM // to what it touches there
 }
 
 // dimension finds room for a dimension line, and reports whether there is any.
