@@ -205,7 +205,7 @@ func (m *dimensioner) onDeck(text vg.Rectangle) bool {
 	}
 	c, r := m.deck.v.pt(Point{0, m.deck.radius}), m.deck.v.len(m.deck.radius)
 	near := nearest(text, c)
-	return math.Hypot((near.X - c.X).Points(), (near.Y - c.Y).Points()) < r.Points()
+	return math.Hypot((near.X-c.X).Points(), (near.Y-c.Y).Points()) < r.Points()
 }
 
 // draw draws a dimension: extension lines, line, arrows, text.

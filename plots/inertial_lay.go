@@ -65,7 +65,10 @@ func (s *inertial) arrange() {
 	if s.part == nil || s.whole { // a part has no paper to spare
 		axis := must
 		axis.add(Point{0, s.radius})
-		must = better(must, axis)
+		const worth = 0.65 // of the scale: it is good to see, but not what is asked for
+		if fit(axis.size(), 1.4, 1) >= worth*fit(must.size(), 1.4, 1) {
+			must = axis
+		}
 	}
 	wanted := s.wanted()
 	s.lay(must, 0, wanted)

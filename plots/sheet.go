@@ -158,7 +158,7 @@ func spinStatement(spin float64) string {
 	case spin > 0:
 		return "Spin " + rpm(spin) + ": the floor moves spinward."
 	case spin < 0:
-		return "Spin " + minus + rpm(spin) + ": the floor moves antispinward."
+		return "Spin " + minus + rpm(spin) + ": the floor moves antispinward. Spinward, as drawn, is against the rotation."
 	}
 	return "No spin."
 }

@@ -134,7 +134,7 @@ func wildFigures(w wild) []func() (*Figure, error) {
 		Groups:  []ScatterGroup{{"a", []Point{w.point(), w.point()}}, {"b", []Point{w.point()}}},
 		Ellipse: &PlanEllipse{w.point(), math.Abs(w.number()), math.Abs(w.number()), w.NormFloat64()}, Contour: [][]Point{{w.point(), w.point(), w.point()}}}
 	n := w.IntN(9)
-	deflections := DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", w.times(n), w.list(n), w.list(n)}, {"b", w.times(n), w.list(n), w.list(n)}}}
+	deflections := DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", w.times(n), w.list(n), w.list(n), w.number()}, {"b", w.times(n), w.list(n), w.list(n), 0}}}
 	loads := LoadsChartSpec{
 		Title: "t", Desc: "d", Time: w.times(n), Legs: []LegSpan{{"l", 0, math.Abs(w.number())}, {"m", w.number(), math.Abs(w.number())}},
 		GravityFeet: w.list(n), Weight: w.list(n), Friction: w.list(n), HeadCross: w.list(n),

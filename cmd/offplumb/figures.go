@@ -249,7 +249,9 @@ func (j *job) sideNotes(l *measure.Landing, on *side) string {
 	return s
 }
 
-func (j *job) inertialView(i int) (*plots.Figure, error) { return plots.InertialView(j.inertialSpec(i)) }
+func (j *job) inertialView(i int) (*plots.Figure, error) {
+	return plots.InertialView(j.inertialSpec(i))
+}
 
 // bothViews draws a release on board and from outside.
 func (j *job) bothViews(i int) (*plots.Figure, error) {

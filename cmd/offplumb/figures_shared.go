@@ -80,7 +80,7 @@ func (j *job) plans() []*plan {
 // own may be empty.
 func (j *job) deflectionChart(title string, which []int) (*plots.Figure, error) {
 	spec := plots.DeflectionChartSpec{Title: title, Spin: j.model().Habitat.Spin,
-		Notes: "Deck offset less that of the uniform-gravity path, spinward positive."}
+		Notes: "Deck offset less that of the uniform-gravity path at the same moment, or at its landing once it has landed; spinward positive."}
 	words := ""
 	for _, i := range which {
 		r := &j.results[i]
@@ -110,6 +110,11 @@ func (j *job) deflection(t *flight.Track, l *measure.Landing) plots.DeflectionSe
 		_, _, h := g.Place(s.pos, s.place.Phi)
 		out.Height = append(out.Height, h)
 		out.Deflection = append(out.Deflection, g.Offset(s.place.Phi)-u)
+	}
+	// A landing that comes at another time than that of the uniform-gravity path is
+	// compared with a place that no moment of the chart shows.
+	if last := out.Deflection[len(out.Deflection)-1]; plots.SignedLength(last) == plots.SignedLength(l.Deflection) {
+		out.AtLanding = l.Deflection
 	}
 	return out
 }

@@ -1,0 +1,330 @@
+package main
+
+import (
+	"bytes"
+	"encoding/xml"
+	"fmt"
+	"io"
+	"math/rand/v2"
+	"os"
+	"path/filepath"
+	"regexp"
+	"strconv"
+	"strings"
+	"testing"
+
+	"gonum.org/v1/plot/font"
+	"gonum.org/v1/plot/font/liberation"
+	"offplumb/plots"
+	"offplumb/scenarios"
+)
+
+// TestShippedFiguresAreClear draws every figure of every shipped scenario, and of each
+// kind that it could ask for, and holds it to the language of the figures.
+func TestShippedFiguresAreClear(t *testing.T) {
+	paths, err := filepath.Glob("../../scenarios/shipped/*.toml")
+	if err != nil || len(paths) == 0 {
+		t.Fatal(paths, err)
+	}
+	dir := t.TempDir()
+	list, err := os.ReadFile("../../scenarios/shipped/stowage.csv")
+	if err != nil {
+		t.Fatal(err)
+	}
+	put(t, filepath.Join(dir, "stowage.csv"), string(list))
+	for _, path := range paths {
+		src, err := os.ReadFile(path)
+		if err != nil {
+			t.Fatal(err)
+		}
+		t.Run(filepath.Base(path), func(t *testing.T) {
+			t.Parallel()
+			checkFigures(t, filepath.Join(dir, filepath.Base(path)), string(src))
+		})
+	}
+}
+
+// TestRandomFiguresAreClear does the same with habitats from a turntable to a world, of
+// either spin.
+func TestRandomFiguresAreClear(t *testing.T) {
+	const seed, rounds = 7, 12
+	dir := t.TempDir()
+	r := rand.New(rand.NewPCG(seed, 0))
+	for i := range rounds {
+		src := randomScenario(r, i)
+		t.Run(fmt.Sprintf("seed %d round %d", seed, i), func(t *testing.T) {
+			t.Parallel()
+			checkFigures(t, filepath.Join(dir, fmt.Sprintf("random-%d.toml", i)), src)
+			if t.Failed() {
+				t.Log(src)
+			}
+		})
+	}
+}
+
+// randomScenario has three releases in a habitat of 0.2 to 2 g.
+func randomScenario(r *rand.Rand, i int) string {
+	radius := []float64{3, 11, 40, 300, 5e3, 4e6}[i%6] * (1 + r.Float64())
+	sign := []string{"", "-"}[r.IntN(2)]
+	speed := 1.4 + r.Float64()
+	for v := 1.0; v < radius; v *= 4 { // rim speed grows as the root of the radius
+		speed *= 2
+	}
+	var b strings.Builder
+	fmt.Fprintf(&b, "format = 1\n[habitat]\nfloor_radius = \"%g m\"\nrim_speed = \"%s%g m/s\"\nlength = \"9 m\"\n", radius, sign, speed)
+	fmt.Fprintf(&b, "[[body]]\nname = \"ball\"\nmass = \"0.4 kg\"\ndiameter = \"%g mm\"\nrestitution = %.2f\nfriction = 0.4\n", 20+300*r.Float64(), r.Float64()*0.7)
+	for k := range 3 {
+		fmt.Fprintf(&b, "[[release]]\nname = \"release number %d\"\nbody = \"ball\"\nuntil = \"20 s\"\nat = { height = \"%g m\", spinward = \"%g m\", axial = \"%g m\" }\n",
+			k, 0.3+1.5*r.Float64(), 4*r.Float64()-2, 4*r.Float64()-2)
+		if k > 0 {
+			fmt.Fprintf(&b, "throw = { speed = \"%g m/s\", heading = \"%g deg\", elevation = \"%g deg\" }\n", 6*r.Float64(), 360*r.Float64(), 90*r.Float64())
+		}
+	}
+	return b.String()
+}
+
+func put(t *testing.T, path, text string) {
+	t.Helper()
+	if err := os.WriteFile(path, []byte(text), 0o666); err != nil {
+		t.Fatal(err)
+	}
+}
+
+// checkFigures runs a scenario with figures of all kinds asked for.
+func checkFigures(t *testing.T, path, src string) {
+	t.Helper()
+	put(t, path, src+asking(t, path, src))
+	out := strings.TrimSuffix(path, ".toml") + "-out"
+	args := []string{"run", path, "--out", out, "--quiet", "--jobs", "1"}
+	for _, name := range regexp.MustCompile(`(?m)^\[\[scatter\]\]\nname *= *"([^"]*)"`).FindAllStringSubmatch(src, -1) {
+		args = append(args, "--set", `scatter."`+name[1]+`".samples=200`)
+	}
+	var stdout, stderr bytes.Buffer
+	if got := run(args, nil, &stdout, &stderr); got != exitDone && got != exitBroken {
+		t.Fatalf("exit status %d: %s", got, stderr.String())
+	}
+	figures, err := filepath.Glob(filepath.Join(out, "*.svg"))
+	if err != nil || len(figures) == 0 {
+		t.Fatal("no figures", err)
+	}
+	for _, name := range figures {
+		svg, err := os.ReadFile(name)
+		if err != nil {
+			t.Fatal(err)
+		}
+		checkFigure(t, filepath.Base(name), svg)
+	}
+}
+
+// asking are [[figure]] blocks of all kinds that a scenario has things for.
+func asking(t *testing.T, path, src string) string {
+	t.Helper()
+	sc, err := scenarios.Load(path, []byte(src), scenarios.Options{ReadFile: func(name string) ([]byte, error) {
+		return os.ReadFile(filepath.Join(filepath.Dir(path), name))
+	}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	var b strings.Builder
+	ask := func(kind string, of []string) {
+		if len(of) > 0 {
+			fmt.Fprintf(&b, "\n[[figure]]\nname = \"test %s\"\nkind = %q\nof = [\"%s\"]\n", kind, kind, strings.Join(of, `", "`))
+		}
+	}
+	var releases, paths, scatters, sweeps, series []string
+	for _, r := range sc.Model.Releases {
+		if r.Series != "" && (len(series) == 0 || series[len(series)-1] != "release."+r.Series) {
+			series = append(series, "release."+r.Series)
+		} else if r.Series == "" && !r.NoTrack {
+			releases = append(releases, "release."+r.Name)
+		}
+	}
+	for _, p := range sc.Model.Paths {
+		paths = append(paths, "path."+p.Name)
+	}
+	for _, s := range sc.Model.Scatters {
+		scatters = append(scatters, "study."+s.Name)
+	}
+	for _, s := range sc.Sweeps {
+		sweeps = append(sweeps, "study."+s.Name)
+	}
+	few := func(of []string) []string { return of[:min(len(of), scenarios.MostTogether)] }
+	for _, kind := range []string{"side", "inertial", "stack", "deflection", "plan"} {
+		ask(kind, few(releases))
+	}
+	ask("loads", few(paths))
+	ask("path", paths)
+	ask("scatter", scatters)
+	ask("sweep", sweeps)
+	ask("let_go", series)
+	if len(releases) == 0 {
+		ask("side", series)
+	}
+	return b.String()
+}
+
+// svgWords is a text and the paper that it takes, pt, y downward.
+type svgWords struct {
+	s              string
+	x0, y0, x1, y1 float64
+}
+
+var roundArc = regexp.MustCompile(`A([0-9.e+-]+),([0-9.e+-]+) `)
+
+// checkFigure holds an SVG to: well formed, a title and a description, arcs round, no
+// text on another or off the sheet, none smaller than 7.5 pt, styles scoped.
+func checkFigure(t *testing.T, name string, svg []byte) {
+	t.Helper()
+	list, size, seen := readSVG(t, name, svg)
+	for _, tag := range []string{"svg", "title", "desc", "style", "text"} {
+		if seen[tag] == 0 {
+			t.Errorf("%s: no <%s>", name, tag)
+		}
+	}
+	for _, a := range roundArc.FindAllSubmatch(svg, -1) {
+		if !bytes.Equal(a[1], a[2]) {
+			t.Errorf("%s: an arc with radii %s and %s", name, a[1], a[2])
+		}
+	}
+	const slack = 0.3 // pt: the box of a text is a little taller than its letters
+	for i, a := range list {
+		if a.x0 < 0 || a.x1 > size[0] || a.y0 < 0 || a.y1 > size[1] {
+			t.Errorf("%s: %q is off the sheet", name, a.s)
+		}
+		for _, b := range list[:i] {
+			if a.x0 < b.x1-slack && b.x0 < a.x1-slack && a.y0 < b.y1-slack && b.y0 < a.y1-slack {
+				t.Errorf("%s: %q lies on %q", name, a.s, b.s)
+			}
+		}
+	}
+}
+
+func readSVG(t *testing.T, name string, svg []byte) (list []svgWords, size [2]float64, seen map[string]int) {
+	t.Helper()
+	fonts := font.NewCache(liberation.Collection())
+	seen = map[string]int{}
+	dec := xml.NewDecoder(bytes.NewReader(svg))
+	var open xml.StartElement
+	var words strings.Builder
+	for {
+		tok, err := dec.Token()
+		if err == io.EOF {
+			return list, size, seen
+		}
+		if err != nil {
+			t.Fatalf("%s: %v", name, err)
+		}
+		switch k := tok.(type) {
+		case xml.StartElement:
+			open = k.Copy()
+			seen[k.Name.Local]++
+			words.Reset()
+			if k.Name.Local == "svg" {
+				size = [2]float64{attrNumber(t, &open, "width"), attrNumber(t, &open, "height")}
+			}
+		case xml.CharData:
+			words.Write(k)
+		case xml.EndElement:
+			if k.Name.Local == "text" {
+				list = append(list, boxOf(t, fonts, &open, words.String(), size[1]))
+			}
+			if k.Name.Local == "style" {
+				checkScope(t, name, words.String())
+			}
+		}
+	}
+}
+
+// checkScope wants each rule to hold within a figure alone.
+func checkScope(t *testing.T, name, style string) {
+	t.Helper()
+	_, rules, _ := strings.Cut(style, "{")
+	for _, rule := range strings.Split(strings.TrimSuffix(rules, "}"), "}") {
+		if rule != "" && !strings.HasPrefix(rule, ".offplumb-figure ") {
+			t.Errorf("%s: the rule %q reaches beyond the figure", name, rule)
+		}
+	}
+}
+
+func boxOf(t *testing.T, fonts *font.Cache, e *xml.StartElement, words string, high float64) svgWords {
+	t.Helper()
+	const cap, tail, least = 0.73, 0.21, 7.5
+	size := attrNumber(t, e, "font-size")
+	if size < least {
+		t.Errorf("%q has size %g", words, size)
+	}
+	f := font.Font{Typeface: "Liberation", Variant: "Sans", Size: font.Length(size)}
+	if attrOf(e, "font-weight") == "bold" {
+		f.Weight = 3
+	}
+	face := fonts.Lookup(f, f.Size)
+	x, y := attrNumber(t, e, "x"), high+attrNumber(t, e, "y")
+	return svgWords{words, x, y - cap*size, x + face.Width(words).Points(), y + tail*size}
+}
+
+func attrOf(e *xml.StartElement, name string) string {
+	for _, a := range e.Attr {
+		if a.Name.Local == name {
+			return a.Value
+		}
+	}
+	return ""
+}
+
+func attrNumber(t *testing.T, e *xml.StartElement, name string) float64 {
+	t.Helper()
+	v, err := strconv.ParseFloat(strings.TrimRight(attrOf(e, name), "pxt"), 64)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return v
+}
+
+// TestAllKindsInAllFormats writes a figure of each kind in each format, twice.
+func TestAllKindsInAllFormats(t *testing.T) {
+	src, err := os.ReadFile("../../scenarios/shipped/galley-ring.toml")
+	if err != nil {
+		t.Fatal(err)
+	}
+	dir := t.TempDir()
+	list, err := os.ReadFile("../../scenarios/shipped/stowage.csv")
+	if err != nil {
+		t.Fatal(err)
+	}
+	put(t, filepath.Join(dir, "stowage.csv"), string(list))
+	path := filepath.Join(dir, "all.toml")
+	text := string(src)
+	put(t, path, text+asking(t, path, text)+"\n")
+	magic := map[string]string{"svg": "<?xml", "png": "\x89PNG", "pdf": "%PDF"}
+	var before map[string][]byte
+	for round, jobs := range []string{"1", "4"} {
+		out := filepath.Join(dir, "out"+jobs)
+		var stdout, stderr bytes.Buffer
+		if got := run([]string{"run", path, "--out", out, "--quiet", "--jobs", jobs, "--figure-format", "svg,png,pdf",
+			"--set", `scatter."wrench, careless hand".samples=100`}, nil, &stdout, &stderr); got > exitBroken {
+			t.Fatalf("exit status %d: %s", got, stderr.String())
+		}
+		files := map[string][]byte{}
+		for _, format := range plots.Formats() {
+			names, _ := filepath.Glob(filepath.Join(out, "*."+format))
+			if len(names) < 12 {
+				t.Fatalf("%d %s files", len(names), format)
+			}
+			for _, name := range names {
+				data, err := os.ReadFile(name)
+				if err != nil || !bytes.HasPrefix(data, []byte(magic[format])) {
+					t.Errorf("%s: %v", name, err)
+				}
+				if format != "pdf" { // which carries its date
+					files[filepath.Base(name)] = data
+				}
+			}
+		}
+		for name, data := range files {
+			if round > 0 && !bytes.Equal(data, before[name]) {
+				t.Errorf("%s has other bytes", name)
+			}
+		}
+		before = files
+	}
+}
