@@ -84,7 +84,7 @@ func (j *job) askedStudies(f *scenarios.Figure) (out []drawing) {
 	}
 	for _, name := range f.Studies {
 		for _, d := range all {
-			if d.name == name {
+			if d.name == name && d.of != "side view of a let-go series" {
 				out = append(out, d)
 			}
 		}
@@ -93,7 +93,7 @@ func (j *job) askedStudies(f *scenarios.Figure) (out []drawing) {
 }
 
 // ranReleases are the releases of a figure that were flown. A let-go series gives
-// as many as there is room for, evenly spread, its ends among them.
+// as many as there is room for.
 func (j *job) ranReleases(f *scenarios.Figure) []int {
 	var out []int
 	for _, i := range f.Releases {
@@ -102,19 +102,25 @@ func (j *job) ranReleases(f *scenarios.Figure) []int {
 			out = append(out, i)
 		}
 	}
-	room := max(2, (scenarios.MostTogether-len(out))/max(1, len(f.Studies)))
 	if f.Kind == "side" {
+		room := max(2, (scenarios.MostTogether-len(out))/max(1, len(f.Studies)))
 		for _, name := range f.Studies {
-			var of []int
-			for i := range j.results {
-				if j.results[i].Track != nil && j.Lets[i].Release.Series == name {
-					of = append(of, i)
-				}
-			}
-			for _, k := range spread(len(of), room) {
-				out = append(out, of[k])
-			}
+			out = append(out, j.seriesShown(name, room)...)
 		}
+	}
+	return out
+}
+
+// seriesShown are releases of a let-go series, evenly spread, its ends among them.
+func (j *job) seriesShown(series string, room int) (out []int) {
+	var of []int
+	for i := range j.results {
+		if j.results[i].Track != nil && j.Lets[i].Release.Series == series {
+			of = append(of, i)
+		}
+	}
+	for _, k := range spread(len(of), room) {
+		out = append(out, of[k])
 	}
 	return out
 }
