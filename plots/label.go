@@ -39,7 +39,7 @@ const (
 	priceMark   = 150.0 // covering a mark
 	priceStrong = 60.0  // covering a track or a dimension line
 	pricePlumb  = 25.0  // covering a plumb line or a uniform-gravity path
-	priceThin   = 9.0   // covering structure
+	priceThin   = 18.0  // covering structure
 	priceTurn   = 14.0  // standing opposite to the preferred direction
 	priceCross  = 35.0  // a leader across a track
 	leaderFrom  = 9.0   // pt beyond clear at which a label gets a leader

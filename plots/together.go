@@ -131,17 +131,28 @@ func (s *several) arrange() {
 	}
 	plan := sheetPlan{title: s.spec.Title, notes: s.spec.Notes, side: planColumn, strip: true}
 	s.stage = newStage(plan, must, frame{left: 26, right: 26, top: 24, bottom: 26})
-	longest := 0.0
-	for _, t := range s.tracks {
-		longest = math.Max(longest, t.moves()-t.t[0])
-	}
-	s.step = stepFor(longest, 8)
+	s.step = s.markStep()
 	for _, t := range s.tracks {
 		marks, _ := t.timeMarks(s.v, s.step)
 		s.ticks = append(s.ticks, marks)
 	}
 	s.entries()
 	s.label()
+}
+
+// markStep is the time between marks, fit for the flights and not too many for the longest.
+func (s *several) markStep() float64 {
+	const wanted = 8 // marks
+	flight, longest := 0.0, 0.0
+	for i, t := range s.tracks {
+		end := t.moves() - t.t[0]
+		longest = math.Max(longest, end)
+		if l := s.spec.Tracks[i].Landing; l != nil {
+			end = t.when(*l) - t.t[0]
+		}
+		flight = math.Max(flight, end)
+	}
+	return math.Max(stepFor(flight, wanted), stepFor(longest, maxMarks))
 }
 
 func (s *several) entries() {

@@ -79,9 +79,10 @@ func (s *several) plumbName() {
 	if len(s.plumbs()) > 1 {
 		words = "plumb lines"
 	}
-	line := s.v.pts(s.plumbs()[0])
-	s.pl.polyline(pricePlumb, line...)
-	s.nameLine(line, words)
+	for _, line := range s.plumbs() {
+		s.pl.polyline(pricePlumb, s.v.pts(line)...)
+	}
+	s.nameLine(s.v.pts(s.plumbs()[0]), words)
 }
 
 // plumbs are the plumb lines of the releases, each once.
