@@ -3,6 +3,7 @@ package plots
 import (
 	"errors"
 	"fmt"
+	"strings"
 
 	"gonum.org/v1/plot/vg"
 )
@@ -87,5 +88,5 @@ func (b *both) paint(p *pad) {
 
 // spinNot leaves out of a statement what the one above it says.
 func spinNot(statement string, spin float64) string {
-	return clean(statement[len(spinStatement(spin)):])
+	return clean(strings.TrimPrefix(statement, spinStatement(spin)))
 }

@@ -266,37 +266,3 @@ func (j *job) loadsChart(i int) (*plots.Figure, error) {
 		row[1], row[0], row[2], row[3], row[4], row[5], row[6], row[7])
 	return plots.LoadsChart(spec)
 }
-
-// loadPanels maps the columns that limits may name to the panels of a loads
-// chart, and the SI value of the panel's unit.
-var loadPanels = map[string]struct {
-	panel int
-	scale float64
-}{
-	"gravity_feet": {plots.PanelGravity, model.StandardGravity}, "gravity_waist": {plots.PanelGravity, model.StandardGravity},
-	"gravity_head": {plots.PanelGravity, model.StandardGravity}, "weight": {plots.PanelWeight, 1},
-	"side_spinward": {plots.PanelSide, 1}, "side_axial": {plots.PanelSide, 1},
-	"friction_demand": {plots.PanelFriction, 1}, "head_cross": {plots.PanelHead, 1},
-}
-
-// loadLimits draws the limits of a path into its chart.
-func (j *job) loadLimits(spec *plots.LoadsChartSpec, path string) {
-	for i := range j.Limits {
-		c := &j.Limits[i]
-		at, ok := loadPanels[c.Key]
-		if c.Table != "crew" || !ok || !c.About(path) {
-			continue
-		}
-		add := func(q *model.Quantity, sign float64, words string) {
-			if q != nil {
-				spec.Limits[at.panel] = append(spec.Limits[at.panel], plots.Level{Name: c.Limit.Name + words, Value: sign * q.SI / at.scale})
-			}
-		}
-		add(c.Limit.Max, 1, "")
-		add(c.Limit.Min, 1, "")
-		add(c.Limit.MaxAbs, 1, "")
-		add(c.Limit.MaxAbs, -1, "")
-		add(c.Limit.WarnMax, 1, ", near")
-		add(c.Limit.WarnMin, 1, ", near")
-	}
-}
