@@ -249,16 +249,23 @@ func (m *dimensioner) arrows(p *pad, d dimension, at dimPlace, run []vg.Point) {
 		a0, a1 = a0+math.Pi, a1+math.Pi
 	}
 	if d.oneWay {
-		p.arrow(inkText, last, a1, dimArrow)
+		m.arrow(p, last, a1, dimArrow)
 		return
 	}
 	if pageLength(run) >= 2*dimArrow+4 {
-		p.arrow(inkText, first, a0+math.Pi, dimArrow)
-		p.arrow(inkText, last, a1, dimArrow)
+		m.arrow(p, first, a0+math.Pi, dimArrow)
+		m.arrow(p, last, a1, dimArrow)
 		return
 	}
-	p.arrow(inkText, first, a0, dimArrow)
-	p.arrow(inkText, last, a1+math.Pi, dimArrow)
-	p.line(penDim, first, first.Sub(heading(a0).Scale(dimTail)))
-	p.line(penDim, last, last.Add(heading(a1).Scale(dimTail)))
+	m.arrow(p, first, a0, dimArrow)
+	m.arrow(p, last, a1+math.Pi, dimArrow)
+	m.deck.v.strokeLine(p, penDim, []vg.Point{first, first.Sub(heading(a0).Scale(dimTail))})
+	m.deck.v.strokeLine(p, penDim, []vg.Point{last, last.Add(heading(a1).Scale(dimTail))})
+}
+
+// arrow draws an arrowhead, if its tip is in the window.
+func (m *dimensioner) arrow(p *pad, tip vg.Point, way, size float64) {
+	if within(m.win, tip) {
+		p.arrow(inkText, tip, way, size)
+	}
 }

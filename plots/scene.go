@@ -160,6 +160,9 @@ func (s *scene) layWith(must area, column float64, wanted []dimension, deep floa
 	if s.whole {
 		const least = 64.0 // pt: labels stand outside the ring
 		round := math.Max(least, f.bottom+lap*laps)
+		if s.part != nil { // there is no paper to spare
+			round = math.Min(round, least/2)
+		}
 		f = frame{left: round, right: round, top: round, bottom: round}
 		must.addArc(Point{0, s.radius}, s.radius, 0, 2*math.Pi)
 	}
