@@ -87,7 +87,7 @@ func TestChartsRefuse(t *testing.T) {
 		"no series":    func(s *DeflectionChartSpec) { s.Series = nil },
 		"empty series": func(s *DeflectionChartSpec) { s.Series = []DeflectionSeries{{Name: "a"}} },
 		"all NaN": func(s *DeflectionChartSpec) {
-			s.Series = []DeflectionSeries{{"a", []float64{0}, []float64{1}, []float64{nan}}}
+			s.Series = []DeflectionSeries{{"a", []float64{0}, []float64{1}, []float64{nan}, 0}}
 		},
 		"unequal lengths": func(s *DeflectionChartSpec) { s.Series[0].Time = s.Series[0].Time[1:] },
 		"huge":            func(s *DeflectionChartSpec) { s.Series[0].Deflection[1] = 1e300 },
@@ -158,7 +158,7 @@ func TestDegenerateInputsAreDrawn(t *testing.T) {
 			return DeckPlan(DeckPlanSpec{Title: "t", Desc: "d", Releases: []PlanRelease{{At: Point{3, 4}}}})
 		},
 		"one value": func() (*Figure, error) {
-			return DeflectionChart(DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", []float64{0}, []float64{0}, []float64{0}}}})
+			return DeflectionChart(DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", []float64{0}, []float64{0}, []float64{0}, 0}}})
 		},
 		"infinite friction": func() (*Figure, error) {
 			return LoadsChart(LoadsChartSpec{Title: "t", Desc: "d", Time: []float64{0, 1, 2}, Friction: []float64{0.1, math.Inf(1), 0.2}})

@@ -74,7 +74,7 @@ func (s *plan) paint(p *pad) {
 	}
 	s.pl.draw(p)
 	s.paintList(p)
-	s.drawStrip(p, "spinward", "+axial", spinStatement(s.spec.Spin)+s.cropStatement()+notNamed(s.lost))
+	s.drawStrip(p, "spinward", "+axial", spinStatement(s.spec.Spin)+s.cropStatement()+s.hairStatement()+notNamed(s.lost))
 	s.sheet.draw(p)
 }
 
@@ -92,6 +92,16 @@ func (s *plan) cropStatement() string {
 		words += fmt.Sprintf(", and goes from %s to %s m axially", at(s.deck.min.Y), at(s.deck.max.Y))
 	}
 	return words + "."
+}
+
+// hairStatement says that a landing cannot be told from its release at this scale.
+func (s *plan) hairStatement() string {
+	for _, r := range s.spec.Releases[:s.numbered] {
+		if r.Landing != nil && r.Landing.dist(r.At)*s.v.perM < hairWidth && r.Landing.dist(r.At) > 0 {
+			return " Marks on one another: the list has the distance."
+		}
+	}
+	return ""
 }
 
 // paintGrid draws the hairlines of the axes and their numbers.

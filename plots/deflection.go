@@ -23,6 +23,7 @@ type DeflectionSeries struct {
 	Time       []float64 // s since the release
 	Height     []float64 // m above the deck
 	Deflection []float64 // m, spinward positive
+	AtLanding  float64   // m, stands beside the name; 0 or NaN for none
 }
 
 func (s DeflectionChartSpec) check() error {
@@ -84,10 +85,18 @@ func newDeflection(spec DeflectionChartSpec) *deflection {
 	for i, s := range spec.Series {
 		heights, times = append(heights, s.Height), append(times, s.Time)
 		c.heights.curves = append(c.heights.curves, curve{s.Name, s.Height, s.Deflection, seriesPen(i), true})
-		c.times.curves = append(c.times.curves, curve{s.Name, s.Time, s.Deflection, seriesPen(i), true})
+		c.times.curves = append(c.times.curves, curve{s.named(), s.Time, s.Deflection, seriesPen(i), true})
 	}
 	c.place(heights, times)
 	return c
+}
+
+// named is the name with the apparent deflection, which the reader came for.
+func (s DeflectionSeries) named() string {
+	if finite(s.AtLanding) && s.AtLanding != 0 {
+		return s.Name + ": " + signedLength(s.AtLanding)
+	}
+	return s.Name
 }
 
 // place sets the panels beside each other, the left one right of its numbers.

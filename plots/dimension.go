@@ -182,7 +182,7 @@ func (m *dimensioner) cover(d dimension, at dimPlace) []vg.Rectangle {
 
 func (m *dimensioner) free(cover []vg.Rectangle) bool {
 	text := cover[0]
-	if !within(m.win, text.Min) || !within(m.win, text.Max) {
+	if !within(m.win, text.Min) || !within(m.win, text.Max) || m.onDeck(text) {
 		return false
 	}
 	for _, a := range cover {
@@ -193,6 +193,19 @@ func (m *dimensioner) free(cover []vg.Rectangle) bool {
 		}
 	}
 	return true
+}
+
+// onDeck reports whether a text lies on the deck, as a level one does where the deck is steep.
+func (m *dimensioner) onDeck(text vg.Rectangle) bool {
+	if text.Max.X <= text.Min.X+4 { // no text
+		return false
+	}
+	if m.deck.radius == 0 {
+		return text.Max.Y > m.deck.at(0, 0).Y
+	}
+	c, r := m.deck.v.pt(Point{0, m.deck.radius}), m.deck.v.len(m.deck.radius)
+	near := nearest(text, c)
+	return math.Hypot((near.X-c.X).Points(), (near.Y-c.Y).Points()) < r.Points()
 }
 
 // draw draws a dimension: extension lines, line, arrows, text.
@@ -236,16 +249,23 @@ func (m *dimensioner) arrows(p *pad, d dimension, at dimPlace, run []vg.Point) {
 		a0, a1 = a0+math.Pi, a1+math.Pi
 	}
 	if d.oneWay {
-		p.arrow(inkText, last, a1, dimArrow)
+		m.arrow(p, last, a1, dimArrow)
 		return
 	}
 	if pageLength(run) >= 2*dimArrow+4 {
-		p.arrow(inkText, first, a0+math.Pi, dimArrow)
-		p.arrow(inkText, last, a1, dimArrow)
+		m.arrow(p, first, a0+math.Pi, dimArrow)
+		m.arrow(p, last, a1, dimArrow)
 		return
 	}
-	p.arrow(inkText, first, a0, dimArrow)
-	p.arrow(inkText, last, a1+math.Pi, dimArrow)
-	p.line(penDim, first, first.Sub(heading(a0).Scale(dimTail)))
-	p.line(penDim, last, last.Add(heading(a1).Scale(dimTail)))
+	m.arrow(p, first, a0, dimArrow)
+	m.arrow(p, last, a1+math.Pi, dimArrow)
+	m.deck.v.strokeLine(p, penDim, []vg.Point{first, first.Sub(heading(a0).Scale(dimTail))})
+	m.deck.v.strokeLine(p, penDim, []vg.Point{last, last.Add(heading(a1).Scale(dimTail))})
+}
+
+// arrow draws an arrowhead, if its tip is in the window.
+func (m *dimensioner) arrow(p *pad, tip vg.Point, way, size float64) {
+	if within(m.win, tip) {
+		p.arrow(inkText, tip, way, size)
+	}
 }

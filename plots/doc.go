@@ -1,10 +1,11 @@
 // Package plots draws the figures: it turns tables and outlines, in SI units,
 // into drawings. It knows no models and no physics.
 //
-// SideView and InertialView show one release, on board and from outside; DeflectionChart
-// its apparent deflection, or that of several; DeckPlan one deck unrolled, with landings
+// SideView and InertialView show one release, on board and from outside, BothViews does both
+// over one ruler of time; TogetherView shows several on board; DeflectionChart
+// the apparent deflection of one or several; DeckPlan one deck unrolled, with landings
 // and crew paths; PathView a crew path with the person on it; LoadsChart what it does to
-// the person; ScatterPlan the landings of many samples of one release. Each takes a spec of plain
+// the person; StackChart any panels above one another; ScatterPlan the landings of many samples of one release. Each takes a spec of plain
 // numbers, names and outlines, and refuses what cannot be drawn.
 //
 // # The language of the figures
@@ -23,6 +24,8 @@
 //   - a dimension line with arrows and a value gives what the reader came for;
 //   - a chain line is a plumb line, a dashed thin one the uniform-gravity path;
 //   - things are named where they stand, not in a legend, and no name lies on another;
+//     of many tracks in one view each has a number, by which a list names it;
+//   - a dimension line stands below the deck and the solid whose top that is;
 //   - where both axes are lengths the scale is one: the sheet is cropped, never
 //     stretched. What is too small for that is drawn again as a detail, with its
 //     scale stated;
@@ -32,6 +35,9 @@
 // values from memory), which people with the common kinds of colour blindness tell
 // apart. They are never the only cue: a number, a mark or a dash goes with each, so
 // that a grey print says the same. No colour is a verdict.
+//
+// An SVG carries second values of its colours for dark screens, by the classes of its
+// elements, in rules that hold within a figure alone. Texts are texts.
 //
 // Sheets are at most 540 pt by 390 pt, or the same upright, so that they print on A5
 // at full size with no text below 7.5 pt.

@@ -24,13 +24,14 @@ type InertialViewSpec struct {
 	Surface      string       // what it lands on
 	Offset       float64      // m, deck offset, spinward positive; NaN for none
 	Flat         bool         // the deck beneath is flat: the offset is said in words
+	Height       float64      // m, of the release above a flat deck, along its normal
 }
 
 func (s InertialViewSpec) check() error {
 	if s.Body < 0 {
 		return fmt.Errorf("the body's radius is %g m", s.Body)
 	}
-	if err := checkSizes(s.Body, orZero(s.Offset)); err != nil {
+	if err := checkSizes(s.Body, orZero(s.Offset), s.Height); err != nil {
 		return err
 	}
 	if err := checkPlaces([]Point{s.Foot}, s.Landing); err != nil {
@@ -49,13 +50,10 @@ func (s InertialViewSpec) check() error {
 // InertialView draws one release as someone sees it who does not turn with the habitat.
 // It is an error if a number cannot be drawn or the path is empty.
 func InertialView(spec InertialViewSpec) (*Figure, error) {
-	head := headline{spec.Title, spec.Desc, spec.Notes, spec.Spin}
-	err := errors.Join(head.check(), spec.check())
-	tr, trErr := newTrack(spec.Path)
-	if err = errors.Join(err, trErr); err != nil {
+	s, err := newInertial(spec)
+	if err != nil {
 		return nil, fmt.Errorf("inertial view: %w", err)
 	}
-	s := newInertial(spec, head, tr)
 	s.arrange()
 	return newFigure(spec.Title, spec.Desc, s.w, s.h, s.paint)
 }

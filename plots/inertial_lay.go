@@ -1,6 +1,7 @@
 package plots
 
 import (
+	"errors"
 	"math"
 
 	"gonum.org/v1/plot/vg"
@@ -13,14 +14,23 @@ type inertial struct {
 	spec   InertialViewSpec
 	before []Outline // the structure at release
 	turned float64   // rad, from release to landing
+	detail *detail   // of a landing whose offset is a hair; nil: it is not
 }
 
-func newInertial(spec InertialViewSpec, head headline, tr track) *inertial {
+func newInertial(spec InertialViewSpec) (*inertial, error) {
+	head := headline{spec.Title, spec.Desc, spec.Notes, spec.Spin}
+	tr, trErr := newTrack(spec.Path)
+	if err := errors.Join(head.check(), spec.check(), trErr); err != nil {
+		return nil, err
+	}
 	r := spec.Foot.norm()
 	turn := -math.Pi/2 - math.Atan2(spec.Foot.Y, spec.Foot.X) - spec.ReleaseAngle
 	up := Point{0, r}
 	s := &inertial{spec: spec, turned: spec.LandingAngle - spec.ReleaseAngle}
 	s.scene = scene{head: head, radius: r, body: spec.Body, every: spec.TickEvery, surface: spec.Surface}
+	if spec.Flat {
+		s.normal = &spec.Height
+	}
 	s.track = track{t: tr.t, ph: tr.ph}
 	for _, p := range tr.at {
 		s.track.at = append(s.track.at, p.turned(turn).add(up))
@@ -36,7 +46,7 @@ func newInertial(spec InertialViewSpec, head headline, tr track) *inertial {
 	if len(spec.Outlines) == 0 {
 		s.outlines = []Outline{{Kind: Deck, Path: Circle(up, r)}}
 	}
-	return s
+	return s, nil
 }
 
 // foot is where the foot of the plumb line at release has moved to.
@@ -52,19 +62,37 @@ func (s *inertial) arrange() {
 	must.add(s.foot())
 	must.grow(s.body)
 	s.whole = math.Abs(s.turned) > wholeFrom || s.gone(must) > wholeFrom
-	axis := must
-	axis.add(Point{0, s.radius})
+	if s.part == nil || s.whole { // a part has no paper to spare
+		axis := must
+		axis.add(Point{0, s.radius})
+		const worth = 0.65 // of the scale: it is good to see, but not what is asked for
+		if fit(axis.size(), 1.4, 1) >= worth*fit(must.size(), 1.4, 1) {
+			must = axis
+		}
+	}
 	wanted := s.wanted()
-	s.lay(better(must, axis), 0, wanted)
+	s.lay(must, 0, wanted)
+	hairy := s.hair()
+	if hairy {
+		wanted = wanted[:1]
+		s.lay(must, detailWidth, wanted)
+	}
 	var words []string
 	for _, d := range wanted {
 		if !s.dimension(d) {
 			words = append(words, d.text)
 		}
 	}
-	if finite(s.spec.Offset) && !s.offsetDrawn() {
+	if hairy {
+		s.detail = newDetail(&s.scene, s.v.pt(*s.landing), s.closeUp(), []string{"deck offset " + signedLength(s.spec.Offset)})
+		s.pl.polyline(priceThin, s.detail.pointer()...)
+	} else if finite(s.spec.Offset) && !s.offsetDrawn() {
 		words = append(words, "deck offset "+signedLength(s.spec.Offset))
 	}
+	s.label(words)
+}
+
+func (s *inertial) label(words []string) {
 	s.obstacles()
 	s.pl.polyline(pricePlumb, s.v.pts([]Point{s.start(), s.foot()})...)
 	s.names()
@@ -74,6 +102,31 @@ func (s *inertial) arrange() {
 	s.nameLine(s.v.pts([]Point{{}, s.track.at[0]}), "plumb line at release")
 	s.nameLine(s.v.pts([]Point{s.foot(), s.start()}), "plumb line at "+s.end())
 	s.lost = s.pl.solve()
+}
+
+// hair reports whether the offset is too small for the view but not for a detail.
+func (s *inertial) hair() bool {
+	const finest = 1e-13 // of the radius: below, the digits of places end
+	if s.part != nil || s.whole || !s.offsetDrawn() {
+		return false
+	}
+	off, x := math.Abs(s.spec.Offset), math.Abs(s.closeUp().landing.X)
+	return off*s.v.perM < hairWidth && x > off/2 && x > finest*s.radius
+}
+
+// closeUp turns the landing back, so that its plumb line is upright.
+func (s *inertial) closeUp() closeUp {
+	axis := Point{0, s.radius}
+	back := func(p Point) Point { return p.sub(axis).turned(-s.turned).add(axis) }
+	out := closeUp{landing: back(*s.landing), top: back(s.start()), offset: s.spec.Offset, body: s.body, turned: true}
+	out.track = track{t: s.track.t, ph: s.track.ph}
+	for _, p := range s.track.at {
+		out.track.at = append(out.track.at, back(p))
+	}
+	for _, o := range s.outlines {
+		out.outlines = append(out.outlines, o.moved(Point{}.sub(axis)).turned(-s.turned).moved(axis))
+	}
+	return out
 }
 
 func (s *inertial) end() string {
@@ -101,6 +154,23 @@ func (s *inertial) offsetDrawn() bool {
 }
 
 func (s *inertial) paint(p *pad) {
+	s.paintView(p)
+	s.drawStrip(p, "spinward", "up", s.statement(s.dashed()))
+	if s.detail != nil {
+		s.detail.paint(p)
+	}
+	s.sheet.draw(p)
+}
+
+// dashed says what the dashed outlines are.
+func (s *inertial) dashed() string {
+	if len(s.before) == 0 {
+		return ""
+	}
+	return " Dashed: the structure at release."
+}
+
+func (s *inertial) paintView(p *pad) {
 	for _, o := range s.before {
 		s.v.edges(p, penGhost, o)
 	}
@@ -111,12 +181,6 @@ func (s *inertial) paint(p *pad) {
 	s.paintMotion(p)
 	s.footMark(p, Point{})
 	s.footMark(p, s.foot())
-	dashed := ""
-	if len(s.before) > 0 {
-		dashed = " Dashed: the structure at release."
-	}
-	s.drawStrip(p, "spinward", "up", s.statement(dashed))
-	s.sheet.draw(p)
 }
 
 // footMark is a small triangle that stands on the deck, point down on the plumb foot.

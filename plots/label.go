@@ -39,9 +39,10 @@ const (
 	priceMark   = 150.0 // covering a mark
 	priceStrong = 60.0  // covering a track or a dimension line
 	pricePlumb  = 25.0  // covering a plumb line or a uniform-gravity path
-	priceThin   = 9.0   // covering structure
+	priceThin   = 18.0  // covering structure
 	priceTurn   = 14.0  // standing opposite to the preferred direction
 	priceCross  = 35.0  // a leader across a track
+	priceOver   = 8.0   // a leader across structure or a plumb line
 	leaderFrom  = 9.0   // pt beyond clear at which a label gets a leader
 	textGap     = 1.6   // pt kept free above and below every text
 	keySample   = 17.0  // pt, length of the sample of a line before its name

@@ -89,8 +89,12 @@ func (pl *placer) leaderCost(leader []vg.Point, i int) float64 {
 		}
 	}
 	for _, l := range pl.lines {
-		if l.price >= priceStrong && meet(leader[0], leader[1], l.a, l.b) {
+		switch {
+		case l.price < priceThin || !meet(leader[0], leader[1], l.a, l.b):
+		case l.price >= priceStrong:
 			sum += priceCross
+		default:
+			sum += priceOver
 		}
 	}
 	return sum

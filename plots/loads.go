@@ -56,9 +56,9 @@ var loadTitles = [LoadPanels]string{
 	"cross-coupled angular acceleration of the head, rad/s²",
 }
 
-// mostFriction bounds the panel of friction demand, which runs off to infinity where
+// MostFriction bounds the panel of friction demand, which runs off to infinity where
 // the weight goes to zero: no dry contact gives more (common practice, no source).
-const mostFriction = 2.0
+const MostFriction = 2.0
 
 // LoadsChart draws the loads along a crew path. It is an error if the times are not in
 // order, a slice has another length than Time, or no panel has a finite value.
@@ -72,9 +72,9 @@ func (s LoadsChartSpec) panels() []PanelSpec {
 	for i := range out {
 		out[i].Title, out[i].Levels = loadTitles[i], s.Limits[i]
 	}
-	out[PanelFriction].Most = mostFriction
+	out[PanelFriction].Most = MostFriction
 	for _, c := range s.columns() {
-		out[c.panel].Curves = append(out[c.panel].Curves, CurveSpec{c.name, c.y})
+		out[c.panel].Curves = append(out[c.panel].Curves, CurveSpec{Name: c.name, Y: c.y})
 	}
 	return out
 }

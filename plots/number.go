@@ -66,6 +66,10 @@ func roundLength(v float64) string {
 	return signif(v/size, 1) + " " + unit
 }
 
+// SignedLength prints a length along the deck, m, as figures do: to three digits, in a
+// unit that fits, with its direction in words.
+func SignedLength(v float64) string { return signedLength(v) }
+
 // signedLength prints a length along the deck with its direction in words.
 func signedLength(v float64) string {
 	switch {

@@ -20,6 +20,8 @@ type scene struct {
 	landing  *Point
 	rest     *Point
 	surface  string
+	normal   *float64 // m, height of the release along the normal of a flat deck, where the view is along a plumb line
+	part     *part    // of a sheet with several views; nil: the view has the sheet for itself
 
 	whole bool // the whole ring is shown
 	deck  deckLine
@@ -128,28 +130,47 @@ func (s *scene) gone(a area) float64 {
 	return most
 }
 
-// lay makes the sheet on which must is shown with dimension lines below the deck.
+// lay makes the sheet on which must is shown with dimension lines below the deck, and
+// below the solid that the deck is the top of.
 func (s *scene) lay(must area, column float64, wanted []dimension) {
-	f := frame{left: 26, right: 26, top: 24, bottom: dimFirst + dimPitch*float64(len(wanted)) + 12}
+	s.layWith(must, column, wanted, 0)
+	if deep := s.solid(); deep > 0 {
+		s.layWith(must, column, wanted, deep)
+	}
+	s.deck = deckLine{v: s.v, radius: s.radius}
+	s.dims = dimensioner{deck: s.deck, win: s.win, below: math.Max(s.depth(), s.solid())}
+	s.ticks, s.step = s.track.timeMarks(s.v, s.every)
+}
+
+// layWith keeps deep pt more free below the deck.
+func (s *scene) layWith(must area, column float64, wanted []dimension, deep float64) {
+	f := frame{left: 26, right: 26, top: 24, bottom: deep + dimFirst + dimPitch*float64(len(wanted)) + 12}
 	laps := 0.0
 	for _, d := range wanted {
 		if s.radius == 0 {
 			break
 		}
 		a := d.s1 / s.radius
-		laps = math.Max(laps, math.Abs(d.s1-d.s0)/(2*math.Pi*s.radius))
+		if turns := math.Abs(d.s1-d.s0) / (2 * math.Pi * s.radius); turns <= mostLaps { // more are not drawn
+			laps = math.Max(laps, turns)
+		}
 		f.left = math.Max(f.left, 26-math.Sin(a)*f.bottom) // up a flank, below the deck is sideways
 		f.right = math.Max(f.right, 26+math.Sin(a)*f.bottom)
 	}
 	if s.whole {
-		round := f.bottom + lap*math.Min(mostLaps, laps)
+		const least = 64.0 // pt: labels stand outside the ring
+		round := math.Max(least, f.bottom+lap*laps)
+		if s.part != nil { // there is no paper to spare
+			round = math.Min(round, least/2)
+		}
 		f = frame{left: round, right: round, top: round, bottom: round}
 		must.addArc(Point{0, s.radius}, s.radius, 0, 2*math.Pi)
 	}
-	s.stage = newStage(sheetPlan{title: s.head.title, notes: s.head.notes, side: column, strip: true}, must, f)
-	s.deck = deckLine{v: s.v, radius: s.radius}
-	s.dims = dimensioner{deck: s.deck, win: s.win, below: s.depth()}
-	s.ticks, s.step = s.track.timeMarks(s.v, s.every)
+	plan := sheetPlan{title: s.head.title, notes: s.head.notes, side: column, strip: true}
+	if s.part != nil {
+		plan = sheetPlan{strip: true, part: s.part}
+	}
+	s.stage = newStage(plan, must, f)
 }
 
 // depth is how far below the deck, pt, the track gets in the window, as it does through
@@ -169,7 +190,7 @@ func (s *scene) depth() float64 {
 	if deep < least {
 		return 0
 	}
-	return deep
+	return deep + s.body*s.v.perM // to what it touches there
 }
 
 // dimension finds room for a dimension line, and reports whether there is any.

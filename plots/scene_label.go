@@ -38,7 +38,7 @@ func (s *scene) names() {
 			s.name(*p, clear, want, words)
 		}
 	}
-	show(&s.track.at[0], toUp, "release, height "+length(s.track.at[0].Y))
+	show(&s.track.at[0], toUp, "release, height "+length(s.height()))
 	show(s.landing, s.away(), s.landingWords())
 	show(s.rest, anyWay, "rests after "+seconds(s.track.moves()))
 	for _, r := range s.track.runs() {
@@ -51,6 +51,14 @@ func (s *scene) names() {
 		s.pl.add(label{s: "spin axis", size: sizeNote, ink: inkSoft, at: s.v.pt(Point{0, s.radius}), clear: spinArrowRadius + 2, want: toRight})
 	}
 	s.outlineNames(s.outlines)
+}
+
+// height is that of the release above the deck, m.
+func (s *scene) height() float64 {
+	if s.normal != nil {
+		return *s.normal
+	}
+	return s.track.at[0].Y
 }
 
 // away is the direction in which the landing lies from the plumb line.

@@ -27,6 +27,13 @@ type sheetPlan struct {
 	side         float64 // width of the column beside the window, pt; 0 for none
 	strip        bool
 	upright      bool
+	part         *part // the sheet is a part of another one
+}
+
+// part is the room for a view on a sheet that holds several, pt.
+type part struct {
+	wide, high float64 // at most, of the window
+	foot       float64 // of the strip above the foot of the sheet
 }
 
 func (s sheetPlan) limits() (w, h float64) {
@@ -37,7 +44,7 @@ func (s sheetPlan) limits() (w, h float64) {
 }
 
 func (s sheetPlan) texts(w float64) (title, notes []string) {
-	return wrap(clean(s.title), w, sizeTitle, true, maxTitle), wrap(clean(s.notes), w, sizeNote, false, maxNotes)
+	return balanced(clean(s.title), w, sizeTitle, true, maxTitle), wrap(clean(s.notes), w, sizeNote, false, maxNotes)
 }
 
 func (s sheetPlan) extras(title, notes []string) (w, h float64) {
@@ -56,6 +63,9 @@ func (s sheetPlan) extras(title, notes []string) (w, h float64) {
 
 // room is the largest window that the sheet can hold, pt.
 func (s sheetPlan) room() (w, h float64) {
+	if s.part != nil {
+		return s.part.wide, s.part.high
+	}
 	fullW, fullH := s.limits()
 	ew, eh := s.extras(s.texts(fullW - 2*margin))
 	return fullW - ew, fullH - eh
@@ -71,6 +81,9 @@ func (s sheetPlan) lay(winW, winH float64) sheet {
 	_, eh := s.extras(title, notes)
 	out := sheet{w: w, h: winH + eh, title: title, notes: notes}
 	top := out.h - margin - float64(len(title))*sizeTitle*lineHeight - 4
+	if s.part != nil {
+		top = s.part.foot + stripHeight + winH
+	}
 	out.win = vg.Rectangle{Min: xy(margin, top-winH), Max: xy(margin+winW, top)}
 	if s.side > 0 {
 		out.side = vg.Rectangle{Min: xy(margin+winW+sideGap, top-winH), Max: xy(w-margin, top)}
@@ -145,7 +158,7 @@ func spinStatement(spin float64) string {
 	case spin > 0:
 		return "Spin " + rpm(spin) + ": the floor moves spinward."
 	case spin < 0:
-		return "Spin " + minus + rpm(spin) + ": the floor moves antispinward."
+		return "Spin " + minus + rpm(spin) + ": the floor moves antispinward. Spinward, as drawn, is against the rotation."
 	}
 	return "No spin."
 }

@@ -58,16 +58,22 @@ func orZero(v float64) float64 {
 // SideView draws one release as the people on board see it. It is an error if a number
 // cannot be drawn or the track is empty. A dimension that has no room is said in words.
 func SideView(spec SideViewSpec) (*Figure, error) {
-	head := headline{spec.Title, spec.Desc, spec.Notes, spec.Spin}
-	err := errors.Join(head.check(), spec.check())
-	tr, trErr := newTrack(spec.Track)
-	if err = errors.Join(err, trErr); err != nil {
+	s, err := newSide(spec)
+	if err != nil {
 		return nil, fmt.Errorf("side view: %w", err)
 	}
-	s := side{spec: spec, scene: scene{
-		head: head, radius: spec.Deck, body: spec.Body, outlines: spec.Outlines,
-		track: tr, every: spec.TickEvery, landing: spec.Landing, rest: spec.Rest, surface: spec.Surface,
-	}}
 	s.arrange()
 	return newFigure(spec.Title, spec.Desc, s.w, s.h, s.paint)
+}
+
+func newSide(spec SideViewSpec) (*side, error) {
+	head := headline{spec.Title, spec.Desc, spec.Notes, spec.Spin}
+	tr, trErr := newTrack(spec.Track)
+	if err := errors.Join(head.check(), spec.check(), trErr); err != nil {
+		return nil, err
+	}
+	return &side{spec: spec, scene: scene{
+		head: head, radius: spec.Deck, body: spec.Body, outlines: spec.Outlines,
+		track: tr, every: spec.TickEvery, landing: spec.Landing, rest: spec.Rest, surface: spec.Surface,
+	}}, nil
 }

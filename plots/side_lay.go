@@ -19,7 +19,7 @@ func (s *side) arrange() {
 	must, wanted := s.shown(), s.wanted()
 	s.whole = s.gone(must) > wholeFrom
 	s.lay(must, 0, wanted)
-	if s.hairy = s.hair(); s.hairy {
+	if s.hairy = s.part == nil && s.hair(); s.hairy {
 		s.lay(must, detailWidth, wanted)
 	}
 	for _, p := range s.spec.Uniform {
@@ -33,7 +33,8 @@ func (s *side) arrange() {
 		}
 	}
 	if s.hairy {
-		s.detail, words = newDetail(s, words), nil
+		near := closeUp{landing: *s.landing, top: s.track.at[0], offset: s.spec.Offset, body: s.body, outlines: s.outlines, track: s.track}
+		s.detail, words = newDetail(&s.scene, s.v.pt(*s.landing), near, words), nil
 		s.pl.polyline(priceThin, s.detail.pointer()...)
 	}
 	s.obstacles()
@@ -118,6 +119,15 @@ func (s *side) lineNames() {
 }
 
 func (s *side) paint(p *pad) {
+	s.paintView(p)
+	s.drawStrip(p, "spinward", "up", s.statement(""))
+	if s.detail != nil {
+		s.detail.paint(p)
+	}
+	s.sheet.draw(p)
+}
+
+func (s *side) paintView(p *pad) {
 	v, spec := s.v, s.spec
 	v.structure(p, spec.Outlines)
 	if len(spec.Outlines) == 0 {
@@ -129,11 +139,6 @@ func (s *side) paint(p *pad) {
 		v.strokeLine(p, penUniform, v.pts(spec.Uniform))
 	}
 	s.paintMotion(p)
-	s.drawStrip(p, "spinward", "up", s.statement(""))
-	if s.detail != nil {
-		s.detail.paint(p)
-	}
-	s.sheet.draw(p)
 }
 
 // bareDeck draws the deck where the caller gives no structure.

@@ -3,6 +3,8 @@ package plots
 import (
 	"errors"
 	"fmt"
+	"math"
+	"strings"
 )
 
 // StackChartSpec is what StackChart draws: panels above one another with one axis along.
@@ -29,6 +31,7 @@ type PanelSpec struct {
 type CurveSpec struct {
 	Name string
 	Y    []float64
+	X    []float64 // its own places along, never decreasing; nil: those of the chart
 }
 
 // Level is a line across a panel, such as a limit.
@@ -70,7 +73,7 @@ func (s StackChartSpec) check() error {
 
 func (p PanelSpec) check(n int) error {
 	for _, c := range p.Curves {
-		if err := checkValues(p.Title+" "+c.Name, n, c.Y); err != nil {
+		if err := c.check(p.Title+" "+c.Name, n); err != nil {
 			return err
 		}
 	}
@@ -82,6 +85,19 @@ func (p PanelSpec) check(n int) error {
 	return nil
 }
 
+// check wants n values, or as many as the curve has places of its own.
+func (c CurveSpec) check(name string, n int) error {
+	for i, x := range c.X {
+		if !finite(x) || math.Abs(x) > maxValue || i > 0 && x < c.X[i-1] {
+			return fmt.Errorf("%s: value %d along, %g, cannot be drawn or runs back", name, i, x)
+		}
+	}
+	if c.X != nil {
+		n = len(c.X)
+	}
+	return checkValues(name, n, c.Y)
+}
+
 // StackChart draws panels above one another. It is an error if the values along are not
 // in order, a curve has another length, or no panel has a finite value.
 func StackChart(spec StackChartSpec) (*Figure, error) {
@@ -89,26 +105,51 @@ func StackChart(spec StackChartSpec) (*Figure, error) {
 	if err := errors.Join(head.check(), spec.check()); err != nil {
 		return nil, fmt.Errorf("chart: %w", err)
 	}
-	panels := spec.panels()
+	panels, zero := spec.panels()
 	if len(panels) == 0 {
 		return nil, errors.New("chart: no panel has a finite value")
+	}
+	if len(zero) > 0 {
+		spec.Notes = strings.TrimSpace(clean(spec.Notes) + " Zero throughout, and not drawn: " + strings.Join(zero, "; ") + ".")
 	}
 	c := newLoads(spec, panels)
 	return newFigure(spec.Title, spec.Desc, c.w, c.h, c.paint)
 }
 
-// panels are those with something to show.
-func (s StackChartSpec) panels() (out []*panel) {
+// nothing is the size of a value, in the unit of its panel, that is rounding: it is far
+// below what anything can show or anyone can feel.
+const nothing = 1e-9
+
+// panels are those with something to show, and the titles of those whose lines are zero
+// throughout, unless all are.
+func (s StackChartSpec) panels() (out []*panel, zero []string) {
+	var all []*panel
 	for _, p := range s.Panels {
 		q := &panel{title: p.Title, most: p.Most, levels: p.Levels}
-		for _, c := range p.Curves {
-			if _, _, ok := span(c.Y); ok {
-				q.curves = append(q.curves, curve{c.Name, s.X, c.Y, seriesPen(len(q.curves)), false})
+		nought := true
+		for i, c := range p.Curves {
+			x := s.X
+			if c.X != nil {
+				x = c.X
+			}
+			if lo, hi, ok := span(c.Y); ok { // one line has the same pen in all panels
+				q.curves = append(q.curves, curve{c.Name, x, c.Y, seriesPen(i), false})
+				nought = nought && math.Max(-lo, hi) < nothing
 			}
 		}
-		if len(q.curves) > 0 {
-			out = append(out, q)
+		if len(q.curves) == 0 {
+			continue
 		}
+		all = append(all, q)
+		if nought && len(q.levels) == 0 {
+			words, _, _ := strings.Cut(clean(q.title), ",")
+			zero = append(zero, words)
+			continue
+		}
+		out = append(out, q)
 	}
-	return out
+	if len(out) == 0 {
+		return all, nil
+	}
+	return out, zero
 }

@@ -42,6 +42,9 @@ func newStage(plan sheetPlan, must area, f frame) stage {
 	size := must.size()
 	winW := math.Min(w, math.Max(leastWide-plan.side, size.X*perM+f.wide()))
 	winH := math.Min(h, math.Max(leastHigh, size.Y*perM+f.high()))
+	if plan.part != nil {
+		winW = w // all parts are of one width
+	}
 	s := stage{sheet: plan.lay(winW, winH)}
 	s.win.Min = s.win.Min.Add(xy(f.numbersLeft, f.numbersLow))
 	free := vg.Rectangle{Min: s.win.Min.Add(xy(f.left, f.bottom)), Max: s.win.Max.Sub(xy(f.right, f.top))}
@@ -52,8 +55,9 @@ func newStage(plan sheetPlan, must area, f frame) stage {
 
 // scaleFor is the scale, pt/m, at which the sheet can show must.
 func (s sheetPlan) scaleFor(must area, f frame) float64 {
+	const least = 0.3 // of the room, whatever the paper that is to be kept free
 	w, h := s.room()
-	return fit(must.size(), w-f.wide(), h-f.high())
+	return fit(must.size(), math.Max(w-f.wide(), least*w), math.Max(h-f.high(), least*h))
 }
 
 // name asks for a label at p, m, that must be shown.

@@ -99,6 +99,7 @@ func (s *svgWriter) id(part string) string {
 
 func (s *svgWriter) rootAttrs() {
 	s.attr("xmlns", "http://www.w3.org/2000/svg")
+	s.attr("class", rootClass)
 	s.attr("role", "img")
 	s.attr("aria-labelledby", s.id("title")+" "+s.id("desc"))
 	s.attr("font-family", fontStack)
@@ -114,13 +115,17 @@ func (s *svgWriter) rootChildren() {
 	fmt.Fprintf(&s.out, "\n<style>%s</style>\n", darkStyle())
 }
 
+// rootClass keeps the styles of a figure to figures, where one is set into a page.
+const rootClass = "offplumb-figure"
+
 // darkStyle recolours the classes on a dark screen. Print keeps the attributes' colours.
+// All figures of a page have the same rules, so that it does not matter whose hold.
 func darkStyle() string {
 	var b strings.Builder
 	b.WriteString("@media screen and (prefers-color-scheme:dark){")
 	for _, k := range inks {
 		dark := fmt.Sprintf("#%02X%02X%02X", k.dark.R, k.dark.G, k.dark.B)
-		fmt.Fprintf(&b, ".fill-%s{fill:%s}.line-%s{stroke:%s}", k.name, dark, k.name, dark)
+		fmt.Fprintf(&b, ".%[1]s .fill-%[2]s{fill:%[3]s}.%[1]s .line-%[2]s{stroke:%[3]s}", rootClass, k.name, dark)
 	}
 	b.WriteString("}")
 	return b.String()

@@ -89,3 +89,21 @@ func wrap(s string, width, size float64, bold bool, maxLines int) []string {
 	}
 	return lines
 }
+
+// balanced breaks s into as many lines as wrap does, but of like widths, so that no word
+// stands alone on the last one.
+func balanced(s string, width, size float64, bold bool, maxLines int) []string {
+	lines := wrap(s, width, size, bold, maxLines)
+	if len(lines) < 2 || strings.HasSuffix(lines[len(lines)-1], "…") {
+		return lines
+	}
+	const step = 4 // pt
+	for w := width - step; w > width/2; w -= step {
+		next := wrap(s, w, size, bold, maxLines+1)
+		if len(next) > len(lines) {
+			break
+		}
+		lines = next
+	}
+	return lines
+}

@@ -109,7 +109,7 @@ func TestWildInputsNeverPanic(t *testing.T) {
 		}
 	}
 	if drawn < rounds {
-		t.Errorf("only %d of %d figures were drawn", drawn, 6*rounds)
+		t.Errorf("only %d of %d figures were drawn", drawn, 9*rounds)
 	}
 }
 
@@ -134,12 +134,17 @@ func wildFigures(w wild) []func() (*Figure, error) {
 		Groups:  []ScatterGroup{{"a", []Point{w.point(), w.point()}}, {"b", []Point{w.point()}}},
 		Ellipse: &PlanEllipse{w.point(), math.Abs(w.number()), math.Abs(w.number()), w.NormFloat64()}, Contour: [][]Point{{w.point(), w.point(), w.point()}}}
 	n := w.IntN(9)
-	deflections := DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", w.times(n), w.list(n), w.list(n)}, {"b", w.times(n), w.list(n), w.list(n)}}}
+	deflections := DeflectionChartSpec{Title: "t", Desc: "d", Series: []DeflectionSeries{{"a", w.times(n), w.list(n), w.list(n), w.number()}, {"b", w.times(n), w.list(n), w.list(n), 0}}}
 	loads := LoadsChartSpec{
 		Title: "t", Desc: "d", Time: w.times(n), Legs: []LegSpan{{"l", 0, math.Abs(w.number())}, {"m", w.number(), math.Abs(w.number())}},
 		GravityFeet: w.list(n), Weight: w.list(n), Friction: w.list(n), HeadCross: w.list(n),
 	}
+	near := TogetherTrack{Name: "n", Words: "lands", Track: side.Track, Landing: side.Landing, Rest: side.Rest, Body: side.Body}
+	far := TogetherTrack{Name: "f", Track: w.track(), Landing: w.place(), Rest: w.place()}
+	several := TogetherViewSpec{Title: "t", Desc: "d", Spin: side.Spin, Deck: side.Deck, Outlines: side.Outlines, Tracks: []TogetherTrack{near, far}}
+	both := BothViewsSpec{Title: "t", Desc: "d", Side: side, Inertial: inertial}
 	return []func() (*Figure, error){
+		func() (*Figure, error) { return TogetherView(several) }, func() (*Figure, error) { return BothViews(both) },
 		func() (*Figure, error) { return SideView(side) }, func() (*Figure, error) { return InertialView(inertial) },
 		func() (*Figure, error) { return DeckPlan(deck) }, func() (*Figure, error) { return DeflectionChart(deflections) },
 		func() (*Figure, error) { return LoadsChart(loads) }, func() (*Figure, error) { return PathView(crew) },

@@ -295,6 +295,14 @@ var solver = &section{name: "the solver", doc: "Accuracy of the integration. The
 var output = &section{name: "the output", doc: "What is written.",
 	keys: []key{
 		qty("step", duration, span{low: 1e-6, high: 1e9}, "between the rows of a track").or(`"10 ms"`),
+		word("figures", `"all"`, "which figures are drawn: all that there are and those asked for, or those asked for alone", "all", "asked"),
+	}}
+
+var figure = &section{name: "a figure", doc: "A figure drawn on request: of some things together, or of a choice. A figure of kind side, deflection, plan or loads shows all that it is of in one; one of another kind is drawn for each.",
+	keys: []key{
+		title(),
+		texts("of", "release.NAME (also of a let-go series), path.NAME or study.NAME; * stands for anything; or a list").need(),
+		word("kind", "", "what is drawn: side: the side view; inertial: the view from outside; stack: both above one another, with a ruler of time; deflection: the apparent deflection; plan: the deck plan; loads: what a crew path does to the person; path: the crew path from the side; scatter, sweep, let_go: the figure of the study", figureKindNames()...).need(),
 	}}
 
 var scatter = &section{name: "a scatter", doc: "A release many times, its keys varied at random.",
@@ -382,4 +390,5 @@ var file = &section{name: "the file", doc: "The file itself.",
 		tables("landing_map", landingMap, "studies: landing maps"),
 		table("solver", solver, "accuracy"),
 		table("output", output, "what is written"),
+		tables("figure", figure, "figures on request"),
 	}}

@@ -40,7 +40,9 @@ type Scenario struct {
 	Model   *model.Model
 	Studies []Study // declared, in the order of the format and the file
 	Sweeps  []*Sweep
-	Inputs  []Input // the file itself first
+	Figures []*Figure // asked for
+	Asked   bool      // only those are drawn
+	Inputs  []Input   // the file itself first
 
 	root *node
 	read func(path string) ([]byte, error) // once each
@@ -76,6 +78,7 @@ func (sc *Scenario) finish(errs ErrorList) error {
 	b := &builder{}
 	o := b.object(sc.root, file, "")
 	sc.Title, sc.Notes, sc.Studies, sc.Sweeps = o.str("title"), o.str("notes"), studies(o), b.sweeps(o)
+	sc.Figures, sc.Asked = drawn(o), o.sub("output").str("figures") == "asked"
 	if sc.Title == "" {
 		sc.Title = strings.TrimSuffix(path.Base(sc.Name), ".toml")
 	}
@@ -93,7 +96,7 @@ func (sc *Scenario) finish(errs ErrorList) error {
 		return sc.Problems(problems)
 	}
 	sc.Model = m
-	if errs = sc.pick(); len(errs) > 0 {
+	if errs = append(sc.pick(), sc.draw()...); len(errs) > 0 {
 		return errs.sorted()
 	}
 	return nil

@@ -10,7 +10,6 @@ import (
 	"offplumb/plots"
 	"offplumb/sim/flight"
 	"offplumb/sim/frame"
-	"offplumb/sim/geom"
 	"offplumb/sim/measure"
 	"offplumb/sim/model"
 	"offplumb/sim/table"
@@ -33,6 +32,9 @@ type drawing struct {
 
 // figures lists the figures of the run, in each of the formats asked for.
 func (j *job) figures() ([]task, error) {
+	if j.Asked {
+		return j.drawn(j.askedFigures()), nil
+	}
 	var all []drawing
 	var names table.Namer
 	for i := range j.results {
@@ -48,6 +50,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, j.studyFigures()...)
 	all = append(all, scatterFigures(j)...)
 	all = append(all, sweepFigures(j)...)
+	all = append(all, j.askedFigures()...)
 	return j.withFilms(j.drawn(all)), nil
 }
 
@@ -175,7 +178,9 @@ func (s *side) uniform(u *measure.Uniform) []plots.Point {
 	return out
 }
 
-func (j *job) sideView(i int) (*plots.Figure, error) {
+func (j *job) sideView(i int) (*plots.Figure, error) { return plots.SideView(j.sideSpec(i)) }
+
+func (j *job) sideSpec(i int) plots.SideViewSpec {
 	m, r := j.model(), &j.results[i]
 	t, l := r.Track, &r.Landing
 	s := j.sideOf(t)
@@ -193,7 +198,7 @@ func (j *job) sideView(i int) (*plots.Figure, error) {
 		spec.Rest = landingOn(spec.Track, t.End)
 	}
 	spec.Desc = described("Side view in the habitat frame, seen from the +axial end: %s.", sentence(l))
-	return plots.SideView(spec)
+	return spec
 }
 
 // landingOn gives the point of a drawn track at a time, which is one of its
@@ -219,14 +224,14 @@ func outcomeWords(l *measure.Landing) string {
 	case math.IsNaN(l.Offset) || sigfig(l.Offset, 3) == "0":
 		return "lands on " + l.Surface + ", on the plumb line"
 	}
-	return "lands on " + l.Surface + ", " + way(l.Offset) + " off plumb"
+	return "lands on " + l.Surface + ", " + plots.SignedLength(l.Offset) + " off plumb"
 }
 
 // sentence tells a landing with its figures.
 func sentence(l *measure.Landing) string {
 	s := sideTitle(l) + ", after " + withUnit(l.Time, "s") + " at " + withUnit(l.Speed, "m/s")
 	if l.Outcome == flight.Landed && !math.IsNaN(l.Deflection) {
-		s += "; apparent deflection " + way(l.Deflection)
+		s += "; apparent deflection " + plots.SignedLength(l.Deflection)
 	}
 	return s
 }
@@ -244,15 +249,32 @@ func (j *job) sideNotes(l *measure.Landing, on *side) string {
 }
 
 func (j *job) inertialView(i int) (*plots.Figure, error) {
+	return plots.InertialView(j.inertialSpec(i))
+}
+
+// bothViews draws a release on board and from outside.
+func (j *job) bothViews(i int) (*plots.Figure, error) {
+	spec := plots.BothViewsSpec{Side: j.sideSpec(i), Inertial: j.inertialSpec(i)}
+	spec.Title = spec.Side.Title
+	spec.Desc = described("One release in two views above one another: on board, and from outside in the inertial frame. %s.", sentence(&j.results[i].Landing))
+	spec.Notes = spec.Side.Notes + " " + strings.TrimPrefix(spec.Inertial.Notes, "Inertial frame, seen from the +axial end. ") + " Both are seen from the +axial end."
+	return plots.BothViews(spec)
+}
+
+func (j *job) inertialSpec(i int) plots.InertialViewSpec {
 	m, r := j.model(), &j.results[i]
 	t, l := r.Track, &r.Landing
 	g := measure.GroundOf(m, t)
 	foot := frame.Polar{R: g.Foot(t.Start.Phi), Phi: t.Start.Phi}.Vec()
 	turned := m.Habitat.Spin
-	spec := plots.InertialViewSpec{Title: l.Release + ": the same motion from outside, in the inertial frame", Spin: m.Habitat.Spin,
+	spec := plots.InertialViewSpec{Title: l.Release + ": from outside, in the inertial frame", Spin: m.Habitat.Spin,
 		Outlines: j.section(t.Start.Z, 0, plots.Point{}), Foot: plots.Point{X: foot.X, Y: foot.Y},
 		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + l.Time), Body: t.Body.Diameter / 2,
 		Surface: l.Surface, Offset: l.Offset, Flat: g.Flat != nil, Notes: j.inertialNotes(t, l)}
+	if g.Flat != nil {
+		begin := j.seenFrom(t, l.Time)[0]
+		_, _, spec.Height = g.Place(begin.pos, begin.place.Phi)
+	}
 	for _, at := range moments(t, m.Habitat.Spin, l.Time) {
 		p := t.At(at).Pos
 		spec.Path = append(spec.Path, plots.TrackPoint{T: at, X: p.X, Y: p.Y, Phase: t.Phases[t.PhaseAt(at)].Kind.String()})
@@ -262,7 +284,7 @@ func (j *job) inertialView(i int) (*plots.Figure, error) {
 	}
 	spec.Desc = described("View in the inertial frame from the +axial end: %s, while the habitat turns by %s deg.",
 		sentence(l), table.Round(math.Abs(turned*l.Time)*180/math.Pi, 3))
-	return plots.InertialView(spec)
+	return spec
 }
 
 func (j *job) inertialNotes(t *flight.Track, l *measure.Landing) string {
@@ -272,59 +294,4 @@ func (j *job) inertialNotes(t *flight.Track, l *measure.Landing) string {
 	}
 	return fmt.Sprintf("Inertial frame, seen from the +axial end. %s The habitat turns by %s deg meanwhile.", path,
 		table.Round(math.Abs(j.model().Habitat.Spin*l.Time)*180/math.Pi, 3))
-}
-
-// section gives the outlines of the structure at an axial place (m), turned
-// by an angle (rad) and moved by a vector (m).
-func (j *job) section(z, turn float64, by plots.Point) []plots.Outline {
-	m := j.model()
-	var out []plots.Outline
-	for _, o := range m.Interior.Section(z) {
-		name := strings.TrimSuffix(m.Interior.Surface(o.Surface).Name, " outside")
-		p := plots.Outline{Name: name, Kind: j.kindOf(name), Closed: true}
-		for _, s := range o.Segs {
-			p.Path = append(p.Path, carried(s, turn, by))
-		}
-		p.Path = sealed(p.Path, by)
-		out = append(out, p)
-	}
-	return out
-}
-
-// carried turns and moves a piece of an outline.
-func carried(s geom.Seg, turn float64, by plots.Point) plots.Segment {
-	sin, cos := math.Sincos(turn)
-	at := func(p [2]float64) plots.Point {
-		return plots.Point{X: cos*p[0] - sin*p[1] + by.X, Y: sin*p[0] + cos*p[1] + by.Y}
-	}
-	if s.Arc {
-		return plots.Arc(at(s.Centre), s.Radius, s.Phi0+turn, s.Phi1+turn)
-	}
-	l := plots.Line(at(s.A), at(s.B))
-	l.Bare = s.Bare
-	return l
-}
-
-// sealed joins the two circles of a whole ring by seams that are not drawn.
-func sealed(path []plots.Segment, centre plots.Point) []plots.Segment {
-	if len(path) != 2 || path[0].Radius == 0 || path[1].Radius == 0 {
-		return path
-	}
-	return plots.Sector(centre, path[1].Radius, path[0].Radius, path[0].Start, path[0].End)
-}
-
-// kindOf tells structure by the name of its first surface.
-func (j *job) kindOf(name string) plots.Kind {
-	m := j.model()
-	for i := range m.Fixtures {
-		if f := m.Fixtures[i].Name; name == f || strings.HasPrefix(name, f+" ") {
-			return plots.Fixture
-		}
-	}
-	for i := 1; i < len(m.Decks); i++ {
-		if d := m.Decks[i].Name; name == d || strings.HasPrefix(name, d+" ") {
-			return plots.Deck
-		}
-	}
-	return plots.Hull
 }

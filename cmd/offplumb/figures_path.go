@@ -96,12 +96,20 @@ func (j *job) pathFigures() []drawing {
 // planPaths gives the ways of the crew paths that start on a deck, or on a flat
 // floor.
 func (j *job) planPaths(deck int, flat *model.Flat) []plots.PlanPath {
-	var out []plots.PlanPath
+	var which []int
 	for i := range j.paths {
-		p := &j.paths[i]
-		if p.skipped || !walksOn(p.plan, deck, flat) || !p.roams() {
-			continue
+		if p := &j.paths[i]; !p.skipped && walksOn(p.plan, deck, flat) && p.roams() {
+			which = append(which, i)
 		}
+	}
+	return j.waysOf(which)
+}
+
+// waysOf gives the ways of crew paths on a plan.
+func (j *job) waysOf(which []int) []plots.PlanPath {
+	var out []plots.PlanPath
+	for _, i := range which {
+		p := &j.paths[i]
 		way := plots.PlanPath{Name: p.plan.Path.Name}
 		for _, k := range spread(len(p.loads), wayPoints) {
 			way.Points = append(way.Points, plots.Point{X: p.loads[k].Arc, Y: p.loads[k].Axial})

@@ -30,11 +30,11 @@ func (j *job) sharedFigures() []drawing {
 			file = fmt.Sprintf("deflection-%d", n+1)
 		}
 		part := shown[n*seriesShown : min(len(shown), (n+1)*seriesShown)]
-		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart(part) }})
+		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart("", part) }})
 	}
 	var names table.Namer
 	for _, p := range j.plans() {
-		out = append(out, drawing{"plan-" + names.Name(p.ground.Name), "deck plan", p.ground.Name, func() (*plots.Figure, error) { return j.deckPlan(p) }})
+		out = append(out, drawing{"plan-" + names.Name(p.ground.Name), "deck plan", p.ground.Name, func() (*plots.Figure, error) { return j.deckPlan(p.title(), p) }})
 	}
 	return out
 }
@@ -44,6 +44,7 @@ type plan struct {
 	ground measure.Ground
 	deck   int // of a deck about the axis
 	over   []int
+	paths  []int // crew paths; nil: all that start on the deck
 }
 
 // title says what a plan shows.
@@ -75,16 +76,22 @@ func (j *job) plans() []*plan {
 	return j.pathPlans(out)
 }
 
-func (j *job) deflectionChart(which []int) (*plots.Figure, error) {
-	spec := plots.DeflectionChartSpec{Title: "Apparent deflection against height and time", Spin: j.model().Habitat.Spin,
-		Notes: "Deck offset less that of the uniform-gravity path, spinward positive."}
+// deflectionChart draws what releases are off from uniform gravity; a title of its
+// own may be empty.
+func (j *job) deflectionChart(title string, which []int) (*plots.Figure, error) {
+	spec := plots.DeflectionChartSpec{Title: title, Spin: j.model().Habitat.Spin,
+		Notes: "Deck offset less that of the uniform-gravity path at the same moment, or at its landing once it has landed; spinward positive."}
 	words := ""
 	for _, i := range which {
 		r := &j.results[i]
 		spec.Series = append(spec.Series, j.deflection(r.Track, &r.Landing))
 		words += " " + sentence(&r.Landing) + "."
 	}
-	if len(which) == 1 {
+	switch {
+	case title != "":
+	case len(which) > 1:
+		spec.Title = "Apparent deflection against height and time"
+	default:
 		spec.Title = j.results[which[0]].Landing.Release + ": apparent deflection against height and time"
 	}
 	spec.Desc = described("Apparent deflection of each release as it falls.%s", words)
@@ -104,6 +111,11 @@ func (j *job) deflection(t *flight.Track, l *measure.Landing) plots.DeflectionSe
 		out.Height = append(out.Height, h)
 		out.Deflection = append(out.Deflection, g.Offset(s.place.Phi)-u)
 	}
+	// A landing that comes at another time than that of the uniform-gravity path is
+	// compared with a place that no moment of the chart shows.
+	if last := out.Deflection[len(out.Deflection)-1]; plots.SignedLength(last) == plots.SignedLength(l.Deflection) {
+		out.AtLanding = l.Deflection
+	}
 	return out
 }
 
@@ -120,15 +132,18 @@ func (j *job) pathPlans(out []*plan) []*plan {
 	return out
 }
 
-func (j *job) deckPlan(p *plan) (*plots.Figure, error) {
+func (j *job) deckPlan(title string, p *plan) (*plots.Figure, error) {
 	m := j.model()
-	spec := plots.DeckPlanSpec{Title: p.title(), Spin: m.Habitat.Spin,
+	spec := plots.DeckPlanSpec{Title: title, Spin: m.Habitat.Spin,
 		Notes: "Deck unrolled, seen from above by someone who stands on it. Open mark: plumb under the release. Numbered mark: plumb under the landing."}
 	if f := p.ground.Flat; f != nil {
 		spec.From, spec.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
 		spec.Paths = j.planPaths(p.deck, f)
 	} else {
 		j.deckSheet(&spec, &m.Decks[p.deck], p.deck)
+		if p.paths != nil {
+			spec.Paths = j.waysOf(p.paths)
+		}
 	}
 	words := ""
 	for _, i := range p.over {
@@ -251,38 +266,4 @@ func (j *job) loadsChart(i int) (*plots.Figure, error) {
 	spec.Desc = described("Loads on %s along %s, which takes %s: gravity at the feet %s, at the head %s, weight %s, side load up to %s, friction demand up to %s.",
 		row[1], row[0], row[2], row[3], row[4], row[5], row[6], row[7])
 	return plots.LoadsChart(spec)
-}
-
-// loadPanels maps the columns that limits may name to the panels of a loads
-// chart, and the SI value of the panel's unit.
-var loadPanels = map[string]struct {
-	panel int
-	scale float64
-}{
-	"gravity_feet": {plots.PanelGravity, model.StandardGravity}, "gravity_waist": {plots.PanelGravity, model.StandardGravity},
-	"gravity_head": {plots.PanelGravity, model.StandardGravity}, "weight": {plots.PanelWeight, 1},
-	"side_spinward": {plots.PanelSide, 1}, "side_axial": {plots.PanelSide, 1},
-	"friction_demand": {plots.PanelFriction, 1}, "head_cross": {plots.PanelHead, 1},
-}
-
-// loadLimits draws the limits of a path into its chart.
-func (j *job) loadLimits(spec *plots.LoadsChartSpec, path string) {
-	for i := range j.Limits {
-		c := &j.Limits[i]
-		at, ok := loadPanels[c.Key]
-		if c.Table != "crew" || !ok || !c.About(path) {
-			continue
-		}
-		add := func(q *model.Quantity, sign float64, words string) {
-			if q != nil {
-				spec.Limits[at.panel] = append(spec.Limits[at.panel], plots.Level{Name: c.Limit.Name + words, Value: sign * q.SI / at.scale})
-			}
-		}
-		add(c.Limit.Max, 1, "")
-		add(c.Limit.Min, 1, "")
-		add(c.Limit.MaxAbs, 1, "")
-		add(c.Limit.MaxAbs, -1, "")
-		add(c.Limit.WarnMax, 1, ", near")
-		add(c.Limit.WarnMin, 1, ", near")
-	}
 }

@@ -50,7 +50,7 @@ func sweepFigures(j *job) []drawing {
 // chart lays out the panels; false where there is nothing to draw.
 func (s *sweepResult) chart(j *job) (plots.StackChartSpec, bool) {
 	k := &s.Keys[0]
-	if k.Words() || len(s.Keys) > 1 && len(s.Keys[1].Texts) > curvesDrawn {
+	if k.Words() {
 		return plots.StackChartSpec{}, false
 	}
 	order := make([]int, len(k.Values))
@@ -78,6 +78,9 @@ func (s *sweepResult) chart(j *job) (plots.StackChartSpec, bool) {
 	spec.Spins = s.spins()
 	if n, _ := s.impossible(); n > 0 {
 		spec.Notes = fmt.Sprintf("Gaps: %s that cannot be; the table says why.", count(n, "point"))
+	}
+	if len(s.Keys) > 1 && len(s.Keys[1].Texts) > curvesDrawn {
+		spec.Notes = strings.TrimSpace(fmt.Sprintf("Lines for %d of the %d values of %s; the table has all. ", curvesDrawn, len(s.Keys[1].Texts), s.Keys[1].Last()) + spec.Notes)
 	}
 	spec.Desc = described("Sweep %s.", s.sentence())
 	return spec, len(spec.Panels) > 0
@@ -143,7 +146,8 @@ func (s *sweepResult) panel(order []int, first, next int) (plots.PanelSpec, bool
 	}
 	if len(s.Keys) > 1 {
 		second := &s.Keys[1]
-		for i, name := range second.Texts {
+		for _, i := range spread(len(second.Texts), curvesDrawn) {
+			name := second.Texts[i]
 			if !second.Words() {
 				name = second.Last() + " " + given(second.Values[i]) + spaced(second.Unit)
 			}

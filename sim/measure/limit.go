@@ -254,7 +254,7 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 	}
 	var out []Target
 	for i, n := range names(m, kind) {
-		if ok, err := path.Match(escape(name), escapeName(n)); n == name || ok && err == nil {
+		if Matches(name, n) {
 			t := Target{Kind: kind, Index: i, Name: n}
 			if kind == "release" {
 				t.Series = m.Releases[i].Series
@@ -266,6 +266,12 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		return nil, fmt.Sprintf("no %s named %q", kind, name)
 	}
 	return out, ""
+}
+
+// Matches says whether a pattern, in which * stands for anything, fits a name.
+func Matches(pattern, name string) bool {
+	ok, err := path.Match(escape(pattern), escapeName(name))
+	return name == pattern || ok && err == nil
 }
 
 // escape leaves * as the only character of a pattern with a meaning, and
