@@ -1,9 +1,11 @@
 package main
 
 import (
+	"bytes"
 	"context"
 	"fmt"
 	"io"
+	"path/filepath"
 	"strings"
 
 	"offplumb/plots/page"
@@ -28,8 +30,11 @@ func (j *job) putReport(ctx context.Context, st *stage) error {
 	if err != nil {
 		return err
 	}
-	r := j.report(s)
-	return st.file(reportFile, func(w io.Writer) error { return page.Write(w, r) })
+	var b bytes.Buffer
+	if err := page.Write(&b, j.report(s)); err != nil {
+		return err
+	}
+	return st.file(reportFile, func(w io.Writer) error { _, err := b.WriteTo(w); return err })
 }
 
 // report fills the page.
@@ -66,7 +71,7 @@ func (j *job) titleBlock() []page.Fact {
 		{Name: "Gravity on the floor", Value: table.Round(m.Gravity(h.FloorRadius)/model.StandardGravity, 3) + " g"},
 		{Name: "Rim speed", Value: table.Round(h.Spin*h.FloorRadius, 3) + " m/s"},
 		{Name: "Air", Value: air},
-		{Name: "Scenario", Value: j.Scenario.Name},
+		{Name: "Scenario", Value: filepath.Base(j.Scenario.Name)},
 		{Name: "SHA-256, first digits", Value: j.Inputs[0].SHA256[:12]},
 		{Name: "Written by", Value: programName + " " + version},
 	}
@@ -88,7 +93,7 @@ func (j *job) verdictSection() page.Section {
 		out.Words = []string{"The scenario sets no limits, so there is nothing to judge. The program has none of its own."}
 		return out
 	}
-	out.Words = []string{j.tally()}
+	out.Lead = j.tally()
 	if len(j.verdicts) > 0 {
 		out.Tables = []page.Table{j.limitTable()}
 	}

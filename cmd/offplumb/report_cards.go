@@ -18,13 +18,19 @@ func (j *job) habitatSection() page.Section {
 	figures := measure.HabitatOf(j.model(), 0, 0)
 	return page.Section{Name: "Habitat", Words: []string{spinLine(j.model())},
 		Tables: []page.Table{reported(measure.DeckTable(j.decks), "Decks", "decks.csv"),
-			unnamed(reported(measure.HabitatTable(figures), "The habitat as a whole", "habitat.csv"))}}
+			single(measure.HabitatTable(figures), "The habitat as a whole")}}
 }
 
-// unnamed marks a table whose first column is a number like the others.
-func unnamed(t page.Table) page.Table {
-	t.Fixed = true
-	return t
+// single turns a table of one row on its side: what, how much, meaning what.
+func single(t *table.Table, name string) page.Table {
+	out := page.Table{Name: name, Fixed: true, Columns: []page.Column{{Name: "figure"}, {Name: "value", Number: true}, {Name: "what it is"}}}
+	for i := range t.Columns {
+		c := &t.Columns[i]
+		cell := shown(c, t.Rows[0][i])
+		cell.Text += spaced(headed(c).Unit)
+		out.Rows = append(out.Rows, []page.Cell{{Text: headed(c).Name}, cell, {Text: c.Meaning}})
+	}
+	return out
 }
 
 func (j *job) releaseSection(s *shelf) page.Section {
@@ -87,8 +93,8 @@ func (j *job) landingTable() page.Table {
 func (j *job) releaseCard(i int, s *shelf) page.Card {
 	r := &j.results[i]
 	out := page.Card{Key: "release." + r.Landing.Release, Kind: "Release", Name: r.Landing.Release,
-		Words: []string{capital(sentence(&r.Landing)) + ".", storyOf(r.Landing.Release, &r.Rest), j.judgedHere("release." + r.Landing.Release)}}
-	out.Facts = append(append(j.startFacts(i), landingFacts(&r.Landing)...), restFacts(&r.Rest)...)
+		Words: []string{untitled(r.Landing.Release, sentence(&r.Landing)) + ".", storyOf(r.Landing.Release, &r.Rest), j.judgedHere("release." + r.Landing.Release)}}
+	out.Facts = []page.Group{{Name: "Release", Facts: j.startFacts(i)}, {Name: "Landing", Facts: landingFacts(&r.Landing)}, {Name: "End", Facts: restFacts(&r.Rest)}}
 	out.Figures, out.Files = s.take(r.Landing.Release, "side view", "inertial view")
 	return out
 }
@@ -163,7 +169,7 @@ func landingFacts(l *measure.Landing) []page.Fact {
 	}
 	out := []page.Fact{{Name: "Lands", Value: ending(l)}, {Name: "Off plumb", Value: way(l.Offset)}, {Name: "Of it by the spin", Value: way(l.Deflection)},
 		{Name: "After", Value: withUnit(l.Time, "s")}, {Name: "At speed", Value: withUnit(l.Speed, "m/s")},
-		{Name: "Angle to the surface's normal", Value: table.Fixed(degreesOf(l.Incidence), 1) + " deg"}}
+		{Name: "Incidence, 0 head-on", Value: table.Fixed(degreesOf(l.Incidence), 1) + " deg"}}
 	if math.Abs(l.OffsetAxial) > leastShown {
 		out = slices.Insert(out, 3, page.Fact{Name: "Axially", Value: withUnit(l.OffsetAxial, "m")})
 	}
@@ -181,9 +187,9 @@ func restFacts(r *measure.Rest) []page.Fact {
 	if r.Surface != "" {
 		state += " on " + r.Surface
 	}
-	return []page.Fact{{Name: "Ends", Value: state}, {Name: "After", Value: withUnit(r.Time, "s")},
-		{Name: "There", Value: fmt.Sprintf("%s m along %s, axial %s m", table.Fixed(r.Arc, 2), r.Deck, table.Fixed(r.Place.Z, 2))},
-		{Name: "Impacts", Value: fmt.Sprint(r.Impacts)}, {Name: "Way, of it slid", Value: withUnit(r.Path, "m") + ", " + withUnit(r.Slid, "m")}}
+	return []page.Fact{{Name: "Outcome", Value: state}, {Name: "After", Value: withUnit(r.Time, "s")},
+		{Name: "There", Value: fmt.Sprintf("%s m on %s, axial %s m", table.Fixed(r.Arc, 2), r.Deck, table.Fixed(r.Place.Z, 2))},
+		{Name: "Impacts", Value: fmt.Sprint(r.Impacts)}, {Name: "Way in all", Value: withUnit(r.Path, "m")}, {Name: "Of it slid", Value: withUnit(r.Slid, "m")}}
 }
 
 // nearShown is how many surfaces a crew path's card names.
@@ -207,10 +213,11 @@ func (j *job) pathCard(p *pathResult, s *shelf) page.Card {
 	}
 	out.Words = append(out.Words, j.judgedHere("path."+name))
 	row := p.row()
-	out.Facts = []page.Fact{{Name: "Person", Value: fmt.Sprintf("%s, %s kg, %s m", c.Name, given(c.Mass), given(c.Stature))}}
+	list := []page.Fact{{Name: "Person", Value: fmt.Sprintf("%s, %s kg, %s m", c.Name, given(c.Mass), given(c.Stature))}}
 	for i, head := range []string{"Takes", "Gravity at the feet", "Gravity at the head", "Weight", "Side load up to", "Friction demand up to", "Clearance"} {
-		out.Facts = append(out.Facts, page.Fact{Name: head, Value: row[2+i]})
+		list = append(list, page.Fact{Name: head, Value: row[2+i]})
 	}
+	out.Facts = []page.Group{{Facts: list[:4]}, {Facts: list[4:]}}
 	near := slices.Clone(p.near)
 	slices.SortStableFunc(near, func(a, b measure.Clearance) int { return compareGap(a.Gap, b.Gap) })
 	if len(near) > 0 {

@@ -65,7 +65,7 @@ func (j *job) scenarioSection() page.Section {
 	out := page.Section{Name: "Scenario", Text: j.Scenario.Text}
 	t := page.Table{Name: "Files read", Fixed: true, Columns: headings(2, "file", "SHA-256")}
 	for _, in := range j.Inputs {
-		t.Rows = append(t.Rows, []page.Cell{{Text: filepath.ToSlash(in.Name)}, {Text: in.SHA256}})
+		t.Rows = append(t.Rows, []page.Cell{{Text: filepath.Base(in.Name)}, {Text: in.SHA256}})
 	}
 	out.Tables = []page.Table{t}
 	for _, s := range j.flags.sets {

@@ -50,9 +50,12 @@ func holdsAny(t *table.Table, i int) bool {
 // headed turns a column's name into words and a unit.
 func headed(c *table.Column) page.Column {
 	name := strings.TrimSuffix(c.Name, unitEnding(c.Unit))
-	return page.Column{Name: strings.ReplaceAll(name, "_", " "), Unit: strings.ReplaceAll(c.Unit, "^2", "²"),
+	return page.Column{Name: spelt.Replace(name), Unit: strings.ReplaceAll(c.Unit, "^2", "²"),
 		Meaning: c.Meaning, Number: c.Kind != table.Text}
 }
+
+// spelt turns a column's name into words.
+var spelt = strings.NewReplacer("_", " ", "coriolis", "Coriolis", "euler", "Euler")
 
 // shown writes a cell for the report.
 func shown(c *table.Column, cell table.Cell) page.Cell {

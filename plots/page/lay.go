@@ -21,6 +21,7 @@ type (
 	sectionView struct {
 		ID, Name string
 		Number   int
+		Lead     string
 		Words    []string
 		List     []Item
 		Tables   []tableView
@@ -31,7 +32,7 @@ type (
 	cardView struct {
 		ID, Kind, Name string
 		Words          []string
-		Facts          []Fact
+		Facts          []Group
 		Motion         template.HTML
 		Figures        []figureView
 		Tables         []tableView
@@ -96,7 +97,7 @@ func (l *layer) report(r *Report) (*reportView, error) {
 }
 
 func (l *layer) section(s *Section, n int) (v sectionView, err error) {
-	v = sectionView{ID: "part-" + strconv.Itoa(n), Number: n, Name: clean(s.Name), Words: cleaned(s.Words), Text: lines(s.Text)}
+	v = sectionView{ID: "part-" + strconv.Itoa(n), Number: n, Name: clean(s.Name), Lead: clean(s.Lead), Words: cleaned(s.Words), Text: lines(s.Text)}
 	for _, it := range s.List {
 		v.List = append(v.List, Item{clean(it.Of), clean(it.Words)})
 	}
@@ -118,7 +119,12 @@ func (l *layer) section(s *Section, n int) (v sectionView, err error) {
 
 func (l *layer) card(c *Card) (v cardView, err error) {
 	l.cards++
-	v = cardView{ID: cardID(l.cards), Kind: clean(c.Kind), Name: clean(c.Name), Words: cleaned(c.Words), Facts: facts(c.Facts), Motion: c.Motion}
+	v = cardView{ID: cardID(l.cards), Kind: clean(c.Kind), Name: clean(c.Name), Words: cleaned(c.Words), Motion: c.Motion}
+	for _, g := range c.Facts {
+		if list := facts(g.Facts); len(list) > 0 {
+			v.Facts = append(v.Facts, Group{clean(g.Name), list})
+		}
+	}
 	for _, f := range c.Files {
 		v.Files = append(v.Files, File{clean(f.Name), clean(f.Path)})
 	}
@@ -174,11 +180,23 @@ func (l *layer) row(t *Table, row []Cell) []cellView {
 	out := make([]cellView, len(row))
 	for i, c := range row {
 		out[i] = cellView{Text: clean(c.Text), To: l.ids[c.To], Number: t.Columns[i].Number, Mark: c.Mark}
-		if t.Columns[i].Number && !math.IsNaN(c.Value) {
+		if !t.Columns[i].Number {
+			continue
+		}
+		out[i].Text = minus(out[i].Text)
+		if !math.IsNaN(c.Value) {
 			out[i].Value = strconv.FormatFloat(c.Value, 'g', 9, 64)
 		}
 	}
 	return out
+}
+
+// minus sets the sign of a number as figures do: as long as a plus.
+func minus(s string) string {
+	if len(s) > 1 && s[0] == '-' && s[1] >= '0' && s[1] <= '9' {
+		return "\u2212" + s[1:]
+	}
+	return s
 }
 
 func cleaned(list []string) (out []string) {
@@ -193,7 +211,7 @@ func cleaned(list []string) (out []string) {
 func facts(list []Fact) (out []Fact) {
 	for _, f := range list {
 		if v := clean(f.Value); v != "" {
-			out = append(out, Fact{clean(f.Name), v})
+			out = append(out, Fact{clean(f.Name), minus(v)})
 		}
 	}
 	return out

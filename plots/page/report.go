@@ -21,9 +21,16 @@ type Report struct {
 // Fact is a name and a value, such as "Spin" and "4 rpm".
 type Fact struct{ Name, Value string }
 
+// Group is facts about one thing.
+type Group struct {
+	Name  string
+	Facts []Fact
+}
+
 // Section is a numbered part of the report.
 type Section struct {
 	Name    string
+	Lead    string   // what it comes to
 	Words   []string // paragraphs
 	List    []Item
 	Tables  []Table
@@ -41,7 +48,7 @@ type Card struct {
 	Kind    string // what it is, in a word or two
 	Name    string
 	Words   []string // sentences, its story first
-	Facts   []Fact
+	Facts   []Group
 	Motion  template.HTML // a moving picture, trusted as it is
 	Figures []Figure
 	Tables  []Table
