@@ -29,8 +29,9 @@ var allowed = map[string][]string{
 	"sim/measure":        {"sim/flight", "sim/crew", "sim/model", "sim/frame", "sim/geom", "sim/table"},
 	"sim/study":          {"sim/measure", "sim/flight", "sim/crew", "sim/model", "sim/frame", "sim/table"},
 	"plots":              {"sim/table", "sim/geom"},
+	"plots/page":         {"sim/table", "plots"},
 	"scenarios":          {"sim/study", "sim/measure", "sim/model", "sim/air", "sim/frame", "sim/geom", "sim/table"},
-	"cmd/offplumb": {"scenarios", "plots", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model",
+	"cmd/offplumb": {"scenarios", "plots", "plots/page", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model",
 		"sim/air", "sim/frame", "sim/geom", "sim/table"},
 }
 

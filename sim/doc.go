@@ -5,6 +5,7 @@
 //
 //	cmd/offplumb     the command line: flags -> load -> run -> write
 //	scenarios        the only package that knows TOML
+//	plots/page       the report: words, rows and figures -> one HTML file; knows no models
 //	plots            tables and outlines -> figures; knows no models
 //	sim/study        many runs, the worker pool
 //	sim/measure      pure functions of tracks: landings, deflection, samples, limits
