@@ -2,6 +2,7 @@ package main
 
 import (
 	"slices"
+	"strings"
 
 	"offplumb/sim/measure"
 	"offplumb/sim/model"
@@ -57,6 +58,17 @@ var statements = []statement{
 		sources: []string{"Wilson, J. Am. Stat. Assoc. 22 (1927) 209-212: intervals of probabilities (from memory)",
 			"Hyndman, The American Statistician 50 (1996): regions of highest density (from memory)"}},
 	{used: (*job).halton, sources: []string{"Halton, Numerische Mathematik 2 (1960) (from memory)"}},
+}
+
+// modelLimits lists how far the models hold, for the README.
+func modelLimits() string {
+	var b strings.Builder
+	for i := range statements {
+		if s := &statements[i]; s.holds != "" {
+			b.WriteString(wrapped("- "+s.holds, "  "))
+		}
+	}
+	return b.String()
 }
 
 func always(*job) bool { return true }

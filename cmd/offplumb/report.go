@@ -140,11 +140,21 @@ func (j *job) limitTable() page.Table {
 			for _, text := range limitRow(v) {
 				row = append(row, page.Cell{Text: text})
 			}
-			row[1].Mark, row[4].To = r.mark, v.Of
+			row[1].Mark, row[4].To = r.mark, j.cardOf(v.Of)
 			t.Rows = append(t.Rows, row)
 		}
 	}
 	return bounded(t, "limits.csv")
+}
+
+// cardOf gives the key of the card that tells about the subject of a limit: a
+// release of a let-go series has none of its own.
+func (j *job) cardOf(subject string) string {
+	name, ok := strings.CutPrefix(subject, "release.")
+	if i, found := j.model().ReleaseNamed(name); ok && found && j.Lets[i].Release.Series != "" {
+		return "study." + j.Lets[i].Release.Series
+	}
+	return subject
 }
 
 // bounded cuts a table to what the report holds.

@@ -1,6 +1,9 @@
 package main
 
 import (
+	"slices"
+	"strings"
+
 	"offplumb/plots/page"
 	"offplumb/sim/measure"
 	"offplumb/sim/table"
@@ -52,9 +55,24 @@ func scatterCards(j *job, s *shelf) (out []page.Card) {
 	for i := range j.scatters {
 		if r := &j.scatters[i]; r.cloud != nil {
 			out = append(out, studyCard(s, "Scatter", "scatter", r.of.Name, untitled(r.of.Name, r.sentence(j.flags.seed)),
-				reported(measure.ScatterTable(r.sum), "What the samples come to", "scatter/")))
+				scatterTable(r.sum)))
 		}
 	}
+	return out
+}
+
+// scatterTable is the summary of a scatter, less what only a program wants.
+func scatterTable(s *measure.Scattered) page.Table {
+	t := measure.ScatterTable(s)
+	t.Rows = slices.DeleteFunc(t.Rows, func(row []table.Cell) bool {
+		what := row[0].Text
+		return what == "covariance" || strings.HasPrefix(what, "quantile_") && !slices.Contains([]string{"quantile_05", "quantile_50", "quantile_95"}, what)
+	})
+	out := reported(t, "What the samples come to", "scatter/")
+	for _, row := range out.Rows {
+		row[0].Text = spelt.Replace(row[0].Text)
+	}
+	out.Rest = "Further quantiles and the covariances are in the files of scatter/."
 	return out
 }
 
