@@ -28,7 +28,7 @@ func single(t *table.Table, name string) page.Table {
 		c := &t.Columns[i]
 		cell := shown(c, t.Rows[0][i])
 		cell.Text += spaced(headed(c).Unit)
-		out.Rows = append(out.Rows, []page.Cell{{Text: headed(c).Name}, cell, {Text: c.Meaning}})
+		out.Rows = append(out.Rows, []page.Cell{{Text: headed(c).Name}, cell, {Text: headed(c).Meaning}})
 	}
 	return out
 }

@@ -51,7 +51,7 @@ func holdsAny(t *table.Table, i int) bool {
 func headed(c *table.Column) page.Column {
 	name := strings.TrimSuffix(c.Name, unitEnding(c.Unit))
 	return page.Column{Name: spelt.Replace(name), Unit: strings.ReplaceAll(c.Unit, "^2", "²"),
-		Meaning: c.Meaning, Number: c.Kind != table.Text}
+		Meaning: spelt.Replace(c.Meaning), Number: c.Kind != table.Text}
 }
 
 // spelt turns a column's name into words.
