@@ -370,6 +370,7 @@ var file = &section{name: "the file", doc: "The file itself.",
 	keys: []key{
 		{name: "format", want: wantInteger, span: span{low: Version, high: Version}, required: true, doc: "version of the format: " + strconv.Itoa(Version)},
 		text("title", "what the scenario is about").or("the file's name"),
+		text("question", "what is to be answered"),
 		text("notes", "the story behind it"),
 		table("habitat", habitat, "the habitat").need(),
 		table("air", airKeys, "the air"),

@@ -44,6 +44,9 @@ type Scenario struct {
 	Asked   bool      // only those are drawn
 	Inputs  []Input   // the file itself first
 
+	Question string // what is to be answered
+	Text     string // the file as it was read; empty in a variant
+
 	root *node
 	read func(path string) ([]byte, error) // once each
 	open bool                              // files outside the scenario's folder are permitted
@@ -62,7 +65,7 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 	if root == nil {
 		return nil, errs
 	}
-	sc := &Scenario{Name: name, Inputs: []Input{input(name, src)}, root: root, read: readOrNot(opt.ReadFile), open: opt.AllowOutside}
+	sc := &Scenario{Name: name, Text: string(src), Inputs: []Input{input(name, src)}, root: root, read: readOrNot(opt.ReadFile), open: opt.AllowOutside}
 	if root.kids["sweep"] != nil {
 		sc.read = remembered(sc.read)
 	}
@@ -77,6 +80,7 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 func (sc *Scenario) finish(errs ErrorList) error {
 	b := &builder{}
 	o := b.object(sc.root, file, "")
+	sc.Question = o.str("question")
 	sc.Title, sc.Notes, sc.Studies, sc.Sweeps = o.str("title"), o.str("notes"), studies(o), b.sweeps(o)
 	sc.Figures, sc.Asked = drawn(o), o.sub("output").str("figures") == "asked"
 	if sc.Title == "" {

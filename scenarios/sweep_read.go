@@ -67,7 +67,7 @@ func (b *builder) swept(root *node, o *object, end string) SweepKey {
 }
 
 // unswept are the tables whose keys change no measure.
-var unswept = []string{"title", "notes", "limit", "platforms", "scatter", "sweep", "throw_to", "landing_map", "figure"}
+var unswept = []string{"title", "question", "notes", "limit", "platforms", "scatter", "sweep", "throw_to", "landing_map", "figure"}
 
 // sweptKey finds the key of the format that a sweep names; nil after a fault.
 func (b *builder) sweptKey(root *node, o *object, name string, out *SweepKey) *key {

@@ -30,9 +30,10 @@ var allowed = map[string][]string{
 	"sim/study":           {"sim/measure", "sim/flight", "sim/crew", "sim/model", "sim/frame", "sim/table"},
 	"plots":               {"sim/table", "sim/geom"},
 	"plots/motion":        {"plots", "sim/table"},
+	"plots/page":          {"sim/table", "plots"},
 	"scenarios":           {"sim/study", "sim/measure", "sim/model", "sim/air", "sim/frame", "sim/geom", "sim/table"},
 	"scenarios/published": {"scenarios", "sim/study", "sim/measure", "sim/model", "sim/air", "sim/frame"},
-	"cmd/offplumb":        {"scenarios", "scenarios/published", "plots", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model", "integrator", "plots/motion", "sim/air", "sim/frame", "sim/geom", "sim/table"},
+	"cmd/offplumb":        {"scenarios", "scenarios/published", "plots", "sim/study", "sim/measure", "sim/flight", "sim/crew", "sim/model", "integrator", "plots/motion", "sim/air", "sim/frame", "sim/geom", "sim/table", "plots/page"},
 }
 
 // outside is which modules each package may import beside the standard

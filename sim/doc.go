@@ -6,6 +6,7 @@
 //	cmd/offplumb     the command line: flags -> load -> run -> write
 //	scenarios        the only package that knows TOML
 //	  published      published figures, and the scenarios that they are held against
+//	plots/page       the report: words, rows and figures -> one HTML file; knows no models
 //	plots            tables and outlines -> figures; knows no models
 //	plots/motion     tracks and outlines -> the moving picture, in a page and alone
 //	sim/study        many runs, the worker pool

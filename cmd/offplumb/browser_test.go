@@ -2,103 +2,154 @@ package main
 
 import (
 	"context"
+	"fmt"
+	"net/url"
 	"os"
 	"os/exec"
+	"path/filepath"
 	"strings"
 	"sync"
 	"testing"
 	"time"
 
+	"github.com/chromedp/cdproto/cdp"
 	"github.com/chromedp/cdproto/log"
+	"github.com/chromedp/cdproto/network"
 	"github.com/chromedp/cdproto/runtime"
 	"github.com/chromedp/chromedp"
 )
 
-// browser is a tab of a new Chromium and what its console said.
-type browser struct {
-	ctx  context.Context
-	mu   sync.Mutex
-	said []string
+// browserPatience ends a step that hangs. On an idle machine a step takes
+// milliseconds.
+const browserPatience = time.Minute
+
+// tab is a page of a browser, and what it complained of.
+type tab struct {
+	context.Context
+	mu       sync.Mutex
+	faults   []string
+	requests []string
 }
 
-// newBrowser starts Chromium with an empty profile. Without one the test is skipped, unless
+// browse starts a browser. Without one the test is skipped, unless
 // OFFPLUMB_BROWSER=required.
-func newBrowser(t *testing.T) *browser {
+func browse(t *testing.T) *tab {
 	t.Helper()
-	path, err := exec.LookPath("chromium")
-	if err != nil {
-		if os.Getenv("OFFPLUMB_BROWSER") == "required" {
-			t.Fatal("no chromium, and OFFPLUMB_BROWSER=required")
+	path := ""
+	for _, name := range []string{"chromium", "chromium-browser", "google-chrome"} {
+		if p, err := exec.LookPath(name); err == nil {
+			path = p
+			break
 		}
-		t.Skip("no chromium")
 	}
-	flags := []chromedp.ExecAllocatorOption{chromedp.ExecPath(path), chromedp.NoFirstRun, chromedp.Headless, chromedp.NoSandbox,
-		chromedp.UserDataDir(t.TempDir()), chromedp.WindowSize(1000, 900), chromedp.Flag("hide-scrollbars", true)}
-	for _, f := range []string{"disable-gpu", "disable-quic", "disable-background-networking", "disable-component-update", "disable-sync"} {
-		flags = append(flags, chromedp.Flag(f, true))
+	if path == "" {
+		if os.Getenv("OFFPLUMB_BROWSER") == "required" {
+			t.Fatal("there is no chromium, and OFFPLUMB_BROWSER=required")
+		}
+		t.Skip("there is no chromium")
 	}
-	alloc, stop := chromedp.NewExecAllocator(context.Background(), flags...)
-	ctx, cancel := chromedp.NewContext(alloc)
-	b := &browser{ctx: ctx}
-	t.Cleanup(func() {
-		_ = chromedp.Cancel(ctx) // waits for the browser to end, so that its profile can be removed
-		cancel()
-		stop()
-	})
+	opts := append(chromedp.DefaultExecAllocatorOptions[:], chromedp.ExecPath(path), chromedp.NoSandbox, chromedp.DisableGPU,
+		chromedp.Flag("disable-quic", true), chromedp.Flag("disable-component-update", true), chromedp.UserDataDir(t.TempDir()),
+		chromedp.WSURLReadTimeout(time.Minute))
+	ctx, stop := chromedp.NewExecAllocator(context.Background(), opts...)
+	t.Cleanup(stop)
+	ctx, shut := chromedp.NewContext(ctx)
+	t.Cleanup(shut)
+	b := &tab{Context: ctx}
 	if err := chromedp.Listen(ctx, b.listen); err != nil {
 		t.Fatal(err)
 	}
+	call(t, b, network.Enable, network.EnableParams{})
+	call(t, b, log.Enable, cdp.Empty{})
+	call(t, b, runtime.Enable, cdp.Empty{})
 	return b
 }
 
-func (b *browser) listen(ev any) {
+// listen notes errors of scripts, of the policy and of the network, and every
+// request.
+func (b *tab) listen(ev any) {
 	b.mu.Lock()
 	defer b.mu.Unlock()
-	switch e := ev.(type) {
+	switch ev := ev.(type) {
 	case *runtime.EventExceptionThrown:
-		words := e.ExceptionDetails.Text
-		if x := e.ExceptionDetails.Exception; x != nil {
-			words += " " + x.Description
-		}
-		b.said = append(b.said, words)
+		b.faults = append(b.faults, ev.ExceptionDetails.Text)
 	case *runtime.EventConsoleAPICalled:
-		b.said = append(b.said, "console."+string(e.Type))
+		if ev.Type == runtime.ConsoleAPICalledTypeError || ev.Type == runtime.ConsoleAPICalledTypeWarning {
+			b.faults = append(b.faults, fmt.Sprintf("console: %s", ev.Args[0].Value))
+		}
 	case *log.EventEntryAdded:
-		b.said = append(b.said, e.Entry.Text)
+		b.faults = append(b.faults, ev.Entry.Text)
+	case *network.EventRequestWillBeSent:
+		b.requests = append(b.requests, ev.Request.URL)
 	}
 }
 
-// patience is how long a browser may take over one action on a busy machine.
-const patience = 20 * time.Second
-
-// run1 runs an action and gives its value.
-func run1[T any](t *testing.T, b *browser, action chromedp.Action[T]) T {
+// call gives the browser a command.
+func call[P, R any](t *testing.T, b *tab, c cdp.Command[P, R], params P) {
 	t.Helper()
-	ctx, cancel := context.WithTimeout(b.ctx, patience)
+	ctx, cancel := context.WithTimeout(b, browserPatience)
 	defer cancel()
-	v, err := chromedp.Run(ctx, action)
-	if err != nil {
+	if _, err := chromedp.Call(ctx, c, params); err != nil {
 		t.Fatal(err)
 	}
-	return v
 }
 
-// do runs steps, one after the other.
-func (b *browser) do(t *testing.T, steps ...chromedp.Action[chromedp.Void]) {
+func (b *tab) do(t *testing.T, steps ...chromedp.Action[chromedp.Void]) {
 	t.Helper()
-	ctx, cancel := context.WithTimeout(b.ctx, patience)
+	ctx, cancel := context.WithTimeout(b, browserPatience)
 	defer cancel()
 	if err := chromedp.Do(ctx, steps...); err != nil {
 		t.Fatal(err)
 	}
 }
 
-// quiet fails if the console said anything: of the policy, of an error, of anything.
-func (b *browser) quiet(t *testing.T) {
+// open opens a file and wants nothing but that file to be asked for.
+func (b *tab) open(t *testing.T, file string) {
+	t.Helper()
+	b.mu.Lock()
+	b.faults, b.requests = nil, nil
+	b.mu.Unlock()
+	to := (&url.URL{Scheme: "file", Path: filepath.ToSlash(file)}).String()
+	b.do(t, chromedp.Navigate(to), chromedp.WaitReady("footer"))
+	b.quiet(t, to)
+}
+
+func (b *tab) quiet(t *testing.T, only string) {
 	t.Helper()
 	b.mu.Lock()
 	defer b.mu.Unlock()
-	if len(b.said) > 0 {
-		t.Errorf("the console says: %s", strings.Join(b.said, "\n"))
+	for _, f := range b.faults {
+		t.Errorf("the browser says: %s", f)
 	}
+	for _, r := range b.requests {
+		if r != only && !strings.HasPrefix(r, "data:") {
+			t.Errorf("the page asks for %s", r)
+		}
+	}
+}
+
+// silent wants the browser not to have complained.
+func (b *tab) silent(t *testing.T) {
+	t.Helper()
+	b.mu.Lock()
+	defer b.mu.Unlock()
+	for _, f := range b.faults {
+		t.Errorf("the browser says: %s", f)
+	}
+}
+
+func eval[T any](t *testing.T, b *tab, script string) T {
+	t.Helper()
+	return result(t, b, chromedp.Evaluate[T](script, chromedp.EvalAwaitPromise))
+}
+
+func result[T any](t *testing.T, b *tab, a chromedp.Action[T]) T {
+	t.Helper()
+	ctx, cancel := context.WithTimeout(b, browserPatience)
+	defer cancel()
+	out, err := chromedp.Run(ctx, a)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return out
 }

@@ -63,6 +63,7 @@ func (j *job) drawn(all []drawing) []task {
 			d.file = fmt.Sprintf("%s-%d", base, n)
 		}
 		taken[d.file] = true
+		j.drawings = append(j.drawings, d)
 		for _, format := range j.flags.formats {
 			out = append(out, task{entry: entry{File: d.file + "." + format, Of: d.of, Name: d.name},
 				write: func(w io.Writer) error {

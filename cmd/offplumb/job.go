@@ -34,6 +34,7 @@ type job struct {
 	verdicts  []measure.Verdict
 	unjudged  []string
 	files     []entry
+	drawings  []drawing // of the figures written
 	resources []table.Resource
 	notes     []model.Warning
 }

@@ -17,9 +17,9 @@ import (
 )
 
 // seekTo shows a moment of player k and gives what it then says it shows, by name.
-func seekTo(t *testing.T, b *browser, k int, at float64) map[string][]float64 {
+func seekTo(t *testing.T, b *tab, k int, at float64) map[string][]float64 {
 	t.Helper()
-	words := run1(t, b, chromedp.Evaluate[map[string]string](fmt.Sprintf(
+	words := result(t, b, chromedp.Evaluate[map[string]string](fmt.Sprintf(
 		`(e=>{e.dataset.seek=%v;e.dispatchEvent(new Event("film-seek"));let d={...e.dataset};delete d.film;delete d.phase;return d})(document.querySelectorAll(".film")[%d])`, at, k)))
 	out := map[string][]float64{}
 	for name, w := range words {
@@ -41,15 +41,16 @@ func numbers(t *testing.T, words string) (out []float64) {
 }
 
 // told is what player k says it shows.
-func told(t *testing.T, b *browser, k int, name string) []float64 {
+func told(t *testing.T, b *tab, k int, name string) []float64 {
 	t.Helper()
-	return numbers(t, run1(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelectorAll(".film")[%d].getAttribute("data-%s")`, k, name))))
+	return numbers(t, result(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelectorAll(".film")[%d].getAttribute("data-%s")`, k, name))))
 }
 
 // TestMotionInBrowser tries players and moving pictures in one browser, whose start takes
 // most of the time.
 func TestMotionInBrowser(t *testing.T) {
-	b := newBrowser(t)
+	b := browse(t)
+	b.wide(t, 1000)
 	t.Run("picture", func(t *testing.T) { pictureMoves(t, b) })
 	t.Run("player", func(t *testing.T) { playerPlays(t, b) })
 	t.Run("tables", func(t *testing.T) { playersAgree(t, b) })
@@ -57,7 +58,7 @@ func TestMotionInBrowser(t *testing.T) {
 
 // playersAgree opens players under a strict policy and holds what they show
 // against rows of the tables: places in both frames, offset, height, speeds, accelerations.
-func playersAgree(t *testing.T, b *browser) {
+func playersAgree(t *testing.T, b *tab) {
 	for _, c := range []struct {
 		scenario string
 		sets     []string
@@ -77,10 +78,10 @@ func playersAgree(t *testing.T, b *browser) {
 			agrees(t, b, j, k, i)
 		}
 	}
-	b.quiet(t)
+	b.silent(t)
 }
 
-func agrees(t *testing.T, b *browser, j *job, k, i int) {
+func agrees(t *testing.T, b *tab, j *job, k, i int) {
 	t.Helper()
 	rows, _ := j.samples(i)
 	track := j.results[i].Track
@@ -102,7 +103,7 @@ func agrees(t *testing.T, b *browser, j *job, k, i int) {
 		r := rows[at]
 		shown := seekTo(t, b, k, r.Time)
 		if got := shown["time"][0]; got != r.Time {
-			if run1(t, b, chromedp.Evaluate[bool](fmt.Sprintf(`/The film ends at/.test(document.querySelectorAll(".film")[%d].textContent)`, k))) {
+			if result(t, b, chromedp.Evaluate[bool](fmt.Sprintf(`/The film ends at/.test(document.querySelectorAll(".film")[%d].textContent)`, k))) {
 				continue
 			}
 			t.Fatalf("%s: shows %g s, wants %g s", landing.Release, got, r.Time)
@@ -138,12 +139,12 @@ func rowRatio(j *job, deck int, r measure.Sample) float64 {
 
 // playerPlays plays, drags, steps and keys one player of several, and holds what its
 // numbers say at the landing against the landings table.
-func playerPlays(t *testing.T, b *browser) {
+func playerPlays(t *testing.T, b *tab) {
 	j := computed(t, "../../scenarios/shipped/overhead-locker.toml")
 	b.do(t, chromedp.Navigate("file://"+pageOf(t, j, 0, 1)))
 	landing := &j.results[0].Landing
 	words := func(css string) string {
-		return run1(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelector(%q).textContent`, ".film "+css)))
+		return result(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelector(%q).textContent`, ".film "+css)))
 	}
 
 	before := told(t, b, 0, "drawn")
@@ -200,10 +201,10 @@ func playerPlays(t *testing.T, b *browser) {
 	if got := told(t, b, 0, "time")[0]; math.Abs(got-step) > 1e-12 {
 		t.Errorf("an arrow leads to %g s, wants %g s", got, step)
 	}
-	if got := run1(t, b, chromedp.Evaluate[string](`document.querySelector(".film-strip").getAttribute("aria-valuetext")`)); !strings.Contains(got, "flight, offset") {
+	if got := result(t, b, chromedp.Evaluate[string](`document.querySelector(".film-strip").getAttribute("aria-valuetext")`)); !strings.Contains(got, "flight, offset") {
 		t.Errorf("the slider says %q", got)
 	}
-	b.quiet(t)
+	b.silent(t)
 }
 
 // press clicks the first element of a class.
@@ -211,13 +212,13 @@ func press(css string) chromedp.Action[chromedp.Void] {
 	return chromedp.Evaluate[chromedp.Void](fmt.Sprintf(`document.querySelector(%q).click()`, css))
 }
 
-func key(t *testing.T, b *browser, name string) {
+func key(t *testing.T, b *tab, name string) {
 	t.Helper()
-	run1(t, b, chromedp.Evaluate[chromedp.Void](fmt.Sprintf(
+	result(t, b, chromedp.Evaluate[chromedp.Void](fmt.Sprintf(
 		`document.querySelector(".film-strip").dispatchEvent(new KeyboardEvent("keydown",{key:%q,bubbles:true,cancelable:true}))`, name)))
 }
 
-func home(t *testing.T, b *browser) {
+func home(t *testing.T, b *tab) {
 	t.Helper()
 	key(t, b, "Home")
 	if got := told(t, b, 0, "time")[0]; got != 0 {
@@ -226,9 +227,9 @@ func home(t *testing.T, b *browser) {
 }
 
 // drag presses the mouse on the thumb and pulls it beyond the strip's end.
-func drag(t *testing.T, b *browser) {
+func drag(t *testing.T, b *tab) {
 	t.Helper()
-	box := run1(t, b, chromedp.Evaluate[[]float64](
+	box := result(t, b, chromedp.Evaluate[[]float64](
 		`(e=>{e.scrollIntoView({block:"center"});let r=e.getBoundingClientRect();return [r.left,r.top,r.width,r.height]})(document.querySelector(".film-strip"))`))
 	x, y := box[0]+box[2]*0.03, box[1]+box[3]*0.37
 	b.do(t, chromedp.MouseEvent(input.DispatchMouseEventTypeMousePressed, x, y, chromedp.ButtonLeft),
@@ -242,7 +243,7 @@ func drag(t *testing.T, b *browser) {
 
 // pictureMoves shows a moving picture as an image, whose document runs no script,
 // and looks twice.
-func pictureMoves(t *testing.T, b *browser) {
+func pictureMoves(t *testing.T, b *tab) {
 	j := computed(t, "../../scenarios/shipped/overhead-locker.toml")
 	dir := t.TempDir()
 	page := `<!DOCTYPE html><meta charset="utf-8"><title>Image</title><img width="880" alt="" src="picture.svg">`
@@ -252,10 +253,10 @@ func pictureMoves(t *testing.T, b *browser) {
 		}
 	}
 	b.do(t, chromedp.Navigate("file://"+filepath.Join(dir, "page.html")), chromedp.Sleep(700*time.Millisecond))
-	first := run1(t, b, chromedp.CaptureScreenshot())
+	first := result(t, b, chromedp.CaptureScreenshot())
 	b.do(t, chromedp.Sleep(500*time.Millisecond))
-	if bytes.Equal(first, run1(t, b, chromedp.CaptureScreenshot())) {
+	if bytes.Equal(first, result(t, b, chromedp.CaptureScreenshot())) {
 		t.Error("half a second apart the picture is the same")
 	}
-	b.quiet(t)
+	b.silent(t)
 }

@@ -46,6 +46,7 @@ func TestReadmeIsTrue(t *testing.T) {
 	summary := strings.ReplaceAll(stdout.String(), out, "overhead-locker-out")
 	want := generated(t, string(src), "summary", "```\n"+summary+"```\n")
 	want = generated(t, want, "reference", scenarios.Reference())
+	want = generated(t, want, "limits", modelLimits())
 	same(t, readme, []byte(want))
 	for _, name := range []string{"wrench-slips-out-side.svg", "wrench-slips-out-inertial.svg"} {
 		figure, err := os.ReadFile(filepath.Join(out, name))

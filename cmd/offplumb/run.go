@@ -2,6 +2,7 @@ package main
 
 import (
 	"context"
+	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -21,6 +22,8 @@ type runFlags struct {
 	jobs      int
 	seed      uint64
 	noFigures bool
+	noReport  bool
+	open      bool
 	formats   []string
 	json      bool
 	quiet     bool
@@ -33,8 +36,8 @@ func newRun(s streams) *cobra.Command {
 		Use: "run SCENARIO.toml", Short: "do everything a scenario asks for; write tables and figures, print a summary",
 		Long: strings.TrimSpace(`
 run reads a scenario, flies its releases, walks its crew paths and judges its
-limits. It writes tables (CSV), figures and run.json into a folder and prints a
-summary. Exit status: 0 done, 1 done but a limit is broken, 2 the command line
+limits. It writes tables (CSV), figures, a report and run.json into a folder and
+prints a summary. Exit status: 0 done, 1 done but a limit is broken, 2 the command line
 or the scenario is wrong, 3 the run could not be completed.`),
 		Args: exactly(1, "one scenario file, or - for standard input"),
 		RunE: func(cmd *cobra.Command, args []string) error {
@@ -51,6 +54,8 @@ or the scenario is wrong, 3 the run could not be completed.`),
 	fl.IntVar(&f.jobs, "jobs", runtime.GOMAXPROCS(0), "how many `workers` compute at a time")
 	fl.Uint64Var(&f.seed, "seed", 1, "of the samples of scatters: a whole `number`")
 	fl.BoolVar(&f.noFigures, "no-figures", false, "write no figures")
+	fl.BoolVar(&f.noReport, "no-report", false, "write no report.html")
+	fl.BoolVar(&f.open, "open", false, "open the report in the browser once it is written")
 	fl.StringSliceVar(&f.formats, "figure-format", []string{"svg"}, "`formats` of the figures: svg, png, pdf, separated by commas")
 	fl.BoolVar(&f.json, "json", false, "print the contents of run.json in place of the summary")
 	fl.BoolVar(&f.quiet, "quiet", false, "print no summary")
@@ -61,6 +66,9 @@ or the scenario is wrong, 3 the run could not be completed.`),
 func (f *runFlags) check() error {
 	if f.jobs < 1 {
 		return wrong(fmt.Errorf("--jobs: wants 1 or more, got %d", f.jobs))
+	}
+	if f.open && f.noReport {
+		return wrong(errors.New("--open: there is no report to open with --no-report"))
 	}
 	for _, format := range f.formats {
 		if !slices.Contains(plots.Formats(), format) {
@@ -102,7 +110,10 @@ func (f *runFlags) run(ctx context.Context, s streams, scenario string) error {
 		st.discard()
 		return incomplete(fmt.Errorf("cannot put the results in place: %w", plainPath(j.out, err)))
 	}
-	return j.report(s)
+	if f.open {
+		openReport(j.out, s.err)
+	}
+	return j.tell(s)
 }
 
 // do computes and writes everything into the stage.
@@ -130,8 +141,8 @@ func (j *job) giveUp(err error, st *stage, s streams) error {
 	return incomplete(err)
 }
 
-// report prints the summary and gives the exit status.
-func (j *job) report(s streams) error {
+// tell prints the summary and gives the exit status.
+func (j *job) tell(s streams) error {
 	var err error
 	switch {
 	case j.flags.json:

@@ -305,12 +305,15 @@ func allowed(v *measure.Verdict) string {
 
 // written counts what is in the folder.
 func (j *job) written() string {
-	tables, figures := len(j.resources), len(j.files)-len(j.resources)
+	tables, figures, report := len(j.resources), len(j.files)-len(j.resources), ""
+	if !j.flags.noReport {
+		figures, report = figures-1, ", "+reportFile
+	}
 	s := count(tables, "table")
 	if figures > 0 {
 		s += ", " + count(figures, "figure")
 	}
-	return s + ", datapackage.json, run.json"
+	return s + report + ", datapackage.json, run.json"
 }
 
 // wrapped breaks running text, with an indent from the second line on.

@@ -42,6 +42,12 @@ func (j *job) write(ctx context.Context, st *stage, p *progress, complete bool) 
 	if err := writeAll(ctx, st, tasks, j.flags.jobs, p, complete); err != nil {
 		return err
 	}
+	if complete && !j.flags.noReport {
+		j.files = append(j.files, entry{File: reportFile, Of: "report"})
+		if err := j.putReport(ctx, st); err != nil {
+			return err
+		}
+	}
 	if err := st.file("datapackage.json", func(w io.Writer) error {
 		return table.WriteDataPackage(w, "offplumb-run", j.Title, j.resources)
 	}); err != nil {

@@ -114,7 +114,9 @@ func TestFlatFloorTilts(t *testing.T) {
 
 // TestFlatFloorRefusals tries what cannot be walked.
 func TestFlatFloorRefusals(t *testing.T) {
-	to := func(s float64) model.Leg { return model.Leg{Kind: model.Walk, Spinward: &model.Arc{Value: s}, Speed: 1} }
+	to := func(s float64) model.Leg {
+		return model.Leg{Kind: model.Walk, Spinward: &model.Arc{Value: s}, Speed: 1}
+	}
 	for _, c := range []struct {
 		name, says string
 		legs       []model.Leg

@@ -1,0 +1,117 @@
+package main
+
+import (
+	"slices"
+	"strings"
+
+	"offplumb/sim/measure"
+	"offplumb/sim/model"
+)
+
+// statement is what a model of the program is and how far it holds. The words
+// stand here only: the report takes those that its run used, and the README
+// all limits.
+type statement struct {
+	topic   string
+	how     string   // what is computed
+	holds   string   // how far it holds
+	sources []string // published, "from memory" where one was not seen
+	used    func(*job) bool
+}
+
+// statements are in the order of the reader's interest.
+var statements = []statement{
+	{topic: "Rotation", used: always,
+		how:   "Motion is solved in the inertial frame and carried into the frame of the habitat, where centrifugal, Coriolis and Euler acceleration appear.",
+		holds: "Rotation is the only gravity, and the spin is steady. The habitat is rigid and heavy against what moves in it."},
+	{topic: "Integration", used: (*job).flew,
+		how: "Free flight is integrated by the adaptive Dormand-Prince 5(4) pair, as a departure from uniform motion; without forces it is exact. Contacts are located on its continuous extension.",
+		sources: []string{"Dormand & Prince, A family of embedded Runge-Kutta formulae, J. Comp. Appl. Math. 6 (1980) 19-26 (from memory)",
+			"Hairer, Norsett & Wanner, Solving Ordinary Differential Equations I, 2nd ed. 1993, section II.6 (from memory)"}},
+	{topic: "Bodies and air", used: (*job).flew,
+		how: "The drag of a sphere, relative to air that turns with the habitat. Density and viscosity are those given, or of dry air at the pressure and temperature.",
+		holds: "A body is a sphere without lift and without spin of its own in the air. Drag is that of a smooth sphere (Clift & Gauvin), to about 6 % below a Reynolds number of 3e5, " +
+			"or your own drag coefficient. The air turns with the habitat like a solid: drafts and ventilation are not modelled. Water drops above 1.5 mm flatten and fall more slowly."},
+	{used: (*job).dragged, sources: []string{
+		"Clift & Gauvin 1970, drag of spheres (from memory)",
+		"US Standard Atmosphere 1976, eq. 51: Sutherland's law of viscosity (from memory)",
+		"ISO 2533:1975, standard atmosphere: gas constant of dry air (from memory)"}},
+	{topic: "Contact", used: (*job).touched,
+		how: "A body rebounds by its restitution, and Coulomb friction acts along the surface, up to sticking; then it bounces, slides, rolls or rests.",
+		holds: "Contact is that of a rigid sphere: normal restitution, Coulomb friction, and for a body that `rolls` the rolling of a solid sphere without rolling resistance. " +
+			"A rebound of less than 1 mm ends the bouncing. Real things rattle, roll on their flats and catch on their corners: take resting places as typical, and landings as what happens.",
+		sources: []string{"Brach, Mechanical Impact Dynamics, 1991, chapter 5 (from memory)",
+			"Lotstedt, Mechanical systems of rigid bodies subject to unilateral constraints, SIAM J. Appl. Math. 42 (1982) (from memory)"}},
+	{topic: "Interior", used: always,
+		how: "Contact is where the distance to the nearest surface equals the body's radius.",
+		holds: "Rooms are cylinders with flat ends, tori with a round or a flat floor, spheres and cabins with a flat floor, joined by radial passages of square or round section; " +
+			"in them stand decks with openings, boxes, posts and walls. Floors of tubes and spheres take no openings, cabins no further decks: refused, not approximated."},
+	{topic: "People", used: (*job).walked,
+		how:   "The loads are what the support must give against the acceleration of the path, in the turning frame, at feet, waist and head.",
+		holds: "A person is a line from feet to head along the radius, on a flat floor along its normal, with smooth changes of speed. Loads are those of the path: the shocks of steps, and the forces of hands and balance, come on top."},
+	{topic: "Habitat figures", used: always,
+		how: "The drop offset of a deck is that of a point in vacuum, by the involute function; people change from walking to running at a Froude number of 0.5.",
+		sources: []string{"ISO 21771:2007, the involute function",
+			"Kram, Domingo & Ferris, J. Exp. Biol. 200 (1997) 821-826: walk and run in reduced gravity"}},
+	{topic: "Scatter", used: (*job).scattering,
+		how: "Probabilities have the 95 % interval of independent samples. The contour is the smallest area that holds 95 % of the landings, by their smoothed density.",
+		sources: []string{"Wilson, J. Am. Stat. Assoc. 22 (1927) 209-212: intervals of probabilities (from memory)",
+			"Hyndman, The American Statistician 50 (1996): regions of highest density (from memory)"}},
+	{used: (*job).halton, sources: []string{"Halton, Numerische Mathematik 2 (1960) (from memory)"}},
+}
+
+// modelLimits lists how far the models hold, for the README.
+func modelLimits() string {
+	var b strings.Builder
+	for i := range statements {
+		if s := &statements[i]; s.holds != "" {
+			b.WriteString(wrapped("- "+s.holds, "  "))
+		}
+	}
+	return b.String()
+}
+
+func always(*job) bool { return true }
+
+// flew says whether any release was flown.
+func (j *job) flew() bool {
+	for i := range j.results {
+		if j.results[i].Finished() {
+			return true
+		}
+	}
+	return j.scattering()
+}
+
+// dragged says whether the law of drag was used.
+func (j *job) dragged() bool {
+	if j.model().Air.Vacuum() {
+		return false
+	}
+	for i := range j.results {
+		if b := &j.Lets[i].Body; j.results[i].Finished() && b.Diameter > 0 && b.DragCoefficient == 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// touched says whether anything was hit.
+func (j *job) touched() bool {
+	return slices.ContainsFunc(j.rests, func(r measure.Rest) bool { return r.Impacts > 0 || r.Slid > 0 })
+}
+
+// walked says whether a crew path was walked.
+func (j *job) walked() bool {
+	return slices.ContainsFunc(j.paths, func(p pathResult) bool { return !p.skipped })
+}
+
+// scattering says whether a scatter ran.
+func (j *job) scattering() bool {
+	return slices.ContainsFunc(j.scatters, func(s scatterResult) bool { return s.cloud != nil })
+}
+
+// halton says whether one used Halton points.
+func (j *job) halton() bool {
+	return slices.ContainsFunc(j.scatters, func(s scatterResult) bool { return s.cloud != nil && s.of.Sampling == model.Halton })
+}
