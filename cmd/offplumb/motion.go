@@ -1,7 +1,9 @@
 package main
 
 import (
+	"context"
 	"fmt"
+	"html/template"
 	"io"
 	"math"
 	"slices"
@@ -46,6 +48,34 @@ func (j *job) withFilms(all []task) []task {
 			}})
 	}
 	return all
+}
+
+// films are the players of the releases that have a card in the report, by
+// their index.
+func (j *job) films(ctx context.Context) (map[int]template.HTML, error) {
+	out := map[int]template.HTML{}
+	if j.flags.noFigures {
+		return out, nil
+	}
+	for i := range j.results {
+		if len(out) == cardsInReport {
+			break
+		}
+		if !j.tracked(i) || j.inSeries(j.Lets[i].Release.Name) {
+			continue
+		}
+		if ctx.Err() != nil {
+			return nil, context.Cause(ctx)
+		}
+		f, err := j.film(i)
+		if err != nil {
+			return nil, err
+		}
+		if out[i], err = motion.Player(f); err != nil {
+			return nil, err
+		}
+	}
+	return out, nil
 }
 
 // film fills the moving picture of a tracked release.

@@ -4,10 +4,12 @@ import (
 	"bytes"
 	"context"
 	"fmt"
+	"html/template"
 	"io"
 	"path/filepath"
 	"strings"
 
+	"offplumb/plots/motion"
 	"offplumb/plots/page"
 	"offplumb/sim/model"
 	"offplumb/sim/table"
@@ -30,22 +32,27 @@ func (j *job) putReport(ctx context.Context, st *stage) error {
 	if err != nil {
 		return err
 	}
+	films, err := j.films(ctx)
+	if err != nil {
+		return err
+	}
 	var b bytes.Buffer
-	if err := page.Write(&b, j.report(s)); err != nil {
+	if err := page.Write(&b, j.report(s, films)); err != nil {
 		return err
 	}
 	return st.file(reportFile, func(w io.Writer) error { _, err := b.WriteTo(w); return err })
 }
 
-// report fills the page.
-func (j *job) report(s *shelf) *page.Report {
+// report fills the page. films are the players, of the releases that have one.
+func (j *job) report(s *shelf, films map[int]template.HTML) *page.Report {
 	r := &page.Report{Title: j.Title, Question: j.Question, Notes: j.Notes, Block: j.titleBlock(), Caution: caution, Program: programName + " " + version}
 	r.Sections = append(r.Sections, j.verdictSection())
 	if len(j.notes) > 0 {
 		r.Sections = append(r.Sections, j.warningSection())
 	}
 	r.Sections = append(r.Sections, j.habitatSection())
-	for _, make := range []func(*shelf) page.Section{j.releaseSection, j.pathSection, j.studySection} {
+	releases := func(s *shelf) page.Section { return j.releaseSection(s, films) }
+	for _, make := range []func(*shelf) page.Section{releases, j.pathSection, j.studySection} {
 		if sec := make(s); len(sec.Cards)+len(sec.Tables) > 0 {
 			r.Sections = append(r.Sections, sec)
 		}
@@ -54,6 +61,9 @@ func (j *job) report(s *shelf) *page.Report {
 		r.Sections = append(r.Sections, page.Section{Name: "Further figures", Figures: rest})
 	}
 	r.Sections = append(r.Sections, j.methodSection(), j.scenarioSection())
+	if len(films) > 0 {
+		r.Styles, r.Scripts = []template.CSS{motion.Style()}, []template.JS{motion.Script()}
+	}
 	return r
 }
 

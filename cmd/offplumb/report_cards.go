@@ -2,6 +2,7 @@ package main
 
 import (
 	"fmt"
+	"html/template"
 	"math"
 	"slices"
 	"strings"
@@ -33,7 +34,7 @@ func single(t *table.Table, name string) page.Table {
 	return out
 }
 
-func (j *job) releaseSection(s *shelf) page.Section {
+func (j *job) releaseSection(s *shelf, films map[int]template.HTML) page.Section {
 	out := page.Section{Name: "Releases"}
 	tracked := 0
 	for i := range j.results {
@@ -41,7 +42,7 @@ func (j *job) releaseSection(s *shelf) page.Section {
 			continue
 		}
 		if tracked++; tracked <= cardsInReport {
-			out.Cards = append(out.Cards, j.releaseCard(i, s))
+			out.Cards = append(out.Cards, j.releaseCard(i, s, films[i]))
 		}
 	}
 	if t := j.landingTable(); len(t.Rows) > 0 {
@@ -90,11 +91,12 @@ func (j *job) landingTable() page.Table {
 	return bounded(t, "landings.csv")
 }
 
-func (j *job) releaseCard(i int, s *shelf) page.Card {
+func (j *job) releaseCard(i int, s *shelf, film template.HTML) page.Card {
 	r := &j.results[i]
 	out := page.Card{Key: "release." + r.Landing.Release, Kind: "Release", Name: r.Landing.Release,
 		Words: []string{untitled(r.Landing.Release, sentence(&r.Landing)) + ".", storyOf(r.Landing.Release, &r.Rest), j.judgedHere("release." + r.Landing.Release)}}
 	out.Facts = []page.Group{{Name: "Release", Facts: j.startFacts(i)}, {Name: "Landing", Facts: landingFacts(&r.Landing)}, {Name: "End", Facts: restFacts(&r.Rest)}}
+	out.Motion = film
 	out.Figures, out.Files = s.take(r.Landing.Release, "side view", "inertial view")
 	return out
 }
