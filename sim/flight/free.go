@@ -20,6 +20,7 @@ import (
 type free struct {
 	base   frame.State // r0, v0: inertial, at t = 0
 	begin  float64     // s, habitat time at t = 0
+	last   float64     // s, habitat time of the last instant of the stretch of the habitat's motion
 	forces *Forces
 }
 

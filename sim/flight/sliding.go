@@ -20,10 +20,10 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q, Vel: now.v}, spin: now.w,
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
-	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
 	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, tidy: s.tidy,
-		opts:   []integrator.Option{integrator.MaxStep(stepTurn / math.Max(spin, slowest))},
+		opts:   []integrator.Option{integrator.MaxStep(f.longestStep(s.begin))},
 		events: func(grazed []geom.Patch) *ends { return f.slideEvents(s, now, grazed) }}
+	r.smooth, s.last = f.smoothUntil(t, now)
 	res, end, err := r.solve(t, &phase, y)
 	if err != nil {
 		return ending{}, err
@@ -40,7 +40,7 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 // or as good as stopped slipping, to do so, and says what it does.
 func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide, Kind) {
 	s, on := f.slide, st.on
-	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, on: patchesOf(on), grazed: patchesOf(st.grazed)}
+	*s = slide{flier: f, begin: t.Begin + now.t, last: math.Inf(1), origin: now.q, on: patchesOf(on), grazed: patchesOf(st.grazed)}
 	for i := range on {
 		_, s.mu[i] = f.gripOf(on[i].Surface)
 	}

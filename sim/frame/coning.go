@@ -129,7 +129,8 @@ func (m *Turning) Bounds(t0, t1 float64) (omega, alpha float64) {
 // direction go round at the rate q, and its loads with it.
 func (m *Turning) Stretch(t float64) Stretch {
 	out := Stretch{Pace: math.Inf(1)}
-	out.End, out.Pace = m.rates.stretch(t)
+	end, over := m.rates.stretch(t)
+	out.End, out.Pace = end, over*changePace
 	if m.p == 0 {
 		return out
 	}
@@ -148,6 +149,11 @@ func (m *Turning) Stretch(t float64) Stretch {
 	out.Pace = math.Min(out.Pace, 1/(rate+math.Abs(m.slow)))
 	return out
 }
+
+// changePace is the pace of a change of the spin, as a share of its length: of
+// the smooth law, rate and acceleration change by as much as their peaks within
+// three times that.
+const changePace = 0.125
 
 // Rates is the spin as a function of time.
 func (m *Turning) Rates() *Rates { return &m.rates }

@@ -146,7 +146,7 @@ func TestStretches(t *testing.T) {
 		at        float64
 		end, pace float64
 		steady    bool
-	}{{0, 1, inf, false}, {1, 5, 4, false}, {5, 6, inf, false}, {6, 11, 5, false}, {11, inf, inf, true}, {99, inf, inf, true}} {
+	}{{0, 1, inf, false}, {1, 5, 0.5, false}, {5, 6, inf, false}, {6, 11, 0.625, false}, {11, inf, inf, true}, {99, inf, inf, true}} {
 		s := spin.Stretch(c.at)
 		if s.End != c.end || s.Pace != c.pace || s.Steady() != c.steady || s.Period != 0 {
 			t.Errorf("%g s: %+v", c.at, s)
