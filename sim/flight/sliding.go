@@ -151,13 +151,14 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 }
 
 // slowEnough is the speed at which a body counts as having stopped. One that
-// goes on from there stops anew only when it was faster again.
+// goes on from there stops anew only when it was faster again; one that was set
+// off with a creep (see setOff) is faster, and may stop as the pull changes.
 func (f *Flier) slowEnough(now *moving, n int) float64 {
 	slow := creep
 	if f.rolls(n) {
 		slow = rollCreep
 	}
-	if r3.Norm(now.v) <= 2*slow {
+	if v := r3.Norm(now.v); v <= 2*slow && (v == 0 || f.rolls(n)) {
 		return 4 * slow
 	}
 	return slow

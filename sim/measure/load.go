@@ -2,6 +2,7 @@ package measure
 
 import (
 	"math"
+	"sort"
 
 	"gonum.org/v1/gonum/integrate/quad"
 	"offplumb/sim/crew"
@@ -32,12 +33,23 @@ func LoadSeries(m *model.Model, p *crew.Plan) ([]Load, float64) {
 	times, step := Times(p.Duration(), m.Output.Step)
 	deck := m.Decks[p.Deck].Radius
 	out := make([]Load, len(times))
-	w := worker{power: func(t float64) float64 { return p.Loads(m, t).Power }, breaks: p.Breaks()}
+	w := worker{power: func(t float64) float64 { return p.Loads(m, t).Power }, breaks: smoothBreaks(m, p)}
 	for i, t := range times {
 		l := p.Loads(m, t)
 		out[i] = Load{Loads: l, Leg: p.LegName(l.Feet.Leg), Arc: deck * l.Feet.Phi, Height: deck - l.Feet.R, Work: w.to(t)}
 	}
 	return out, step
+}
+
+// smoothBreaks gives the times (s from the start of the path) at which the power
+// has a kink: those of the path and those of the habitat's motion.
+func smoothBreaks(m *model.Model, p *crew.Plan) []float64 {
+	out := p.Breaks()
+	for at := m.Motion.Stretch(p.Path.Time).End; at < p.Path.Time+p.Duration(); at = m.Motion.Stretch(at).End {
+		out = append(out, at-p.Path.Time)
+	}
+	sort.Float64s(out)
+	return out
 }
 
 // worker adds up the work of a power.
