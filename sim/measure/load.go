@@ -6,6 +6,7 @@ import (
 
 	"gonum.org/v1/gonum/integrate/quad"
 	"offplumb/sim/crew"
+	"offplumb/sim/frame"
 	"offplumb/sim/model"
 )
 
@@ -16,6 +17,8 @@ type Load struct {
 	Leg         string
 	Arc, Height float64
 	Work        float64 // J, of the support's force since the start of the path
+
+	TiltRateSpinward, TiltRateAxial float64 // rad/s
 }
 
 // The power is integrated over stretches in which it is smooth, of at most
@@ -37,8 +40,22 @@ func LoadSeries(m *model.Model, p *crew.Plan) ([]Load, float64) {
 	for i, t := range times {
 		l := p.Loads(m, t)
 		out[i] = Load{Loads: l, Leg: p.LegName(l.Feet.Leg), Arc: deck * l.Feet.Phi, Height: deck - l.Feet.R, Work: w.to(t)}
+		out[i].TiltRateSpinward, out[i].TiltRateAxial = tiltRate(m, p, t)
 	}
 	return out, step
+}
+
+// tiltStep is the time, in s, over which to either side a tilt is differenced.
+// Its third derivative is that of the swing, a few 1/s^3 at most, so that the
+// rate is good to 1e-8 rad/s; roundings of 1e-16 make less.
+const tiltStep = 1e-4
+
+// tiltRate gives the rates of the tilt, rad/s; to one side at the path's ends,
+// where a rate may jump.
+func tiltRate(m *model.Model, p *crew.Plan, t float64) (spinward, axial float64) {
+	from, to := math.Max(0, t-tiltStep), math.Min(p.Duration(), t+tiltStep)
+	a, b := p.Loads(m, from), p.Loads(m, to)
+	return frame.WrapAngle(b.TiltSpinward-a.TiltSpinward) / (to - from), frame.WrapAngle(b.TiltAxial-a.TiltAxial) / (to - from)
 }
 
 // smoothBreaks gives the times (s from the start of the path) at which the power
