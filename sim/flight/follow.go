@@ -56,7 +56,7 @@ func (f *Flier) follow(t *Track) error {
 		if len(s.on) == 0 {
 			last, err = f.fly(t, &now, patchesOf(s.grazed))
 		} else {
-			last, err = f.slideOn(t, &now, s, last.skids)
+			last, err = f.slideOn(t, &now, s, last)
 		}
 		if err != nil || f.ended {
 			return err

@@ -15,8 +15,8 @@ const stepTurn = 0.3
 
 // slideOn moves a body along the surfaces that it is pressed on, until it
 // stops, parts from one, meets another, or its time ends.
-func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, error) {
-	s, kind := f.slideFrom(t, now, st, skids)
+func (f *Flier) slideOn(t *Track, now *moving, st stance, last ending) (ending, error) {
+	s, kind := f.slideFrom(t, now, st, last)
 	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q, Vel: now.v}, spin: now.w,
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
@@ -38,7 +38,7 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 
 // slideFrom prepares the equations, brings a body that has as good as stopped,
 // or as good as stopped slipping, to do so, and says what it does.
-func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide, Kind) {
+func (f *Flier) slideFrom(t *Track, now *moving, st stance, last ending) (*slide, Kind) {
 	s, on := f.slide, st.on
 	*s = slide{flier: f, begin: t.Begin + now.t, last: math.Inf(1), origin: now.q, on: patchesOf(on), grazed: patchesOf(st.grazed)}
 	for i := range on {
@@ -47,7 +47,7 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 	if !f.rolls(len(on)) {
 		now.w = r3.Vec{}
 		if r3.Norm(now.v) <= 2*creep {
-			s.setOff(now)
+			s.setOff(now, last.slipped)
 		}
 		return s, Slide
 	}
@@ -58,7 +58,7 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 	}
 	f.grip(now, n, u, st.grazed)
 	s.eval(0, []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z})
-	s.slips, s.known = skids || s.rub.need > s.rub.most, false
+	s.slips, s.known = last.skids || s.rub.need > s.rub.most, false
 	if s.slips {
 		return s, Slide
 	}
@@ -71,13 +71,15 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 const hardlySlides = 0.2
 
 // setOff stops a body that has as good as stopped, but is not held. Where
-// friction all but holds it, it gets a creep the way that it is driven.
-func (s *slide) setOff(now *moving) {
+// friction all but holds it, it gets a creep the way that it is driven; so does
+// one that has just slipped, whose acceleration is lost in roundings.
+func (s *slide) setOff(now *moving, slipped bool) {
 	var y, dy [dims]float64
 	now.v = r3.Vec{}
 	s.Deriv(0, y[:], dy[:])
-	if a := vec(dy[3:]); r3.Norm(a) > 0 && r3.Norm(a) < hardlySlides*s.rub.most {
-		now.v = r3.Scale(2*creep/r3.Norm(a), a)
+	a, drive := r3.Norm(vec(dy[3:])), s.rub.drive
+	if (a > 0 || slipped) && a < hardlySlides*s.rub.most && r3.Norm(drive) > 0 {
+		now.v = r3.Scale(2*creep/r3.Norm(drive), drive)
 	}
 }
 
