@@ -115,7 +115,7 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 	}
 	r := run{st: f.st, limit: f.longest(t.Release) - now.t, grazed: grazed, opts: opts,
 		on:     func(at float64) float64 { return at + f.spanFrom(t, now.t+at) },
-		events: func(grazed []geom.Patch) *ends { return f.flightEvents(base, grazed) }}
+		events: func(grazed []geom.Patch) *ends { return f.flightEvents(base, grazed, noise(r3.Vec{}, now.v)) }}
 	r.smooth, f.free.last = f.smoothUntil(t, now)
 	res, end, err := r.solve(t, &phase, f.zero[:])
 	if err != nil {
@@ -136,13 +136,13 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 }
 
 // flightEvents lists what ends a flight: a touch, the loss of the body.
-func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch) *ends {
+func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch, rough float64) *ends {
 	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Slop: slop(base.Pos) / 2, Grazed: grazed}
 	f.touch.step, f.hull.step = never, never
 	e := &ends{}
 	e.add(f.touch, slop(base.Pos)/4, turns)
 	e.add(f.hull, 0, turns)
-	e.graze(f, grazed, slop(base.Pos)/4, f.free.local, func(at float64, y []float64) r3.Vec {
+	e.graze(f, grazed, slop(base.Pos)/4, rough, f.free.local, func(at float64, y []float64) r3.Vec {
 		// What grazes does not go through the end of a stretch of the motion.
 		time := math.Min(f.free.begin+at, f.free.last)
 		a := f.m.Motion.At(time)

@@ -133,8 +133,10 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 	watch := &geom.Beside{Wide: f.wide, Thin: thin, Slop: slop(s.origin) / 2, On: s.on, Grazed: s.grazed}
 	e.add(besides{s, watch}, slop(s.origin)/4, turns)
 	e.add(stops{f.slowEnough(now, len(s.on))}, 0, turns)
+	// A force that is but rounding counts as none, and not as one that pulls.
+	rough := noise(r3.Vec{}, now.v)
 	for i, g := range s.on {
-		e.add(parts{s, i}, forceSlop, loses, g)
+		e.add(parts{s, i}, rough, loses, g)
 		e.add(strays{s, g}, 0, loses, g)
 	}
 	if f.rolls(len(s.on)) && s.mu[0] > 0 {
@@ -145,7 +147,7 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 			e.add(skids{s}, forceSlop, starts)
 		}
 	}
-	e.graze(f, s.grazed, slop(s.origin)/4, s.local, func(at float64, y []float64) r3.Vec {
+	e.graze(f, s.grazed, slop(s.origin)/4, rough, s.local, func(at float64, y []float64) r3.Vec {
 		s.eval(at, y)
 		return s.rub.drive
 	})
