@@ -23,7 +23,7 @@ func TestRandomTracksKeepTheLaws(t *testing.T) {
 // The same where the spin changes, the axis cones, or both: but for the
 // energy, which a habitat that turns unevenly may give.
 func TestRandomTracksKeepTheLawsInUnsteadyTurning(t *testing.T) {
-	randomTracks(t, 8, 220, turning)
+	randomTracks(t, 8, 80, turning)
 }
 
 // randomTracks flies releases in n habitats of a stream of random numbers, made
