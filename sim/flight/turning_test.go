@@ -23,7 +23,7 @@ import (
 func changed(r, spin, mu float64, changes ...frame.Change) model.Model {
 	in := ring(r, spin)
 	in.Habitat.Changes = changes
-	in.Solver.MaxTime = 200
+	in.Solver.MaxTime = 60
 	in.Bodies = []model.Body{{Name: "block", Mass: 2, Diameter: 0.2, Friction: mu}}
 	in.Releases = []model.Release{{Name: "block", Body: "block", At: model.Station{Height: 0.1}}}
 	return in
