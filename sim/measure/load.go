@@ -50,12 +50,17 @@ func LoadSeries(m *model.Model, p *crew.Plan) ([]Load, float64) {
 // rate is good to 1e-8 rad/s; roundings of 1e-16 make less.
 const tiltStep = 1e-4
 
-// tiltRate gives the rates of the tilt, rad/s; to one side at the path's ends,
-// where a rate may jump.
+// tiltRate gives the rates of the tilt, rad/s, by the parabola through three
+// instants, the middle one at t, or at the ends of the path next to it.
 func tiltRate(m *model.Model, p *crew.Plan, t float64) (spinward, axial float64) {
-	from, to := math.Max(0, t-tiltStep), math.Min(p.Duration(), t+tiltStep)
-	a, b := p.Loads(m, from), p.Loads(m, to)
-	return frame.WrapAngle(b.TiltSpinward-a.TiltSpinward) / (to - from), frame.WrapAngle(b.TiltAxial-a.TiltAxial) / (to - from)
+	h := math.Min(tiltStep, p.Duration()/2)
+	mid := math.Min(math.Max(t, h), p.Duration()-h)
+	a, b, c := p.Loads(m, mid-h), p.Loads(m, mid), p.Loads(m, mid+h)
+	rate := func(a, b, c float64) float64 {
+		fore, aft := frame.WrapAngle(c-b)/h, frame.WrapAngle(b-a)/h
+		return (fore+aft)/2 + (t-mid)/h*(fore-aft)
+	}
+	return rate(a.TiltSpinward, b.TiltSpinward, c.TiltSpinward), rate(a.TiltAxial, b.TiltAxial, c.TiltAxial)
 }
 
 // smoothBreaks gives the times (s from the start of the path) at which the power
