@@ -73,7 +73,7 @@ func TestStoriesOfSpinDown(t *testing.T) {
 			t.Errorf("%s: %s", r.Landing.Release, r.Rest.Story)
 		}
 	}
-	if s := results[0].Rest.Story; !strings.HasPrefix(s, "rests on bench top until 15.7 s; slides ") || !strings.HasSuffix(s, "floats where it is at 45.0 s, held by nothing") {
+	if s := results[0].Rest.Story; !strings.HasPrefix(s, "rests on bench top until 15.5 s; slides ") || !strings.HasSuffix(s, "floats where it is at 45.0 s, held by nothing") {
 		t.Error(s)
 	}
 }

@@ -97,7 +97,7 @@ func (j *job) meanwhile(t *flight.Track, end float64) string {
 		s += fmt.Sprintf(" The spin changes meanwhile, from %s to %s rpm.", table.Round(rpm(from), 3), table.Round(rpm(to), 3))
 	}
 	if m.Cones() {
-		s += fmt.Sprintf(" The axis cones, half angle %s deg.", given(m.Habitat.Coning.HalfAngle*180/math.Pi))
+		s += fmt.Sprintf(" The axis cones, half angle %s deg; what leans out of the view is projected.", given(m.Habitat.Coning.HalfAngle*180/math.Pi))
 	}
 	return s
 }

@@ -4,7 +4,8 @@
 // Habitat frame: +z is the axial direction, x points outward through spinward
 // zero and y spinward there. An [Attitude] is the habitat's orientation and
 // its angular velocity and acceleration at one instant; a [Motion] gives them
-// as functions of time. Nothing that uses a Motion may assume that the angular
+// as functions of time: [Steady], or by [NewMotion] one whose spin changes and
+// whose axis cones. Nothing that uses a Motion may assume that the angular
 // velocity is steady or that it lies along z.
 //
 // The kinematics are the textbook ones: Goldstein, Classical Mechanics,
