@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"offplumb/sim/air"
+	"offplumb/sim/frame"
 	"offplumb/sim/model"
 )
 
@@ -100,6 +101,12 @@ func (b *builder) habitat(o *object) {
 		h.Spin = math.Sqrt(o.num("floor_gravity") / h.FloorRadius)
 	default:
 		h.Spin = o.num("rim_speed") / h.FloorRadius
+	}
+	for _, c := range o.subs("spin_change") {
+		h.Changes = append(h.Changes, frame.Change{Start: c.num("start"), Over: c.num("over"), To: c.num("to"), Linear: c.str("ramp") == "linear"})
+	}
+	if c := o.sub("coning"); c != nil {
+		h.Coning = frame.Coning{HalfAngle: c.num("half_angle"), Period: c.num("period"), Phase: c.num("phase")}
 	}
 }
 

@@ -34,12 +34,29 @@ var room = []key{
 	lengths("size", 3, positive, "of a cabin: spinward, axial, up; its flat floor is tangent at floor_radius"),
 }
 
+var spinChange = &section{name: "a spin change", doc: "A change of the spin rate. They come one after the other, and the rate stays between them.",
+	keys: []key{
+		qty("start", duration, notNegative, "when it begins").need(),
+		qty("over", duration, positive, "how long it takes").need(),
+		qty("to", turnRate, anything, "the spin after it").need(),
+		word("ramp", `"smooth"`, "how the rate goes over: smooth, by 3u^2 - 2u^3 of the share u of the time, with no jump of the Euler acceleration, or linear", "smooth", "linear"),
+	}}
+
+var coning = &section{name: "a coning", doc: "A steady precession of the axis about a direction that is fixed in the inertial frame. The spin is then the part of the angular velocity along the axis.",
+	keys: []key{
+		qty("half_angle", angle, span{low: 0, high: degrees(90)}, "between the axis and the fixed direction").need(),
+		qty("period", duration, anything, "of one round; negative: against positive spin").need(),
+		qty("phase", angle, anything, "from spinward zero, spinward positive: toward where the fixed direction leans from the axis at time 0").or(`"0 deg"`),
+	}}
+
 var habitat = &section{name: "the habitat", doc: "The habitat's own room and its spin.",
 	keys: append([]key{
 		qty("floor_radius", length, positive, `distance of the reference floor from the axis: the deck named "floor"`).need(),
 		qty("spin", turnRate, anything, "positive: the floor moves spinward").one("spin"),
 		qty("floor_gravity", accel, notNegative, "apparent gravity at rest on the reference floor; the spin is then positive").one("spin"),
 		qty("rim_speed", speed, anything, "speed of the reference floor, spinward positive").one("spin"),
+		tables("spin_change", spinChange, "changes of the spin"),
+		table("coning", coning, "precession of the axis"),
 	}, room...),
 	exactly: []string{"spin"}}
 

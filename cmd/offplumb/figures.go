@@ -46,6 +46,7 @@ func (j *job) figures() ([]task, error) {
 		}
 	}
 	all = append(all, j.sharedFigures()...)
+	all = append(all, turningFigures(j)...)
 	all = append(all, j.pathFigures()...)
 	all = append(all, j.studyFigures()...)
 	all = append(all, scatterFigures(j)...)
@@ -84,7 +85,8 @@ func described(format string, args ...any) string {
 }
 
 // moments gives the times (s since the release) at which a track is drawn up
-// to an end: its knots and between them.
+// to an end, in a habitat that turns at spin (rad/s) at most: its knots and
+// between them.
 func moments(t *flight.Track, spin, end float64) []float64 {
 	out := []float64{0}
 	points := math.Min(mostPoints, math.Max(trackPoints, math.Abs(spin)*end/turnDrawn))
@@ -111,7 +113,7 @@ func (j *job) seenFrom(t *flight.Track, end float64) []seen {
 	m := j.model()
 	w := measure.NewWinding(m, t)
 	var out []seen
-	for _, at := range moments(t, m.Habitat.Spin, end) {
+	for _, at := range moments(t, j.fastest(t, end), end) {
 		a := m.Motion.At(t.Begin + at)
 		pos := a.In(t.At(at).Pos)
 		p := frame.PolarOf(pos)
@@ -185,9 +187,9 @@ func (j *job) sideSpec(i int) plots.SideViewSpec {
 	m, r := j.model(), &j.results[i]
 	t, l := r.Track, &r.Landing
 	s := j.sideOf(t)
-	spec := plots.SideViewSpec{Title: sideTitle(l), Spin: m.Habitat.Spin, Deck: s.deck, Body: t.Body.Diameter / 2,
+	spec := plots.SideViewSpec{Title: sideTitle(l), Spin: m.SpinAt(t.Begin), Deck: s.deck, Body: t.Body.Diameter / 2,
 		Outlines: j.section(t.Start.Z, s.turn, s.by), Surface: l.Surface, Offset: l.Offset, Deflection: l.Deflection,
-		Notes: j.sideNotes(l, &s), Uniform: s.uniform(&l.Uniform)}
+		Notes: j.sideNotes(l, &s) + j.meanwhile(t, t.End), Uniform: s.uniform(&l.Uniform)}
 	for _, at := range j.seenFrom(t, t.End) {
 		p := s.point(at)
 		spec.Track = append(spec.Track, plots.TrackPoint{T: at.t, X: p.X, Y: p.Y, Phase: at.phase})
@@ -267,16 +269,16 @@ func (j *job) inertialSpec(i int) plots.InertialViewSpec {
 	t, l := r.Track, &r.Landing
 	g := measure.GroundOf(m, t)
 	foot := frame.Polar{R: g.Foot(t.Start.Phi), Phi: t.Start.Phi}.Vec()
-	turned := m.Habitat.Spin
-	spec := plots.InertialViewSpec{Title: l.Release + ": from outside, in the inertial frame", Spin: m.Habitat.Spin,
+	from, to := turnedAt(m, t.Begin, t.Start.Phi), turnedAt(m, t.Begin+l.Time, t.Start.Phi)
+	spec := plots.InertialViewSpec{Title: l.Release + ": from outside, in the inertial frame", Spin: m.SpinAt(t.Begin),
 		Outlines: j.section(t.Start.Z, 0, plots.Point{}), Foot: plots.Point{X: foot.X, Y: foot.Y},
-		ReleaseAngle: turned * t.Begin, LandingAngle: turned * (t.Begin + l.Time), Body: t.Body.Diameter / 2,
-		Surface: l.Surface, Offset: l.Offset, Flat: g.Flat != nil, Notes: j.inertialNotes(t, l)}
+		ReleaseAngle: from, LandingAngle: to, Body: t.Body.Diameter / 2,
+		Surface: l.Surface, Offset: l.Offset, Flat: g.Flat != nil, Notes: j.inertialNotes(t, l, to-from) + j.meanwhile(t, l.Time)}
 	if g.Flat != nil {
 		begin := j.seenFrom(t, l.Time)[0]
 		_, _, spec.Height = g.Place(begin.pos, begin.place.Phi)
 	}
-	for _, at := range moments(t, m.Habitat.Spin, l.Time) {
+	for _, at := range moments(t, j.fastest(t, l.Time), l.Time) {
 		p := t.At(at).Pos
 		spec.Path = append(spec.Path, plots.TrackPoint{T: at, X: p.X, Y: p.Y, Phase: t.Phases[t.PhaseAt(at)].Kind.String()})
 	}
@@ -284,15 +286,15 @@ func (j *job) inertialSpec(i int) plots.InertialViewSpec {
 		spec.Landing = landingOn(spec.Path, l.Time)
 	}
 	spec.Desc = described("View in the inertial frame from the +axial end: %s, while the habitat turns by %s deg.",
-		sentence(l), table.Round(math.Abs(turned*l.Time)*180/math.Pi, 3))
+		sentence(l), table.Round(math.Abs(to-from)*180/math.Pi, 3))
 	return spec
 }
 
-func (j *job) inertialNotes(t *flight.Track, l *measure.Landing) string {
+func (j *job) inertialNotes(t *flight.Track, l *measure.Landing, turned float64) string {
 	path := "Without air the path is a straight line."
 	if !j.model().Air.Vacuum() && t.Body.Diameter > 0 {
 		path = "Air drag, of air that turns with the habitat, bends the path."
 	}
 	return fmt.Sprintf("Inertial frame, seen from the +axial end. %s The habitat turns by %s deg meanwhile.", path,
-		table.Round(math.Abs(j.model().Habitat.Spin*l.Time)*180/math.Pi, 3))
+		table.Round(math.Abs(turned)*180/math.Pi, 3))
 }

@@ -181,6 +181,7 @@ func (j *job) judge() {
 	e.Habitat = func(stature, speed float64) measure.HabitatFigure {
 		return measure.HabitatOf(j.model(), stature, speed)
 	}
+	e.Turning = func() []measure.Turning { return j.Turnings(j.results) }
 	e.Landing = func(i int) (*measure.Landing, bool) { return &j.results[i].Landing, j.results[i].Finished() }
 	e.Rest = func(i int) (*measure.Rest, bool) { return &j.results[i].Rest, j.results[i].Finished() }
 	e.Events = func(i int) ([]measure.Event, bool) { return j.results[i].Events, j.results[i].Track != nil }

@@ -22,8 +22,13 @@ type statement struct {
 // statements are in the order of the reader's interest.
 var statements = []statement{
 	{topic: "Rotation", used: always,
-		how:   "Motion is solved in the inertial frame and carried into the frame of the habitat, where centrifugal, Coriolis and Euler acceleration appear.",
-		holds: "Rotation is the only gravity, and the spin is steady. The habitat is rigid and heavy against what moves in it."},
+		how: "Motion is solved in the inertial frame and carried into the frame of the habitat, where centrifugal, Coriolis and Euler acceleration appear.",
+		holds: "Rotation is the only gravity. The spin may change and the axis may cone, as the scenario says: what makes them do so is not computed. " +
+			"The habitat is rigid and heavy against what moves in it, and the air turns with it at once."},
+	{topic: "Rest while the spin changes", used: (*job).unsteady,
+		how: "A resting body is watched until the last change of the spin is over, in a coning for one swing after that, and slides when friction does not hold it any more.",
+		holds: "Static friction is taken as sliding friction, though it is often higher. The uniform-gravity path takes the gravity at the time of the release. " +
+			"Platforms are spaced for falls from time 0."},
 	{topic: "Integration", used: (*job).flew,
 		how: "Free flight is integrated by the adaptive Dormand-Prince 5(4) pair, as a departure from uniform motion; without forces it is exact. Contacts are located on its continuous extension.",
 		sources: []string{"Dormand & Prince, A family of embedded Runge-Kutta formulae, J. Comp. Appl. Math. 6 (1980) 19-26 (from memory)",
@@ -72,6 +77,9 @@ func modelLimits() string {
 }
 
 func always(*job) bool { return true }
+
+// unsteady says whether the habitat's turning changes.
+func (j *job) unsteady() bool { return j.model().Unsteady() }
 
 // flew says whether any release was flown.
 func (j *job) flew() bool {

@@ -23,6 +23,9 @@ const textWidth = 100
 func (j *job) summary(w io.Writer) error {
 	var b strings.Builder
 	b.WriteString(j.Title + "\n" + spinLine(j.model()) + "\n")
+	if words := turningWords(j.model()); words != "" {
+		b.WriteString(wrapped(words, ""))
+	}
 	j.sumLandings(&b)
 	j.sumStories(&b)
 	j.sumPaths(&b)
@@ -52,6 +55,9 @@ func spinLine(m *model.Model) string {
 		way = "negative, so the floor moves antispinward"
 	}
 	if h.Spin == 0 {
+		if m.SpinChanges() {
+			return "No spin at the beginning."
+		}
 		return "No spin."
 	}
 	return fmt.Sprintf("Spin %s rpm (%s); floor at %s m: %s g, rim speed %s m/s.", table.Round(rpm(h.Spin), 3), way,

@@ -34,11 +34,14 @@ func (j *job) noteStep(of string, step float64) {
 // warn gathers what the reader of the results must know.
 func (j *job) warn() {
 	m := j.model()
-	if m.Habitat.Spin == 0 {
+	if m.Habitat.Spin == 0 && !m.Unsteady() {
 		j.note("habitat", "there is no spin, so nothing falls")
 	}
 	if names := idleStudies(j); len(names) > 0 {
 		j.note("studies", "this version checks these studies but does not run them: %s", someNames(names))
+	}
+	if late := m.Settled(); late > m.Solver.MaxTime {
+		j.note("habitat", "changes of the spin go on until %s s, longer than any release is followed, %s s", table.Round(late, 4), table.Round(m.Solver.MaxTime, 4))
 	}
 	warnScatters(j)
 	warnSweeps(j)

@@ -205,12 +205,13 @@ func (e presses) Value(t float64, y []float64) float64 {
 	return e.f.gapAccel(s.Pos, s.Vel, e.drive(t, y), e.of)
 }
 
-// graze adds the events of what a body grazes.
-func (e *ends) graze(f *Flier, list []geom.Patch, slop float64, at func(float64, []float64) frame.State, drive func(float64, []float64) r3.Vec) {
+// graze adds the events of what a body grazes; rough is what an acceleration may
+// be by rounding, m/s^2.
+func (e *ends) graze(f *Flier, list []geom.Patch, slop, rough float64, at func(float64, []float64) frame.State, drive func(float64, []float64) r3.Vec) {
 	for _, p := range list {
 		g := &grazing{f, p, at}
 		e.add(reaches{g}, slop, turns, p)
 		e.add(parted{g}, 0, leaves, p)
-		e.add(presses{g, drive}, pressSlop, leans, p)
+		e.add(presses{g, drive}, math.Max(pressSlop, rough), leans, p)
 	}
 }

@@ -111,11 +111,12 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 	f.free.base, f.free.begin = base, t.Begin+now.t
 	var opts []integrator.Option
 	if len(grazed) > 0 {
-		omega, _ := f.m.Motion.Bounds(t.Begin+now.t, t.Begin+now.t)
-		opts = append(opts, integrator.MaxStep(stepTurn/math.Max(omega, slowest)))
+		opts = append(opts, integrator.MaxStep(f.longestStep(t.Begin+now.t)))
 	}
 	r := run{st: f.st, limit: f.longest(t.Release) - now.t, grazed: grazed, opts: opts,
-		events: func(grazed []geom.Patch) *ends { return f.flightEvents(base, grazed) }}
+		on:     func(at float64) float64 { return at + f.spanFrom(t, now.t+at) },
+		events: func(grazed []geom.Patch) *ends { return f.flightEvents(base, grazed, noise(r3.Vec{}, now.v)) }}
+	r.smooth, f.free.last = f.smoothUntil(t, now)
 	res, end, err := r.solve(t, &phase, f.zero[:])
 	if err != nil {
 		return ending{}, err
@@ -128,20 +129,24 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 	local := a.ToHabitat(last)
 	now.q, now.v, now.w = local.Pos, local.Vel, a.In(r3.Sub(spin, a.Omega))
 	f.arrival = last
-	f.settle(t, now, res)
+	if !end.breaks {
+		f.settle(t, now, res)
+	}
 	return end, nil
 }
 
 // flightEvents lists what ends a flight: a touch, the loss of the body.
-func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch) *ends {
+func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch, rough float64) *ends {
 	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Slop: slop(base.Pos) / 2, Grazed: grazed}
 	f.touch.step, f.hull.step = never, never
 	e := &ends{}
 	e.add(f.touch, slop(base.Pos)/4, turns)
 	e.add(f.hull, 0, turns)
-	e.graze(f, grazed, slop(base.Pos)/4, f.free.local, func(at float64, y []float64) r3.Vec {
-		a := f.m.Motion.At(f.free.begin + at)
-		return f.pull(&a, f.free.begin+at, f.free.local(at, y))
+	e.graze(f, grazed, slop(base.Pos)/4, rough, f.free.local, func(at float64, y []float64) r3.Vec {
+		// What grazes does not go through the end of a stretch of the motion.
+		time := math.Min(f.free.begin+at, f.free.last)
+		a := f.m.Motion.At(time)
+		return f.pull(&a, time, f.free.local(at, y))
 	})
 	return e
 }

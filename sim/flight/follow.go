@@ -37,15 +37,26 @@ func (f *Flier) follow(t *Track) error {
 		}
 		s := f.stand(t, &now, touches, last)
 		f.touched(t, &now, s, known)
-		if f.over(t, &now) || f.rests(t, &now, s) {
+		if f.over(t, &now) {
 			return nil
+		}
+		stays := freed
+		if !last.slipped {
+			stays = f.rests(t, &now, s)
+		}
+		if stays == settled {
+			return nil
+		}
+		if stays == waited {
+			known, last = patchesOf(touches), ending{slipped: true}
+			continue
 		}
 		var err error
 		known = patchesOf(s.on)
 		if len(s.on) == 0 {
 			last, err = f.fly(t, &now, patchesOf(s.grazed))
 		} else {
-			last, err = f.slideOn(t, &now, s, last.skids)
+			last, err = f.slideOn(t, &now, s, last)
 		}
 		if err != nil || f.ended {
 			return err
@@ -87,16 +98,26 @@ func (f *Flier) over(t *Track, now *moving) bool {
 	return false
 }
 
-// rests ends a release whose body has stopped where friction holds it.
-func (f *Flier) rests(t *Track, now *moving, s stance) bool {
+// staying is what friction does to a body in contact.
+type staying int
+
+const (
+	freed   staying = iota // it does not hold it
+	waited                 // it held it until now
+	settled                // it holds it for good
+)
+
+// rests ends a release whose body has stopped where friction holds it, or lets
+// it rest until friction does not.
+func (f *Flier) rests(t *Track, now *moving, s stance) staying {
 	if len(s.on) == 0 {
-		return false
+		return freed
 	}
 	if r3.Norm(now.v) <= 2*creep && s.wedges() {
 		now.w = r3.Vec{} // a ball that is jammed does not spin on
 	}
 	if !f.stands(now, s.on) {
-		return false
+		return freed
 	}
 	a := f.m.Motion.At(t.Begin + now.t)
 	pull := f.pull(&a, t.Begin+now.t, frame.State{Pos: now.q})
@@ -110,15 +131,18 @@ func (f *Flier) rests(t *Track, now *moving, s stance) bool {
 	}
 	on := holds(all, pull)
 	if on == nil {
-		return false
+		return freed
+	}
+	at := &s.on[on[0]]
+	surface := f.m.Interior.Surface(at.Surface).Name
+	if f.waits(t, now, all, surface) {
+		return waited
 	}
 	now.v, now.w = r3.Vec{}, r3.Vec{}
-	at := &s.on[on[0]]
 	f.lay(t, at)
-	t.Phases = append(t.Phases, Phase{Kind: Rest, local: true, base: frame.State{Pos: now.q}, T0: now.t, T1: now.t,
-		Surface: f.m.Interior.Surface(at.Surface).Name})
+	t.Phases = append(t.Phases, Phase{Kind: Rest, local: true, base: frame.State{Pos: now.q}, T0: now.t, T1: now.t, Surface: surface})
 	f.end(t, now, f.restOutcome(t, all, on))
-	return true
+	return settled
 }
 
 func (f *Flier) restOutcome(t *Track, all []push, on []int) Outcome {

@@ -20,6 +20,7 @@ import (
 type free struct {
 	base   frame.State // r0, v0: inertial, at t = 0
 	begin  float64     // s, habitat time at t = 0
+	last   float64     // s, habitat time of the last instant of the stretch of the habitat's motion
 	forces *Forces
 }
 
@@ -57,6 +58,9 @@ const thin = 1e-6
 // velocity u relative to the habitat, whatever its way of turning:
 //
 //	|gap'| <= |u|,  u = r' - omega x r,  |u'| <= |r''| + |domega/dt| |r| + |omega| |r'|
+//
+// Seen in the habitat, the direction of u changes too: its rate there is within
+// |u'| + |omega| |u|.
 type apart struct {
 	free *free
 	of   func(local r3.Vec) float64
@@ -99,7 +103,8 @@ func (g *apart) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, 
 	if g.time == nil {
 		return r3.Norm(local.Vel), acc, thin
 	}
-	return promise(g.of(local.Pos), g.time(local.Pos, local.Vel, acc, s.T1-t)), 0, thin
+	turned := acc + g.omega*(r3.Norm(local.Vel)+acc*(s.T1-t))
+	return promise(g.of(local.Pos), g.time(local.Pos, local.Vel, turned, s.T1-t)), 0, thin
 }
 
 // inside is how far the body's centre is from the hull's outer face, within.

@@ -28,13 +28,16 @@ const (
 // joints, and go into surfaces; the body is in nothing, and slides along a
 // surface; its energy in the turning frame (the Jacobi integral v'^2/2 - omega^2
 // r^2/2, and that of the spin where it rolls) never grows; surfaces push and do
-// not pull, and friction neither exceeds mu N nor helps the motion.
+// not pull, and friction neither exceeds mu N nor helps the motion. Where the
+// turning changes there is no such integral: the energy is judged within the
+// stretches of steady turning alone.
 type judge struct {
 	m      *model.Model
 	t      *Track
 	forces *Forces
 	faults []string
 	pushes int // that were judged
+	spin   float64
 }
 
 func newJudge(m *model.Model, t *Track) *judge {
@@ -76,7 +79,7 @@ func (j *judge) spinAt(p *Phase, time float64) r3.Vec {
 
 // energy is the Jacobi integral by mass, J/kg, with that of the spin.
 func (j *judge) energy(s frame.State, w r3.Vec) float64 {
-	spin := j.m.Habitat.Spin
+	spin := j.spin
 	e := r3.Norm2(s.Vel)/2 - spin*spin*(s.Pos.X*s.Pos.X+s.Pos.Y*s.Pos.Y)/2
 	if j.t.Body.Rolls {
 		e += j.wide() * j.wide() / 5 * r3.Norm2(w)
@@ -87,7 +90,7 @@ func (j *judge) energy(s frame.State, w r3.Vec) float64 {
 // track judges a whole track.
 func (j *judge) track() []string {
 	j.order()
-	last := math.Inf(1)
+	last, stretch := math.Inf(1), math.NaN()
 	for i := range j.t.Phases {
 		p := &j.t.Phases[i]
 		if i > 0 {
@@ -95,9 +98,15 @@ func (j *judge) track() []string {
 		}
 		for _, time := range looksOf(p) {
 			s := j.local(p, time)
+			now := j.m.Motion.Stretch(j.t.Begin + time)
+			j.spin = j.m.SpinAt(j.t.Begin + time)
 			e := j.energy(s, j.spinAt(p, time))
+			if now.End != stretch || !math.IsInf(now.Pace, 1) {
+				last = math.Inf(1)
+			}
+			stretch = now.End
 			// Bringing a body onto its surface moves it by gapTol at most.
-			slack := 1e-8*(1+r3.Norm2(s.Vel)) + gapTol*j.m.Gravity(r3.Norm(s.Pos))
+			slack := 1e-8*(1+r3.Norm2(s.Vel)) + gapTol*j.spin*j.spin*r3.Norm(s.Pos)
 			if e > last+slack {
 				j.fault("phase %d %v, %.9g s: energy grows by %.3g J/kg", i, p.Kind, time, e-last)
 			}
@@ -107,6 +116,9 @@ func (j *judge) track() []string {
 		if p.Kind == Slide || p.Kind == Roll {
 			j.push(i, p)
 		}
+		if p.Kind == Rest && p.T1 > p.T0 {
+			j.hold(i, p)
+		}
 	}
 	return j.faults
 }
@@ -114,6 +126,9 @@ func (j *judge) track() []string {
 // looksOf gives times on a phase: the ends of its steps, and between.
 func looksOf(p *Phase) []float64 {
 	out := []float64{p.T0}
+	if len(p.steps) == 0 && p.T1 > p.T0 {
+		out = append(out, (p.T0+p.T1)/2, p.T1)
+	}
 	for i := range p.steps {
 		s := &p.steps[i]
 		n := 4.0
@@ -189,6 +204,14 @@ func (j *judge) push(i int, p *Phase) {
 		step.At(step.T0, y[:])
 		step.Rate(step.T0, dy[:])
 		j.pushAt(i, p, p.T0+step.T0, frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}, vec(dy[3:]), vec(y[6:]))
+	}
+}
+
+// hold judges what surfaces do to a body at rest while the turning changes.
+func (j *judge) hold(i int, p *Phase) {
+	const looks = 40
+	for k := 0.0; k < looks; k++ {
+		j.pushAt(i, p, p.T0+(p.T1-p.T0)*k/looks, p.base, r3.Vec{}, r3.Vec{})
 	}
 }
 

@@ -8,6 +8,7 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 
 	"offplumb/sim/flight"
+	"offplumb/sim/frame"
 	"offplumb/sim/model"
 )
 
@@ -16,6 +17,12 @@ import (
 func mirrored(in model.Model) model.Model {
 	out := in
 	out.Habitat.Spin = -in.Habitat.Spin
+	out.Habitat.Changes = append([]frame.Change(nil), in.Habitat.Changes...)
+	for i := range out.Habitat.Changes {
+		out.Habitat.Changes[i].To *= -1
+	}
+	out.Habitat.Coning.Period *= -1
+	out.Habitat.Coning.Phase *= -1
 	out.Decks = append([]model.Deck(nil), in.Decks...)
 	for i := range out.Decks {
 		d := &out.Decks[i]
@@ -52,20 +59,31 @@ const mostMirrored = 6
 
 // TestMirroredStory tries that with negative spin a habitat and a release that
 // are mirrored give the mirrored story: the same phases, on mirrored ways.
-func TestMirroredStory(t *testing.T) {
+func TestMirroredStory(t *testing.T) { mirrorStories(t, 11, 150, nil) }
+
+// TestMirroredStoryOfUnsteadyTurning tries it where the spin changes and the
+// axis cones.
+func TestMirroredStoryOfUnsteadyTurning(t *testing.T) { mirrorStories(t, 12, 60, turning) }
+
+func mirrorStories(t *testing.T, stream uint64, n int, turn func(*rand.Rand, *model.Model)) {
+	t.Helper()
 	compared, moved := 0, 0
-	for i := uint64(0); compared < 150; i++ {
-		in := worldOf(rand.New(rand.NewPCG(11, i)))
+	for i := uint64(0); compared < n; i++ {
+		rng := rand.New(rand.NewPCG(stream, i))
+		in := worldOf(rng)
+		if turn != nil {
+			turn(rng, &in)
+		}
 		m, problems := model.New(in)
-		n, more := model.New(mirrored(in))
+		other, more := model.New(mirrored(in))
 		if len(problems) > 0 || len(more) > 0 || len(in.Releases) == 0 {
 			continue
 		}
 		for k := range m.Releases {
-			a, b := flyNth(t, m, k), flyNth(t, n, k)
+			a, b := flyNth(t, m, k), flyNth(t, other, k)
 			compared++
-			if !sameStory(t, m, n, a, b) {
-				t.Fatalf("world of PCG(11, %d), %s of %+v:\n%s\n%s", i, m.Releases[k].Name, m.BodyOf(&m.Releases[k]), kinds(a), kinds(b))
+			if !sameStory(t, m, other, a, b) {
+				t.Fatalf("world of PCG(%d, %d), %s of %+v:\n%s\n%s", stream, i, m.Releases[k].Name, m.BodyOf(&m.Releases[k]), kinds(a), kinds(b))
 			}
 			if len(a.Phases) > 1 {
 				moved++

@@ -17,13 +17,25 @@ import (
 // and nothing gets into or off a surface. OFFPLUMB_WORLDS asks for more than the
 // usual number of habitats.
 func TestRandomTracksKeepTheLaws(t *testing.T) {
-	n := 320
+	randomTracks(t, 7, 320, nil)
+}
+
+// The same where the spin changes, the axis cones, or both: but for the
+// energy, which a habitat that turns unevenly may give.
+func TestRandomTracksKeepTheLawsInUnsteadyTurning(t *testing.T) {
+	randomTracks(t, 8, 80, turning)
+}
+
+// randomTracks flies releases in n habitats of a stream of random numbers, made
+// to turn as a function says.
+func randomTracks(t *testing.T, stream uint64, n int, turn func(*rand.Rand, *model.Model)) {
+	t.Helper()
 	if more, err := strconv.Atoi(os.Getenv("OFFPLUMB_WORLDS")); err == nil {
 		n = more
 	}
-	s := tally{outcomes: map[string]int{}}
+	s := tally{outcomes: map[string]int{}, stream: stream}
 	for i := range n {
-		m := worlds(rand.New(rand.NewPCG(7, uint64(i))), 5)
+		m := worlds(rand.New(rand.NewPCG(stream, uint64(i))), 5, turn)
 		if m == nil {
 			continue // the random habitat does not fit together
 		}
@@ -48,6 +60,7 @@ func TestRandomTracksKeepTheLaws(t *testing.T) {
 type tally struct {
 	tracks, steps, forces int
 	outcomes              map[string]int
+	stream                uint64
 	slowest               time.Duration
 }
 
@@ -65,23 +78,23 @@ func (s *tally) fly(t *testing.T, m *model.Model, f *flight.Flier, i, k int) {
 	track, err := f.Fly(&let)
 	s.slowest = max(s.slowest, time.Since(start))
 	if err != nil {
-		t.Errorf("PCG(7, %d), release %d: %v", i, k, err)
+		t.Errorf("PCG(%d, %d), release %d: %v", s.stream, i, k, err)
 		return
 	}
 	s.tracks++
 	s.outcomes[track.Outcome.String()]++
 	s.steps = max(s.steps, track.Work.Steps)
 	if track.Work.Steps > mostRandomSteps {
-		t.Errorf("PCG(7, %d), release %d: %d steps", i, k, track.Work.Steps)
+		t.Errorf("PCG(%d, %d), release %d: %d steps", s.stream, i, k, track.Work.Steps)
 	}
 	faults, forces := flight.Judge(m, track)
 	s.forces += forces
 	if len(faults) > 0 {
-		t.Errorf("PCG(7, %d), release %d: %q\n%s", i, k, faults, kinds(track))
+		t.Errorf("PCG(%d, %d), release %d: %q\n%s", s.stream, i, k, faults, kinds(track))
 	}
 	// One that is stuck is wedged, and not lost in phases without end.
 	ends := track.Outcome == flight.Rested || track.Outcome == flight.Stuck
 	if rests := len(track.Phases) > 0 && track.Phases[len(track.Phases)-1].Kind == flight.Rest; rests != ends {
-		t.Errorf("PCG(7, %d), release %d: ends by %v: %s", i, k, track.Outcome, kinds(track))
+		t.Errorf("PCG(%d, %d), release %d: ends by %v: %s", s.stream, i, k, track.Outcome, kinds(track))
 	}
 }

@@ -6,6 +6,7 @@ import (
 	"math/rand/v2"
 
 	"offplumb/sim/air"
+	"offplumb/sim/frame"
 	"offplumb/sim/model"
 )
 
@@ -86,6 +87,30 @@ func otherShape(rng *rand.Rand, in *model.Model) {
 		} else {
 			in.Passages[0].Diameter = w
 		}
+	}
+}
+
+// turning gives a habitat up to three changes of its spin, or a coning, or both.
+// Releases begin at the start, so that some changes find the bodies in flight,
+// some in contact and some at rest.
+func turning(rng *rand.Rand, in *model.Model) {
+	h := &in.Habitat
+	kind := rng.IntN(3)
+	if kind != 1 {
+		at := 0.0
+		for range 1 + rng.IntN(3) {
+			c := frame.Change{Start: at + between(rng, 0, 12), Over: math.Exp(between(rng, math.Log(0.05), math.Log(20))), Linear: rng.IntN(2) == 0}
+			c.To = h.Spin * []float64{0, 1, -1, between(rng, -1.5, 1.5), between(rng, 0.8, 1.2)}[rng.IntN(5)]
+			h.Changes = append(h.Changes, c)
+			at = c.End() * float64(rng.IntN(2)) // overlaps are refused
+			if at == 0 {
+				break
+			}
+		}
+	}
+	if kind != 0 {
+		swing := 2 * math.Pi / math.Abs(h.Spin)
+		h.Coning = frame.Coning{HalfAngle: math.Exp(between(rng, -6, 0)), Phase: between(rng, -3, 3), Period: sign(rng) * swing * math.Exp(between(rng, -1, 3))}
 	}
 }
 
@@ -204,8 +229,12 @@ func randomRelease(rng *rand.Rand, in *model.Model, i int) model.Release {
 
 // worlds makes a checked random habitat with n releases that have room, or nil
 // where it does not fit together.
-func worlds(rng *rand.Rand, n int) *model.Model {
+// It turns as a function makes it; nil: steadily.
+func worlds(rng *rand.Rand, n int, turn func(*rand.Rand, *model.Model)) *model.Model {
 	in := world(rng)
+	if turn != nil {
+		turn(rng, &in)
+	}
 	for i := range 3 {
 		in.Bodies = append(in.Bodies, randomBody(rng, i))
 	}

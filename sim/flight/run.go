@@ -2,6 +2,7 @@ package flight
 
 import (
 	"errors"
+	"math"
 
 	"offplumb/integrator"
 	"offplumb/sim/geom"
@@ -13,12 +14,18 @@ type ending struct {
 	leant  []geom.Patch // grazed, and about to be pressed on
 	left   []geom.Patch // no longer grazed
 	skids  bool         // a rolling body lost its grip
+	breaks bool         // the habitat's motion goes on by another law
+	// slipped: friction has held the body up to this instant, and does not any
+	// more, but for rounding.
+	slipped bool
 }
 
 // run is the integration of one phase.
 type run struct {
 	st     *integrator.Stepper
-	limit  float64 // s
+	limit  float64                 // s
+	smooth float64                 // s, when the stretch of the habitat's motion ends
+	on     func(t float64) float64 // when the next one ends, for what goes on through it; nil: it ends the phase
 	grazed []geom.Patch
 	events func(grazed []geom.Patch) *ends
 	opts   []integrator.Option
@@ -36,7 +43,7 @@ func (r *run) solve(t *Track, p *Phase, y []float64) (integrator.Result, ending,
 	for {
 		r.st.Reset(at, y, append(r.opts, integrator.FirstStep(next))...)
 		e := r.events(r.grazed)
-		res, err := integrator.Solve(r.st, r.limit, e.specs, r.keep(p))
+		res, err := r.reach(e, p)
 		if err != nil && err != errTidied {
 			return res, ending{}, err
 		}
@@ -47,11 +54,26 @@ func (r *run) solve(t *Track, p *Phase, y []float64) (integrator.Result, ending,
 			continue
 		}
 		end := e.ending(res.Hits)
+		end.breaks = !res.Stopped && res.T < r.limit
 		if len(end.left) == 0 || len(end.left) < len(res.Hits) {
 			return res, end, nil
 		}
 		r.grazed = without(r.grazed, end.left)
 		at, y = res.T, res.Y
+	}
+}
+
+// reach integrates up to an event, the end of the time, or the end of the
+// stretch of the habitat's motion. What goes through such an end has a step end
+// there: forces in flight change without a jump, but with a kink.
+func (r *run) reach(e *ends, p *Phase) (integrator.Result, error) {
+	keep := r.keep(p)
+	for {
+		res, err := integrator.Solve(r.st, math.Min(r.limit, r.smooth), e.specs, keep)
+		if err != nil || res.Stopped || r.limit <= r.smooth || r.on == nil || len(r.grazed) > 0 {
+			return res, err
+		}
+		r.smooth = r.on(res.T)
 	}
 }
 

@@ -36,6 +36,7 @@ const dims = 9
 type slide struct {
 	flier  *Flier
 	begin  float64 // s, habitat time at t = 0
+	last   float64 // s, habitat time of the last instant of the stretch of the habitat's motion, after which loads may jump
 	origin r3.Vec  // m, the place at the start of the phase
 	on     []geom.Patch
 	mu     [mostContacts]float64
@@ -82,8 +83,9 @@ func (s *slide) eval(t float64, y []float64) {
 	s.known, s.when, s.state = true, t, [dims]float64(y)
 	f := s.flier
 	q, v, w := s.place(y), vec(y[3:]), vec(y[6:])
-	a := f.m.Motion.At(s.begin + t)
-	pull := f.pull(&a, s.begin+t, frame.State{Pos: q, Vel: v})
+	time := math.Min(s.begin+t, s.last)
+	a := f.m.Motion.At(time)
+	pull := f.pull(&a, time, frame.State{Pos: q, Vel: v})
 	p := s.push[:len(s.on)]
 	for i, g := range s.on {
 		p[i], _ = f.pushOf(q, v, g, s.mu[i])

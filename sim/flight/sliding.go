@@ -15,15 +15,15 @@ const stepTurn = 0.3
 
 // slideOn moves a body along the surfaces that it is pressed on, until it
 // stops, parts from one, meets another, or its time ends.
-func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, error) {
-	s, kind := f.slideFrom(t, now, st, skids)
+func (f *Flier) slideOn(t *Track, now *moving, st stance, last ending) (ending, error) {
+	s, kind := f.slideFrom(t, now, st, last)
 	phase := Phase{Kind: kind, T0: now.t, local: true, base: frame.State{Pos: now.q, Vel: now.v}, spin: now.w,
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
-	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
 	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, tidy: s.tidy,
-		opts:   []integrator.Option{integrator.MaxStep(stepTurn / math.Max(spin, slowest))},
+		opts:   []integrator.Option{integrator.MaxStep(f.longestStep(s.begin))},
 		events: func(grazed []geom.Patch) *ends { return f.slideEvents(s, now, grazed) }}
+	r.smooth, s.last = f.smoothUntil(t, now)
 	res, end, err := r.solve(t, &phase, y)
 	if err != nil {
 		return ending{}, err
@@ -38,16 +38,16 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 
 // slideFrom prepares the equations, brings a body that has as good as stopped,
 // or as good as stopped slipping, to do so, and says what it does.
-func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide, Kind) {
+func (f *Flier) slideFrom(t *Track, now *moving, st stance, last ending) (*slide, Kind) {
 	s, on := f.slide, st.on
-	*s = slide{flier: f, begin: t.Begin + now.t, origin: now.q, on: patchesOf(on), grazed: patchesOf(st.grazed)}
+	*s = slide{flier: f, begin: t.Begin + now.t, last: math.Inf(1), origin: now.q, on: patchesOf(on), grazed: patchesOf(st.grazed)}
 	for i := range on {
 		_, s.mu[i] = f.gripOf(on[i].Surface)
 	}
 	if !f.rolls(len(on)) {
 		now.w = r3.Vec{}
 		if r3.Norm(now.v) <= 2*creep {
-			s.setOff(now)
+			s.setOff(now, last.slipped)
 		}
 		return s, Slide
 	}
@@ -58,7 +58,7 @@ func (f *Flier) slideFrom(t *Track, now *moving, st stance, skids bool) (*slide,
 	}
 	f.grip(now, n, u, st.grazed)
 	s.eval(0, []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z})
-	s.slips, s.known = skids || s.rub.need > s.rub.most*(1+holdShare), false
+	s.slips, s.known = last.skids || s.rub.need > s.rub.most*(1+holdShare), false
 	if s.slips {
 		return s, Slide
 	}
@@ -77,13 +77,15 @@ const hardlySlides = 0.2
 const holdShare = 1e-9
 
 // setOff stops a body that has as good as stopped, but is not held. Where
-// friction all but holds it, it gets a creep the way that it is driven.
-func (s *slide) setOff(now *moving) {
+// friction all but holds it, it gets a creep the way that it is driven; so does
+// one that has just slipped, whose acceleration is lost in roundings.
+func (s *slide) setOff(now *moving, slipped bool) {
 	var y, dy [dims]float64
 	now.v = r3.Vec{}
 	s.Deriv(0, y[:], dy[:])
-	if a := vec(dy[3:]); r3.Norm(a) > 0 && r3.Norm(a) < hardlySlides*s.rub.most {
-		now.v = r3.Scale(2*creep/r3.Norm(a), a)
+	a, drive := r3.Norm(vec(dy[3:])), s.rub.drive
+	if (a > 0 || slipped) && a < hardlySlides*s.rub.most && r3.Norm(drive) > 0 {
+		now.v = r3.Scale(2*creep/r3.Norm(drive), drive)
 	}
 }
 
@@ -137,8 +139,10 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 	watch := &geom.Beside{Wide: f.wide, Thin: thin, Slop: slop(s.origin) / 2, On: s.on, Grazed: s.grazed}
 	e.add(besides{s, watch}, slop(s.origin)/4, turns)
 	e.add(stops{f.slowEnough(now, len(s.on))}, 0, turns)
+	// A force that is but rounding counts as none, and not as one that pulls.
+	rough := noise(r3.Vec{}, now.v)
 	for i, g := range s.on {
-		e.add(parts{s, i}, forceSlop, loses, g)
+		e.add(parts{s, i}, rough, loses, g)
 		e.add(strays{s, g}, 0, loses, g)
 	}
 	if f.rolls(len(s.on)) && s.mu[0] > 0 {
@@ -149,7 +153,7 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 			e.add(skids{s}, forceSlop, starts)
 		}
 	}
-	e.graze(f, s.grazed, slop(s.origin)/4, s.local, func(at float64, y []float64) r3.Vec {
+	e.graze(f, s.grazed, slop(s.origin)/4, rough, s.local, func(at float64, y []float64) r3.Vec {
 		s.eval(at, y)
 		return s.rub.drive
 	})
@@ -157,13 +161,14 @@ func (f *Flier) slideEvents(s *slide, now *moving, grazed []geom.Patch) *ends {
 }
 
 // slowEnough is the speed at which a body counts as having stopped. One that
-// goes on from there stops anew only when it was faster again.
+// goes on from there stops anew only when it was faster again; one that was set
+// off with a creep (see setOff) is faster, and may stop as the pull changes.
 func (f *Flier) slowEnough(now *moving, n int) float64 {
 	slow := creep
 	if f.rolls(n) {
 		slow = rollCreep
 	}
-	if r3.Norm(now.v) <= 2*slow {
+	if v := r3.Norm(now.v); v <= 2*slow && (v == 0 || f.rolls(n)) {
 		return 4 * slow
 	}
 	return slow

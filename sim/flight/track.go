@@ -148,6 +148,9 @@ func (t *Track) Knots() []float64 {
 func (p *Phase) Knots() []float64 { return append(p.starts(nil), p.T1) }
 
 func (p *Phase) starts(to []float64) []float64 {
+	if len(p.steps) == 0 && p.T1 > p.T0 {
+		return append(to, p.T0) // a rest that ended
+	}
 	for i := range p.steps {
 		to = append(to, p.T0+p.steps[i].T0)
 	}

@@ -4,7 +4,8 @@
 // Habitat frame: +z is the axial direction, x points outward through spinward
 // zero and y spinward there. An [Attitude] is the habitat's orientation and
 // its angular velocity and acceleration at one instant; a [Motion] gives them
-// as functions of time. Nothing that uses a Motion may assume that the angular
+// as functions of time: [Steady], or by [NewMotion] one whose spin changes and
+// whose axis cones. Nothing that uses a Motion may assume that the angular
 // velocity is steady or that it lies along z.
 //
 // The kinematics are the textbook ones: Goldstein, Classical Mechanics,
@@ -28,7 +29,23 @@ type Motion interface {
 	// Bounds gives bounds on |omega| (rad/s) and |domega/dt| (rad/s^2) over
 	// the times t0 to t1 (s).
 	Bounds(t0, t1 float64) (omega, alpha float64)
+	// Stretch tells how the motion goes on from time t (s).
+	Stretch(t float64) Stretch
 }
+
+// Stretch is a stretch of time in which a motion follows one smooth law.
+type Stretch struct {
+	End float64 // s, when the next one begins, with a kink; infinite: never
+	// Pace is a time, in s, in which what is at rest in the habitat may feel its
+	// loads change by as much as they are; infinite: they stay as they are.
+	Pace float64
+	// Period is that of loads that come back in the habitat, s; 0: they do not,
+	// or stay as they are.
+	Period float64
+}
+
+// Steady says whether loads at rest stay as they are for good.
+func (s Stretch) Steady() bool { return math.IsInf(s.End, 1) && math.IsInf(s.Pace, 1) }
 
 // Attitude is the habitat's orientation and turning at one instant. All
 // vectors are in inertial components.
@@ -62,6 +79,9 @@ func (s Steady) Omega(float64) r3.Vec { return r3.Vec{Z: s.Spin} }
 
 // Bounds implements [Motion].
 func (s Steady) Bounds(_, _ float64) (omega, alpha float64) { return math.Abs(s.Spin), 0 }
+
+// Stretch implements [Motion].
+func (s Steady) Stretch(float64) Stretch { return Stretch{End: math.Inf(1), Pace: math.Inf(1)} }
 
 // In gives the habitat components of a vector in inertial components.
 func (a *Attitude) In(v r3.Vec) r3.Vec {

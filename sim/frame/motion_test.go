@@ -79,6 +79,11 @@ func (w wobble) Bounds(t0, t1 float64) (omega, alpha float64) {
 	return da + 0.21 + 0.78, 0.02 + 0.147 + 0.162 + da*0.21 + (da+0.21)*0.78
 }
 
+// Stretch implements [frame.Motion].
+func (w wobble) Stretch(float64) frame.Stretch {
+	return frame.Stretch{End: math.Inf(1), Pace: 1 / rate}
+}
+
 // motion is a motion with its name.
 type motion struct {
 	name string
@@ -87,7 +92,16 @@ type motion struct {
 
 func motions() []motion {
 	return []motion{{"steady", frame.Steady{Spin: 0.7}}, {"steady, negative", frame.Steady{Spin: -1.1}}, {"at rest", frame.Steady{}},
-		{"wobble", newWobble()}}
+		{"wobble", newWobble()}, {"spin-up and reversal", frame.NewMotion(changing(), frame.Coning{})},
+		{"coning", frame.NewMotion(frame.NewRates(-1.1, nil), frame.Coning{HalfAngle: 0.4, Period: 9, Phase: 1})},
+		{"coning the other way", frame.NewMotion(frame.NewRates(0.8, nil), frame.Coning{HalfAngle: 1.2, Period: -11, Phase: -2})},
+		{"changing and coning", frame.NewMotion(changing(), frame.Coning{HalfAngle: 0.3, Period: 7, Phase: 4})}}
+}
+
+// changing is a spin that grows smoothly, then falls steadily through zero,
+// slowly enough for the bounds of rate.
+func changing() frame.Rates {
+	return frame.NewRates(0.2, []frame.Change{{Start: 1, Over: 4, To: 1.1}, {Start: 6, Over: 5, To: -0.7, Linear: true}})
 }
 
 // random gives a generator with a fixed seed, which a failure prints.

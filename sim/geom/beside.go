@@ -41,6 +41,12 @@ func (b *Beside) counter(in *Interior, p r3.Vec) counter {
 	return counter{Beside: b, in: in, p: p, known: -1}
 }
 
+// joinShare is how near a piece must be, as a share of the sphere's radius, to
+// count as going on from one that the sphere slides on. The next piece of a
+// floor is that near when its seam is about a sixth of the radius away; of what
+// leans over at less than 80 deg, the end that a wall hides is never.
+const joinShare = 1.0 / 64
+
 // counts says at which distance a piece i that is d away counts; infinite if
 // it does not.
 func (c *counter) counts(i int, d float64) float64 {
@@ -51,6 +57,9 @@ func (c *counter) counts(i int, d float64) float64 {
 	for k := 0; k < c.known; k++ {
 		if k >= on && d > c.Wide+2*c.Thin {
 			break
+		}
+		if i != c.touch[k].piece && d > c.Wide+joinShare*math.Max(c.Wide, lift) {
+			continue // what joins at a distance may not, nearer by
 		}
 		if i == c.touch[k].piece || d >= c.Wide-c.Slop && c.in.joins(c.p, c.Wide, i, &c.touch[k]) {
 			return math.Inf(1)

@@ -65,7 +65,8 @@ func looks(m *model.Model, t *flight.Track) []float64 {
 	ways := make([]float64, len(knots))
 	all := 0.0
 	for i := 1; i < len(knots); i++ {
-		ways[i] = (knots[i] - knots[i-1]) * math.Max(quickest(m, t, knots[i-1]), quickest(m, t, knots[i]))
+		omega, _ := m.Motion.Bounds(t.Begin+knots[i-1], t.Begin+knots[i])
+		ways[i] = (knots[i] - knots[i-1]) * math.Max(quickest(m, t, knots[i-1], omega), quickest(m, t, knots[i], omega))
 		all += ways[i]
 	}
 	way := math.Max(clearWay, all/mostLooks)
@@ -83,13 +84,14 @@ func looks(m *model.Model, t *flight.Track) []float64 {
 
 // quickest bounds the speed (m/s, in the habitat) on an integration step by its
 // ends: of a straight flight, the inertial speed and that of the habitat where
-// it is farthest out; that of a body in contact changes little.
-func quickest(m *model.Model, t *flight.Track, time float64) float64 {
+// it is farthest out, which turns at omega (rad/s) at most; that of a body in
+// contact changes little.
+func quickest(m *model.Model, t *flight.Track, time, omega float64) float64 {
 	if len(t.Phases) > 0 && t.Phases[t.PhaseAt(time)].Kind != flight.Free {
 		return r3.Norm(localAt(m, t, time).Vel)
 	}
-	s, omega := t.At(time), m.Motion.Omega(t.Begin+time)
-	return r3.Norm(s.Vel) + r3.Norm(omega)*r3.Norm(s.Pos)
+	s := t.At(time)
+	return r3.Norm(s.Vel) + omega*r3.Norm(s.Pos)
 }
 
 // closest finds the least gap to each surface of a group. The track is at some

@@ -29,6 +29,7 @@ var (
 	perSecond  = unit{"_1_s", "1/s", 1, "rad/s"}
 	speedUnit  = unit{"_m_s", "m/s", 1, "m/s"}
 	accelUnit  = unit{"_m_s2", "m/s^2", 1, "m/s^2"}
+	degreeRate = unit{"_deg_s", "deg/s", math.Pi / 180, "rad/s"}
 	degree     = unit{"_deg", "deg", math.Pi / 180, "rad"}
 	gravity    = unit{"_g", "g", 9.80665, "m/s^2"}
 	turns      = unit{"_rpm", "rpm", math.Pi / 30, "rad/s"}
@@ -47,6 +48,7 @@ type column[T any] struct {
 	num     func(*T) float64
 	text    func(*T) string
 	partly  bool // rows that it says nothing about have no value, and count in no limit
+	later   bool // it tells of the time after a last change of the spin, and is left out without one
 }
 
 // header gives the column as the table package wants it.

@@ -123,6 +123,8 @@ var crewColumns = []column[Load]{
 	{key: "gravity_difference", unit: gravity, meaning: "apparent gravity at the feet less that at the head", num: func(l *Load) float64 { return l.GravityDifference }},
 	{key: "a_coriolis", unit: accelUnit, meaning: "magnitude of the Coriolis acceleration at the waist", num: func(l *Load) float64 { return l.Coriolis }},
 	{key: "a_euler", unit: accelUnit, meaning: "magnitude of the Euler acceleration at the waist", num: func(l *Load) float64 { return l.Euler }},
+	{key: "tilt_rate_spinward", unit: degreeRate, meaning: "rate at which the tilt spinward changes", num: func(l *Load) float64 { return l.TiltRateSpinward }},
+	{key: "tilt_rate_axial", unit: degreeRate, meaning: "rate at which the axial tilt changes", num: func(l *Load) float64 { return l.TiltRateAxial }},
 	{key: "along_ladder", unit: newton, partly: true, meaning: "force on the ladder along it, toward its foot; empty off ladders", num: func(l *Load) float64 { return l.AlongLadder }},
 	{key: "pull", unit: newton, partly: true, meaning: "force that pulls the person away from the ladder in front; negative: into it; empty off ladders", num: func(l *Load) float64 { return l.Pull }},
 	{key: "gravity_carried", unit: gravity, meaning: "apparent gravity at what is carried; empty without", num: func(l *Load) float64 { return l.GravityCarried }},
@@ -143,6 +145,10 @@ var deckColumns = []column[DeckFigure]{
 	{key: "coriolis_per_speed", unit: perSecond, meaning: "Coriolis acceleration for each m/s across the axis: twice the spin rate", num: func(d *DeckFigure) float64 { return d.Coriolis }},
 	{key: "drop_1m_offset", unit: metre, meaning: "deck offset of a point dropped from 1 m above it in vacuum, spinward positive; empty where the axis is nearer", num: func(d *DeckFigure) float64 { return d.Drop }},
 	{key: "walk_run", unit: speedUnit, meaning: "speed at which a person of 1.75 m changes from walking to running at rest gravity: Froude number 0.5", num: func(d *DeckFigure) float64 { return WalkRunSpeed(d.Gravity) }},
+	{key: "last_gravity", unit: gravity, later: true, meaning: "apparent gravity at rest on it after the last change of the spin", num: func(d *DeckFigure) float64 { return d.LastGravity }},
+	{key: "last_speed", unit: speedUnit, later: true, meaning: "speed of its surface after the last change, spinward positive", num: func(d *DeckFigure) float64 { return d.LastSpeed }},
+	{key: "last_coriolis_per_speed", unit: perSecond, later: true, meaning: "Coriolis acceleration for each m/s across the axis, after the last change", num: func(d *DeckFigure) float64 { return d.LastCoriolis }},
+	{key: "last_drop_1m_offset", unit: metre, later: true, meaning: "deck offset of a point dropped from 1 m above it in vacuum, after the last change; empty without spin", num: func(d *DeckFigure) float64 { return d.LastDrop }},
 }
 
 // verdictColumns are those of limits.csv.

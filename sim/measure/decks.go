@@ -6,12 +6,16 @@ import (
 	"offplumb/sim/model"
 )
 
-// DeckFigure is what a deck is like to live on. SI units.
+// DeckFigure is what a deck is like to live on, under the spin at time 0; Last
+// tells the same after the last change of the spin. SI units.
 type DeckFigure struct {
 	Deck            string
 	Radius, Gravity float64
 	Speed, Coriolis float64
 	Drop            float64
+
+	Changes                                        bool // the spin does
+	LastGravity, LastSpeed, LastCoriolis, LastDrop float64
 }
 
 // dropHeight is the height, m, of the drop in decks.csv.
@@ -24,6 +28,10 @@ func DeckFigures(m *model.Model) []DeckFigure {
 		r := m.Decks[i].Radius
 		out[i] = DeckFigure{Deck: m.Decks[i].Name, Radius: r, Gravity: m.Gravity(r), Speed: m.Habitat.Spin * r,
 			Coriolis: 2 * math.Abs(m.Habitat.Spin), Drop: DropOffset(r, dropHeight, m.Habitat.Spin)}
+		last := m.SpinAt(m.Settled())
+		d := &out[i]
+		d.Changes = m.SpinChanges()
+		d.LastGravity, d.LastSpeed, d.LastCoriolis, d.LastDrop = last*last*r, last*r, 2*math.Abs(last), DropOffset(r, dropHeight, last)
 	}
 	return out
 }

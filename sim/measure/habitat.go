@@ -7,12 +7,16 @@ import (
 )
 
 // HabitatFigure is what the habitat as a whole is like, for a person of a
-// stature (m) who moves at a speed (m/s). SI units.
+// stature (m) who moves at a speed (m/s), under the spin at time 0; Last tells
+// the same after the last change of the spin. SI units.
 type HabitatFigure struct {
 	Spin, Gravity, RimSpeed float64
 	HeadToFoot              float64 // share by which gravity at the head is less than at the feet
 	CoriolisRatio           float64 // Coriolis acceleration at the speed, by gravity
 	Stature, Speed          float64
+
+	Changes                             bool // the spin does
+	LastSpin, LastGravity, LastRimSpeed float64
 }
 
 // HabitatOf works out the figures at the reference floor; a stature or speed
@@ -31,6 +35,9 @@ func HabitatOf(m *model.Model, stature, speed float64) HabitatFigure {
 	if h.Spin == 0 {
 		out.CoriolisRatio = math.NaN()
 	}
+	last := m.SpinAt(m.Settled())
+	out.Changes = m.SpinChanges()
+	out.LastSpin, out.LastGravity, out.LastRimSpeed = last, last*last*h.FloorRadius, last*h.FloorRadius
 	return out
 }
 
@@ -57,4 +64,7 @@ var habitatColumns = []column[HabitatFigure]{
 	{key: "coriolis_ratio", meaning: "Coriolis acceleration at the speed, by apparent gravity on the floor", num: func(h *HabitatFigure) float64 { return h.CoriolisRatio }},
 	{key: "stature", unit: metre, meaning: "stature that head_to_foot is for", num: func(h *HabitatFigure) float64 { return h.Stature }},
 	{key: "speed", unit: speedUnit, meaning: "speed that coriolis_ratio is for", num: func(h *HabitatFigure) float64 { return h.Speed }},
+	{key: "last_spin", unit: turns, later: true, meaning: "spin rate after its last change", num: func(h *HabitatFigure) float64 { return h.LastSpin }},
+	{key: "last_floor_gravity", unit: gravity, later: true, meaning: "apparent gravity at rest on the reference floor after the last change", num: func(h *HabitatFigure) float64 { return h.LastGravity }},
+	{key: "last_rim_speed", unit: speedUnit, later: true, meaning: "speed of the reference floor after the last change", num: func(h *HabitatFigure) float64 { return h.LastRimSpeed }},
 }

@@ -21,6 +21,7 @@ type Evidence struct {
 
 	PathClearance func(path int) ([]Clearance, bool)
 	Habitat       func(stature, speed float64) HabitatFigure
+	Turning       func() []Turning // how the habitat turns while anything moves
 }
 
 // Judge gives the verdict on a limit: that on its worst target, at its worst
@@ -73,6 +74,9 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 	case "crew":
 		rows, ok := e.Loads(t.Index)
 		return series(c, t, crewColumns, rows, func(l *Load) float64 { return l.Time }), ok
+	}
+	if c.Table == "spin" {
+		return series(c, t, turningColumns, e.Turning(), func(t *Turning) float64 { return t.Time }), true
 	}
 	if c.Table == "habitat" {
 		row := []HabitatFigure{e.Habitat(c.Limit.Stature, c.Limit.Speed)}

@@ -93,6 +93,7 @@ func judgedTables() map[string]judged {
 		"crew":      judgedTable("path", crewColumns),
 		"habitat":   judgedTable("habitat", habitatColumns),
 		"decks":     judgedTable("habitat", deckColumns),
+		"spin":      judgedTable("habitat", turningColumns),
 	}
 }
 
@@ -118,7 +119,7 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	c.Table, key, _ = strings.Cut(l.Measure, ".")
 	t, ok := tables[c.Table]
 	if !ok {
-		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, scatter; got %q", l.Measure)
+		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, spin, scatter; got %q", l.Measure)
 	}
 	u, num := t.nums[key]
 	if !num && !t.text[key] {

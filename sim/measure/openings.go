@@ -32,10 +32,20 @@ func FellThrough(m *model.Model, t *flight.Track, until float64) []string {
 	return out
 }
 
+// partsOf is into how many parts a stretch of a track is cut. An axis that cones
+// goes round itself meanwhile.
+func partsOf(m *model.Model, t *flight.Track, t0, t1 float64) float64 {
+	if !m.Cones() {
+		return passParts
+	}
+	omega, _ := m.Motion.Bounds(t.Begin+t0, t.Begin+t1)
+	return math.Max(passParts, math.Ceil(omega*(t1-t0)/turnStep))
+}
+
 func passings(m *model.Model, t *flight.Track, d *model.Deck, t0, t1 float64, out []string) []string {
-	before := t0
-	for k := 1.0; k <= passParts; k++ {
-		now := t0 + (t1-t0)*k/passParts
+	before, parts := t0, partsOf(m, t, t0, t1)
+	for k := 1.0; k <= parts; k++ {
+		now := t0 + (t1-t0)*k/parts
 		if where(m, t, before).R <= d.Radius && where(m, t, now).R > d.Radius {
 			p := where(m, t, crossing(m, t, d.Radius, before, now))
 			if o := d.OpeningAt(p.Phi, p.Z); o != nil && !slices.Contains(out, o.Name) {

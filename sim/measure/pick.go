@@ -40,7 +40,7 @@ func Picks(m *model.Model, name string, of []string, strict bool) ([]Pick, error
 		return nil, err
 	}
 	switch p.table {
-	case "habitat":
+	case "habitat", "spin":
 		return []Pick{p}, nil
 	case "decks":
 		p.Kind = "deck"
@@ -155,7 +155,7 @@ func pickOf(name string) (Pick, error) {
 	p.table, key, _ = strings.Cut(name, ".")
 	t, ok := judgedTables()[p.table]
 	if !ok {
-		return p, fmt.Errorf("wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat; got %q", name)
+		return p, fmt.Errorf("wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, spin; got %q", name)
 	}
 	if column, take, ok := strings.Cut(key, "."); ok {
 		if take != leastRow && take != mostRow {
@@ -220,7 +220,7 @@ func (p *Pick) words() string {
 		s += "; the least of all"
 	case p.take == mostRow:
 		s += "; the greatest of all"
-	case p.Kind == "release" && p.table != "landings" && p.table != "rests" || p.Kind == "path":
+	case p.Kind == "release" && p.table != "landings" && p.table != "rests" || p.Kind == "path" || p.table == "spin":
 		s += "; the greatest magnitude of all"
 	}
 	if p.Of != "" {
@@ -246,6 +246,8 @@ func (p *Pick) meaning() string {
 		return numberColumn(clearanceColumns, p.key, p.unit).meaning
 	case "decks":
 		return numberColumn(deckColumns, p.key, p.unit).meaning
+	case "spin":
+		return numberColumn(turningColumns, p.key, p.unit).meaning
 	}
 	return numberColumn(habitatColumns, p.key, p.unit).meaning
 }

@@ -97,6 +97,8 @@ func (p *Pick) values(e Evidence, i int) []float64 {
 		return entries(p, clearanceColumns, rows)
 	case "decks":
 		return entries(p, deckColumns, e.Decks[i:i+1])
+	case "spin":
+		return entries(p, turningColumns, e.Turning())
 	}
 	return entries(p, habitatColumns, []HabitatFigure{e.Habitat(0, 0)})
 }

@@ -138,9 +138,9 @@ func leavings(m *model.Model, t *flight.Track, p *model.Passage) []Event {
 	var out []Event
 	knots := t.Knots()
 	for k := 1; k < len(knots); k++ {
-		before := knots[k-1]
-		for part := 1.0; part <= passParts; part++ {
-			now := knots[k-1] + (knots[k]-knots[k-1])*part/passParts
+		before, parts := knots[k-1], partsOf(m, t, knots[k-1], knots[k])
+		for part := 1.0; part <= parts; part++ {
+			now := knots[k-1] + (knots[k]-knots[k-1])*part/parts
 			if where(m, t, before).R <= p.ToRadius && where(m, t, now).R > p.ToRadius {
 				at := crossing(m, t, p.ToRadius, before, now)
 				if s := localAt(m, t, at); inSection(p, s.Pos) {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 
+	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/sim/flight"
 	"offplumb/sim/model"
 	"offplumb/sim/table"
@@ -15,7 +16,12 @@ func Story(m *model.Model, t *flight.Track) string {
 	s := teller{m: m, t: t, events: Events(m, t)}
 	for i := range t.Phases {
 		s.until(t.Phases[i].T0)
-		if p := &t.Phases[i]; p.T1 > p.T0 && (p.Kind == flight.Slide || p.Kind == flight.Roll) {
+		switch p := &t.Phases[i]; {
+		case p.T1 <= p.T0:
+		case p.Kind == flight.Rest:
+			s.say("rests on %s until %s", p.Surface, seconds(p.T1))
+			s.last = ""
+		case p.Kind != flight.Free:
 			s.along(p)
 		}
 	}
@@ -112,6 +118,10 @@ func (s *teller) ending() {
 	case flight.Lost:
 		s.say("is lost at %s", seconds(s.t.End))
 	case flight.TimeUp:
+		if r3.Norm(localAt(s.m, s.t, s.t.End).Vel) == 0 {
+			s.say("floats where it is at %s, held by nothing", seconds(s.t.End))
+			return
+		}
 		s.say("still moves at %s", seconds(s.t.End))
 	default:
 		s.flush()

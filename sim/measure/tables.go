@@ -1,6 +1,10 @@
 package measure
 
-import "offplumb/sim/table"
+import (
+	"slices"
+
+	"offplumb/sim/table"
+)
 
 // LandingTable is landings.csv: a row for each release.
 func LandingTable(rows []Landing) *table.Table { return fill(landingColumns, rows) }
@@ -12,7 +16,15 @@ func TrackTable(rows []Sample) *table.Table { return fill(sampleColumns, rows) }
 func CrewTable(rows []Load) *table.Table { return fill(crewColumns, rows) }
 
 // DeckTable is decks.csv: a row for each deck.
-func DeckTable(rows []DeckFigure) *table.Table { return fill(deckColumns, rows) }
+func DeckTable(rows []DeckFigure) *table.Table {
+	return fill(unlessSteady(deckColumns, len(rows) == 0 || !rows[0].Changes), rows)
+}
+
+// unlessSteady leaves out the columns of the time after the last change of a
+// spin that is steady.
+func unlessSteady[T any](cols []column[T], steady bool) []column[T] {
+	return slices.DeleteFunc(slices.Clone(cols), func(c column[T]) bool { return steady && c.later })
+}
 
 // LimitTable is limits.csv: a row for each limit judged.
 func LimitTable(rows []Verdict) *table.Table { return fill(verdictColumns, rows) }
@@ -31,4 +43,6 @@ func ClearanceTable(rows []Clearance) *table.Table { return fill(clearanceColumn
 func LetGoTable(rows []LetGo) *table.Table { return fill(letGoColumns, rows) }
 
 // HabitatTable is habitat.csv, of one row.
-func HabitatTable(h HabitatFigure) *table.Table { return fill(habitatColumns, []HabitatFigure{h}) }
+func HabitatTable(h HabitatFigure) *table.Table {
+	return fill(unlessSteady(habitatColumns, !h.Changes), []HabitatFigure{h})
+}

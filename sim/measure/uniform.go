@@ -10,7 +10,7 @@ import (
 
 // Uniform is the uniform-gravity path: the same release under uniform gravity
 // of the strength at rest on the deck beneath it, over a flat deck, without
-// air; on a flat floor it pulls along the plumb line. Its frame is local to the plumb line: x spinward and y axial from the
+// air: the part along the plumb line, at the time of the release; on a flat floor it pulls along the plumb line. Its frame is local to the plumb line: x spinward and y axial from the
 // release, h above the deck.
 type Uniform struct {
 	Gravity                float64 // m/s^2
@@ -27,7 +27,8 @@ type Uniform struct {
 func UniformGravity(m *model.Model, t *flight.Track) Uniform {
 	g := GroundOf(m, t)
 	foot := g.Foot(t.Start.Phi)
-	u := Uniform{Gravity: m.Gravity(foot), Height: foot - t.Start.R}
+	at := frame.Polar{R: foot, Phi: t.Start.Phi, Z: t.Start.Z}
+	u := Uniform{Gravity: math.Max(0, m.GravityAt(t.Begin, at)), Height: foot - t.Start.R}
 	u.VSpinward, u.VAxial, u.VUp = frame.LocalAt(t.Start.Phi).Split(t.Local.Vel)
 	drop := math.Max(0, u.Height-t.Body.Diameter/2)
 	if u.Gravity == 0 {

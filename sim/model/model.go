@@ -36,6 +36,7 @@ type Model struct {
 	Warnings []Warning      // what the reader of the results must know
 
 	bodyIndex map[string]int
+	rates     frame.Rates
 }
 
 // Shape names the form of a room.
@@ -52,7 +53,9 @@ const (
 // Habitat is the reference room and its spin.
 type Habitat struct {
 	Room
-	Spin float64 // rad/s, positive: the floor moves spinward
+	Spin    float64        // rad/s, positive: the floor moves spinward; before any change
+	Changes []frame.Change // of the spin; in order of time once the model is made
+	Coning  frame.Coning   // of its axis
 }
 
 // Room is a space whose walls are solid.

@@ -29,11 +29,11 @@ func New(in Model) (*Model, []Problem) {
 	c := &checker{m: &m}
 	m.index()
 	c.habitat()
+	c.turning()
 	c.decks(in.Decks)
 	if len(c.problems) > 0 {
 		return nil, c.problems
 	}
-	m.Motion = frame.Steady{Spin: m.Habitat.Spin}
 	c.interior()
 	if len(c.problems) > 0 {
 		return nil, c.problems

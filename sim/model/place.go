@@ -157,7 +157,7 @@ func (d *Deck) OpeningAt(phi, z float64) *Opening {
 }
 
 // Gravity is the apparent gravity at rest at a distance r (m) from the axis
-// under steady spin, m/s^2.
+// under the steady spin that the habitat begins with, m/s^2.
 func (m *Model) Gravity(r float64) float64 { return m.Habitat.Spin * m.Habitat.Spin * r }
 
 // BodyOf gives the body of a release: a point without mass where it names

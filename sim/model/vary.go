@@ -4,8 +4,6 @@ import (
 	"fmt"
 	"math"
 	"strings"
-
-	"offplumb/sim/frame"
 )
 
 // Variant is a release of which some numbers are others.
@@ -146,10 +144,12 @@ func (v *Variant) Set(s *Spread, x float64) {
 	}
 }
 
-// Spun is the model with its habitat turning at another rate, rad/s.
+// Spun is the model with its habitat turning at another rate, rad/s, up to any
+// change of the spin.
 func (m *Model) Spun(spin float64) *Model {
 	out := *m
-	out.Habitat.Spin, out.Motion = spin, frame.Steady{Spin: spin}
+	out.Habitat.Spin = spin
+	out.turn()
 	return &out
 }
 

@@ -109,6 +109,7 @@ func (p *Prepared) evidence(results []Result) measure.Evidence {
 	m := p.Model
 	return measure.Evidence{Decks: measure.DeckFigures(m),
 		Habitat:   func(stature, speed float64) measure.HabitatFigure { return measure.HabitatOf(m, stature, speed) },
+		Turning:   func() []measure.Turning { return p.Turnings(results) },
 		Landing:   func(i int) (*measure.Landing, bool) { return &results[i].Landing, results[i].done },
 		Rest:      func(i int) (*measure.Rest, bool) { return &results[i].Rest, results[i].done },
 		Events:    func(i int) ([]measure.Event, bool) { return results[i].Events, results[i].Track != nil },
