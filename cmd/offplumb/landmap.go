@@ -130,7 +130,7 @@ func (s *mapResult) ways() string {
 	if s.of.Speed == 0 {
 		return words + ", at rest"
 	}
-	return fmt.Sprintf("%s, with %s in %d directions", words, withUnit(s.of.Speed, "m/s"), s.of.Directions)
+	return fmt.Sprintf("%s, with %s m/s in %d directions", words, given(s.of.Speed), s.of.Directions)
 }
 
 // worst tells the worst touch and where it came from.
@@ -217,8 +217,8 @@ func warnMaps(j *job) {
 		if n := s.land.Late; n > 0 {
 			j.note(of, "%s still move after the longest time, %s s", count(n, "flight"), table.Round(j.model().Solver.MaxTime, 4))
 		}
-		if s.of.Speed == 0 && s.of.Cell < s.of.Step*(1-1e-9) {
-			j.note(of, "its cells are smaller than its step: there are gaps between the landings where nothing was let go")
+		if s.of.Cell < s.of.Step*(1-1e-9) {
+			j.note(of, "its cells are smaller than its step: the counts of cells show the pattern of the places where things are let go")
 		}
 	}
 }

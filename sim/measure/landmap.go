@@ -411,3 +411,32 @@ func (c *LandMap) Density(d *MapDeck, cell *MapCell) float64 {
 // LetVelocity is a velocity (m/s) along the local directions at a place, in
 // habitat components.
 func LetVelocity(p model.Place, v r3.Vec) r3.Vec { return frame.LocalAt(p.Phi).Vec(v.X, v.Y, v.Z) }
+
+// Stand describes a place by the deck or flat floor beneath it: its name, and
+// the arc, or straight length, and axial place there, m.
+func Stand(m *model.Model, p model.Place) (name string, spinward, axial float64) {
+	at, name, arc := stand(m, p.Vec())
+	return name, arc, at.Z
+}
+
+// MostReached is, for each place of each patch, the greatest share of the
+// directions that reach a goal, of all heights; NaN where the body has room at
+// none.
+func (c *LandMap) MostReached(goal int) [][]float64 {
+	out := make([][]float64, len(c.Patches))
+	n := 0
+	for i := range c.Patches {
+		out[i] = make([]float64, c.Patches[i].Count())
+		for k := range out[i] {
+			best := math.NaN()
+			for range c.Map.Heights {
+				if x := c.Reached(goal, n); !(x <= best) && !math.IsNaN(x) {
+					best = x
+				}
+				n++
+			}
+			out[i][k] = best
+		}
+	}
+	return out
+}

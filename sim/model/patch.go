@@ -49,6 +49,17 @@ func (p *Patch) at(m *Model, a, b, height float64) Place {
 	return at
 }
 
+// Edge gives the corner between the places of columns i-1 and i and of rows j-1
+// and j, or the edge of the piece, on its own level.
+func (p *Patch) Edge(m *Model, i, j int) Place {
+	at := func(k, n int) float64 {
+		mid := p.First[k] + float64(p.N[k]-1)*p.Step/2
+		x := p.First[k] + (float64(n)-0.5)*p.Step
+		return math.Max(mid-p.Size[k]/2, math.Min(mid+p.Size[k]/2, x))
+	}
+	return p.at(m, at(0, i), at(1, j), 0)
+}
+
 // Corners gives the corners of the piece, in order, on its own level.
 func (p *Patch) Corners(m *Model) (out []Place) {
 	a, b := p.First[0]+float64(p.N[0]-1)*p.Step/2, p.First[1]+float64(p.N[1]-1)*p.Step/2
