@@ -57,7 +57,7 @@ func (b *builder) landingMap(o *object) model.LandingMap {
 	if l.Speed > 0 {
 		l.Directions = int(o.numOr("directions", model.DefaultDirections))
 		b.directions(o, l.Directions)
-	} else {
+	} else if !o.has("speed") || o.vals["speed"] != nil {
 		b.refuses(o, "what is dropped has no direction: wants a speed above 0", "directions")
 	}
 	for i, g := range o.subs("reaches") {

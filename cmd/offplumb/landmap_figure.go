@@ -265,6 +265,9 @@ func doublings(values []float64) []float64 {
 	return append([]float64{low}, down...)
 }
 
+// leastStep is the share of a step that the uppermost band has at least.
+const leastStep = 0.1
+
 // evenSteps are levels a round step apart, the first being the least value.
 func evenSteps(values []float64) []float64 {
 	low, high := rangeOf(values)
@@ -276,7 +279,7 @@ func evenSteps(values []float64) []float64 {
 	for (high-low)/step > plots.MostLayers-1 {
 		step = nextRound(step)
 	}
-	for k := math.Floor(low/step) + 1; k*step < high && len(out) < plots.MostLayers; k++ {
+	for k := math.Floor(low/step) + 1; k*step < high-leastStep*step && len(out) < plots.MostLayers; k++ {
 		out = append(out, k*step)
 	}
 	return out

@@ -273,7 +273,7 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		}
 	}
 	if len(out) == 0 {
-		return nil, fmt.Sprintf("no %s named %q", kind, name)
+		return nil, fmt.Sprintf("no %s named %q", strings.Replace(kind, "map", "landing map", 1), name)
 	}
 	return out, ""
 }

@@ -308,7 +308,7 @@ func bytesOf(t *testing.T, c *measure.LandMap) []byte {
 
 func TestMapIsTheSameForAnyWorkers(t *testing.T) {
 	l := overHatch(ringSpin)
-	l.Until = model.UntilRest
+	l.Until, l.Directions = model.UntilRest, 12
 	in := hatched(ringSpin, l)
 	want := bytesOf(t, mapped(t, in, 1))
 	for _, workers := range []int{2, 5} {
@@ -322,6 +322,7 @@ func TestMapIsTheSameForAnyWorkers(t *testing.T) {
 // resting places come on top.
 func TestMapUntilRest(t *testing.T) {
 	l := overHatch(ringSpin)
+	l.Directions = 12
 	first := mapped(t, hatched(ringSpin, l), 2)
 	l.Until = model.UntilRest
 	rest := mapped(t, hatched(ringSpin, l), 2)
