@@ -260,7 +260,7 @@ var crewPath = &section{name: "a crew path", doc: "A person's motion through sta
 var limit = &section{name: "a limit", doc: "An acceptance criterion of the project.",
 	keys: []key{
 		title(),
-		texts("of", "release.NAME, path.NAME, study.NAME (of a scatter) or habitat; * stands for anything; or a list").need(),
+		texts("of", "release.NAME, path.NAME, study.NAME (of a scatter or a landing map) or habitat; * stands for anything; or a list").need(),
 		text("measure", "table.column, without the unit").need(),
 		bound("min", "least value"),
 		bound("max", "greatest value"),
