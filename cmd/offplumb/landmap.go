@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"io"
+	"math"
 	"strings"
 
 	"offplumb/sim/measure"
@@ -141,13 +142,14 @@ func (s *mapResult) worst() string {
 		words = withUnit(w.Energy, "J") + " at " + words
 	}
 	at, height, _ := s.land.Start(s.land.From)
-	return fmt.Sprintf("%s on %s at %s, let go at %s, height %s above %s", words, w.Surface, placeWords(w.Spinward, w.Axial),
-		placeWords(at.Spinward, at.Axial), withUnit(height, "m"), at.Deck)
+	return fmt.Sprintf("%s on %s at %s, let go at %s, height %s above %s", words, w.Surface, s.placeWords(w.Spinward, w.Axial),
+		s.placeWords(at.Spinward, at.Axial), withUnit(height, "m"), at.Deck)
 }
 
-// placeWords says where something is on a deck.
-func placeWords(spinward, axial float64) string {
-	return fmt.Sprintf("spinward %s m, axial %s m", table.Fixed(spinward, 2), table.Fixed(axial, 2))
+// placeWords says where something is on a deck, to a tenth of a cell.
+func (s *mapResult) placeWords(spinward, axial float64) string {
+	decimals := int(math.Max(0, math.Ceil(1-math.Log10(s.of.Cell)-1e-9)))
+	return fmt.Sprintf("spinward %s m, axial %s m", table.Fixed(spinward, decimals), table.Fixed(axial, decimals))
 }
 
 // reach tells from how many places a goal is reached.

@@ -54,8 +54,39 @@ func (j *job) mapSheet(name string) plots.DeckPlanSpec {
 	}
 	if f := j.flatNamed(name); f != nil {
 		spec.From, spec.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
+		j.flatSheet(&spec, f)
 	}
 	return spec
+}
+
+// flatSheet adds the openings of a flat floor and the boxes that stand on it.
+func (j *job) flatSheet(spec *plots.DeckPlanSpec, f *model.Flat) {
+	m := j.model()
+	if d := &m.Decks[0]; d.Flat && f.Name == d.Name {
+		for i := range d.Openings {
+			o := &d.Openings[i]
+			spec.Openings = append(spec.Openings, plots.PlanOpening{Name: o.Name, Centre: plots.Point{X: f.Along(o.Spinward), Y: o.Axial - f.Z},
+				Size: plots.Point{X: o.Size[0], Y: o.Size[1]}, Coaming: o.Coaming > 0, Closed: o.Closed})
+		}
+	}
+	for i := range m.Fixtures {
+		b := &m.Fixtures[i]
+		p, err := m.Resolve(b.At)
+		if b.Kind != model.Box || err != nil {
+			continue
+		}
+		name, s, z := measure.Stand(m, p)
+		if name != f.Name {
+			continue
+		}
+		sin, cos := math.Sincos(b.Turn)
+		outline := plots.PlanFixture{Name: b.Name}
+		for _, c := range [][2]float64{{1, 1}, {-1, 1}, {-1, -1}, {1, -1}} {
+			along, across := c[0]*b.Size[0]/2, c[1]*b.Size[1]/2
+			outline.Path = append(outline.Path, plots.Point{X: s + along*cos - across*sin, Y: z + along*sin + across*cos})
+		}
+		spec.Fixtures = append(spec.Fixtures, outline)
+	}
 }
 
 // flatNamed finds a flat floor: that of the habitat or of a cabin.
@@ -108,7 +139,7 @@ func (j *job) mapWorst(s *mapResult, d *measure.MapDeck) (*plots.Figure, error) 
 		spec.Mark, spec.MarkWords = &plots.Point{X: w.Spinward, Y: w.Axial}, "worst: "+withUnit(get(w), unit)
 		at, height, v := s.land.Start(d.Cells[worst].From)
 		spec.Words = append(spec.Words, fmt.Sprintf("worst: %s at %s, on %s", withUnit(get(w), unit), withUnit(w.Speed, "m/s"), w.Surface),
-			fmt.Sprintf("let go at %s, %s above %s", placeWords(at.Spinward, at.Axial), withUnit(height, "m"), at.Deck))
+			fmt.Sprintf("let go at %s, %s above %s", s.placeWords(at.Spinward, at.Axial), withUnit(height, "m"), at.Deck))
 		if s.of.Speed > 0 {
 			spec.Words = append(spec.Words, fmt.Sprintf("with %s m/s spinward, %s axially, %s up", table.Fixed(v.X, 2), table.Fixed(v.Y, 2), table.Fixed(v.Z, 2)))
 		}

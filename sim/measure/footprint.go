@@ -8,8 +8,8 @@ import (
 )
 
 // Footprint is the outline of all landings on a deck: that of the cells that
-// were landed in, with the cells between two of one row or column that are at
-// most a step apart, since between two places a step apart are others. Loops are
+// were landed in, with the cells between two of one row, then of one column, that
+// are at most a step apart, since between two places a step apart are others. Loops are
 // closed; those around holes run clockwise, with spinward to the right and
 // +axial up. m.
 //
@@ -66,27 +66,33 @@ func (c *LandMap) Outlines(d *MapDeck, cells [][2]int32) (out [][][2]float64) {
 	return out
 }
 
-// joined adds the cells between two of a row or a column that are at most a
-// step apart, which their landings are where they lie up to a cell further.
+// joined adds the cells between two of a row, then those between two of a column
+// of what there is then, that are at most a step apart: places a step apart lie
+// up to one cell more than that apart by their cells. It gives them by spinward,
+// then axial.
 func (c *LandMap) joined(cells [][2]int32) [][2]int32 {
 	most := int32(math.Min(math.Floor(c.Map.Step/c.Map.Cell+edgeSlack), math.MaxInt16)) + 1
-	out := slices.Clone(cells)
-	for k := range 2 {
-		line := slices.Clone(cells)
-		slices.SortFunc(line, func(a, b [2]int32) int {
-			if a[1-k] != b[1-k] {
-				return int(a[1-k]) - int(b[1-k])
-			}
-			return int(a[k]) - int(b[k])
-		})
-		for i := 1; i < len(line); i++ {
-			if line[i][1-k] != line[i-1][1-k] || line[i][k]-line[i-1][k] > most {
-				continue
-			}
-			for at := line[i-1]; at[k]+1 < line[i][k]; {
-				at[k]++
-				out = append(out, at)
-			}
+	return bridged(bridged(cells, 0, most), 1, most)
+}
+
+// bridged adds the cells between two of a line along one way that are no further
+// apart than most, and sorts all.
+func bridged(cells [][2]int32, way int, most int32) [][2]int32 {
+	line := slices.Clone(cells)
+	slices.SortFunc(line, func(a, b [2]int32) int {
+		if a[1-way] != b[1-way] {
+			return int(a[1-way]) - int(b[1-way])
+		}
+		return int(a[way]) - int(b[way])
+	})
+	out := line
+	for i := 1; i < len(line); i++ {
+		if line[i][1-way] != line[i-1][1-way] || line[i][way]-line[i-1][way] > most {
+			continue
+		}
+		for at := line[i-1]; at[way]+1 < line[i][way]; {
+			at[way]++
+			out = append(out, at)
 		}
 	}
 	slices.SortFunc(out, func(a, b [2]int32) int {
