@@ -5,7 +5,9 @@
 // over one ruler of time; TogetherView shows several on board; DeflectionChart
 // the apparent deflection of one or several; DeckPlan one deck unrolled, with landings
 // and crew paths; PathView a crew path with the person on it; LoadsChart what it does to
-// the person; StackChart any panels above one another; ScatterPlan the landings of many samples of one release. Each takes a spec of plain
+// the person; StackChart any panels above one another; ScatterPlan the landings of many
+// samples of one release; MapPlan a figure of each place of a deck, in shades. Each takes
+// a spec of plain
 // numbers, names and outlines, and refuses what cannot be drawn.
 //
 // # The language of the figures
@@ -18,6 +20,8 @@
 //   - a release is an open circle, a landing a full one, a resting place a square;
 //   - of many landings each is a small mark, whose shape tells what it is on, and a cross is
 //     their median;
+//   - shades of one hue, the darker the more, show a figure of each place; their steps are
+//     outlined and bear their value, and a bar beside the plan has the others;
 //   - a crew path starts at a diamond and ends with an arrowhead. The person is a thin
 //     line with a dot for the head, and a thin arrow from the feet is a force, at a scale
 //     that is stated as that of lengths is;

@@ -23,6 +23,12 @@ const (
 	inkPurple
 	inkOrange
 	inkSky
+	inkHeat1 // of maps, from little to much: one hue, each darker than the one before
+	inkHeat2
+	inkHeat3
+	inkHeat4
+	inkHeat5
+	inkHeat6
 	inkCount
 )
 
@@ -50,6 +56,12 @@ var inks = [inkCount]inkSpec{
 	inkPurple:     {"purple", rgb(0xCC79A7), rgb(0xE3A3C8)},
 	inkOrange:     {"orange", rgb(0xE69F00), rgb(0xF4BC45)},
 	inkSky:        {"sky", rgb(0x56B4E9), rgb(0x93D2F7)},
+	inkHeat1:      {"heat1", rgb(0xD9E8F5), rgb(0x22384A)},
+	inkHeat2:      {"heat2", rgb(0xB0CEE8), rgb(0x2C5270)},
+	inkHeat3:      {"heat3", rgb(0x7FAFD8), rgb(0x3A7199)},
+	inkHeat4:      {"heat4", rgb(0x4C8CC0), rgb(0x5595C2)},
+	inkHeat5:      {"heat5", rgb(0x23679E), rgb(0x86BCE2)},
+	inkHeat6:      {"heat6", rgb(0x0B4374), rgb(0xBEDDF3)},
 }
 
 func rgb(v uint32) color.RGBA {

@@ -85,6 +85,9 @@ func (b *builder) build(o *object, files reading) {
 	for _, s := range o.subs("scatter") {
 		b.in.Scatters = append(b.in.Scatters, b.scatter(s, files))
 	}
+	for _, l := range o.subs("landing_map") {
+		b.in.Maps = append(b.in.Maps, b.landingMap(l))
+	}
 	b.settings(o.sub("solver"), o.sub("output"))
 }
 

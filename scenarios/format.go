@@ -277,7 +277,7 @@ var crewPath = &section{name: "a crew path", doc: "A person's motion through sta
 var limit = &section{name: "a limit", doc: "An acceptance criterion of the project.",
 	keys: []key{
 		title(),
-		texts("of", "release.NAME, path.NAME, study.NAME (of a scatter) or habitat; * stands for anything; or a list").need(),
+		texts("of", "release.NAME, path.NAME, study.NAME (of a scatter or a landing map) or habitat; * stands for anything; or a list").need(),
 		text("measure", "table.column, without the unit").need(),
 		bound("min", "least value"),
 		bound("max", "greatest value"),
@@ -362,25 +362,6 @@ var throwTo = &section{name: "a throw study", doc: "How to throw so as to reach 
 		flag("least_speed", "the slowest throw").one("throw"),
 	},
 	exactly: []string{"throw"}}
-
-var region = &section{name: "a region", doc: "A patch of a deck.",
-	keys: []key{
-		text("deck", "the deck").or(`"floor"`),
-		{name: "spinward", want: wantList, dims: []*dimension{length, angle}, count: 2, span: anything, doc: "extent"},
-		lengths("axial", 2, anything, "extent"),
-		texts("fixtures", "the tops of these fixtures, in place of a patch"),
-	}}
-
-var landingMap = &section{name: "a landing map", doc: "Where a body lands that is let go anywhere over a region.",
-	keys: []key{
-		title(),
-		text("body", "name of the body").or("a point, without drag"),
-		table("over", region, "where it is let go").need(),
-		{name: "heights", want: wantList, dims: []*dimension{length}, span: anything, required: true, doc: "where it is let go"},
-		qty("speed", speed, notNegative, "in all directions").or(`"0 m/s"`),
-		qty("step", length, positive, "between the places").need(),
-		qty("cell", length, positive, "of the map").need(),
-	}}
 
 // file is the whole format.
 var file = &section{name: "the file", doc: "The file itself.",

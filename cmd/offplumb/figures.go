@@ -51,6 +51,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, j.studyFigures()...)
 	all = append(all, scatterFigures(j)...)
 	all = append(all, sweepFigures(j)...)
+	all = append(all, mapFigures(j)...)
 	all = append(all, j.askedFigures()...)
 	return j.withFilms(j.drawn(all)), nil
 }

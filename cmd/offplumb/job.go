@@ -31,6 +31,7 @@ type job struct {
 	spacings  [][]measure.Platform // of each spacing of platforms; nil: not asked for
 	sweeps    []sweepResult
 	scatters  []scatterResult
+	maps      []mapResult
 	verdicts  []measure.Verdict
 	unjudged  []string
 	files     []entry
@@ -89,6 +90,9 @@ func (j *job) choose() error {
 	for i := range j.model().Scatters {
 		known[j.model().Scatters[i].Name] = true
 	}
+	for i := range j.model().Maps {
+		known[j.model().Maps[i].Name] = true
+	}
 	for _, name := range j.flags.only {
 		if !known[name] {
 			return wrong(fmt.Errorf("--only: no release, crew path or study named %q", name))
@@ -110,6 +114,9 @@ func (j *job) compute(ctx context.Context, p *progress) (err error) {
 		return err
 	}
 	if err := j.runScatters(ctx, p); err != nil {
+		return err
+	}
+	if err := j.runMaps(ctx, p); err != nil {
 		return err
 	}
 	return j.runSweeps(ctx, p)
@@ -189,6 +196,7 @@ func (j *job) judge() {
 	e.Track = func(i int) ([]measure.Sample, bool) { return j.samples(i) }
 	e.PathClearance = func(i int) ([]measure.Clearance, bool) { return j.paths[i].near, !j.paths[i].skipped }
 	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
+	e.Map = func(i int) (*measure.LandMap, bool) { return j.landMap(i) }
 	e.Scatter = func(i int) (*measure.Scattered, bool) { return j.scattered(i) }
 	for i := range j.Limits {
 		if v, ok := j.Limits[i].Judge(e); ok {

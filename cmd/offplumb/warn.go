@@ -45,6 +45,7 @@ func (j *job) warn() {
 	}
 	warnScatters(j)
 	warnSweeps(j)
+	warnMaps(j)
 	j.warnReleases()
 	j.warnPaths()
 	if len(j.unjudged) > 0 {
@@ -53,7 +54,7 @@ func (j *job) warn() {
 }
 
 // runStudies are the kinds of studies that run.
-var runStudies = []string{"scatter", "sweep"}
+var runStudies = []string{"scatter", "sweep", "landing_map"}
 
 // idleStudies names the studies that do not run.
 func idleStudies(j *job) (out []string) {

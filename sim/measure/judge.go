@@ -17,6 +17,7 @@ type Evidence struct {
 	Clearance func(release int) ([]Clearance, bool)
 	Loads     func(path int) ([]Load, bool)
 	Scatter   func(scatter int) (*Scattered, bool)
+	Map       func(landingMap int) (*LandMap, bool)
 	Decks     []DeckFigure
 
 	PathClearance func(path int) ([]Clearance, bool)
@@ -71,6 +72,12 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 			return Verdict{}, false
 		}
 		return series(c, t, scatterColumns, []Scattered{*s}, func(*Scattered) float64 { return math.NaN() }), true
+	case "maps":
+		l, ok := e.Map(t.Index)
+		if !ok {
+			return Verdict{}, false
+		}
+		return c.landMap(t, l), true
 	case "crew":
 		rows, ok := e.Loads(t.Index)
 		return series(c, t, crewColumns, rows, func(l *Load) float64 { return l.Time }), ok

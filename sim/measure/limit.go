@@ -40,6 +40,9 @@ func (t Target) String() string {
 	if t.Name == "" {
 		return t.Kind
 	}
+	if t.Kind == "map" {
+		return "study." + t.Name
+	}
 	return t.Kind + "." + t.Name
 }
 
@@ -102,6 +105,7 @@ func judgedTables() map[string]judged {
 func Criteria(m *model.Model) (out []Criterion, problems []model.Problem) {
 	tables := judgedTables()
 	tables["scatter"] = judgedTable("study", scatterColumns)
+	tables["maps"] = judgedMaps(m)
 	for i := range m.Limits {
 		c, faults := criterion(m, &m.Limits[i], tables)
 		for _, f := range faults {
@@ -119,7 +123,7 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	c.Table, key, _ = strings.Cut(l.Measure, ".")
 	t, ok := tables[c.Table]
 	if !ok {
-		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, spin, scatter; got %q", l.Measure)
+		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, spin, scatter, maps; got %q", l.Measure)
 	}
 	u, num := t.nums[key]
 	if !num && !t.text[key] {
@@ -182,6 +186,9 @@ func (c *Criterion) bounds(num bool) (out []model.Problem) {
 		} else if b.Unit != c.unit.si {
 			out = append(out, fault(b.Key, "wants a value in %s, as the column %s has, got one in %s", orPlain(c.unit.name), c.Key, orPlain(b.Unit))...)
 		}
+	}
+	if c.Table == "maps" && judgesWords(l) { // what it lands on and falls through is known
+		return out
 	}
 	words := len(l.SurfaceIn)+len(l.SurfaceNotIn)+len(l.FallsThroughNot) > 0
 	if words && c.Table == "clearance" && len(l.SurfaceNotIn)+len(l.FallsThroughNot) == 0 {
@@ -247,11 +254,14 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		return []Target{{Kind: "habitat"}}, ""
 	}
 	prefix, name, _ := strings.Cut(of, ".")
-	if prefix != "release" && prefix != "path" && (prefix != "study" || kind != "study") {
+	if kind == "map" && prefix == "study" {
+		prefix = kind
+	}
+	if prefix != "release" && prefix != kind && prefix != "path" && (prefix != "study" || kind != "study") {
 		return nil, fmt.Sprintf("wants release.NAME, path.NAME or habitat, got %q", of)
 	}
 	if prefix != kind {
-		return nil, fmt.Sprintf("the measure's table belongs to %s, got %q", kind, of)
+		return nil, fmt.Sprintf("the measure's table belongs to %s, got %q", strings.Replace(kind, "map", "a landing map, study.NAME", 1), of)
 	}
 	var out []Target
 	for i, n := range names(m, kind) {
@@ -264,7 +274,7 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		}
 	}
 	if len(out) == 0 {
-		return nil, fmt.Sprintf("no %s named %q", kind, name)
+		return nil, fmt.Sprintf("no %s named %q", strings.Replace(kind, "map", "landing map", 1), name)
 	}
 	return out, ""
 }
@@ -290,6 +300,11 @@ func names(m *model.Model, kind string) []string {
 	case "path":
 		for i := range m.Paths {
 			out = append(out, m.Paths[i].Name)
+		}
+		return out
+	case "map":
+		for i := range m.Maps {
+			out = append(out, m.Maps[i].Name)
 		}
 		return out
 	case "study":

@@ -43,6 +43,9 @@ func partsOf(m *model.Model, t *flight.Track, t0, t1 float64) float64 {
 }
 
 func passings(m *model.Model, t *flight.Track, d *model.Deck, t0, t1 float64, out []string) []string {
+	if !m.Cones() && staysWithin(m, t, d.Radius, t0, t1) {
+		return out
+	}
 	before, parts := t0, partsOf(m, t, t0, t1)
 	for k := 1.0; k <= parts; k++ {
 		now := t0 + (t1-t0)*k/parts
@@ -55,6 +58,15 @@ func passings(m *model.Model, t *flight.Track, d *model.Deck, t0, t1 float64, ou
 		before = now
 	}
 	return out
+}
+
+// staysWithin says that a step of free flight that ends within a radius (m) does
+// not pass it outward: where the distance from the axis neither grows nor falls,
+// drag, of air that turns with the habitat, has no part along the radius, and
+// the motion across it bends the distance upward. So it has no greatest value
+// inside a step.
+func staysWithin(m *model.Model, t *flight.Track, r, t0, t1 float64) bool {
+	return t.Phases[t.PhaseAt(t0+(t1-t0)/2)].Kind == flight.Free && where(m, t, t1).R <= r
 }
 
 // crossing halves the stretch from a to b until it is one rounding wide.

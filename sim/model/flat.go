@@ -91,3 +91,11 @@ func (m *Model) Above(deck int, p frame.Polar) float64 {
 	}
 	return m.Decks[deck].Radius - p.R
 }
+
+// CabinFloor gives the flat floor of a cabin, nil for other rooms.
+func (r *Room) CabinFloor() *Flat {
+	if r.Shape != Cabin {
+		return nil
+	}
+	return r.flat()
+}

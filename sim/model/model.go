@@ -27,6 +27,7 @@ type Model struct {
 	Limits   []Limit
 	Spacings []Spacing
 	Scatters []Scatter
+	Maps     []LandingMap
 	Solver   Solver
 	Output   Output
 
