@@ -20,6 +20,7 @@ type job struct {
 	flags *runFlags
 	out   string
 
+	joined    *joined        // takes the place of what parts have computed; nil: none
 	results   []study.Result // of each release
 	paths     []pathResult   // of each crew path
 	landings  []measure.Landing
@@ -96,9 +97,29 @@ func (j *job) choose() error {
 	return nil
 }
 
-// compute flies the releases and walks the paths.
-func (j *job) compute(ctx context.Context, p *progress) (err error) {
-	j.results, err = j.Run(ctx, study.Options{Workers: j.flags.jobs, Want: j.wantedRelease, Done: p.releases})
+// prepare makes room for the results.
+func (j *job) prepare() {
+	j.results = make([]study.Result, len(j.Lets))
+	j.scatters = make([]scatterResult, len(j.model().Scatters))
+	for i := range j.scatters {
+		j.scatters[i].of = &j.model().Scatters[i]
+	}
+	j.sweeps = nil
+	for _, s := range j.Sweeps {
+		j.sweeps = append(j.sweeps, sweepResult{Sweep: s})
+	}
+}
+
+// compute flies the releases and runs the studies.
+func (j *job) compute(ctx context.Context, p *progress) error {
+	j.prepare()
+	var kept []int
+	for i := range j.Lets {
+		if j.wantedRelease(j.Lets[i].Release) && j.Keeps(i) {
+			kept = append(kept, i)
+		}
+	}
+	err := j.Fly(ctx, kept, j.results, study.Options{Workers: j.flags.jobs, Done: p.releases})
 	if ctx.Err() != nil {
 		return context.Cause(ctx)
 	}
@@ -108,10 +129,7 @@ func (j *job) compute(ctx context.Context, p *progress) (err error) {
 	if err := j.place(ctx); err != nil {
 		return err
 	}
-	if err := j.runScatters(ctx, p); err != nil {
-		return err
-	}
-	return j.runSweeps(ctx, p)
+	return j.share(ctx, p)
 }
 
 // place finds the platforms.

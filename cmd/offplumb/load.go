@@ -17,6 +17,9 @@ import (
 // refuses it with its own words. One byte more is asked for to know.
 const maxScenario = 1 << 20
 
+// stdinName names standard input to people.
+const stdinName = "standard input"
+
 // placed is an error that names a place in a file.
 type placed struct{ error }
 
@@ -37,6 +40,8 @@ func (l *loading) flags(cmd *cobra.Command) {
 type loaded struct {
 	*scenarios.Scenario
 	*study.Prepared
+	src    []byte // of the scenario
+	folder string // of the files that it names
 }
 
 // load reads, checks and prepares a scenario; "-" is standard input.
@@ -47,9 +52,13 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 	}
 	shown := name
 	if name == "-" {
-		shown = "standard input"
+		shown = stdinName
 	}
-	folder := filepath.Dir(name)
+	return l.source(shown, src, filepath.Dir(name))
+}
+
+// source checks and prepares a scenario, whose files lie in a folder.
+func (l *loading) source(shown string, src []byte, folder string) (*loaded, error) {
 	sc, err := scenarios.Load(shown, src, scenarios.Options{
 		Sets:         l.sets,
 		AllowOutside: l.allowOutside,
@@ -67,7 +76,7 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 	if len(problems) > 0 {
 		return nil, wrong(placed{sc.Problems(problems)})
 	}
-	return &loaded{sc, p}, nil
+	return &loaded{sc, p, src, folder}, nil
 }
 
 func readScenario(name string, stdin io.Reader) ([]byte, error) {

@@ -51,8 +51,8 @@ type Verdict struct {
 	At                 float64 // s
 	Source             string
 	Found              string // in words, where the value is no number
-	badness            badness
-	seen               bool
+	Bad                Badness
+	Seen               bool // a value was held against the bounds
 }
 
 // judged is one table that limits may name.

@@ -35,24 +35,31 @@ func (p *Point) Finished() bool { return p.done }
 // It stops early, with the context's error, when the context ends.
 func (s *Sweep) Run(ctx context.Context, opt Options) ([]Point, error) {
 	out := make([]Point, s.Points)
+	return out, s.Compute(ctx, 0, s.Points, out, opt)
+}
+
+// Compute computes the points from one up to another, as Run does, and puts
+// each to its place.
+func (s *Sweep) Compute(ctx context.Context, from, to int, out []Point, opt Options) error {
 	var next, done atomic.Int64
 	var tell sync.Mutex
-	spread(min(opt.Workers, s.Points), func() {
+	next.Store(int64(from))
+	spread(min(opt.Workers, to-from), func() {
 		for {
 			i := int(next.Add(1)) - 1
-			if i >= s.Points || ctx.Err() != nil {
+			if i >= to || ctx.Err() != nil {
 				return
 			}
 			out[i] = s.point(i)
 			n := int(done.Add(1))
 			if opt.Done != nil {
 				tell.Lock()
-				opt.Done(n, s.Points)
+				opt.Done(n, to-from)
 				tell.Unlock()
 			}
 		}
 	})
-	return out, ctx.Err()
+	return ctx.Err()
 }
 
 func (s *Sweep) point(i int) Point {
@@ -73,7 +80,7 @@ func (p *Prepared) take(picks []measure.Pick) ([]float64, error) {
 			continue
 		}
 		var err error
-		if results[i], err = p.one(flier, i, nil); err != nil {
+		if results[i], err = p.one(flier, i); err != nil {
 			return nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
 		}
 	}
