@@ -103,7 +103,7 @@ func (sc *Scenario) Variant(s *Sweep, point int) (*study.Prepared, error) {
 	root := sc.root.copied()
 	errs := apply(root, s.Settings(point))
 	root.prune(s)
-	v := &Scenario{Name: sc.Name, root: root, read: sc.read, open: sc.open}
+	v := &Scenario{Name: sc.Name, root: root, read: sc.read, open: sc.open, list: sc.list, keep: sc.keep, part: true}
 	if err := v.finish(errs); err != nil {
 		return nil, inLine(err)
 	}

@@ -130,13 +130,13 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	}
 	problems := c.bounds(num)
 	problems = append(problems, c.surfaces(m)...)
-	for _, of := range l.Of {
+	for k, of := range l.Of {
 		kind := t.kind
 		if c.Table == "clearance" && strings.HasPrefix(of, "path.") {
 			kind = "path" // crew paths have clearances too
 		}
 		found, msg := targets(m, of, kind)
-		if msg != "" {
+		if listed := k < len(l.Listed) && l.Listed[k] && kind == "release"; msg != "" && !listed {
 			problems = append(problems, fault("of", "%s", msg)...)
 		}
 		c.Targets = append(c.Targets, found...)
@@ -254,7 +254,7 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 	}
 	var out []Target
 	for i, n := range names(m, kind) {
-		if ok, err := path.Match(escape(name), escapeName(n)); n == name || ok && err == nil {
+		if matches(name, n) {
 			t := Target{Kind: kind, Index: i, Name: n}
 			if kind == "release" {
 				t.Series = m.Releases[i].Series
@@ -266,6 +266,18 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		return nil, fmt.Sprintf("no %s named %q", kind, name)
 	}
 	return out, ""
+}
+
+// matches says whether a name or pattern stands for a name.
+func matches(pattern, name string) bool {
+	if name == pattern || pattern == "*" {
+		return true
+	}
+	if !strings.Contains(pattern, "*") {
+		return false
+	}
+	ok, err := path.Match(escape(pattern), escapeName(name))
+	return ok && err == nil
 }
 
 // escape leaves * as the only character of a pattern with a meaning, and
