@@ -84,6 +84,11 @@ func ours(dir string) bool {
 	return json.Unmarshal(src, &mark) == nil && mark.Program == programName
 }
 
+// create creates a file of the folder, to be written while the run goes on.
+func (s *stage) create(name string) (*os.File, error) {
+	return os.Create(filepath.Join(s.aside, name))
+}
+
 // file creates a file of the folder, with the folders above it, and hands it
 // to write.
 func (s *stage) file(name string, write func(io.Writer) error) error {

@@ -30,6 +30,9 @@ type job struct {
 	letgo     []letGoSeries
 	serial    map[string]bool      // names of the releases in them
 	spacings  [][]measure.Platform // of each spacing of platforms; nil: not asked for
+	streams   []streamResult
+	lists     *listWriter // landings and rests while they are written; nil: there is no long list
+	stage     *stage
 	sweeps    []sweepResult
 	scatters  []scatterResult
 	verdicts  []measure.Verdict
@@ -89,6 +92,11 @@ func (j *job) choose() error {
 	for i := range j.model().Scatters {
 		known[j.model().Scatters[i].Name] = true
 	}
+	for _, s := range j.Streams {
+		for name := range s.Find(slices.DeleteFunc(slices.Clone(j.flags.only), func(name string) bool { return known[name] })) {
+			known[name] = true
+		}
+	}
 	for _, name := range j.flags.only {
 		if !known[name] {
 			return wrong(fmt.Errorf("--only: no release, crew path or study named %q", name))
@@ -104,7 +112,10 @@ func (j *job) prepare() {
 	for i := range j.scatters {
 		j.scatters[i].of = &j.model().Scatters[i]
 	}
-	j.sweeps = nil
+	j.sweeps, j.streams = nil, nil
+	for _, s := range j.Streams {
+		j.streams = append(j.streams, streamResult{of: s})
+	}
 	for _, s := range j.Sweeps {
 		j.sweeps = append(j.sweeps, sweepResult{Sweep: s})
 	}
@@ -207,7 +218,7 @@ func (j *job) judge() {
 	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
 	e.Scatter = func(i int) (*measure.Scattered, bool) { return j.scattered(i) }
 	for i := range j.Limits {
-		if v, ok := j.Limits[i].Judge(e); ok {
+		if v, ok := j.judged(i, e); ok {
 			j.verdicts = append(j.verdicts, v)
 		} else {
 			j.unjudged = append(j.unjudged, j.Limits[i].Limit.Name)

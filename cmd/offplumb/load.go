@@ -29,6 +29,7 @@ func (p placed) Unwrap() error { return p.error }
 type loading struct {
 	sets         []string
 	allowOutside bool
+	keepRows     int // of a release list that is not streamed; 0: the usual
 }
 
 func (l *loading) flags(cmd *cobra.Command) {
@@ -41,7 +42,7 @@ type loaded struct {
 	*scenarios.Scenario
 	*study.Prepared
 	src    []byte // of the scenario
-	folder string // of the files that it names
+	origin *inputs
 }
 
 // load reads, checks and prepares a scenario; "-" is standard input.
@@ -54,20 +55,21 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 	if name == "-" {
 		shown = stdinName
 	}
-	return l.source(shown, src, filepath.Dir(name))
+	files := &inputs{folder: filepath.Dir(name), stdin: stdin}
+	if name == "-" {
+		files.stdin = nil
+	}
+	return l.source(shown, src, files)
 }
 
-// source checks and prepares a scenario, whose files lie in a folder.
-func (l *loading) source(shown string, src []byte, folder string) (*loaded, error) {
+// source checks and prepares a scenario.
+func (l *loading) source(shown string, src []byte, files *inputs) (*loaded, error) {
 	sc, err := scenarios.Load(shown, src, scenarios.Options{
 		Sets:         l.sets,
 		AllowOutside: l.allowOutside,
-		ReadFile: func(path string) ([]byte, error) {
-			if !filepath.IsAbs(path) {
-				path = filepath.Join(folder, path)
-			}
-			return readUpTo(path, scenarios.MaxListSize+1)
-		},
+		ReadFile:     files.read,
+		OpenFile:     files.open,
+		KeepRows:     l.keepRows,
 	})
 	if err != nil {
 		return nil, wrong(placed{err})
@@ -76,7 +78,7 @@ func (l *loading) source(shown string, src []byte, folder string) (*loaded, erro
 	if len(problems) > 0 {
 		return nil, wrong(placed{sc.Problems(problems)})
 	}
-	return &loaded{sc, p, src, folder}, nil
+	return &loaded{sc, p, src, files}, nil
 }
 
 func readScenario(name string, stdin io.Reader) ([]byte, error) {
@@ -132,7 +134,7 @@ func newCheck(s streams) *cobra.Command {
 			}
 			m := sc.Prepared.Model
 			fmt.Fprintf(s.out, "%s: no problems: %s, %s, %s\n", args[0],
-				count(len(m.Releases), "release"), count(len(m.Paths), "crew path"), count(len(m.Limits), "limit"))
+				count(len(m.Releases)+sc.rows(), "release"), count(len(m.Paths), "crew path"), count(len(m.Limits), "limit"))
 			return nil
 		},
 	}
@@ -145,4 +147,12 @@ func count(n int, what string) string {
 		return "1 " + what
 	}
 	return fmt.Sprintf("%d %ss", n, what)
+}
+
+// rows is the number of rows of the lists that are too long to be kept.
+func (l *loaded) rows() (n int) {
+	for _, s := range l.Streams {
+		n += s.Rows
+	}
+	return n
 }

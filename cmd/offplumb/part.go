@@ -112,7 +112,7 @@ func workOf(s shared, number int, f partFlag) partOfWork {
 
 // record is the part.json of a part of this run.
 func (j *job) partRecord(f partFlag) (*partRecord, error) {
-	folder, err := filepath.Abs(j.folder)
+	folder, err := filepath.Abs(j.origin.folder)
 	if err != nil {
 		return nil, err
 	}
@@ -145,6 +145,9 @@ func (j *job) runPart(ctx context.Context, s streams, f partFlag) error {
 		if cause := new(signalled); asSignal(err, cause) {
 			return *cause
 		}
+		if w := new(fail); errors.As(err, &w) {
+			return err
+		}
 		return incomplete(err)
 	}
 	return j.reportPart(s, rec)
@@ -162,6 +165,9 @@ func (j *job) doPart(ctx context.Context, s streams, st *stage, f partFlag) (*pa
 	rec, err := j.partRecord(f)
 	if err != nil {
 		return nil, err
+	}
+	if len(j.origin.once) > 0 {
+		return nil, wrong(errors.New("--part: wants files that the join can read again; a release list comes from standard input or a pipe"))
 	}
 	j.prepare()
 	for n, work := range j.shares() {

@@ -132,6 +132,7 @@ func (j *job) whole(ctx context.Context, s streams) error {
 
 // do computes and writes everything into the stage.
 func (j *job) do(ctx context.Context, s streams, st *stage) error {
+	j.stage = st
 	p := newProgress(s.err, j.flags.quiet)
 	defer p.clear()
 	runErr := j.compute(ctx, p)

@@ -75,6 +75,11 @@ func (j *job) shares() []shared {
 	if r := j.rowShare(); r.items() > 0 {
 		out = append(out, r)
 	}
+	for i := range j.streams {
+		if s := &j.streams[i]; j.wantsRows(s.of) {
+			out = append(out, &streamShare{j, s})
+		}
+	}
 	for i := range j.scatters {
 		if s := &j.scatters[i]; j.wanted(s.of.Name) {
 			out = append(out, &scatterShare{j, s, nil})

@@ -24,6 +24,7 @@ func (j *job) summary(w io.Writer) error {
 	var b strings.Builder
 	b.WriteString(j.Title + "\n" + spinLine(j.model()) + "\n")
 	j.sumLandings(&b)
+	sumStreams(j, &b)
 	j.sumStories(&b)
 	j.sumPaths(&b)
 	j.sumStudies(&b)

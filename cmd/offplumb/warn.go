@@ -40,6 +40,7 @@ func (j *job) warn() {
 	if names := idleStudies(j); len(names) > 0 {
 		j.note("studies", "this version checks these studies but does not run them: %s", someNames(names))
 	}
+	warnStreams(j)
 	warnScatters(j)
 	warnSweeps(j)
 	j.warnReleases()

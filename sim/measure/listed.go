@@ -31,12 +31,6 @@ func (c *Criterion) ofReleases() bool {
 	return false
 }
 
-// WantsTrack says whether the limit looks at the track of a release of a name.
-func (c *Criterion) WantsTrack(name string) bool {
-	return c.ofReleases() && c.Table != "landings" && c.Table != "rests" &&
-		slices.ContainsFunc(c.Limit.Of, func(of string) bool { return StandsFor(of, name) })
-}
-
 // JudgeSome is Judge for the releases from one index up to another, and for
 // what else the limit judges if others says so.
 func (c *Criterion) JudgeSome(e Evidence, from, to int, others bool) (Verdict, bool) {

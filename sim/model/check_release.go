@@ -34,8 +34,8 @@ func (m *Model) CheckRelease(r *Release) []Problem {
 func (c *checker) release(key string, r *Release) {
 	m := c.m
 	if _, ok := m.bodyIndex[r.Body]; r.Own == nil && r.Body != "" && !ok {
-			c.fault(key+".body", "", "no body named %q", r.Body)
-		}
+		c.fault(key+".body", "", "no body named %q", r.Body)
+	}
 	if r.Carried != nil {
 		c.carried(key, r)
 		return
