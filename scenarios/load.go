@@ -57,7 +57,8 @@ type Scenario struct {
 	open bool                              // files outside the scenario's folder are permitted
 	list func(string) (io.ReadCloser, error)
 	keep int
-	part bool // a variant of a scenario: lists that are streamed are left out
+	sets []string // of the command line
+	part bool     // a variant of a scenario: lists that are streamed are left out
 	keys []string
 	rows []row
 }
@@ -77,6 +78,7 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 	if root.kids["sweep"] != nil {
 		sc.read = remembered(sc.read)
 	}
+	sc.sets = opt.Sets
 	sc.list, sc.keep = opt.OpenFile, cmp.Or(opt.KeepRows, DefaultKeepRows)
 	if sc.list == nil {
 		sc.list = func(name string) (io.ReadCloser, error) {
@@ -116,7 +118,7 @@ func (sc *Scenario) finish(errs ErrorList) error {
 		return sc.Problems(problems)
 	}
 	sc.Model = m
-	if errs = sc.pick(); len(errs) > 0 {
+	if errs = append(sc.pick(), sc.otherFiles()...); len(errs) > 0 {
 		return errs.sorted()
 	}
 	return nil

@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"offplumb/scenarios"
+	"offplumb/sim/measure"
 	"offplumb/sim/study"
 	"offplumb/sim/table"
 )
@@ -31,7 +32,7 @@ func (s *sweepShare) finish()                 {}
 
 func (s *sweepShare) compute(ctx context.Context, r span, p *progress, out *study.Packer) error {
 	s.room()
-	run := study.Sweep{Points: s.Points(), Picks: s.Picks, Variant: func(i int) (*study.Prepared, error) { return s.j.Variant(s.Sweep, i) }}
+	run := study.Sweep{Points: s.Points(), Picks: s.Picks, Landings: s.Variants != nil, Variant: func(i int) (*study.Prepared, error) { return s.j.Variant(s.Sweep, i) }}
 	opt := study.Options{Workers: s.j.flags.jobs, Done: func(done, of int) { p.tell("points of "+s.Name, done, of) }}
 	if err := run.Compute(ctx, r.from, r.to, s.points, opt); err != nil {
 		return err
@@ -140,6 +141,10 @@ func sweepTables(j *job) []task {
 		if s.points != nil {
 			like := &table.Table{Columns: s.columns()}
 			out = append(out, lateTask(file, "sweep", s.Name, "A row for each point of a sweep.", s.table, like))
+			if s.Variants != nil {
+				file := strings.TrimSuffix(file, ".csv") + "-changes.csv"
+				out = append(out, tableTask(file, "changes", s.Name, "A row for each release and each variant behind the first: what changed.", measure.ChangeTable(s.changes())))
+			}
 		}
 	}
 	return out
@@ -149,6 +154,9 @@ func sweepTables(j *job) []task {
 func warnSweeps(j *job) {
 	for i := range j.sweeps {
 		s := &j.sweeps[i]
+		if long := j.LongLists(); s.Variants != nil && s.points != nil && len(long) > 0 {
+			j.note("sweep."+s.Name, "long release lists are left out of variants: %s", someNames(long))
+		}
 		if n, first := s.impossible(); n > 0 {
 			j.note("sweep."+s.Name, "%s of %d without measures; the first, %s: %v", count(n, "point"), len(s.points), s.Short(first), s.points[first].Fault)
 		}
@@ -168,6 +176,9 @@ func sumSweeps(j *job, b *strings.Builder) {
 			head = true
 		}
 		b.WriteString(wrapped("  "+s.sentence()+".", "    "))
+		for _, words := range s.changeWords() {
+			b.WriteString(wrapped("  "+words+".", "    "))
+		}
 	}
 }
 

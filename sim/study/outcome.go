@@ -27,11 +27,13 @@ type PointOutcome struct {
 	Values []float64
 	Fault  string // why it has none; "": it has them
 	Spin   float64
+
+	Landings []measure.Landing
 }
 
 // Outcome gives what there is of a computed point.
 func (p *Point) Outcome() PointOutcome {
-	o := PointOutcome{Values: p.Values, Spin: p.Spin}
+	o := PointOutcome{Values: p.Values, Spin: p.Spin, Landings: p.Landings}
 	if p.Fault != nil {
 		o.Fault = p.Fault.Error()
 	}
@@ -40,7 +42,7 @@ func (p *Point) Outcome() PointOutcome {
 
 // Point makes a computed point of an outcome.
 func (o *PointOutcome) Point() Point {
-	p := Point{Values: o.Values, Spin: o.Spin, done: true}
+	p := Point{Values: o.Values, Spin: o.Spin, Landings: o.Landings, done: true}
 	if o.Fault != "" {
 		p.Fault = errors.New(o.Fault)
 	}

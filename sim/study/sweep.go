@@ -18,6 +18,8 @@ type Sweep struct {
 	// impossible. It is called from several goroutines.
 	Variant func(point int) (*Prepared, error)
 	Picks   []measure.Pick
+	// Landings says that the landings of all releases are wanted too.
+	Landings bool
 }
 
 // Point is what one point of a sweep gave.
@@ -25,7 +27,9 @@ type Point struct {
 	Values []float64 // of each pick, SI; NaN where it has none; nil with a fault
 	Fault  error     // why the point is impossible or could not be computed
 	Spin   float64   // rad/s
-	done   bool
+	// Landings are those of all releases, where they are wanted.
+	Landings []measure.Landing
+	done     bool
 }
 
 // Finished says whether the point was computed, be it possible or not.
@@ -67,36 +71,39 @@ func (s *Sweep) point(i int) Point {
 	if err != nil {
 		return Point{Fault: err, done: true}
 	}
-	values, err := p.take(s.Picks)
-	return Point{Values: values, Fault: err, Spin: p.Model.Habitat.Spin, done: true}
+	values, landings, err := p.take(s.Picks, s.Landings)
+	return Point{Values: values, Landings: landings, Fault: err, Spin: p.Model.Habitat.Spin, done: true}
 }
 
-// take runs what some picks depend on and gives their numbers.
-func (p *Prepared) take(picks []measure.Pick) ([]float64, error) {
+// take runs what some picks depend on, or all, and gives their numbers, and the
+// landings if all are wanted.
+func (p *Prepared) take(picks []measure.Pick, all bool) (values []float64, landings []measure.Landing, err error) {
 	results := make([]Result, len(p.Lets))
 	flier := flight.NewFlier(p.Model)
 	for i := range p.Lets {
-		if !p.needed(picks, i) {
+		if !p.needed(picks, i, all) {
 			continue
 		}
-		var err error
 		if results[i], err = p.one(flier, i); err != nil {
-			return nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
+			return nil, nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
+		}
+		if all {
+			landings = append(landings, results[i].Landing)
 		}
 	}
 	e := p.evidence(results)
-	out := make([]float64, len(picks))
+	values = make([]float64, len(picks))
 	for i := range picks {
-		out[i] = picks[i].Value(p.Model, e)
+		values[i] = picks[i].Value(p.Model, e)
 	}
-	return out, nil
+	return values, landings, nil
 }
 
 // needed says whether a release is to be flown. Where nothing past its landing
-// counts, it ends there.
-func (p *Prepared) needed(picks []measure.Pick, i int) bool {
+// counts, it ends there. All says that every landing is wanted.
+func (p *Prepared) needed(picks []measure.Pick, i int, all bool) bool {
 	let := &p.Lets[i]
-	needed, past := false, false
+	needed, past := all, false
 	p.keep[i] = false
 	for k := range picks {
 		if this, track := picks[k].NeedRelease(let.Release); this {
