@@ -14,6 +14,7 @@ type StackChartSpec struct {
 	Axis   string    // what runs along, with its unit
 	X      []float64 // never decreasing; at least two different
 	Legs   []LegSpan // stretches of X with names, in their order
+	Named  bool      // the stretches say it all: no numbers stand along
 	Panels []PanelSpec
 }
 
@@ -100,7 +101,7 @@ func StackChart(spec StackChartSpec) (*Figure, error) {
 // panels are those with something to show.
 func (s StackChartSpec) panels() (out []*panel) {
 	for _, p := range s.Panels {
-		q := &panel{title: p.Title, most: p.Most, levels: p.Levels}
+		q := &panel{title: p.Title, most: p.Most, levels: p.Levels, named: s.Named}
 		for _, c := range p.Curves {
 			if _, _, ok := span(c.Y); ok {
 				q.curves = append(q.curves, curve{c.Name, s.X, c.Y, seriesPen(len(q.curves)), false})

@@ -80,7 +80,7 @@ func changed(rows []measure.Change) string {
 // draw.
 func (s *sweepResult) variantChart(j *job) (plots.StackChartSpec, bool) {
 	spec := plots.StackChartSpec{Title: s.Name + ": " + count(len(s.Variants), "variant") + " side by side", Spin: j.model().Habitat.Spin,
-		Axis: "variants, in the order of the scenario", Spins: s.spins(),
+		Axis: "variants, in the order of the scenario", Named: true, Spins: s.spins(),
 		Notes: "A stretch for each variant; a gap where it has no value. " + strings.Join(s.changeWords(), ". ")}
 	for i := range s.Variants {
 		spec.Legs = append(spec.Legs, plots.LegSpan{Name: s.Variants[i].Name, From: float64(i), To: float64(i + 1)})
