@@ -88,7 +88,7 @@ func valueSchema(k *key) schema {
 	case wantOpen:
 		return objectSchema(k.free)
 	case wantSettings:
-		return schema{"type": "object", "minProperties": 1}
+		return schema{"type": "object"}
 	case wantNumbers:
 		return schema{"type": "array", "items": k.span.schema("number"), "minItems": k.count, "maxItems": k.count}
 	}

@@ -81,7 +81,10 @@ func (f *joinFlags) join(ctx context.Context, s streams, dirs []string) error {
 		name = "-"
 	}
 	j := &job{loaded: sc, flags: &f.runFlags, out: f.folder(name), joined: d}
-	if err := errors.Join(d.fit(j, folder), d.sound()); err != nil {
+	if err := d.fit(j, folder); err != nil {
+		return wrong(err)
+	}
+	if err := d.sound(); err != nil {
 		return wrong(err)
 	}
 	return j.whole(ctx, s)

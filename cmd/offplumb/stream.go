@@ -190,7 +190,6 @@ type listWriter struct {
 	j               *job
 	landings, rests *os.File
 	next            int // release of the scenario to be written next
-	err             error
 }
 
 // listWriter opens the two tables, unless they are.
