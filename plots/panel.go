@@ -23,6 +23,7 @@ type panel struct {
 	most   float64 // greatest value shown; 0 for no bound
 	levels []Level // lines across, such as limits
 	unit   float64 // size of the unit printed up the axis; 0 for 1
+	named  bool    // no numbers along: stretches with names stand for them
 	bare   bool    // no numbers at the left: they stand at a neighbour
 
 	win            vg.Rectangle
@@ -90,7 +91,9 @@ func (q *panel) set(win vg.Rectangle, x0, x1 float64) {
 	const pitch = 52 // pt
 	q.win, q.x0, q.x1 = win, x0, x1
 	q.scaleUp()
-	q.xTicks = roundTicker{n: max(2, int((win.Max.X-win.Min.X).Points()/pitch))}.Ticks(x0, x1)
+	if !q.named {
+		q.xTicks = roundTicker{n: max(2, int((win.Max.X-win.Min.X).Points()/pitch))}.Ticks(x0, x1)
+	}
 	q.yTicks = roundTicker{n: q.stepsUp(), unit: q.unit}.Ticks(q.y0, q.y1)
 	q.pl = &placer{bounds: win}
 }

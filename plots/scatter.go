@@ -12,6 +12,7 @@ import (
 type ScatterPlanSpec struct {
 	Deck    DeckPlanSpec   // with the title; its Releases and Paths are not looked at
 	Foot    Point          // of the plumb line under the release
+	NoFoot  bool           // there is no single release: Foot is not looked at
 	Median  *Point         // of the landings; nil without any
 	Groups  []ScatterGroup // at most MostDots places in all
 	Landed  int            // how many landings there are, drawn or not
@@ -98,7 +99,9 @@ const shownShare = 0.99
 
 // matters is the part of the plan with the foot, the outlines and nearly all landings.
 func (s *scatterPlan) matters() (a area) {
-	a.add(s.of.Foot)
+	if !s.of.NoFoot {
+		a.add(s.of.Foot)
+	}
 	if e := s.of.Ellipse; e != nil {
 		a.add(e.outline()...)
 	}

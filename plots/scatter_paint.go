@@ -115,7 +115,7 @@ func (s *scatterPlan) label() {
 			s.pl.add(label{s: "median", size: sizeLabel, ink: inkText, at: q, clear: crossArm + 1, need: true})
 		})
 	}
-	s.each(s.of.Foot, func(q vg.Point) {
+	s.eachFoot(func(q vg.Point) {
 		s.pl.mark(q, ringRadius)
 		s.pl.add(label{s: "plumb foot", size: sizeLabel, ink: inkText, at: q, clear: ringRadius + 1, need: true})
 	})
@@ -130,6 +130,13 @@ func (s *scatterPlan) label() {
 		s.nameOnce(e.outline(), "95 % ellipse", pricePlumb)
 	}
 	s.plan.label()
+}
+
+// eachFoot calls do with each copy of the foot that shows.
+func (s *scatterPlan) eachFoot(do func(vg.Point)) {
+	if !s.of.NoFoot {
+		s.each(s.of.Foot, do)
+	}
 }
 
 // nameOnce keeps labels off a line and names the first copy of it that shows. It gives
@@ -185,7 +192,7 @@ func (s *scatterPlan) paint(p *pad) {
 		s.laps(e.outline(), func(line []vg.Point) { s.line(p, penEllipse, line) })
 	}
 	p.rect(s.win, penFrame)
-	s.each(s.of.Foot, func(q vg.Point) { p.ring(q, inkText) })
+	s.eachFoot(func(q vg.Point) { p.ring(q, inkText) })
 	if s.of.Median != nil {
 		s.each(*s.of.Median, p.plus)
 	}

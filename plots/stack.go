@@ -16,6 +16,7 @@ type StackChartSpec struct {
 	Axis   string    // what runs along, with its unit
 	X      []float64 // never decreasing; at least two different
 	Legs   []LegSpan // stretches of X with names, in their order
+	Named  bool      // the stretches say it all: no numbers stand along
 	Panels []PanelSpec
 }
 
@@ -125,7 +126,7 @@ const nothing = 1e-9
 func (s StackChartSpec) panels() (out []*panel, zero []string) {
 	var all []*panel
 	for _, p := range s.Panels {
-		q := &panel{title: p.Title, most: p.Most, levels: p.Levels}
+		q := &panel{title: p.Title, most: p.Most, levels: p.Levels, named: s.Named}
 		nought := true
 		for i, c := range p.Curves {
 			x := s.X

@@ -15,6 +15,8 @@ type builder struct {
 	in   model.Model
 	keys []string // of each release: its path in the file, "" for a list's row
 	rows []row    // of each release of a list: its place there
+
+	streams []*Stream // lists that are too long to be kept
 }
 
 // at gives the place of a key of an object, or of the object.

@@ -124,6 +124,8 @@ func (c *checker) value(n *node, k *key, path string) *value {
 		ok = c.wordOrQuantity(v, n, k, path)
 	case wantBound:
 		v.quantity, ok = c.bound(n, path)
+	case wantSettings:
+		ok = c.is(n, isTable, `a table such as { "habitat.spin" = "4 rpm" }`, path)
 	case wantOpen:
 		if ok = c.is(n, isTable, "a table", path); ok {
 			v.sub = c.free(n, k.free, path)

@@ -333,10 +333,18 @@ var scatter = &section{name: "a scatter", doc: "A release many times, its keys v
 		{name: "vary", want: wantOpen, free: vary, required: true, doc: "keys of the release and how each varies"},
 	}}
 
-var sweep = &section{name: "a sweep", doc: "A key stepped through a range or a list of values, or two keys through all pairs of theirs. A point that is impossible has a row without measures. Of several rows, as along a crew path or of a let-go series, a measure is the value of the greatest magnitude, of clearance the least.",
+var variantKeys = &section{name: "a variant", doc: "The scenario with some of its keys set otherwise, or another scenario file.",
 	keys: []key{
 		title(),
-		text("key", "the key that is stepped, as in --set; it must hold a number or a quantity").need(),
+		{name: "set", want: wantSettings, doc: `keys and values, as in --set: { "fixture.bench.at.height" = "1.1 m" }`},
+		text("file", "scenario file, in place of this one; settings of the command line go for it too"),
+	}}
+
+var sweep = &section{name: "a sweep", doc: "A key stepped through a range or a list of values, or two keys through all pairs of theirs, or named variants of the scenario, such as before and after. A point that is impossible has a row without measures. Of several rows, as along a crew path or of a let-go series, a measure is the value of the greatest magnitude, of clearance the least.",
+	keys: []key{
+		title(),
+		text("key", "the key that is stepped, as in --set; it must hold a number or a quantity").one("steps"),
+		tables("variants", variantKeys, "in place of a key, variants of the scenario; their landings are held against those of the first").one("steps"),
 		bound("from", "first value"), bound("to", "last value"),
 		{name: "count", want: wantInteger, span: span{low: 1, high: 1e6}, doc: "how many values, evenly spaced"},
 		{name: "values", want: wantBounds, doc: "the values, in place of from, to and count"},
@@ -346,7 +354,8 @@ var sweep = &section{name: "a sweep", doc: "A key stepped through a range or a l
 		{name: "values2", want: wantBounds, doc: "its values, in place of from2, to2 and count2"},
 		texts("measures", "what is recorded: table.column; .min or .max behind it takes that of several rows").need(),
 		texts("of", "what the measures are of: release.NAME, path.NAME or habitat; * stands for anything; or a list; a column each").or("the release or crew path that a key names, else all"),
-	}}
+	},
+	exactly: []string{"steps"}}
 
 var target = &section{name: "a target", doc: "A station, or a point of a moving person.",
 	keys: append([]key{text("path", "name of a crew path"), table("reach", reach, "the point of the person")}, station.keys...)}

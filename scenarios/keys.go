@@ -19,10 +19,11 @@ const (
 	wantTables               // a list of tables of the section, in double brackets
 
 	wantWordOrQuantity
-	wantBound   // a quantity of any dimension, or a bare number
-	wantOpen    // a table whose keys may hold points
-	wantNumbers // a list of count bare numbers
-	wantBounds  // a list of what other keys hold: texts, numbers, true or false
+	wantBound    // a quantity of any dimension, or a bare number
+	wantOpen     // a table whose keys may hold points
+	wantNumbers  // a list of count bare numbers
+	wantSettings // a table of keys of the scenario, as in --set, and their values
+	wantBounds   // a list of what other keys hold: texts, numbers, true or false
 )
 
 // span is a range of values, in SI.

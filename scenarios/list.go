@@ -14,13 +14,16 @@ import (
 	"offplumb/sim/model"
 )
 
-// MaxListSize is the largest release list that is read, bytes: half a million
-// rows.
+// MaxListSize is the largest file that is read as a whole, bytes: half a million
+// rows of a release list with tracks. Long lists without are streamed.
 const MaxListSize = 64 << 20
 
 // reading says how files that a scenario names are read.
 type reading struct {
 	read         func(path string) ([]byte, error)
+	open         func(path string) (io.ReadCloser, error) // may be called again and again
+	keep         int                                      // rows of a release list that is kept
+	brief        bool                                     // leave out lists that are longer
 	allowOutside bool
 	inputs       *[]Input
 }
@@ -56,6 +59,9 @@ func listColumn(name string) int {
 
 // list reads a release list: RFC 4180, one header row.
 func (b *builder) list(o *object, files reading) {
+	if b.long(o, files) {
+		return
+	}
 	src, ok := b.contents(o, "file", files)
 	if !ok {
 		return
@@ -68,19 +74,11 @@ func (b *builder) list(o *object, files reading) {
 
 // contents reads the file that a key names.
 func (b *builder) contents(o *object, k string, files reading) ([]byte, bool) {
-	name := o.str(k)
+	name, ok := b.fileNamed(o, k, files)
+	if !ok {
+		return nil, false
+	}
 	at, key := o.at(k), join(o.path, k)
-	if o.vals[k] == nil {
-		return nil, false
-	}
-	if name == "" || strings.ContainsFunc(name, func(r rune) bool { return !unicode.IsPrint(r) }) {
-		b.fault(at, key, "", "wants the name of a CSV file, got %q", shorten(name))
-		return nil, false
-	}
-	if !files.allowOutside && !filepath.IsLocal(filepath.FromSlash(name)) {
-		b.fault(at, key, "--allow-outside permits it", "names a file outside the scenario's folder: %q", shorten(name))
-		return nil, false
-	}
 	src, err := files.read(name)
 	if err == nil && len(src) > MaxListSize {
 		err = fmt.Errorf("is larger than %d MiB", MaxListSize>>20)
@@ -91,6 +89,24 @@ func (b *builder) contents(o *object, k string, files reading) ([]byte, bool) {
 	}
 	*files.inputs = append(*files.inputs, input(name, src))
 	return src, true
+}
+
+// fileNamed gives the name of a file that a key holds.
+func (b *builder) fileNamed(o *object, k string, files reading) (string, bool) {
+	name := o.str(k)
+	at, key := o.at(k), join(o.path, k)
+	if o.vals[k] == nil {
+		return "", false
+	}
+	if name == "" || strings.ContainsFunc(name, func(r rune) bool { return !unicode.IsPrint(r) }) {
+		b.fault(at, key, "", "wants the name of a CSV file, got %q", shorten(name))
+		return "", false
+	}
+	if !files.allowOutside && !filepath.IsLocal(filepath.FromSlash(name)) {
+		b.fault(at, key, "--allow-outside permits it", "names a file outside the scenario's folder: %q", shorten(name))
+		return "", false
+	}
+	return name, true
 }
 
 // plainly drops the system call and the path from a file error.
@@ -104,8 +120,8 @@ func plainly(err error) error {
 	}
 }
 
-// mostFaults is how many faults of a list are told: a list of half a million
-// rows may have one in every row.
+// mostFaults is how many faults of a list are told: a list of a million rows
+// may have one in every row. The others are counted.
 const mostFaults = 1000
 
 type listReader struct {
@@ -117,12 +133,14 @@ type listReader struct {
 	names  []string
 	faults int
 	taken  map[string]bool
+	known  map[string]bool // names taken elsewhere, read only
 	bodies map[string]*model.Body
 }
 
 func (l *listReader) fault(at place, hint, format string, args ...any) {
-	l.faults++
-	l.b.fault(at, "", hint, format, args...)
+	if l.faults++; l.faults <= mostFaults {
+		l.b.fault(at, "", hint, format, args...)
+	}
 }
 
 // field gives the place of a field of the record just read.
@@ -146,19 +164,31 @@ func (l *listReader) all() {
 		return
 	}
 	l.index()
+	l.rows()
+	if more := l.faults - mostFaults; more > 0 {
+		l.b.fault(l.place(len(l.src)), "", "", "%s", moreFaults(more))
+	}
+}
+
+func moreFaults(n int) string {
+	if n == 1 {
+		return "and 1 more fault"
+	}
+	return fmt.Sprintf("and %d more faults", n)
+}
+
+// rows reads the rows that are left. It gives whether it got to the end.
+func (l *listReader) rows() bool {
 	for {
 		rec, err := l.csv.Read()
 		switch {
-		case l.faults >= mostFaults && !errors.Is(err, io.EOF):
-			l.fault(l.place(int(l.csv.InputOffset())), "", "has %d faults up to here; the rest of it was not read", l.faults)
-			return
 		case errors.Is(err, io.EOF):
-			return
+			return true
 		case errors.Is(err, csv.ErrFieldCount):
 			l.wrongCount(rec)
 		case err != nil:
 			l.broken(err)
-			return
+			return false
 		default:
 			l.record(rec)
 		}

@@ -103,11 +103,13 @@ func (l *listReader) record(rec []string) {
 	case name == "":
 		l.fault(at.at("release"), "", "wants a name, got an empty field")
 		return
-	case l.taken[name]:
+	case l.taken[name] || l.known[name]:
 		l.fault(at.at("release"), "", "a release named %q is there already", shorten(name))
 		return
 	}
-	l.taken[name] = true
+	if l.taken != nil {
+		l.taken[name] = true
+	}
 	if !ok {
 		return
 	}

@@ -1,9 +1,12 @@
 package scenarios
 
 import (
+	"bytes"
+	"cmp"
 	"crypto/sha256"
 	"encoding/hex"
 	"fmt"
+	"io"
 	"path"
 	"slices"
 	"strconv"
@@ -18,6 +21,12 @@ type Options struct {
 	Sets         []string                          // settings KEY=VALUE, in order
 	ReadFile     func(path string) ([]byte, error) // reads what the scenario names; nil: nothing
 	AllowOutside bool                              // permit files outside the scenario's folder
+
+	// OpenFile opens a release list, again and again, so that a long one need
+	// not be in memory; nil: ReadFile is used. KeepRows is up to how many lines
+	// a list is kept; 0: DefaultKeepRows.
+	OpenFile func(path string) (io.ReadCloser, error)
+	KeepRows int
 }
 
 // Input is a file that a scenario was made of.
@@ -43,6 +52,7 @@ type Scenario struct {
 	Figures []*Figure // asked for
 	Asked   bool      // only those are drawn
 	Inputs  []Input   // the file itself first
+	Streams []*Stream
 
 	Question string // what is to be answered
 	Text     string // the file as it was read; empty in a variant
@@ -50,6 +60,10 @@ type Scenario struct {
 	root *node
 	read func(path string) ([]byte, error) // once each
 	open bool                              // files outside the scenario's folder are permitted
+	list func(string) (io.ReadCloser, error)
+	keep int
+	sets []string // of the command line
+	part bool     // a variant of a scenario: lists that are streamed are left out
 	keys []string
 	rows []row
 }
@@ -69,6 +83,14 @@ func Load(name string, src []byte, opt Options) (*Scenario, error) {
 	if root.kids["sweep"] != nil {
 		sc.read = remembered(sc.read)
 	}
+	sc.sets = opt.Sets
+	sc.list, sc.keep = opt.OpenFile, cmp.Or(opt.KeepRows, DefaultKeepRows)
+	if sc.list == nil {
+		sc.list = func(name string) (io.ReadCloser, error) {
+			src, err := sc.read(name)
+			return io.NopCloser(bytes.NewReader(src)), err
+		}
+	}
 	if err := sc.finish(append(errs, apply(root, opt.Sets)...)); err != nil {
 		return nil, err
 	}
@@ -86,21 +108,24 @@ func (sc *Scenario) finish(errs ErrorList) error {
 	if sc.Title == "" {
 		sc.Title = strings.TrimSuffix(path.Base(sc.Name), ".toml")
 	}
-	b.build(o, reading{read: sc.read, allowOutside: sc.open, inputs: &sc.Inputs})
+	b.build(o, reading{read: sc.read, allowOutside: sc.open, inputs: &sc.Inputs, open: sc.list, keep: sc.keep, brief: sc.part})
 	b.in.Title = sc.Title
 	if errs = append(errs, b.errs...); len(errs) > 0 {
-		return errs.sorted()
+		return append(errs, sc.scan(b, nil)...).sorted()
 	}
 	sc.keys, sc.rows = b.keys, b.rows
 	m, problems := model.New(b.in)
 	if len(problems) > 0 {
-		return sc.Problems(problems)
+		return append(sc.placed(problems), sc.scan(b, nil)...).sorted()
+	}
+	if errs = sc.scan(b, m); len(errs) > 0 {
+		return errs.sorted()
 	}
 	if m, problems = sc.expand(m, b.in); len(problems) > 0 {
 		return sc.Problems(problems)
 	}
 	sc.Model = m
-	if errs = append(sc.pick(), sc.draw()...); len(errs) > 0 {
+	if errs = append(append(sc.pick(), sc.draw()...), sc.otherFiles()...); len(errs) > 0 {
 		return errs.sorted()
 	}
 	return nil
@@ -118,7 +143,10 @@ func (sc *Scenario) expand(m *model.Model, in model.Model) (*model.Model, []mode
 		keys[i], rows[i] = sc.keys[k], sc.rows[k]
 	}
 	sc.keys, sc.rows = keys, rows
-	in.Releases = releases
+	for _, s := range sc.Streams {
+		s.After += len(releases) - len(in.Releases) // all of them are before any list
+	}
+	in.Releases, in.Limits = releases, m.Limits
 	return model.New(in)
 }
 
@@ -140,12 +168,15 @@ func studies(o *object) (out []Study) {
 
 // Problems gives the faults that later stages found their places in the file.
 func (sc *Scenario) Problems(problems []model.Problem) error {
-	var errs ErrorList
+	return sc.placed(problems).sorted()
+}
+
+func (sc *Scenario) placed(problems []model.Problem) (errs ErrorList) {
 	for _, p := range problems {
 		at, key := sc.find(p.Key)
 		errs = append(errs, at.fault(key, p.Hint, "%s", p.Msg))
 	}
-	return errs.sorted()
+	return errs
 }
 
 // find gives the place of a key such as release[2].at.height: that of its

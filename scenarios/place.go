@@ -26,6 +26,7 @@ type content struct {
 	src   []byte
 	lines []int32 // offset of each line
 	seen  spot    // where a place was last asked for
+	base  int     // lines of the file before src
 }
 
 // spot is an offset with its line, from 0, and its column, from 1.
@@ -53,7 +54,7 @@ func (c *content) place(offset int) place {
 		from = c.seen
 	}
 	c.seen = spot{offset, line, from.col + utf8.RuneCount(c.src[from.offset:offset])}
-	return place{c.file, line + 1, c.seen.col}
+	return place{c.file, c.base + line + 1, c.seen.col}
 }
 
 // placeOf gives the place of a line, from 1, and a column in bytes, from 1.

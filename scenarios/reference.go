@@ -86,6 +86,8 @@ func (k *key) holds() string {
 		return "quantity or number"
 	case wantOpen:
 		return "*" + k.free.name + "*"
+	case wantSettings:
+		return "table of settings"
 	case wantNumbers:
 		return fmt.Sprintf("list of %d numbers", k.count)
 	}

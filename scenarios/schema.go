@@ -87,6 +87,8 @@ func valueSchema(k *key) schema {
 		return boundSchema()
 	case wantOpen:
 		return objectSchema(k.free)
+	case wantSettings:
+		return schema{"type": "object"}
 	case wantNumbers:
 		return schema{"type": "array", "items": k.span.schema("number"), "minItems": k.count, "maxItems": k.count}
 	}

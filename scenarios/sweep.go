@@ -21,6 +21,10 @@ type Sweep struct {
 	Keys  []SweepKey     // one or two
 	Picks []measure.Pick // measure by measure
 
+	// Variants are the variants of the scenario, in place of what keys step
+	// through; the one key is then their name.
+	Variants []Variant
+
 	node     *node
 	path     string
 	releases map[string]bool // names, as the file declares them, that the picks are of
@@ -74,6 +78,9 @@ func (s *Sweep) At(point int) []int {
 
 // Settings gives a point as settings KEY=VALUE.
 func (s *Sweep) Settings(point int) []string {
+	if s.Variants != nil {
+		return nil
+	}
 	out := make([]string, len(s.Keys))
 	for i, k := range s.At(point) {
 		out[i] = s.Keys[i].setting(k)

@@ -18,6 +18,14 @@ func (b *builder) sweeps(root *object) (out []*Sweep) {
 		}
 		faults := len(b.errs)
 		s := &Sweep{Name: o.str("name"), node: o.node, path: o.path}
+		if o.has("variants") {
+			b.variants(root.node, o, s)
+			out = append(out, s)
+			continue
+		}
+		if !o.has("key") {
+			continue // which is told
+		}
 		s.Keys = append(s.Keys, b.swept(root.node, o, ""))
 		if o.has("key2") {
 			s.Keys = append(s.Keys, b.swept(root.node, o, "2"))
@@ -34,6 +42,9 @@ func (b *builder) sweeps(root *object) (out []*Sweep) {
 
 // many is how many values a key of a sweep takes, as far as it can be told.
 func (o *object) many(end string) float64 {
+	if n := len(o.subs("variants")); n > 0 && end == "" {
+		return float64(n)
+	}
 	if list := o.vals["values"+end]; list != nil {
 		return float64(len(list.list))
 	}

@@ -100,10 +100,12 @@ func (s *Sweep) named() (out []string) {
 // error says in a line why the point is impossible. It may be called from
 // several goroutines.
 func (sc *Scenario) Variant(s *Sweep, point int) (*study.Prepared, error) {
-	root := sc.root.copied()
-	errs := apply(root, s.Settings(point))
+	root, errs := sc.variantRoot(s, point)
+	if root == nil {
+		return nil, inLine(errs)
+	}
 	root.prune(s)
-	v := &Scenario{Name: sc.Name, root: root, read: sc.read, open: sc.open}
+	v := &Scenario{Name: sc.Name, root: root, read: sc.read, open: sc.open, list: sc.list, keep: sc.keep, part: true}
 	if err := v.finish(errs); err != nil {
 		return nil, inLine(err)
 	}
@@ -130,6 +132,9 @@ func inLine(err error) error {
 func (n *node) prune(s *Sweep) {
 	for _, table := range unswept {
 		n.drop(table)
+	}
+	if s.Variants != nil { // all landings are held against one another
+		return
 	}
 	releases := maps.Clone(s.releases)
 	n.keep("release", func(item *node) bool { return releases[item.name()] })

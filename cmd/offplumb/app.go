@@ -133,7 +133,7 @@ summary come out, with the limits of your project checked.`),
 	root.SetOut(s.out)
 	root.SetErr(s.err)
 	root.SetFlagErrorFunc(func(_ *cobra.Command, err error) error { return wrong(err) })
-	root.AddCommand(newRun(s), newCheck(s), newExamples(s), newSchema(s), newSelfcheck(s), newVersion(s))
+	root.AddCommand(newRun(s), newJoin(s), newCheck(s), newExamples(s), newSchema(s), newSelfcheck(s), newVersion(s))
 	return root
 }
 

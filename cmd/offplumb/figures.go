@@ -49,6 +49,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, turningFigures(j)...)
 	all = append(all, j.pathFigures()...)
 	all = append(all, j.studyFigures()...)
+	all = append(all, streamFigures(j)...)
 	all = append(all, scatterFigures(j)...)
 	all = append(all, sweepFigures(j)...)
 	all = append(all, mapFigures(j)...)

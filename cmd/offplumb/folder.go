@@ -22,19 +22,25 @@ type stage struct {
 	final, aside string
 	force        bool
 	foreign      bool // final holds something that is not ours
+	ours         func(dir string) bool
 }
 
 // newStage opens a folder beside the final one. It refuses a final one that
 // holds something else, unless forced.
 func newStage(final string, force bool) (*stage, error) {
+	return newStageOf(final, force, "an earlier run", ours)
+}
+
+// newStageOf is newStage for a folder of a kind that ours knows and what names.
+func newStageOf(final string, force bool, what string, ours func(dir string) bool) (*stage, error) {
 	final = filepath.Clean(final)
-	s := &stage{final: final, force: force}
-	foreign, err := holdsElse(final)
+	s := &stage{final: final, force: force, ours: ours}
+	foreign, err := s.holdsElse(final)
 	if err != nil {
 		return nil, err
 	}
 	if foreign && !force {
-		return nil, wrong(fmt.Errorf("%s holds something else than an earlier run; choose another --out or use --force", final))
+		return nil, wrong(fmt.Errorf("%s holds something else than %s; choose another --out or use --force", final, what))
 	}
 	s.foreign = foreign
 	parent := filepath.Dir(final)
@@ -52,8 +58,8 @@ func newStage(final string, force bool) (*stage, error) {
 	return s, nil
 }
 
-// holdsElse says whether a folder holds files but no run.json of ours.
-func holdsElse(dir string) (bool, error) {
+// holdsElse says whether a folder holds files but not what may be replaced.
+func (s *stage) holdsElse(dir string) (bool, error) {
 	entries, err := os.ReadDir(dir)
 	switch {
 	case errors.Is(err, fs.ErrNotExist):
@@ -66,7 +72,7 @@ func holdsElse(dir string) (bool, error) {
 	case len(entries) == 0:
 		return false, nil
 	}
-	return !ours(dir), nil
+	return !s.ours(dir), nil
 }
 
 func ours(dir string) bool {
@@ -76,6 +82,11 @@ func ours(dir string) bool {
 	}
 	var mark struct{ Program string }
 	return json.Unmarshal(src, &mark) == nil && mark.Program == programName
+}
+
+// create creates a file of the folder, to be written while the run goes on.
+func (s *stage) create(name string) (*os.File, error) {
+	return os.Create(filepath.Join(s.aside, name))
 }
 
 // file creates a file of the folder, with the folders above it, and hands it
@@ -116,7 +127,7 @@ func (s *stage) commit() error {
 // it is. It gives the place.
 func (s *stage) keepPartial() (string, error) {
 	to := s.final + ".partial"
-	if foreign, err := holdsElse(to); err != nil || foreign {
+	if foreign, err := s.holdsElse(to); err != nil || foreign {
 		s.discard()
 		return "", err
 	}

@@ -20,6 +20,7 @@ type job struct {
 	flags *runFlags
 	out   string
 
+	joined    *joined        // takes the place of what parts have computed; nil: none
 	results   []study.Result // of each release
 	paths     []pathResult   // of each crew path
 	landings  []measure.Landing
@@ -29,6 +30,9 @@ type job struct {
 	letgo     []letGoSeries
 	serial    map[string]bool      // names of the releases in them
 	spacings  [][]measure.Platform // of each spacing of platforms; nil: not asked for
+	streams   []streamResult
+	lists     *listWriter // landings and rests while they are written; nil: there is no long list
+	stage     *stage
 	sweeps    []sweepResult
 	scatters  []scatterResult
 	maps      []mapResult
@@ -93,6 +97,11 @@ func (j *job) choose() error {
 	for i := range j.model().Maps {
 		known[j.model().Maps[i].Name] = true
 	}
+	for _, s := range j.Streams {
+		for name := range s.Find(slices.DeleteFunc(slices.Clone(j.flags.only), func(name string) bool { return known[name] })) {
+			known[name] = true
+		}
+	}
 	for _, name := range j.flags.only {
 		if !known[name] {
 			return wrong(fmt.Errorf("--only: no release, crew path or study named %q", name))
@@ -101,9 +110,32 @@ func (j *job) choose() error {
 	return nil
 }
 
-// compute flies the releases and walks the paths.
-func (j *job) compute(ctx context.Context, p *progress) (err error) {
-	j.results, err = j.Run(ctx, study.Options{Workers: j.flags.jobs, Want: j.wantedRelease, Done: p.releases})
+// prepare makes room for the results.
+func (j *job) prepare() {
+	j.results = make([]study.Result, len(j.Lets))
+	j.scatters = make([]scatterResult, len(j.model().Scatters))
+	for i := range j.scatters {
+		j.scatters[i].of = &j.model().Scatters[i]
+	}
+	j.sweeps, j.streams = nil, nil
+	for _, s := range j.Streams {
+		j.streams = append(j.streams, streamResult{of: s})
+	}
+	for _, s := range j.Sweeps {
+		j.sweeps = append(j.sweeps, sweepResult{Sweep: s})
+	}
+}
+
+// compute flies the releases and runs the studies.
+func (j *job) compute(ctx context.Context, p *progress) error {
+	j.prepare()
+	var kept []int
+	for i := range j.Lets {
+		if j.wantedRelease(j.Lets[i].Release) && j.Keeps(i) {
+			kept = append(kept, i)
+		}
+	}
+	err := j.Fly(ctx, kept, j.results, study.Options{Workers: j.flags.jobs, Done: p.releases})
 	if ctx.Err() != nil {
 		return context.Cause(ctx)
 	}
@@ -113,13 +145,10 @@ func (j *job) compute(ctx context.Context, p *progress) (err error) {
 	if err := j.place(ctx); err != nil {
 		return err
 	}
-	if err := j.runScatters(ctx, p); err != nil {
+	if err := j.share(ctx, p); err != nil {
 		return err
 	}
-	if err := j.runMaps(ctx, p); err != nil {
-		return err
-	}
-	return j.runSweeps(ctx, p)
+	return j.runMaps(ctx, p)
 }
 
 // place finds the platforms.
@@ -199,7 +228,7 @@ func (j *job) judge() {
 	e.Map = func(i int) (*measure.LandMap, bool) { return j.landMap(i) }
 	e.Scatter = func(i int) (*measure.Scattered, bool) { return j.scattered(i) }
 	for i := range j.Limits {
-		if v, ok := j.Limits[i].Judge(e); ok {
+		if v, ok := j.judged(i, e); ok {
 			j.verdicts = append(j.verdicts, v)
 		} else {
 			j.unjudged = append(j.unjudged, j.Limits[i].Limit.Name)

@@ -17,6 +17,9 @@ import (
 // refuses it with its own words. One byte more is asked for to know.
 const maxScenario = 1 << 20
 
+// stdinName names standard input to people.
+const stdinName = "standard input"
+
 // placed is an error that names a place in a file.
 type placed struct{ error }
 
@@ -26,6 +29,7 @@ func (p placed) Unwrap() error { return p.error }
 type loading struct {
 	sets         []string
 	allowOutside bool
+	keepRows     int // of a release list that is not streamed; 0: the usual
 }
 
 func (l *loading) flags(cmd *cobra.Command) {
@@ -37,6 +41,8 @@ func (l *loading) flags(cmd *cobra.Command) {
 type loaded struct {
 	*scenarios.Scenario
 	*study.Prepared
+	src    []byte // of the scenario
+	origin *inputs
 }
 
 // load reads, checks and prepares a scenario; "-" is standard input.
@@ -47,18 +53,23 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 	}
 	shown := name
 	if name == "-" {
-		shown = "standard input"
+		shown = stdinName
 	}
-	folder := filepath.Dir(name)
+	files := &inputs{folder: filepath.Dir(name), stdin: stdin}
+	if name == "-" {
+		files.stdin = nil
+	}
+	return l.source(shown, src, files)
+}
+
+// source checks and prepares a scenario.
+func (l *loading) source(shown string, src []byte, files *inputs) (*loaded, error) {
 	sc, err := scenarios.Load(shown, src, scenarios.Options{
 		Sets:         l.sets,
 		AllowOutside: l.allowOutside,
-		ReadFile: func(path string) ([]byte, error) {
-			if !filepath.IsAbs(path) {
-				path = filepath.Join(folder, path)
-			}
-			return readUpTo(path, scenarios.MaxListSize+1)
-		},
+		ReadFile:     files.read,
+		OpenFile:     files.open,
+		KeepRows:     l.keepRows,
 	})
 	if err != nil {
 		return nil, wrong(placed{err})
@@ -67,7 +78,7 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 	if len(problems) > 0 {
 		return nil, wrong(placed{sc.Problems(problems)})
 	}
-	return &loaded{sc, p}, nil
+	return &loaded{sc, p, src, files}, nil
 }
 
 func readScenario(name string, stdin io.Reader) ([]byte, error) {
@@ -123,7 +134,7 @@ func newCheck(s streams) *cobra.Command {
 			}
 			m := sc.Prepared.Model
 			fmt.Fprintf(s.out, "%s: no problems: %s, %s, %s\n", args[0],
-				count(len(m.Releases), "release"), count(len(m.Paths), "crew path"), count(len(m.Limits), "limit"))
+				count(len(m.Releases)+sc.rows(), "release"), count(len(m.Paths), "crew path"), count(len(m.Limits), "limit"))
 			return nil
 		},
 	}
@@ -136,4 +147,12 @@ func count(n int, what string) string {
 		return "1 " + what
 	}
 	return fmt.Sprintf("%d %ss", n, what)
+}
+
+// rows is the number of rows of the lists that are too long to be kept.
+func (l *loaded) rows() (n int) {
+	for _, s := range l.Streams {
+		n += s.Rows
+	}
+	return n
 }

@@ -40,8 +40,8 @@ func numbers(t *testing.T, words string) (out []float64) {
 	return out
 }
 
-// told is what player k says it shows.
-func told(t *testing.T, b *tab, k int, name string) []float64 {
+// readOut is what player k says it shows.
+func readOut(t *testing.T, b *tab, k int, name string) []float64 {
 	t.Helper()
 	return numbers(t, result(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelectorAll(".film")[%d].getAttribute("data-%s")`, k, name))))
 }
@@ -147,37 +147,37 @@ func playerPlays(t *testing.T, b *tab) {
 		return result(t, b, chromedp.Evaluate[string](fmt.Sprintf(`document.querySelector(%q).textContent`, ".film "+css)))
 	}
 
-	before := told(t, b, 0, "drawn")
+	before := readOut(t, b, 0, "drawn")
 	b.do(t, press(".film-play"), chromedp.Sleep(400*time.Millisecond))
 	if words(".film-play") != "Pause" {
 		t.Errorf("playing, the button says %q", words(".film-play"))
 	}
 	b.do(t, press(".film-play"))
-	after := told(t, b, 0, "drawn")
+	after := readOut(t, b, 0, "drawn")
 	for n, name := range []string{"x on board", "y on board", "x outside"} {
 		if n := []int{0, 1, 2}[n]; before[n] == after[n] {
 			t.Errorf("played for 0.4 s, %s stays at %g", name, before[n])
 		}
 	}
-	if other := told(t, b, 1, "time")[0]; other != 0 {
+	if other := readOut(t, b, 1, "time")[0]; other != 0 {
 		t.Errorf("the second player moved to %g s", other)
 	}
 
 	// One step forward is the next multiple of the output step; two back are before it.
-	at := told(t, b, 0, "time")[0]
+	at := readOut(t, b, 0, "time")[0]
 	step := j.model().Output.Step
 	b.do(t, press(".film-forth"))
-	if got, want := told(t, b, 0, "time")[0], (math.Floor(at/step+1e-6)+1)*step; math.Abs(got-want) > 1e-9 {
+	if got, want := readOut(t, b, 0, "time")[0], (math.Floor(at/step+1e-6)+1)*step; math.Abs(got-want) > 1e-9 {
 		t.Errorf("a step from %g s leads to %g s, wants %g s", at, got, want)
 	}
 	b.do(t, press(".film-back"), press(".film-back"))
-	if got := told(t, b, 0, "time")[0]; got >= at && at > step {
+	if got := readOut(t, b, 0, "time")[0]; got >= at && at > step {
 		t.Errorf("steps back from %g s lead to %g s", at, got)
 	}
 
 	landed := func(how string) {
 		t.Helper()
-		if got := told(t, b, 0, "time")[0]; got != landing.Time {
+		if got := readOut(t, b, 0, "time")[0]; got != landing.Time {
 			t.Fatalf("%s: shows %v s, wants the landing at %v s", how, got, landing.Time)
 		}
 		if got, want := words(".film-n-offset"), fmt.Sprintf("%.3f m antispinward", -landing.Offset); got != want {
@@ -198,7 +198,7 @@ func playerPlays(t *testing.T, b *tab) {
 	landed("the key PageUp")
 	home(t, b)
 	key(t, b, "ArrowRight")
-	if got := told(t, b, 0, "time")[0]; math.Abs(got-step) > 1e-12 {
+	if got := readOut(t, b, 0, "time")[0]; math.Abs(got-step) > 1e-12 {
 		t.Errorf("an arrow leads to %g s, wants %g s", got, step)
 	}
 	if got := result(t, b, chromedp.Evaluate[string](`document.querySelector(".film-strip").getAttribute("aria-valuetext")`)); !strings.Contains(got, "flight, offset") {
@@ -221,7 +221,7 @@ func key(t *testing.T, b *tab, name string) {
 func home(t *testing.T, b *tab) {
 	t.Helper()
 	key(t, b, "Home")
-	if got := told(t, b, 0, "time")[0]; got != 0 {
+	if got := readOut(t, b, 0, "time")[0]; got != 0 {
 		t.Fatalf("the key Home leads to %g s", got)
 	}
 }
@@ -234,7 +234,7 @@ func drag(t *testing.T, b *tab) {
 	x, y := box[0]+box[2]*0.03, box[1]+box[3]*0.37
 	b.do(t, chromedp.MouseEvent(input.DispatchMouseEventTypeMousePressed, x, y, chromedp.ButtonLeft),
 		chromedp.MouseEvent(input.DispatchMouseEventTypeMouseMoved, x+box[2]/2, y, chromedp.ButtonLeft))
-	if got := told(t, b, 0, "time")[0]; got <= 0 {
+	if got := readOut(t, b, 0, "time")[0]; got <= 0 {
 		t.Error("dragging to the middle shows the release")
 	}
 	b.do(t, chromedp.MouseEvent(input.DispatchMouseEventTypeMouseMoved, box[0]+box[2]*0.999, y, chromedp.ButtonLeft),

@@ -11,6 +11,7 @@ import (
 	"strings"
 
 	"github.com/spf13/cobra"
+	"github.com/spf13/pflag"
 	"offplumb/plots"
 )
 
@@ -28,6 +29,8 @@ type runFlags struct {
 	json      bool
 	quiet     bool
 	force     bool
+	part      string
+	parted    bool // part was given
 }
 
 func newRun(s streams) *cobra.Command {
@@ -44,6 +47,7 @@ or the scenario is wrong, 3 the run could not be completed.`),
 			if err := f.check(); err != nil {
 				return err
 			}
+			f.parted = cmd.Flags().Changed("part")
 			return f.run(cmd.Context(), s, args[0])
 		},
 	}
@@ -53,6 +57,13 @@ or the scenario is wrong, 3 the run could not be completed.`),
 	fl.StringArrayVar(&f.only, "only", nil, "run this release or crew path only: its `NAME`, repeatable")
 	fl.IntVar(&f.jobs, "jobs", runtime.GOMAXPROCS(0), "how many `workers` compute at a time")
 	fl.Uint64Var(&f.seed, "seed", 1, "of the samples of scatters: a whole `number`")
+	fl.StringVar(&f.part, "part", "", "compute part `I/N` of release lists, scatters and sweeps only, for offplumb join")
+	f.writing(fl)
+	return cmd
+}
+
+// writing adds the flags that say what is written.
+func (f *runFlags) writing(fl *pflag.FlagSet) {
 	fl.BoolVar(&f.noFigures, "no-figures", false, "write no figures")
 	fl.BoolVar(&f.noReport, "no-report", false, "write no report.html")
 	fl.BoolVar(&f.open, "open", false, "open the report in the browser once it is written")
@@ -60,7 +71,6 @@ or the scenario is wrong, 3 the run could not be completed.`),
 	fl.BoolVar(&f.json, "json", false, "print the contents of run.json in place of the summary")
 	fl.BoolVar(&f.quiet, "quiet", false, "print no summary")
 	fl.BoolVar(&f.force, "force", false, "write into a folder that holds something else")
-	return cmd
 }
 
 func (f *runFlags) check() error {
@@ -91,6 +101,13 @@ func (f *runFlags) folder(scenario string) string {
 }
 
 func (f *runFlags) run(ctx context.Context, s streams, scenario string) error {
+	var part partFlag
+	if f.parted {
+		var err error
+		if part, err = readPart(f.part); err != nil {
+			return wrong(err)
+		}
+	}
 	sc, err := f.load(scenario, s.in)
 	if err != nil {
 		return err
@@ -99,7 +116,15 @@ func (f *runFlags) run(ctx context.Context, s streams, scenario string) error {
 	if err := j.choose(); err != nil {
 		return err
 	}
-	st, err := newStage(j.out, f.force)
+	if part.of > 0 {
+		return j.runPart(ctx, s, part)
+	}
+	return j.whole(ctx, s)
+}
+
+// whole does all of a run, puts it in place and tells it.
+func (j *job) whole(ctx context.Context, s streams) error {
+	st, err := newStage(j.out, j.flags.force)
 	if err != nil {
 		return err
 	}
@@ -118,6 +143,7 @@ func (f *runFlags) run(ctx context.Context, s streams, scenario string) error {
 
 // do computes and writes everything into the stage.
 func (j *job) do(ctx context.Context, s streams, st *stage) error {
+	j.stage = st
 	p := newProgress(s.err, j.flags.quiet)
 	defer p.clear()
 	runErr := j.compute(ctx, p)

@@ -32,6 +32,7 @@ type record struct {
 	Solver   solverRecord    `json:"solver"`
 	Habitat  habitatRecord   `json:"habitat"`
 	Landings []landingRecord `json:"landings"`
+	Lists    []listRecord    `json:"release_lists,omitempty"`
 	Paths    []pathRecord    `json:"crew_paths"`
 	Scatters []scatterRecord `json:"scatters,omitempty"`
 	Maps     []mapRecord     `json:"landing_maps,omitempty"`
@@ -147,6 +148,7 @@ func (j *job) runJSON(w io.Writer, complete bool) error {
 			r.Paths = append(r.Paths, pathRecord{p.plan.Path.Name, p.plan.Crew.Name, number(p.plan.Duration()), number(p.clearance.Gap)})
 		}
 	}
+	r.Lists = j.listRecords()
 	r.Scatters = j.scatterRecords()
 	r.Maps = j.mapRecords()
 	for i := range j.verdicts {
@@ -175,6 +177,10 @@ func (j *job) solver(m *model.Model) solverRecord {
 		Velocity: number(m.Solver.VelTol), MaxTime: number(m.Solver.MaxTime)}
 	for i := range j.results {
 		w := &j.results[i].Work
+		out.Steps, out.Rejected, out.Derivs = out.Steps+w.Steps, out.Rejected+w.Rejected, out.Derivs+w.Derivs
+	}
+	for i := range j.streams {
+		w := &j.streams[i].tally.work
 		out.Steps, out.Rejected, out.Derivs = out.Steps+w.Steps, out.Rejected+w.Rejected, out.Derivs+w.Derivs
 	}
 	return out

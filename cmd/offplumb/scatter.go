@@ -19,27 +19,62 @@ type scatterResult struct {
 	sum   *measure.Scattered
 }
 
-// runScatters runs the scatters that are asked for.
-func (j *job) runScatters(ctx context.Context, p *progress) error {
-	m := j.model()
-	j.scatters = make([]scatterResult, len(m.Scatters))
-	for i := range m.Scatters {
-		s := &m.Scatters[i]
-		j.scatters[i].of = s
-		if !j.wanted(s.Name) {
-			continue
+// scatterShare is the work of a scatter.
+type scatterShare struct {
+	j *job
+	*scatterResult
+	run *study.Scattering
+}
+
+func (s *scatterShare) of() (kind, name string) { return "scatter", s.scatterResult.of.Name }
+func (s *scatterShare) items() int              { return s.scatterResult.of.Samples }
+func (s *scatterShare) layout() string          { return study.Layout(measure.Shot{}) }
+
+func (s *scatterShare) options(p *progress) study.ScatterOptions {
+	return study.ScatterOptions{Workers: s.j.flags.jobs, Seed: s.j.flags.seed,
+		Done: func(done, of int) { p.tell("samples of "+s.scatterResult.of.Name, done, of) }}
+}
+
+// compute flies samples. A part cannot know whether a stated precision is
+// reached: it flies all of its range, and the join drops what a whole run would
+// not have flown.
+func (s *scatterShare) compute(ctx context.Context, r span, p *progress, out *study.Packer) (err error) {
+	if out == nil {
+		cloud, err := s.j.Scatter(ctx, s.scatterResult.of, s.options(p))
+		if err == nil {
+			s.cloud = cloud
 		}
-		cloud, err := j.Scatter(ctx, s, study.ScatterOptions{Workers: j.flags.jobs, Seed: j.flags.seed,
-			Done: func(done, of int) { p.tell("samples of "+s.Name, done, of) }})
-		if ctx.Err() != nil {
-			return context.Cause(ctx)
-		}
-		if err != nil {
-			return fmt.Errorf("scatter %q: %w", s.Name, err)
-		}
-		j.scatters[i].cloud, j.scatters[i].sum = cloud, measure.Scatter(m, cloud)
+		return err
 	}
-	return nil
+	if err := s.open(p); err != nil {
+		return err
+	}
+	if err := s.run.Fly(ctx, r.from, r.to); err != nil {
+		return err
+	}
+	return packItems(out, r, s.run.Cloud().Shot)
+}
+
+// open makes the scatter ready.
+func (s *scatterShare) open(p *progress) (err error) {
+	if s.run == nil {
+		s.run, err = s.j.Scattering(s.scatterResult.of, s.options(p))
+	}
+	return err
+}
+
+func (s *scatterShare) restore(r span, in *study.Unpacker) error {
+	if err := s.open(nil); err != nil {
+		return err
+	}
+	return takeItems(in, r, s.run.Cloud().Take)
+}
+
+func (s *scatterShare) finish() {
+	if s.cloud == nil {
+		s.cloud = s.run.Settle()
+	}
+	s.sum = measure.Scatter(s.j.model(), s.cloud)
 }
 
 // scatterTables are the tables of the scatters.

@@ -28,6 +28,9 @@ func TestScripts(t *testing.T) {
 			"status":     statusCmd,
 			"huge":       hugeCmd,
 			"samefolder": sameFolderCmd,
+			"long":       longCmd,
+			"rows":       rowsCmd,
+			"cat2":       cat2Cmd,
 		},
 	})
 }

@@ -27,6 +27,7 @@ func (j *job) summary(w io.Writer) error {
 		b.WriteString(wrapped(words, ""))
 	}
 	j.sumLandings(&b)
+	sumStreams(j, &b)
 	j.sumStories(&b)
 	j.sumPaths(&b)
 	j.sumStudies(&b)

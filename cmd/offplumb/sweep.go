@@ -8,6 +8,7 @@ import (
 	"strings"
 
 	"offplumb/scenarios"
+	"offplumb/sim/measure"
 	"offplumb/sim/study"
 	"offplumb/sim/table"
 )
@@ -18,26 +19,37 @@ type sweepResult struct {
 	points []study.Point // nil: not asked for
 }
 
-// runSweeps runs the sweeps that are asked for.
-func (j *job) runSweeps(ctx context.Context, p *progress) error {
-	for _, s := range j.Sweeps {
-		r := sweepResult{Sweep: s}
-		if !j.wanted(s.Name) {
-			j.sweeps = append(j.sweeps, r)
-			continue
-		}
-		run := study.Sweep{Points: s.Points(), Picks: s.Picks, Variant: func(i int) (*study.Prepared, error) { return j.Variant(s, i) }}
-		var err error
-		r.points, err = run.Run(ctx, study.Options{Workers: j.flags.jobs, Done: func(done, of int) { p.tell("points of "+s.Name, done, of) }})
-		j.sweeps = append(j.sweeps, r)
-		if ctx.Err() != nil {
-			return context.Cause(ctx)
-		}
-		if err != nil {
-			return fmt.Errorf("sweep %q: %w", s.Name, err)
-		}
+// sweepShare is the work of a sweep.
+type sweepShare struct {
+	j *job
+	*sweepResult
+}
+
+func (s *sweepShare) of() (kind, name string) { return "sweep", s.Name }
+func (s *sweepShare) items() int              { return s.Points() }
+func (s *sweepShare) layout() string          { return study.Layout(study.PointOutcome{}) }
+func (s *sweepShare) finish()                 {}
+
+func (s *sweepShare) compute(ctx context.Context, r span, p *progress, out *study.Packer) error {
+	s.room()
+	run := study.Sweep{Points: s.Points(), Picks: s.Picks, Landings: s.Variants != nil, Variant: func(i int) (*study.Prepared, error) { return s.j.Variant(s.Sweep, i) }}
+	opt := study.Options{Workers: s.j.flags.jobs, Done: func(done, of int) { p.tell("points of "+s.Name, done, of) }}
+	if err := run.Compute(ctx, r.from, r.to, s.points, opt); err != nil {
+		return err
 	}
-	return nil
+	return packItems(out, r, func(i int) study.PointOutcome { return s.points[i].Outcome() })
+}
+
+func (s *sweepShare) restore(r span, in *study.Unpacker) error {
+	s.room()
+	return takeItems(in, r, func(i int, o study.PointOutcome) { s.points[i] = o.Point() })
+}
+
+// room makes room for the points.
+func (s *sweepShare) room() {
+	if s.points == nil {
+		s.points = make([]study.Point, s.Points())
+	}
 }
 
 // columns are the keys, the measures and a note.
@@ -129,6 +141,10 @@ func sweepTables(j *job) []task {
 		if s.points != nil {
 			like := &table.Table{Columns: s.columns()}
 			out = append(out, lateTask(file, "sweep", s.Name, "A row for each point of a sweep.", s.table, like))
+			if s.Variants != nil {
+				file := strings.TrimSuffix(file, ".csv") + "-changes.csv"
+				out = append(out, tableTask(file, "changes", s.Name, "A row for each release and each variant behind the first: what changed.", measure.ChangeTable(s.changes())))
+			}
 		}
 	}
 	return out
@@ -138,6 +154,9 @@ func sweepTables(j *job) []task {
 func warnSweeps(j *job) {
 	for i := range j.sweeps {
 		s := &j.sweeps[i]
+		if long := j.LongLists(); s.Variants != nil && s.points != nil && len(long) > 0 {
+			j.note("sweep."+s.Name, "long release lists are left out of variants: %s", someNames(long))
+		}
 		if n, first := s.impossible(); n > 0 {
 			j.note("sweep."+s.Name, "%s of %d without measures; the first, %s: %v", count(n, "point"), len(s.points), s.Short(first), s.points[first].Fault)
 		}
@@ -157,6 +176,9 @@ func sumSweeps(j *job, b *strings.Builder) {
 			head = true
 		}
 		b.WriteString(wrapped("  "+s.sentence()+".", "    "))
+		for _, words := range s.changeWords() {
+			b.WriteString(wrapped("  "+words+".", "    "))
+		}
 	}
 }
 

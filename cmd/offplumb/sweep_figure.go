@@ -49,6 +49,9 @@ func sweepFigures(j *job) []drawing {
 
 // chart lays out the panels; false where there is nothing to draw.
 func (s *sweepResult) chart(j *job) (plots.StackChartSpec, bool) {
+	if s.Variants != nil {
+		return s.variantChart(j)
+	}
 	k := &s.Keys[0]
 	if k.Words() {
 		return plots.StackChartSpec{}, false

@@ -16,14 +16,17 @@ import (
 // task is one file to be written.
 type task struct {
 	entry
-	write func(io.Writer) error
-	table []table.Column // of a table, else nil
+	write func(io.Writer) error // nil: it is there already
+	table []table.Column        // of a table, else nil
 	title string
 }
 
 // write puts all files into the stage. After an incomplete run the tables of
 // what was finished are written, and no figures.
 func (j *job) write(ctx context.Context, st *stage, p *progress, complete bool) error {
+	if err := j.lists.end(); err != nil {
+		return err
+	}
 	tasks := j.tables()
 	if complete && !j.flags.noFigures {
 		figures, err := j.figures()
@@ -70,7 +73,9 @@ func writeAll(ctx context.Context, st *stage, tasks []task, workers int, p *prog
 				if i >= len(tasks) || stoppable && ctx.Err() != nil {
 					return
 				}
-				errs[i] = st.file(tasks[i].File, tasks[i].write)
+				if tasks[i].write != nil {
+					errs[i] = st.file(tasks[i].File, tasks[i].write)
+				}
 				tell.Lock()
 				p.tell("files", i+1, len(tasks))
 				tell.Unlock()
@@ -91,8 +96,11 @@ func writeAll(ctx context.Context, st *stage, tasks []task, workers int, p *prog
 // tables gives the CSV files.
 func (j *job) tables() []task {
 	out := []task{
-		tableTask("landings.csv", "landings", "", "A row for each release.", measure.LandingTable(j.landings)),
-		tableTask("rests.csv", "rests", "", "A row for each release: where it ends.", measure.RestTable(j.rests)),
+		tableTask(landingsFile, "landings", "", "A row for each release.", measure.LandingTable(j.landings)),
+		tableTask(restsFile, "rests", "", "A row for each release: where it ends.", measure.RestTable(j.rests)),
+	}
+	if j.lists != nil { // they are written already
+		out[0].write, out[1].write = nil, nil
 	}
 	var names table.Namer
 	for i := range j.results {

@@ -218,3 +218,25 @@ func (c *Cloud) Rows() iter.Seq[[]table.Cell] {
 		}
 	}
 }
+
+// Shot is what one sample did, to be kept elsewhere. SI units; NaN where there
+// is no value.
+type Shot struct {
+	Fate                                                 Fate
+	Offset, OffsetAxial, Deflection, Time, Speed, Energy float64
+	Spinward, Axial                                      float64
+	Surface, Through, Why                                string
+}
+
+// Shot gives a sample.
+func (c *Cloud) Shot(i int) Shot {
+	return Shot{c.Fates[i], c.Offset[i], c.OffsetAxial[i], c.Deflection[i], c.Time[i], c.Speed[i], c.Energy[i], c.Spinward[i], c.Axial[i],
+		c.words.text(c.surface[i]), c.words.text(c.through[i]), c.words.text(c.why[i])}
+}
+
+// Take puts a sample in place that Shot gave.
+func (c *Cloud) Take(i int, s Shot) {
+	c.Fates[i], c.Offset[i], c.OffsetAxial[i], c.Deflection[i] = s.Fate, s.Offset, s.OffsetAxial, s.Deflection
+	c.Time[i], c.Speed[i], c.Energy[i], c.Spinward[i], c.Axial[i] = s.Time, s.Speed, s.Energy, s.Spinward, s.Axial
+	c.surface[i], c.through[i], c.why[i] = c.words.number(s.Surface), c.words.number(s.Through), c.words.number(s.Why)
+}

@@ -32,7 +32,7 @@ func (c *Criterion) Judge(e Evidence) (Verdict, bool) {
 	found := false
 	for _, t := range c.Targets {
 		v, ok := c.one(t, e)
-		if ok && (!found || v.badness.worse(worst.badness)) {
+		if ok && (!found || v.Bad.worse(worst.Bad)) {
 			worst, found = v, true
 		}
 	}
@@ -96,7 +96,7 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 func (c *Criterion) blank(t Target) Verdict {
 	l := c.Limit
 	v := Verdict{Limit: l.Name, Of: t.String(), Measure: l.Measure, Unit: c.unit.name, Source: l.Source,
-		Value: math.NaN(), At: math.NaN(), Verdict: Held, badness: badness{over: math.Inf(-1)}}
+		Value: math.NaN(), At: math.NaN(), Verdict: Held, Bad: Badness{Over: math.Inf(-1)}}
 	v.Min, v.Max = c.unit.of(si(l.Min)), c.unit.of(si(l.Max))
 	if l.MaxAbs != nil {
 		bound := c.unit.of(l.MaxAbs.SI)
@@ -123,7 +123,7 @@ func judgeEnd[T any](c *Criterion, t Target, cols []column[T], row *T, at float6
 		v.At, v.Found = at, "as wanted"
 	}
 	if words != "" {
-		v.Verdict, v.badness, v.Found = Broken, badness{rank: 2, over: math.Inf(1)}, words
+		v.Verdict, v.Bad, v.Found = Broken, Badness{Rank: 2, Over: math.Inf(1)}, words
 	}
 	return v
 }
@@ -189,8 +189,8 @@ func series[T any](c *Criterion, t Target, cols []column[T], rows []T, time func
 			c.judge(&v, c.unit.of(x), time(&rows[i]))
 		}
 	}
-	if !v.seen {
-		v.Verdict, v.Found, v.badness = Broken, "no value", badness{rank: 2, over: math.Inf(1)}
+	if !v.Seen {
+		v.Verdict, v.Found, v.Bad = Broken, "no value", Badness{Rank: 2, Over: math.Inf(1)}
 	}
 	return v
 }
@@ -207,36 +207,36 @@ func numberColumn[T any](cols []column[T], key string, u unit) *column[T] {
 // judge holds one value (in the column's unit) against the bounds and keeps
 // it if it is the worst so far.
 func (c *Criterion) judge(v *Verdict, x, at float64) {
-	now := badness{over: over(x, v.Min, v.Max)}
+	now := Badness{Over: over(x, v.Min, v.Max)}
 	warn := over(x, c.unit.of(si(c.Limit.WarnMin)), c.unit.of(si(c.Limit.WarnMax)))
 	verdict, words := Held, ""
 	switch {
 	case math.IsNaN(x):
-		now, verdict, words = badness{rank: 2, over: math.Inf(1)}, Broken, "no value"
-	case now.over > 0:
-		now.rank, verdict = 2, Broken
+		now, verdict, words = Badness{Rank: 2, Over: math.Inf(1)}, Broken, "no value"
+	case now.Over > 0:
+		now.Rank, verdict = 2, Broken
 	case warn > 0:
-		now, verdict = badness{rank: 1, over: warn}, Near
-	case math.IsInf(now.over, -1):
-		now.over = warn
+		now, verdict = Badness{Rank: 1, Over: warn}, Near
+	case math.IsInf(now.Over, -1):
+		now.Over = warn
 	}
-	if v.seen && !now.worse(v.badness) {
+	if v.Seen && !now.worse(v.Bad) {
 		return
 	}
-	v.badness, v.Value, v.At, v.Verdict, v.Found, v.seen = now, x, at, verdict, words, true
+	v.Bad, v.Value, v.At, v.Verdict, v.Found, v.Seen = now, x, at, verdict, words, true
 }
 
-// badness orders values: by verdict, then by how far beyond the bound.
-type badness struct {
-	rank int
-	over float64
+// Badness orders verdicts: by verdict, then by how far beyond the bound.
+type Badness struct {
+	Rank int     // 0 held, 1 near, 2 broken
+	Over float64 // how far beyond its bound the value lies, in the verdict's unit
 }
 
-func (b badness) worse(than badness) bool {
-	if b.rank != than.rank {
-		return b.rank > than.rank
+func (b Badness) worse(than Badness) bool {
+	if b.Rank != than.Rank {
+		return b.Rank > than.Rank
 	}
-	return b.over > than.over
+	return b.Over > than.Over
 }
 
 // over is how far a value lies beyond its bounds, negative within; NaN stands

@@ -46,7 +46,9 @@ func Land(m *model.Model, t *flight.Track) Landing {
 	out.AllThrough = FellThrough(m, t, t.End)
 	if hit != nil {
 		out.Outcome, out.Time, out.Surface = flight.Landed, hit.Time, hit.Surface
-		out.FellThrough = FellThrough(m, t, hit.Time)
+		if out.FellThrough = out.AllThrough; hit.Time < t.End {
+			out.FellThrough = FellThrough(m, t, hit.Time)
+		}
 		out.strike(t.Body.Mass, hit)
 		out.offsets(m, t, hit)
 		out.where(m, hit.State)

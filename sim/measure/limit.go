@@ -54,8 +54,8 @@ type Verdict struct {
 	At                 float64 // s
 	Source             string
 	Found              string // in words, where the value is no number
-	badness            badness
-	seen               bool
+	Bad                Badness
+	Seen               bool // a value was held against the bounds
 }
 
 // judged is one table that limits may name.
@@ -135,13 +135,13 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	}
 	problems := c.bounds(num)
 	problems = append(problems, c.surfaces(m)...)
-	for _, of := range l.Of {
+	for k, of := range l.Of {
 		kind := t.kind
 		if c.Table == "clearance" && strings.HasPrefix(of, "path.") {
 			kind = "path" // crew paths have clearances too
 		}
 		found, msg := targets(m, of, kind)
-		if msg != "" {
+		if listed := k < len(l.Listed) && l.Listed[k] && kind == "release"; msg != "" && !listed {
 			problems = append(problems, fault("of", "%s", msg)...)
 		}
 		c.Targets = append(c.Targets, found...)
@@ -281,8 +281,14 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 
 // Matches says whether a pattern, in which * stands for anything, fits a name.
 func Matches(pattern, name string) bool {
+	if name == pattern || pattern == "*" {
+		return true
+	}
+	if !strings.Contains(pattern, "*") {
+		return false
+	}
 	ok, err := path.Match(escape(pattern), escapeName(name))
-	return name == pattern || ok && err == nil
+	return ok && err == nil
 }
 
 // escape leaves * as the only character of a pattern with a meaning, and

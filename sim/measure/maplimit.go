@@ -94,7 +94,7 @@ func (c *Criterion) landMap(t Target, l *LandMap) Verdict {
 		v.Found = "as wanted"
 	}
 	if words := c.mapWords(l); words != "" {
-		v.Verdict, v.badness, v.Found = Broken, badness{rank: 2, over: math.Inf(1)}, words
+		v.Verdict, v.Bad, v.Found = Broken, Badness{Rank: 2, Over: math.Inf(1)}, words
 	}
 	return v
 }

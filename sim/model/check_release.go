@@ -3,6 +3,7 @@ package model
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -15,22 +16,36 @@ const TouchSlack = 1e-8
 func (c *checker) releases() {
 	m := c.m
 	for i := range m.Releases {
-		r := &m.Releases[i]
-		key := fmt.Sprintf("release[%d]", i)
-		if _, ok := m.bodyIndex[r.Body]; r.Own == nil && r.Body != "" && !ok {
-			c.fault(key+".body", "", "no body named %q", r.Body)
-		}
-		if r.Carried != nil {
-			c.carried(key, r)
-			continue
-		}
-		p, err := m.Resolve(r.At)
-		if err != nil {
-			c.fault(key+".at"+r.At.key(), "", "%v", err)
-			continue
-		}
-		c.clear(key+".at", p, m.BodyOf(r).Diameter/2)
+		c.release(fmt.Sprintf("release[%d]", i), &m.Releases[i])
 	}
+}
+
+// CheckRelease checks a release that is not one of the model's, such as a row of
+// a long list. The keys of its problems are relative to it.
+func (m *Model) CheckRelease(r *Release) []Problem {
+	c := checker{m: m}
+	c.release("", r)
+	for i := range c.problems {
+		c.problems[i].Key = strings.TrimPrefix(c.problems[i].Key, ".")
+	}
+	return c.problems
+}
+
+func (c *checker) release(key string, r *Release) {
+	m := c.m
+	if _, ok := m.bodyIndex[r.Body]; r.Own == nil && r.Body != "" && !ok {
+		c.fault(key+".body", "", "no body named %q", r.Body)
+	}
+	if r.Carried != nil {
+		c.carried(key, r)
+		return
+	}
+	p, err := m.Resolve(r.At)
+	if err != nil {
+		c.fault(key+".at"+r.At.key(), "", "%v", err)
+		return
+	}
+	c.clear(key+".at", p, m.BodyOf(r).Diameter/2)
 }
 
 func (c *checker) carried(key string, r *Release) {

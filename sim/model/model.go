@@ -352,6 +352,7 @@ type Quantity struct {
 // Limit is an acceptance criterion of the user's project.
 type Limit struct {
 	Name             string
+	Listed           []bool   // of each name of Of: it stands for a row of a streamed release list
 	Of               []string // release.NAME, path.NAME, habitat; * stands for anything
 	Measure          string   // table.column, without the unit
 	Min, Max         *Quantity

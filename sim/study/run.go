@@ -37,42 +37,57 @@ type Options struct {
 // release in file order that could not be computed.
 func (p *Prepared) Run(ctx context.Context, opt Options) ([]Result, error) {
 	results := make([]Result, len(p.Lets))
-	errs := make([]error, len(p.Lets))
+	return results, p.Fly(ctx, p.which(opt.Want), results, opt)
+}
+
+// which lists the releases that are wanted.
+func (p *Prepared) which(want func(*model.Release) bool) (out []int) {
+	for i := range p.Lets {
+		if want == nil || want(p.Lets[i].Release) {
+			out = append(out, i)
+		}
+	}
+	return out
+}
+
+// Keeps says whether the track of a release is kept.
+func (p *Prepared) Keeps(release int) bool { return p.keep[release] }
+
+// Fly flies some releases and puts the result of each to its place. It stops
+// as Run does.
+func (p *Prepared) Fly(ctx context.Context, which []int, results []Result, opt Options) error {
+	errs := make([]error, len(which))
 	var next, done atomic.Int64
 	var tell sync.Mutex
-	work := func() {
+	spread(opt.Workers, func() {
 		flier := flight.NewFlier(p.Model)
 		for {
-			i := int(next.Add(1)) - 1
-			if i >= len(p.Lets) || ctx.Err() != nil {
+			k := int(next.Add(1)) - 1
+			if k >= len(which) || ctx.Err() != nil {
 				return
 			}
-			results[i], errs[i] = p.one(flier, i, opt.Want)
+			results[which[k]], errs[k] = p.one(flier, which[k])
 			n := int(done.Add(1))
 			if opt.Done != nil {
 				tell.Lock()
-				opt.Done(n, len(p.Lets))
+				opt.Done(n, len(which))
 				tell.Unlock()
 			}
 		}
-	}
-	spread(opt.Workers, work)
+	})
 	if err := ctx.Err(); err != nil {
-		return results, err
+		return err
 	}
-	for i, err := range errs {
+	for k, err := range errs {
 		if err != nil {
-			return results, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
+			return fmt.Errorf("release %q: %w", p.Lets[which[k]].Release.Name, err)
 		}
 	}
-	return results, nil
+	return nil
 }
 
-func (p *Prepared) one(flier *flight.Flier, i int, want func(*model.Release) bool) (Result, error) {
+func (p *Prepared) one(flier *flight.Flier, i int) (Result, error) {
 	let := &p.Lets[i]
-	if want != nil && !want(let.Release) {
-		return Result{}, nil
-	}
 	track, err := flier.Fly(let)
 	if err != nil {
 		return Result{}, err

@@ -24,24 +24,31 @@ type ScatterOptions struct {
 // result depends on the scenario and the seed alone. It stops early, with the
 // context's error, when the context ends.
 func (p *Prepared) Scatter(ctx context.Context, s *model.Scatter, opt ScatterOptions) (*measure.Cloud, error) {
-	at, ok := p.Model.ReleaseNamed(s.Of)
-	if !ok {
-		return nil, fmt.Errorf("no release named %q", s.Of)
+	x, err := p.Scattering(s, opt)
+	if err != nil {
+		return nil, err
 	}
-	x := &scattering{p: p, s: s, of: &p.Lets[at], opt: opt}
-	x.draw, x.side = newSampler(s, opt.Seed)
-	x.ground = measure.GroundAt(p.Model, x.of.Place.Polar, p.Model.DeckBeneath(x.of.Place.Polar))
-	x.out = measure.NewCloud(s, x.of.Place)
-	x.out.Draw = x.numbers
 	if !s.Stops() {
-		x.fly(ctx, 0, s.Samples)
-		return x.out, ctx.Err()
+		err := x.Fly(ctx, 0, s.Samples)
+		return x.out, err
 	}
-	for n := min(firstLook, s.Samples); ; n = min(n+n/4, s.Samples) {
-		x.fly(ctx, int(x.done.Load()), n)
-		if ctx.Err() != nil || n == s.Samples || x.out.Settled(p.Model, n) {
+	from := 0
+	for _, n := range looks(s.Samples) {
+		err := x.Fly(ctx, from, n)
+		if from = n; err != nil || n == s.Samples || x.out.Settled(p.Model, n) {
 			x.out.Keep(n)
-			return x.out, ctx.Err()
+			return x.out, err
+		}
+	}
+	return x.out, nil
+}
+
+// looks lists the numbers of samples after which a stated precision is looked
+// at; the last is that of all samples.
+func looks(samples int) (out []int) {
+	for n := min(firstLook, samples); ; n = min(n+n/4, samples) {
+		if out = append(out, n); n == samples {
+			return out
 		}
 	}
 }
@@ -55,8 +62,41 @@ const (
 	firstLook = 400
 )
 
-// fly flies the samples from one up to another on several workers.
-func (x *scattering) fly(ctx context.Context, from, to int) {
+// Scattering makes a scatter ready: to be flown piece by piece, or to take
+// samples that were flown elsewhere.
+func (p *Prepared) Scattering(s *model.Scatter, opt ScatterOptions) (*Scattering, error) {
+	at, ok := p.Model.ReleaseNamed(s.Of)
+	if !ok {
+		return nil, fmt.Errorf("no release named %q", s.Of)
+	}
+	x := &Scattering{p: p, s: s, of: &p.Lets[at], opt: opt}
+	x.draw, x.side = newSampler(s, opt.Seed)
+	x.ground = measure.GroundAt(p.Model, x.of.Place.Polar, p.Model.DeckBeneath(x.of.Place.Polar))
+	x.out = measure.NewCloud(s, x.of.Place)
+	x.out.Draw = x.numbers
+	return x, nil
+}
+
+// Cloud is what the samples did that were flown or taken.
+func (x *Scattering) Cloud() *measure.Cloud { return x.out }
+
+// Settle ends a scatter with all samples, or with those that its stated
+// precision takes, so that it is the same as one flown in one go.
+func (x *Scattering) Settle() *measure.Cloud {
+	if x.s.Stops() {
+		for _, n := range looks(x.s.Samples) {
+			if n == x.s.Samples || x.out.Settled(x.p.Model, n) {
+				x.out.Keep(n)
+				break
+			}
+		}
+	}
+	return x.out
+}
+
+// Fly flies the samples from one up to another on several workers. Sample i
+// depends on the scenario, the seed and i alone.
+func (x *Scattering) Fly(ctx context.Context, from, to int) error {
 	var next atomic.Int64
 	var tell sync.Mutex
 	next.Store(int64(from))
@@ -84,10 +124,11 @@ func (x *scattering) fly(ctx context.Context, from, to int) {
 		x.out.Work.Derivs += w.work.Derivs
 		tell.Unlock()
 	})
+	return ctx.Err()
 }
 
-// scattering is a scatter at work.
-type scattering struct {
+// Scattering is a scatter at work.
+type Scattering struct {
 	p      *Prepared
 	s      *model.Scatter
 	of     *flight.Let    // the release as the scenario has it
@@ -100,7 +141,7 @@ type scattering struct {
 }
 
 // numbers gives the varied numbers of a sample.
-func (x *scattering) numbers(sample int, into []float64) {
+func (x *Scattering) numbers(sample int, into []float64) {
 	for k := range into {
 		into[k] = quantile(&x.s.Vary[k], x.draw.at(sample, x.side[k]))
 	}
@@ -108,15 +149,15 @@ func (x *scattering) numbers(sample int, into []float64) {
 
 // thrower flies samples, one after another.
 type thrower struct {
-	*scattering
+	*Scattering
 	m     *model.Model
 	flier *flight.Flier
 	drawn []float64
 	work  flight.Work
 }
 
-func (x *scattering) worker() *thrower {
-	return &thrower{scattering: x, m: x.p.Model, flier: flight.NewFlier(x.p.Model), drawn: make([]float64, len(x.s.Vary))}
+func (x *Scattering) worker() *thrower {
+	return &thrower{Scattering: x, m: x.p.Model, flier: flight.NewFlier(x.p.Model), drawn: make([]float64, len(x.s.Vary))}
 }
 
 // sample flies one sample, or says why it cannot be.

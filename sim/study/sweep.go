@@ -18,6 +18,8 @@ type Sweep struct {
 	// impossible. It is called from several goroutines.
 	Variant func(point int) (*Prepared, error)
 	Picks   []measure.Pick
+	// Landings says that the landings of all releases are wanted too.
+	Landings bool
 }
 
 // Point is what one point of a sweep gave.
@@ -25,7 +27,9 @@ type Point struct {
 	Values []float64 // of each pick, SI; NaN where it has none; nil with a fault
 	Fault  error     // why the point is impossible or could not be computed
 	Spin   float64   // rad/s
-	done   bool
+	// Landings are those of all releases, where they are wanted.
+	Landings []measure.Landing
+	done     bool
 }
 
 // Finished says whether the point was computed, be it possible or not.
@@ -35,24 +39,31 @@ func (p *Point) Finished() bool { return p.done }
 // It stops early, with the context's error, when the context ends.
 func (s *Sweep) Run(ctx context.Context, opt Options) ([]Point, error) {
 	out := make([]Point, s.Points)
+	return out, s.Compute(ctx, 0, s.Points, out, opt)
+}
+
+// Compute computes the points from one up to another, as Run does, and puts
+// each to its place.
+func (s *Sweep) Compute(ctx context.Context, from, to int, out []Point, opt Options) error {
 	var next, done atomic.Int64
 	var tell sync.Mutex
-	spread(min(opt.Workers, s.Points), func() {
+	next.Store(int64(from))
+	spread(min(opt.Workers, to-from), func() {
 		for {
 			i := int(next.Add(1)) - 1
-			if i >= s.Points || ctx.Err() != nil {
+			if i >= to || ctx.Err() != nil {
 				return
 			}
 			out[i] = s.point(i)
 			n := int(done.Add(1))
 			if opt.Done != nil {
 				tell.Lock()
-				opt.Done(n, s.Points)
+				opt.Done(n, to-from)
 				tell.Unlock()
 			}
 		}
 	})
-	return out, ctx.Err()
+	return ctx.Err()
 }
 
 func (s *Sweep) point(i int) Point {
@@ -60,36 +71,39 @@ func (s *Sweep) point(i int) Point {
 	if err != nil {
 		return Point{Fault: err, done: true}
 	}
-	values, err := p.take(s.Picks)
-	return Point{Values: values, Fault: err, Spin: p.Model.Habitat.Spin, done: true}
+	values, landings, err := p.take(s.Picks, s.Landings)
+	return Point{Values: values, Landings: landings, Fault: err, Spin: p.Model.Habitat.Spin, done: true}
 }
 
-// take runs what some picks depend on and gives their numbers.
-func (p *Prepared) take(picks []measure.Pick) ([]float64, error) {
+// take runs what some picks depend on, or all, and gives their numbers, and the
+// landings if all are wanted.
+func (p *Prepared) take(picks []measure.Pick, all bool) (values []float64, landings []measure.Landing, err error) {
 	results := make([]Result, len(p.Lets))
 	flier := flight.NewFlier(p.Model)
 	for i := range p.Lets {
-		if !p.needed(picks, i) {
+		if !p.needed(picks, i, all) {
 			continue
 		}
-		var err error
-		if results[i], err = p.one(flier, i, nil); err != nil {
-			return nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
+		if results[i], err = p.one(flier, i); err != nil {
+			return nil, nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
+		}
+		if all {
+			landings = append(landings, results[i].Landing)
 		}
 	}
 	e := p.evidence(results)
-	out := make([]float64, len(picks))
+	values = make([]float64, len(picks))
 	for i := range picks {
-		out[i] = picks[i].Value(p.Model, e)
+		values[i] = picks[i].Value(p.Model, e)
 	}
-	return out, nil
+	return values, landings, nil
 }
 
 // needed says whether a release is to be flown. Where nothing past its landing
-// counts, it ends there.
-func (p *Prepared) needed(picks []measure.Pick, i int) bool {
+// counts, it ends there. All says that every landing is wanted.
+func (p *Prepared) needed(picks []measure.Pick, i int, all bool) bool {
 	let := &p.Lets[i]
-	needed, past := false, false
+	needed, past := all, false
 	p.keep[i] = false
 	for k := range picks {
 		if this, track := picks[k].NeedRelease(let.Release); this {
