@@ -135,7 +135,7 @@ func (j *job) whole(ctx context.Context, s streams) error {
 		st.discard()
 		return incomplete(fmt.Errorf("cannot put the results in place: %w", plainPath(j.out, err)))
 	}
-	if f.open {
+	if j.flags.open {
 		openReport(j.out, s.err)
 	}
 	return j.tell(s)
