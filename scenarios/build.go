@@ -84,6 +84,9 @@ func (b *builder) build(o *object, files reading) {
 	for _, s := range o.subs("scatter") {
 		b.in.Scatters = append(b.in.Scatters, b.scatter(s, files))
 	}
+	for _, t := range o.subs("throw_to") {
+		b.in.Throws = append(b.in.Throws, b.throwTo(t))
+	}
 	b.settings(o.sub("solver"), o.sub("output"))
 }
 

@@ -27,6 +27,7 @@ type Model struct {
 	Limits   []Limit
 	Spacings []Spacing
 	Scatters []Scatter
+	Throws   []ThrowTo
 	Solver   Solver
 	Output   Output
 
@@ -348,7 +349,7 @@ type Quantity struct {
 // Limit is an acceptance criterion of the user's project.
 type Limit struct {
 	Name             string
-	Of               []string // release.NAME, path.NAME, habitat; * stands for anything
+	Of               []string // release.NAME, path.NAME, study.NAME, habitat; * stands for anything
 	Measure          string   // table.column, without the unit
 	Min, Max         *Quantity
 	MaxAbs           *Quantity

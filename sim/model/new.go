@@ -42,6 +42,7 @@ func New(in Model) (*Model, []Problem) {
 	c.paths()
 	c.spacings()
 	c.scatters()
+	c.throws()
 	if len(c.problems) > 0 {
 		return nil, c.problems
 	}

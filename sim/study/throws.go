@@ -1,0 +1,322 @@
+package study
+
+import (
+	"context"
+	"fmt"
+	"math"
+	"slices"
+	"sync"
+	"sync/atomic"
+
+	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/sim/flight"
+	"offplumb/sim/frame"
+	"offplumb/sim/measure"
+	"offplumb/sim/model"
+)
+
+// Thrown is a throw that reaches a target, flown among the surfaces until it
+// arrives or touches something.
+type Thrown struct {
+	measure.Throw
+	Track *flight.Track
+}
+
+// Aimed is what was found for one target.
+type Aimed struct {
+	Distance float64 // m, of a throw table; NaN: of none
+	Target   frame.State
+	Throws   []Thrown // by the time that they take
+
+	// Of the slowest throw among those looked at, be it in the way of something
+	// or not; NaN where the time of the flight is given.
+	Least, LeastTime float64
+	// At the longest flight looked at the throws are slower yet, so that with
+	// more time they would be slower still.
+	Falling bool
+}
+
+// Throws is what a throw study found.
+type Throws struct {
+	Of      *model.ThrowTo
+	From    model.Place
+	Body    model.Body
+	Longest float64 // s, of the flights looked at
+	Slack   float64 // m, how far off the target an arrival may be
+	Aims    []Aimed // one, or one for each distance
+}
+
+// Rows are the rows of its table.
+func (t *Throws) Rows() []measure.Throw {
+	var out []measure.Throw
+	for i := range t.Aims {
+		a := &t.Aims[i]
+		for k := range a.Throws {
+			out = append(out, a.Throws[k].Throw)
+		}
+		if len(a.Throws) == 0 {
+			out = append(out, measure.NoThrow(a.Distance, a.Least, a.LeastTime))
+		}
+	}
+	return out
+}
+
+// ThrowTo solves a throw study: all throws that reach the target, flown again
+// among the surfaces. Result i belongs to target i. It stops early, with the
+// context's error, when the context ends.
+func (p *Prepared) ThrowTo(ctx context.Context, t *model.ThrowTo, opt Options) (*Throws, error) {
+	places, err := p.Model.ThrowTargets(t)
+	if err != nil {
+		return nil, err
+	}
+	from, err := p.Model.Resolve(t.From)
+	if err != nil {
+		return nil, err
+	}
+	n := max(1, len(places))
+	out := &Throws{Of: t, From: from, Body: p.Model.BodyNamed(t.Body), Longest: p.Model.LongestThrow(t), Aims: make([]Aimed, n)}
+	errs := make([]error, n)
+	var next, done atomic.Int64
+	var tell sync.Mutex
+	spread(min(opt.Workers, n), func() {
+		for {
+			i := int(next.Add(1)) - 1
+			if i >= n || ctx.Err() != nil {
+				return
+			}
+			place := model.Place{}
+			if len(places) > 0 {
+				place = places[i]
+			}
+			out.Aims[i], errs[i] = p.aimAt(ctx, t, i, place)
+			if opt.Done != nil {
+				tell.Lock()
+				opt.Done(int(done.Add(1)), n)
+				tell.Unlock()
+			}
+		}
+	})
+	if ctx.Err() != nil {
+		return nil, ctx.Err()
+	}
+	if i := slices.IndexFunc(errs, func(err error) bool { return err != nil }); i >= 0 {
+		return nil, errs[i]
+	}
+	out.Slack = p.throwSlack(from)
+	return out, nil
+}
+
+// throwSlack is how far off its target, m, a throw may be when it arrives: a
+// thousandth of a millimetre, and what the tolerance of the integration leaves
+// of the distances at hand, steps added up.
+func (p *Prepared) throwSlack(from model.Place) float64 {
+	const steps = 1000
+	return 1e-6 + steps*p.Model.Solver.RelTol*math.Max(1, from.R)
+}
+
+func (p *Prepared) aimAt(ctx context.Context, t *model.ThrowTo, i int, place model.Place) (Aimed, error) {
+	nan := math.NaN()
+	out := Aimed{Distance: nan, Least: nan, LeastTime: nan}
+	if t.Table() {
+		out.Distance = t.Distances[i]
+	}
+	a, err := p.newAim(t, place)
+	if err != nil {
+		return out, err
+	}
+	out.Target = a.target(0)
+	times, styles := a.times(ctx, t, &out)
+	for k, time := range times {
+		v, ok := a.velocity(time)
+		if !ok {
+			continue
+		}
+		thrown, err := p.fly(a, v, time)
+		if err != nil {
+			return out, fmt.Errorf("throw %d: %w", k+1, err)
+		}
+		thrown.Distance, thrown.Solution, thrown.Style = out.Distance, len(out.Throws)+1, styles[k]
+		thrown.Least, thrown.LeastTime = out.Least, out.LeastTime
+		out.Throws = append(out.Throws, thrown)
+	}
+	return out, nil
+}
+
+// times gives the times of the throws asked for, in order, and their styles.
+func (a *aim) times(ctx context.Context, t *model.ThrowTo, out *Aimed) (times []float64, styles []string) {
+	if t.Time > 0 {
+		return []float64{t.Time}, []string{a.style(t.Time)}
+	}
+	curve := a.curve(ctx, t.Speed)
+	low := valleys(curve, a.speed)
+	if n := len(curve); n > 1 {
+		out.Falling = curve[n-1].speed < curve[n-2].speed
+		low = append(low, curve[n-1])
+		for _, s := range low {
+			if !(s.speed >= out.Least) {
+				out.Least, out.LeastTime = s.speed, s.time
+			}
+		}
+		low = low[:len(low)-1]
+	}
+	if !t.Least {
+		times = crossings(curve, t.Speed, a.speed)
+		for _, time := range times {
+			styles = append(styles, a.style(time))
+		}
+		return times, styles
+	}
+	for _, s := range low {
+		times = append(times, s.time)
+		if s.time == out.LeastTime {
+			styles = append(styles, measure.Slowest)
+		} else {
+			styles = append(styles, measure.Slow)
+		}
+	}
+	return times, styles
+}
+
+// style tells a throw that, harder, would take less time from one that would
+// take more.
+func (a *aim) style(t float64) string {
+	const h = 1e-5 // of the time
+	if a.speed(t*(1+h)) > a.speed(t*(1-h)) {
+		return measure.Lobbed
+	}
+	return measure.Direct
+}
+
+const (
+	// timeRatio is between flight times looked at while they are short: the
+	// speed falls as 1/time there.
+	timeRatio = 1.02
+	// turnPieces is how many pieces of a turn of the habitat the flight times
+	// looked at are apart at most: half a degree. The speed over the time has
+	// about as many hills and valleys as the target makes turns, and a valley and
+	// a hill that lie within a degree are not told apart.
+	turnPieces = 720
+	// mostTimes bounds the flight times looked at; beyond, they lie further
+	// apart.
+	mostTimes = 200_000
+)
+
+// curve gives the speed of the throws at flight times up to the longest, so
+// close together that no hill or valley of it is passed over, from one that is
+// too short for any throw of a speed (m/s; 0: any).
+func (a *aim) curve(ctx context.Context, speed float64) []sample {
+	omega, _ := a.m.Motion.Bounds(a.let.Begin, a.let.Begin+a.longest)
+	step := 2 * math.Pi / omega / turnPieces
+	if a.finest > 0 {
+		step = math.Min(step, a.finest)
+	}
+	step = math.Max(step, a.longest/mostTimes)
+	var out []sample
+	for t := a.shortest(speed, omega); ctx.Err() == nil; t = math.Min(t*timeRatio, t+step) {
+		t = math.Min(t, a.longest)
+		out = append(out, sample{t, a.speed(t)})
+		if t >= a.longest {
+			break
+		}
+	}
+	return out
+}
+
+// shortest is a flight time, s, that is too short for any throw of a speed
+// (m/s), in a habitat that turns at a rate (rad/s); of all speeds where it is
+// 0, one at which throws are far faster than the slowest. While it flies a body
+// gets no faster, relative to the habitat, than the spin makes it on its way
+// out: v^2 grows by no more than (omega r)^2. One that comes back must be
+// turned round, at no more than the apparent acceleration.
+func (a *aim) shortest(speed, omega float64) float64 {
+	r := 2 * a.scale
+	if speed == 0 {
+		for t := a.longest; t > a.longest*1e-6; t *= 0.9 {
+			if v := r3.Norm(a.vacuum(t)); speed == 0 || v < speed {
+				speed = v
+			}
+		}
+		speed *= 10
+	}
+	gap := r3.Norm(r3.Sub(a.target(0).Pos, a.let.Local.Pos))
+	fast := math.Hypot(speed, omega*r)
+	straight := 0.5 * gap / (fast + a.fastest)
+	back := 0.1 * speed / (omega*omega*r + 2*omega*fast + a.fastest/personStep)
+	t := math.Max(straight, 0)
+	if gap < closeEnough*a.scale || t == 0 {
+		t = back
+	}
+	if math.IsInf(t, 0) || math.IsNaN(t) || t <= 0 {
+		t = a.longest * 1e-6
+	}
+	return math.Min(t, a.longest/2)
+}
+
+// fly throws a solution among the surfaces, and measures it.
+func (p *Prepared) fly(a *aim, v r3.Vec, time float64) (Thrown, error) {
+	short := *p.Model
+	short.Solver.MaxTime = time
+	r := *a.let.Release
+	r.Until = model.Until{Kind: model.UntilLanding}
+	r.Start.Kind = model.Thrown
+	r.Start.Speed, r.Start.Heading, r.Start.Elevation = measure.AimOf(v, a.let.Place.Polar)
+	let, fault := flight.Release(p.Model, &r, nil)
+	if fault.Msg != "" {
+		return Thrown{}, fmt.Errorf("%s", fault.Msg)
+	}
+	track, err := flight.NewFlier(&short).Fly(&let)
+	if err != nil {
+		return Thrown{}, err
+	}
+	out := Thrown{Throw: measure.ThrowOf(p.Model, track, a.target(time), a.target(0).Pos, time, p.throwSlack(let.Place)), Track: track}
+	a.sensitivity(&out.Throw, &r, time)
+	return out, nil
+}
+
+const (
+	// angleStep (rad) and speedStep (a share of the speed) are those of the
+	// central differences that tell how far a throw misses: their squares, a part
+	// in 1e8, are what is neglected.
+	angleStep = 1e-4
+	speedStep = 1e-4
+)
+
+// sensitivity works out how far a throw passes the target for what it is off:
+// the shift of its place at the arrival, less the part along its way there,
+// which only makes it early or late.
+func (a *aim) sensitivity(out *measure.Throw, r *model.Release, time float64) {
+	place := func(change func(*model.Start, float64), by float64) (frame.State, bool) {
+		other := *r
+		change(&other.Start, by)
+		let, fault := flight.Release(a.m, &other, nil)
+		if fault.Msg != "" {
+			return frame.State{}, false
+		}
+		s, err := a.flier.Coast(&let, time)
+		at := a.m.Motion.At(let.Begin + time)
+		return at.ToHabitat(s), err == nil
+	}
+	here, ok := place(func(*model.Start, float64) {}, 0)
+	way := r3.Sub(here.Vel, a.target(time).Vel)
+	per := func(h float64, change func(*model.Start, float64)) float64 {
+		p, ok1 := place(change, h)
+		q, ok2 := place(change, -h)
+		if !ok || !ok1 || !ok2 || h == 0 {
+			return math.NaN()
+		}
+		d := r3.Scale(1/(2*h), r3.Sub(p.Pos, q.Pos))
+		if n := r3.Norm2(way); n > 0 {
+			d = r3.Sub(d, r3.Scale(r3.Dot(d, way)/n, way))
+		}
+		return r3.Norm(d)
+	}
+	out.PerHeading = per(angleStep, func(s *model.Start, by float64) { s.Heading += by })
+	out.PerElev = per(angleStep, func(s *model.Start, by float64) { s.Elevation += by })
+	out.PerSpeed = per(speedStep*r.Start.Speed, func(s *model.Start, by float64) { s.Speed += by })
+}
+
+func sorted(times []float64) []float64 {
+	out := slices.Clone(times)
+	slices.Sort(out)
+	return out
+}
