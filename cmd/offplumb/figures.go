@@ -48,6 +48,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, j.studyFigures()...)
 	all = append(all, scatterFigures(j)...)
 	all = append(all, sweepFigures(j)...)
+	all = append(all, throwFigures(j)...)
 	return j.drawn(all), nil
 }
 

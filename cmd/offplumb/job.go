@@ -31,6 +31,7 @@ type job struct {
 	spacings  [][]measure.Platform // of each spacing of platforms; nil: not asked for
 	sweeps    []sweepResult
 	scatters  []scatterResult
+	throws    []*study.Throws // of each throw study; nil: not asked for
 	verdicts  []measure.Verdict
 	unjudged  []string
 	files     []entry
@@ -88,6 +89,9 @@ func (j *job) choose() error {
 	for i := range j.model().Scatters {
 		known[j.model().Scatters[i].Name] = true
 	}
+	for i := range j.model().Throws {
+		known[j.model().Throws[i].Name] = true
+	}
 	for _, name := range j.flags.only {
 		if !known[name] {
 			return wrong(fmt.Errorf("--only: no release, crew path or study named %q", name))
@@ -109,6 +113,9 @@ func (j *job) compute(ctx context.Context, p *progress) (err error) {
 		return err
 	}
 	if err := j.runScatters(ctx, p); err != nil {
+		return err
+	}
+	if err := j.runThrows(ctx, p); err != nil {
 		return err
 	}
 	return j.runSweeps(ctx, p)
@@ -188,6 +195,7 @@ func (j *job) judge() {
 	e.PathClearance = func(i int) ([]measure.Clearance, bool) { return j.paths[i].near, !j.paths[i].skipped }
 	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
 	e.Scatter = func(i int) (*measure.Scattered, bool) { return j.scattered(i) }
+	e.Throws = func(i int) ([]measure.Throw, bool) { return j.thrown(i) }
 	for i := range j.Limits {
 		if v, ok := j.Limits[i].Judge(e); ok {
 			j.verdicts = append(j.verdicts, v)

@@ -34,6 +34,7 @@ type record struct {
 	Landings []landingRecord `json:"landings"`
 	Paths    []pathRecord    `json:"crew_paths"`
 	Scatters []scatterRecord `json:"scatters,omitempty"`
+	Throws   []throwRecord   `json:"throws,omitempty"`
 	Limits   []limitRecord   `json:"limits"`
 	Warnings []warningRecord `json:"warnings"`
 	Caution  string          `json:"caution"`
@@ -147,6 +148,7 @@ func (j *job) runJSON(w io.Writer, complete bool) error {
 		}
 	}
 	r.Scatters = j.scatterRecords()
+	r.Throws = j.throwRecords()
 	for i := range j.verdicts {
 		v := &j.verdicts[i]
 		r.Limits = append(r.Limits, limitRecord{v.Limit, v.Of, v.Measure, number(v.Value), v.Unit, v.Verdict, v.Source})

@@ -29,6 +29,7 @@ func (j *job) summary(w io.Writer) error {
 	j.sumStudies(&b)
 	sumScatter(j, &b)
 	sumSweeps(j, &b)
+	sumThrows(j, &b)
 	j.sumLimits(&b)
 	if len(j.notes) > 0 {
 		b.WriteString("\nWarnings\n")

@@ -42,6 +42,7 @@ func (j *job) warn() {
 	}
 	warnScatters(j)
 	warnSweeps(j)
+	warnThrows(j)
 	j.warnReleases()
 	j.warnPaths()
 	if len(j.unjudged) > 0 {
@@ -50,7 +51,7 @@ func (j *job) warn() {
 }
 
 // runStudies are the kinds of studies that run.
-var runStudies = []string{"scatter", "sweep"}
+var runStudies = []string{"scatter", "sweep", "throw_to"}
 
 // idleStudies names the studies that do not run.
 func idleStudies(j *job) (out []string) {

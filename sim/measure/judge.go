@@ -17,6 +17,7 @@ type Evidence struct {
 	Clearance func(release int) ([]Clearance, bool)
 	Loads     func(path int) ([]Load, bool)
 	Scatter   func(scatter int) (*Scattered, bool)
+	Throws    func(study int) ([]Throw, bool)
 	Decks     []DeckFigure
 
 	PathClearance func(path int) ([]Clearance, bool)
@@ -70,6 +71,9 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 			return Verdict{}, false
 		}
 		return series(c, t, scatterColumns, []Scattered{*s}, func(*Scattered) float64 { return math.NaN() }), true
+	case "throws":
+		rows, ok := e.Throws(t.Index)
+		return series(c, t, throwColumns, rows, func(t *Throw) float64 { return t.Time }), ok
 	case "crew":
 		rows, ok := e.Loads(t.Index)
 		return series(c, t, crewColumns, rows, func(l *Load) float64 { return l.Time }), ok

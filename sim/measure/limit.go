@@ -40,6 +40,9 @@ func (t Target) String() string {
 	if t.Name == "" {
 		return t.Kind
 	}
+	if t.Kind == throwStudy {
+		return "study." + t.Name
+	}
 	return t.Kind + "." + t.Name
 }
 
@@ -101,6 +104,7 @@ func judgedTables() map[string]judged {
 func Criteria(m *model.Model) (out []Criterion, problems []model.Problem) {
 	tables := judgedTables()
 	tables["scatter"] = judgedTable("study", scatterColumns)
+	tables["throws"] = judgedTable(throwStudy, throwColumns)
 	for i := range m.Limits {
 		c, faults := criterion(m, &m.Limits[i], tables)
 		for _, f := range faults {
@@ -118,7 +122,7 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	c.Table, key, _ = strings.Cut(l.Measure, ".")
 	t, ok := tables[c.Table]
 	if !ok {
-		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, scatter; got %q", l.Measure)
+		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, scatter, throws; got %q", l.Measure)
 	}
 	u, num := t.nums[key]
 	if !num && !t.text[key] {
@@ -246,7 +250,10 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		return []Target{{Kind: "habitat"}}, ""
 	}
 	prefix, name, _ := strings.Cut(of, ".")
-	if prefix != "release" && prefix != "path" && (prefix != "study" || kind != "study") {
+	if prefix == "study" && kind == throwStudy {
+		prefix = kind
+	}
+	if prefix != "release" && prefix != "path" && prefix != throwStudy && (prefix != "study" || kind != "study") {
 		return nil, fmt.Sprintf("wants release.NAME, path.NAME or habitat, got %q", of)
 	}
 	if prefix != kind {
@@ -283,6 +290,11 @@ func names(m *model.Model, kind string) []string {
 	case "path":
 		for i := range m.Paths {
 			out = append(out, m.Paths[i].Name)
+		}
+		return out
+	case throwStudy:
+		for i := range m.Throws {
+			out = append(out, m.Throws[i].Name)
 		}
 		return out
 	case "study":

@@ -10,6 +10,10 @@ import (
 	"offplumb/sim/table"
 )
 
+// throwStudy is the kind of a limit's target that is a throw study. A scenario
+// names it as study.NAME.
+const throwStudy = "throw study"
+
 // The outcomes of a throw.
 const (
 	ThrowArrives = "arrives"      // at its target, having touched nothing

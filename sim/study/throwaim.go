@@ -154,8 +154,11 @@ func (a *aim) off(v r3.Vec, t float64) (r3.Vec, bool) {
 
 const (
 	// closeEnough is how near, as a share of the distances at hand (m, at least
-	// 1 m), a flight must come to the target to be a solution.
+	// 1 m), a flight must come to the target to be a solution: what the flights'
+	// own errors let Newton's method come to. It goes on to nearEnough where they
+	// are less.
 	closeEnough = 1e-9
+	nearEnough  = 1e-12
 	// tooFast is how many times as fast as in vacuum a throw may be: drag so
 	// strong stops a body within a small part of the way.
 	tooFast = 1e4
@@ -185,7 +188,7 @@ func (a *aim) solve(t float64) velocity {
 // steps halved until they gain.
 func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 	const most = 60
-	tol, cap := closeEnough*a.scale, tooFast*(1+r3.Norm(a.vacuum(t)))
+	limit := tooFast*(1+r3.Norm(a.vacuum(t)))
 	d, ok := a.off(v, t)
 	var j mat3
 	fresh := false
@@ -196,8 +199,8 @@ func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 		fresh = true
 	}
 	for i := 0; ok && i < most; i++ {
-		if r3.Norm(d) <= tol {
-			return velocity{t, v, j, true}
+		if r3.Norm(d) <= nearEnough*a.scale {
+			break
 		}
 		step := r3.Scale(-1, j.solve(d))
 		next, miss, gained := a.halved(v, d, step, t)
@@ -212,11 +215,11 @@ func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 		j.update(r3.Sub(next, v), r3.Sub(miss, d))
 		fresh = false
 		v, d = next, miss
-		if r3.Norm(v) > cap {
+		if r3.Norm(v) > limit {
 			break
 		}
 	}
-	return velocity{time: t}
+	return velocity{t, v, j, ok && r3.Norm(d) <= closeEnough*a.scale && r3.Norm(v) <= limit}
 }
 
 // halved takes a step, or as much of it as gains.

@@ -1,0 +1,3 @@
+package main
+
+func throwFigures(j *job) []drawing { return nil }
