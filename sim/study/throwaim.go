@@ -188,7 +188,7 @@ func (a *aim) solve(t float64) velocity {
 // steps halved until they gain.
 func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 	const most = 60
-	limit := tooFast*(1+r3.Norm(a.vacuum(t)))
+	limit := tooFast * (1 + r3.Norm(a.vacuum(t)))
 	d, ok := a.off(v, t)
 	var j mat3
 	fresh := false

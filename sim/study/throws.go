@@ -19,14 +19,15 @@ import (
 // arrives or touches something.
 type Thrown struct {
 	measure.Throw
-	Track *flight.Track
+	Track  *flight.Track
+	Target frame.State // when it should arrive, habitat components
 }
 
 // Aimed is what was found for one target.
 type Aimed struct {
-	Distance float64 // m, of a throw table; NaN: of none
-	Target   frame.State
-	Throws   []Thrown // by the time that they take
+	Distance float64     // m, of a throw table; NaN: of none
+	Target   frame.State // at the throw, habitat components
+	Throws   []Thrown    // by the time that they take
 
 	// Of the slowest throw among those looked at, be it in the way of something
 	// or not; NaN where the time of the flight is given.
@@ -268,7 +269,7 @@ func (p *Prepared) fly(a *aim, v r3.Vec, time float64) (Thrown, error) {
 	if err != nil {
 		return Thrown{}, err
 	}
-	out := Thrown{Throw: measure.ThrowOf(p.Model, track, a.target(time), a.target(0).Pos, time, p.throwSlack(let.Place)), Track: track}
+	out := Thrown{Throw: measure.ThrowOf(p.Model, track, a.target(time), a.target(0).Pos, time, p.throwSlack(let.Place)), Track: track, Target: a.target(time)}
 	a.sensitivity(&out.Throw, &r, time)
 	return out, nil
 }
