@@ -20,6 +20,7 @@ type ThrowCardSpec struct {
 // ThrowCardRow is a throw: a cell for each head, and where to point.
 type ThrowCardRow struct {
 	Cells []string
+	None  string  // in place of the cells but the first: why there is no throw
 	Sight float64 // rad above the deck, of the line to the target; NaN: no throw
 	Point float64 // rad, where to point, in the upright plane of that line: above the deck, beyond a right angle backward
 	Soft  bool    // something is in the way
@@ -57,9 +58,9 @@ func ThrowCard(spec ThrowCardSpec) (*Figure, error) {
 
 const (
 	cardPitch = 19.0 // pt, of rows
-	cardHead  = 34.0 // of the heads: three lines
-	cardArrow = 15.0 // length of an arrow
-	cardWide  = 40.0 // of the column of arrows
+	cardHead  = 25.0 // of the heads: two lines
+	cardArrow = 14.0 // length of an arrow
+	cardWide  = 34.0 // of the column of arrows
 	cardGap   = 5.0  // between columns
 )
 
@@ -75,33 +76,47 @@ func (c *throwCard) arrange() {
 	plan := sheetPlan{title: c.spec.Title, notes: c.spec.Notes + " " + spinStatement(c.spec.Spin), upright: true}
 	w, _ := plan.room()
 	c.sheet = plan.lay(w, cardHead+cardPitch*float64(len(c.spec.Rows)))
-	wide := c.widths()
+	wide := c.widths(w)
 	sum := cardWide
 	for _, x := range wide {
 		sum += x
 	}
-	gap := math.Max(cardGap, (w-sum)/float64(len(wide)+1)) // what is left over stands between columns
+	gap := (w - sum) / float64(len(wide)) // what is left over stands between columns
 	x := c.win.Min.X.Points()
 	for i, col := range wide {
-		x += col + gap
-		if i == 1 {
+		if i == 2 {
 			x += cardWide
 		}
+		x += col + gap
 		c.right = append(c.right, x-gap/2)
 	}
 }
 
-// widths are those of the columns: of their cells, and of their heads' words.
-func (c *throwCard) widths() []float64 {
+// widths are those of the columns: of their cells, the widest less where they do not fit
+// into the width w, pt.
+func (c *throwCard) widths(w float64) []float64 {
 	wide := make([]float64, len(c.spec.Heads))
 	c.heads = make([][]string, len(wide))
-	for i, h := range c.spec.Heads {
+	const least, lines = 26.0, 2
+	sum := cardWide
+	for i := range wide {
 		for _, r := range c.spec.Rows {
 			wide[i] = math.Max(wide[i], textWidth(clean(r.Cells[i]), sizeTick, false))
 		}
-		const least, lines = 30.0, 3
-		wide[i] = math.Min(math.Max(wide[i], least), 110)
-		c.heads[i] = wrap(clean(h), wide[i]+cardGap, sizeNote, false, lines)
+		wide[i] = math.Max(wide[i], least)
+		sum += wide[i] + cardGap
+	}
+	for ; sum > w; sum-- {
+		widest := 0
+		for i := range wide {
+			if wide[i] > wide[widest] {
+				widest = i
+			}
+		}
+		wide[widest]--
+	}
+	for i, h := range c.spec.Heads {
+		c.heads[i] = wrap(clean(h), wide[i]+cardGap-2, sizeNote, false, lines)
 	}
 	return wide
 }
@@ -129,7 +144,10 @@ func (c *throwCard) paint(p *pad) {
 			}
 			c.cell(p, i, base, clip(clean(s), c.room(i), sizeTick, false), sizeTick, ink)
 		}
-		c.arrow(p, r, base)
+		if r.None != "" {
+			p.text(text{s: clip(clean(r.None), (right-left).Points()-c.right[0], sizeTick, false), at: xy(c.right[0]+cardGap, base), size: sizeTick, ink: inkSoft})
+		}
+		c.arrow(p, r, y-cardPitch*(float64(k)+0.5))
 		if k+1 == len(c.spec.Rows) || r.Cells[0] != c.spec.Rows[k+1].Cells[0] {
 			low := vg.Length(base - 6)
 			p.line(penGrid, vg.Point{X: left, Y: low}, vg.Point{X: right, Y: low})
@@ -144,7 +162,7 @@ func (c *throwCard) room(i int) float64 {
 	if i > 0 {
 		from = c.right[i-1]
 	}
-	if i == 1 {
+	if i == 2 {
 		from += cardWide
 	}
 	return c.right[i] - from - 1
@@ -159,14 +177,16 @@ func (c *throwCard) cell(p *pad, i int, y float64, s string, size float64, ink i
 	p.text(text{s: s, at: xy(c.right[i], y), along: 1, size: size, ink: ink})
 }
 
-// arrow draws where to point.
-func (c *throwCard) arrow(p *pad, r ThrowCardRow, base float64) {
+// arrow draws where to point, about the middle of a row.
+func (c *throwCard) arrow(p *pad, r ThrowCardRow, middle float64) {
 	if math.IsNaN(r.Sight) || math.IsNaN(r.Point) {
 		return
 	}
-	o := xy(c.right[1]-cardWide/2, base-1)
+	up, down := math.Sin(r.Point), math.Sin(r.Sight)
+	rise := math.Max(math.Max(up, down), 0) + math.Min(math.Min(up, down), 0)
+	o := xy(c.right[1]+cardWide/2, middle-cardArrow*rise/2)
 	tip := o.Add(heading(r.Point).Scale(cardArrow))
-	p.line(pen{ink: inkSoft, width: 0.6, dashes: []vg.Length{2, 1.5}}, o, o.Add(heading(r.Sight).Scale(cardArrow+4)))
+	p.line(pen{ink: inkText, width: 0.6, dashes: []vg.Length{2, 1.5}}, o, o.Add(heading(r.Sight).Scale(cardArrow)))
 	p.line(pen{ink: seriesInk(0), width: 1.2}, o, o.Add(heading(r.Point).Scale(cardArrow-3)))
 	p.arrow(seriesInk(0), tip, r.Point, 6)
 	p.fill(inkText, p.circlePath(o, 1.2))

@@ -141,9 +141,13 @@ func (s *throwView) label() {
 	}
 	for i, tr := range s.tracks {
 		at := apart(lines, i)
-		s.pl.add(label{s: s.spec.Throws[i].Name, size: sizeLabel, ink: inkText, clear: 3, need: true, at: at[0], or: at[1:], key: throwPen(i)})
-		if hits := s.spec.Throws[i].Hits; hits != "" {
-			s.pl.add(label{s: hits, size: sizeNote, ink: inkText, at: s.v.pt(tr.last()), clear: crossHalf + 1.5, need: true})
+		name := clean(s.spec.Throws[i].Name)
+		if hits := clean(s.spec.Throws[i].Hits); hits != "" {
+			name += ", " + hits
+		}
+		s.pl.add(label{s: name, size: sizeLabel, ink: inkText, clear: 3, need: true, at: at[0], or: at[1:], key: throwPen(i)})
+		if s.spec.Throws[i].Hits != "" {
+			s.pl.mark(s.v.pt(tr.last()), crossHalf)
 		}
 	}
 	s.name(s.spec.From, ringRadius+1.5, anyWay, "thrown here")

@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"gonum.org/v1/gonum/spatial/r3"
@@ -121,7 +122,7 @@ func (j *job) viewTargets(spec *plots.ThrowViewSpec, s *study.Throws, on *side, 
 	default:
 		for i := range s.Aims {
 			if i == 0 || s.Of.Along == model.Spinward {
-				name := withUnit(s.Aims[i].Distance, "m")
+				name := given(s.Aims[i].Distance) + " m"
 				if s.Of.Along != model.Spinward {
 					name = "targets, one behind the other"
 				}
@@ -134,7 +135,7 @@ func (j *job) viewTargets(spec *plots.ThrowViewSpec, s *study.Throws, on *side, 
 // lineName names a throw.
 func lineName(s *study.Throws, l drawnThrow) string {
 	if s.Of.Table() {
-		return withUnit(l.aim.Distance, "m") + " " + l.Style
+		return given(l.aim.Distance) + " m " + l.Style
 	}
 	return fmt.Sprintf("%d %s", l.Solution, l.Style)
 }
@@ -146,9 +147,9 @@ func throwTitle(s *study.Throws) string {
 	case s.Of.Least:
 		return "the slowest throws that reach the target"
 	case s.Of.Table():
-		return "throws at " + withUnit(s.Of.Speed, "m/s")
+		return "throws at " + given(s.Of.Speed) + " m/s"
 	}
-	return "throws at " + withUnit(s.Of.Speed, "m/s") + " that reach the target"
+	return "throws at " + given(s.Of.Speed) + " m/s that reach the target"
 }
 
 func throwNotes(s *study.Throws, lines []drawnThrow) string {
@@ -171,7 +172,7 @@ func throwNotes(s *study.Throws, lines []drawnThrow) string {
 }
 
 // throwCardHeads are the columns of a throw table to print.
-var throwCardHeads = []string{"target", "throw", "point above deck", "above the target", "to the side", "speed", "flight", "highest", "arrives at", "1° off misses by"}
+var throwCardHeads = []string{"target", "throw", "above the deck", "above target", "to the side", "speed", "flight", "highest", "arrives at", "1° off misses"}
 
 // throwCardRows are the rows of a throw table to print.
 func throwCardRows(s *study.Throws) (out []plots.ThrowCardRow) {
@@ -180,7 +181,7 @@ func throwCardRows(s *study.Throws) (out []plots.ThrowCardRow) {
 		name := distanceShort(s.Of, a.Distance)
 		if len(a.Throws) == 0 {
 			row := plots.ThrowCardRow{Cells: make([]string, len(throwCardHeads)), Sight: math.NaN(), Point: math.NaN(), Soft: true}
-			row.Cells[0], row.Cells[1] = name, "out of reach"
+			row.Cells[0], row.None = name, noThrowShort(s, a)
 			out = append(out, row)
 		}
 		for k := range a.Throws {
@@ -190,17 +191,27 @@ func throwCardRows(s *study.Throws) (out []plots.ThrowCardRow) {
 	return out
 }
 
+// noThrowShort says in a line why a row has no throw.
+func noThrowShort(s *study.Throws, a *study.Aimed) string {
+	if s.Of.Speed > 0 && a.Least > s.Of.Speed && !math.IsInf(a.Least, 0) {
+		return "out of reach; it takes " + withUnit(a.Least, "m/s")
+	}
+	return "no throw found"
+}
+
 // distanceShort is a distance for a narrow column.
 func distanceShort(t *model.ThrowTo, d float64) string {
 	switch {
+	case d == 0:
+		return "0 m"
 	case t.Along == model.Spinward && d < 0:
-		return withUnit(-d, "m") + " antisp."
+		return given(-d) + " m antisp."
 	case t.Along == model.Spinward:
-		return withUnit(d, "m") + " spinw."
+		return given(d) + " m spinward"
 	case d < 0:
-		return withUnit(-d, "m") + " -axial"
+		return given(-d) + " m -axial"
 	}
-	return withUnit(d, "m") + " +axial"
+	return given(d) + " m +axial"
 }
 
 func throwCardRow(name string, t *measure.Throw) plots.ThrowCardRow {
@@ -209,10 +220,10 @@ func throwCardRow(name string, t *measure.Throw) plots.ThrowCardRow {
 	out.Point = math.Atan2(math.Sin(t.Elevation), math.Cos(t.Elevation)*math.Cos(t.LeadHeading))
 	above, aside := deg(t.LeadUp), "-"
 	if math.Abs(t.SightElev) > steep || math.Abs(t.LeadHeading) > math.Pi/2 {
-		above = deg(out.Point - out.Sight)
+		above = deg(frame.WrapAngle(out.Point - out.Sight))
 	}
 	if turn := math.Asin(math.Cos(t.Elevation) * math.Sin(t.LeadHeading)); math.Abs(turn) >= levelAngle {
-		aside = deg(math.Abs(turn)) + " " + strings.Replace(sideWords(t.SightHead, turn), "spinward", "sp.", 1)
+		aside = deg(math.Abs(turn)) + " " + strings.Replace(sideWords(t.SightHead, turn), "antispinward", "antisp.", 1)
 	}
 	arrives := withUnit(t.ArriveSpeed, "m/s")
 	if out.Soft {
@@ -223,9 +234,35 @@ func throwCardRow(name string, t *measure.Throw) plots.ThrowCardRow {
 	return out
 }
 
+// telling leaves out the columns, behind the first three, that say the same in
+// all rows.
+func telling(rows []plots.ThrowCardRow) (heads []string, out []plots.ThrowCardRow) {
+	out = slices.Clone(rows)
+	for i := range out {
+		out[i].Cells = nil
+	}
+	for k, head := range throwCardHeads {
+		seen := map[string]bool{}
+		for i := range rows {
+			if rows[i].None == "" {
+				seen[rows[i].Cells[k]] = true
+			}
+		}
+		if k > 2 && len(seen) < 2 && len(rows) > 1 {
+			continue
+		}
+		heads = append(heads, head)
+		for i := range out {
+			out[i].Cells = append(out[i].Cells, rows[i].Cells[k])
+		}
+	}
+	return heads, out
+}
+
 func (j *job) throwCard(s *study.Throws, rows []plots.ThrowCardRow) (*plots.Figure, error) {
 	m := j.model()
-	spec := plots.ThrowCardSpec{Title: s.Of.Name + ": where to point", Spin: m.Habitat.Spin, Rows: rows, Heads: throwCardHeads}
+	spec := plots.ThrowCardSpec{Title: s.Of.Name + ": where to point, " + throwTitle(s), Spin: m.Habitat.Spin}
+	spec.Heads, spec.Rows = telling(rows)
 	ground := measure.GroundAt(m, s.From.Polar, m.DeckBeneath(s.From.Polar))
 	spec.Notes = fmt.Sprintf("%s, from %s above %q. Distances along the deck from plumb under the thrower. Dashed: the line to the target; arrow: where to point, "+
 		"in the upright plane of that line. Grey rows hit something first. The last column: the greater of one degree too high and one degree to the side.",
