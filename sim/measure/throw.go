@@ -24,8 +24,8 @@ const (
 
 // The styles of throws.
 const (
-	Direct  = "direct"  // thrown harder, it would take less time
-	Lobbed  = "lobbed"  // thrown harder, it would take more time
+	Direct  = "direct"  // the quick way: thrown harder, it would take less time, down to none
+	Lobbed  = "lobbed"  // any other
 	Slowest = "slowest" // of all
 	Slow    = "slow"    // slower than those of a little more or less time
 )
@@ -212,7 +212,7 @@ var throwColumns = []column[Throw]{
 		return float64(t.Solution)
 	}},
 	{key: "distance", unit: metre, partly: true, meaning: "of a throw table: of the target, along its deck from plumb under the thrower", num: func(t *Throw) float64 { return t.Distance }},
-	{key: "style", meaning: "direct: thrown harder it would take less time; lobbed: more; slow: the slowest of those that take about as long; slowest: of all looked at", text: func(t *Throw) string { return t.Style }},
+	{key: "style", meaning: "direct: the quick way, thrown harder it would take less time, down to none; lobbed: any other; slow: the slowest of those that take about as long; slowest: of all looked at", text: func(t *Throw) string { return t.Style }},
 	{key: "outcome", meaning: "arrives, hits something first, lost (it leaves the habitat first), or out of reach: there is no such throw", text: func(t *Throw) string { return t.Outcome }},
 	{key: "speed", unit: speedUnit, meaning: "of the throw, relative to the habitat", num: func(t *Throw) float64 { return t.Speed }},
 	{key: "heading", unit: degree, meaning: "of the throw: 0 spinward, 90 toward +axial", num: func(t *Throw) float64 { return t.Heading }},

@@ -79,7 +79,7 @@ type Arc struct {
 
 // Angle gives the arc's angle (rad) on a circle of radius r (m).
 func (a Arc) Angle(r float64) float64 {
-	if a.IsAngle {
+	if a.IsAngle || a.Value == 0 { // on the axis too
 		return a.Value
 	}
 	return a.Value / r

@@ -146,7 +146,9 @@ func (p *Prepared) aimAt(ctx context.Context, t *model.ThrowTo, i int, place mod
 // times gives the times of the throws asked for, in order, and their styles.
 func (a *aim) times(ctx context.Context, t *model.ThrowTo, out *Aimed) (times []float64, styles []string) {
 	if t.Time > 0 {
-		return []float64{t.Time}, []string{a.style(t.Time)}
+		a.longest = t.Time
+		first := firstValley(valleys(a.curve(ctx, 0), a.speed))
+		return []float64{t.Time}, []string{a.style(t.Time, first)}
 	}
 	curve := a.curve(ctx, t.Speed)
 	low := valleys(curve, a.speed)
@@ -163,7 +165,7 @@ func (a *aim) times(ctx context.Context, t *model.ThrowTo, out *Aimed) (times []
 	if !t.Least {
 		times = crossings(curve, t.Speed, a.speed)
 		for _, time := range times {
-			styles = append(styles, a.style(time))
+			styles = append(styles, a.style(time, firstValley(low)))
 		}
 		return times, styles
 	}
@@ -178,14 +180,22 @@ func (a *aim) times(ctx context.Context, t *model.ThrowTo, out *Aimed) (times []
 	return times, styles
 }
 
-// style tells a throw that, harder, would take less time from one that would
-// take more.
-func (a *aim) style(t float64) string {
+// style tells a throw that is direct: harder, it would take less time, and so
+// down to no time at all, without a slowest one between; the first of those
+// takes the time given. The others are lobbed.
+func (a *aim) style(t, first float64) string {
 	const h = 1e-5 // of the time
-	if a.speed(t*(1+h)) > a.speed(t*(1-h)) {
+	if t > first || a.speed(t*(1+h)) > a.speed(t*(1-h)) {
 		return measure.Lobbed
 	}
 	return measure.Direct
+}
+
+func firstValley(low []sample) float64 {
+	if len(low) == 0 {
+		return math.Inf(1)
+	}
+	return low[0].time
 }
 
 const (
