@@ -27,9 +27,11 @@ type aim struct {
 	fastest float64 // m/s, bound on the target's speed relative to the habitat
 	longest float64 // s
 
-	drag  bool
-	scale float64  // m, of the places
-	last  velocity // solved last
+	drag    bool
+	most    float64  // m/s, beyond which throws are not looked for
+	scale   float64  // m, of the places
+	flights int      // of the solution under way
+	last    velocity // solved last
 }
 
 // velocity is a solution: the throw that takes a time, m/s in habitat
@@ -143,6 +145,7 @@ func (a *aim) throw(v r3.Vec) *flight.Let {
 // off is how far a throw is off the target after a time (s): inertial
 // components, m.
 func (a *aim) off(v r3.Vec, t float64) (r3.Vec, bool) {
+	a.flights++
 	s, err := a.flier.Coast(a.throw(v), t)
 	if err != nil {
 		return r3.Vec{}, false
@@ -159,14 +162,19 @@ const (
 	// are less.
 	closeEnough = 1e-9
 	nearEnough  = 1e-12
-	// tooFast is how many times as fast as in vacuum a throw may be: drag so
-	// strong stops a body within a small part of the way.
-	tooFast = 1e4
+	// tooFast is how many times the speed given, or that of the slowest throw in
+	// vacuum, is beyond all that is asked for: such throws are not looked for.
+	tooFast = 10
+	// mostFlights bounds the flights that one solution may take.
+	mostFlights = 100
 )
 
 // solve finds the throw that takes a time t (s) in air: from the one found
 // last, or from that in vacuum.
 func (a *aim) solve(t float64) velocity {
+	if r3.Norm(a.vacuum(t)) > a.most {
+		return velocity{time: t}
+	}
 	if a.last.ok && math.Abs(t-a.last.time) < 0.2*a.last.time {
 		// Over small changes of the time, the velocity in vacuum tells how it grows.
 		guess := r3.Add(a.last.v, r3.Sub(a.vacuum(t), a.vacuum(a.last.time)))
@@ -188,7 +196,7 @@ func (a *aim) solve(t float64) velocity {
 // steps halved until they gain.
 func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 	const most = 60
-	limit := tooFast * (1 + r3.Norm(a.vacuum(t)))
+	a.flights = 0
 	d, ok := a.off(v, t)
 	var j mat3
 	fresh := false
@@ -215,11 +223,11 @@ func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 		j.update(r3.Sub(next, v), r3.Sub(miss, d))
 		fresh = false
 		v, d = next, miss
-		if r3.Norm(v) > limit {
+		if r3.Norm(v) > a.most || a.flights > mostFlights {
 			break
 		}
 	}
-	return velocity{t, v, j, ok && r3.Norm(d) <= closeEnough*a.scale && r3.Norm(v) <= limit}
+	return velocity{t, v, j, ok && r3.Norm(d) <= closeEnough*a.scale && r3.Norm(v) <= a.most}
 }
 
 // halved takes a step, or as much of it as gains.
@@ -227,6 +235,9 @@ func (a *aim) halved(v, d, step r3.Vec, t float64) (next, miss r3.Vec, gained bo
 	const most = 12
 	for range most {
 		next = r3.Add(v, step)
+		if r3.Norm(next) > 2*a.most {
+			return next, d, true // too fast
+		}
 		if miss, ok := a.off(next, t); ok && r3.Norm(miss) < 0.9*r3.Norm(d) {
 			return next, miss, true
 		}

@@ -130,9 +130,9 @@ const touching = 1e-14
 // bends says whether the middle of three samples is the lowest, or the highest.
 func bends(p, q, r sample, low bool) bool {
 	if low {
-		return q.speed <= p.speed && q.speed <= r.speed
+		return q.speed < p.speed && q.speed <= r.speed
 	}
-	return q.speed >= p.speed && q.speed >= r.speed
+	return q.speed > p.speed && q.speed >= r.speed
 }
 
 // apartTimes puts times in order, and those that are one to rounding together.

@@ -223,6 +223,10 @@ func (a *aim) curve(ctx context.Context, speed float64) []sample {
 	}
 	step = math.Max(step, a.longest/mostTimes)
 	var out []sample
+	if speed == 0 {
+		speed = a.slowestInVacuum()
+	}
+	a.most = tooFast * speed
 	for t := a.shortest(speed, omega); ctx.Err() == nil; t = math.Min(t*timeRatio, t+step) {
 		t = math.Min(t, a.longest)
 		out = append(out, sample{t, a.speed(t)})
@@ -234,21 +238,12 @@ func (a *aim) curve(ctx context.Context, speed float64) []sample {
 }
 
 // shortest is a flight time, s, that is too short for any throw of a speed
-// (m/s), in a habitat that turns at a rate (rad/s); of all speeds where it is
-// 0, one at which throws are far faster than the slowest. While it flies a body
+// (m/s), in a habitat that turns at a rate (rad/s). While it flies a body
 // gets no faster, relative to the habitat, than the spin makes it on its way
 // out: v^2 grows by no more than (omega r)^2. One that comes back must be
 // turned round, at no more than the apparent acceleration.
 func (a *aim) shortest(speed, omega float64) float64 {
 	r := 2 * a.scale
-	if speed == 0 {
-		for t := a.longest; t > a.longest*1e-6; t *= 0.9 {
-			if v := r3.Norm(a.vacuum(t)); speed == 0 || v < speed {
-				speed = v
-			}
-		}
-		speed *= 10
-	}
 	gap := r3.Norm(r3.Sub(a.target(0).Pos, a.let.Local.Pos))
 	fast := math.Hypot(speed, omega*r)
 	straight := 0.5 * gap / (fast + a.fastest)
@@ -261,6 +256,17 @@ func (a *aim) shortest(speed, omega float64) float64 {
 		t = a.longest * 1e-6
 	}
 	return math.Min(t, a.longest/2)
+}
+
+// slowestInVacuum is about the speed, m/s, of the slowest throw in vacuum, and
+// not less than what the spin does to speeds on the way.
+func (a *aim) slowestInVacuum() float64 {
+	least := math.Inf(1)
+	for t := a.longest; t > a.longest*1e-6; t *= 0.9 {
+		least = math.Min(least, r3.Norm(a.vacuum(t)))
+	}
+	omega, _ := a.m.Motion.Bounds(a.let.Begin, a.let.Begin)
+	return math.Max(10*least, omega*a.scale)
 }
 
 // fly throws a solution among the surfaces, and measures it.
