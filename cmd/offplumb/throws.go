@@ -143,7 +143,11 @@ func distanceWords(t *model.ThrowTo, d float64) string {
 // noThrowWords says that nothing reaches, and what would.
 func noThrowWords(s *study.Throws, a *study.Aimed) string {
 	if math.IsNaN(a.Least) || math.IsInf(a.Least, 0) {
-		return "no throw was found that gets there."
+		words := "no throw was found that gets there"
+		if a.Most > 0 {
+			words += ", of up to " + withUnit(a.Most, "m/s") + " and within " + withUnit(math.Max(s.Longest, s.Of.Time), "s")
+		}
+		return words + "."
 	}
 	if s.Of.Least {
 		return fmt.Sprintf("no throw is slower than those that take a little more time, up to %s; one of that time takes %s.", withUnit(s.Longest, "s"), withUnit(a.Least, "m/s"))

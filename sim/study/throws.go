@@ -35,6 +35,9 @@ type Aimed struct {
 	// At the longest flight looked at the throws are slower yet, so that with
 	// more time they would be slower still.
 	Falling bool
+	// Most is the speed, m/s, beyond which no throws were looked for in air; 0: in
+	// vacuum, where there is none.
+	Most float64
 }
 
 // Throws is what a throw study found.
@@ -127,6 +130,9 @@ func (p *Prepared) aimAt(ctx context.Context, t *model.ThrowTo, i int, place mod
 	}
 	out.Target = a.target(0)
 	times, styles := a.times(ctx, t, &out)
+	if a.drag {
+		out.Most = a.most
+	}
 	for k, time := range times {
 		v, ok := a.velocity(time)
 		if !ok {
