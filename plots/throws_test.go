@@ -135,7 +135,7 @@ func TestThrowCardArrows(t *testing.T) {
 		}
 	}
 	elements(t, svg, func(e xml.StartElement, attr func(string) string, _ string) {
-		if e.Name.Local != "path" || !strings.Contains(attr("style"), "stroke:#0072B2") {
+		if e.Name.Local != "path" || attr("class") != "line-blue" {
 			return
 		}
 		var x0, y0, x1, y1 float64
