@@ -30,6 +30,7 @@ type aim struct {
 	drag    bool
 	most    float64  // m/s, beyond which throws are not looked for
 	scale   float64  // m, of the places
+	size    float64  // m, of the throw, wherever in a large habitat it is
 	flights int      // of the solution under way
 	last    velocity // solved last
 }
@@ -68,8 +69,18 @@ func (p *Prepared) newAim(t *model.ThrowTo, place model.Place) (*aim, error) {
 		a.follow(p.planOf(t.Target.Path), t)
 	}
 	a.scale = math.Max(1, math.Max(r3.Norm(a.let.Local.Pos), r3.Norm(a.target(0).Pos)))
+	a.size = math.Min(a.scale, sizes*math.Max(1, r3.Norm(r3.Sub(a.target(0).Pos, a.let.Local.Pos))))
 	return a, nil
 }
+
+// sizes is how many times as far as its target a throw may go and still be
+// solved as well as others.
+const sizes = 10
+
+// rounding is what the numbers of a place leave of it, m, a few times over.
+func (a *aim) rounding() float64 { return 16 * epsilon * a.scale }
+
+const epsilon = 2.220446049250313e-16
 
 func (p *Prepared) planOf(path string) *crew.Plan {
 	for i := range p.Plans {
@@ -156,10 +167,9 @@ func (a *aim) off(v r3.Vec, t float64) (r3.Vec, bool) {
 }
 
 const (
-	// closeEnough is how near, as a share of the distances at hand (m, at least
-	// 1 m), a flight must come to the target to be a solution: what the flights'
-	// own errors let Newton's method come to. It goes on to nearEnough where they
-	// are less.
+	// closeEnough is how near, as a share of the size of the throw, a flight must
+	// come to the target to be a solution: what the flights' own errors let
+	// Newton's method come to. It goes on to nearEnough where they are less.
 	closeEnough = 1e-9
 	nearEnough  = 1e-12
 	// tooFast is how many times the speed given, or that of the slowest throw in
@@ -207,7 +217,7 @@ func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 		fresh = true
 	}
 	for i := 0; ok && i < most; i++ {
-		if r3.Norm(d) <= nearEnough*a.scale {
+		if r3.Norm(d) <= nearEnough*a.size+a.rounding() {
 			break
 		}
 		step := r3.Scale(-1, j.solve(d))
@@ -227,7 +237,7 @@ func (a *aim) newton(t float64, v r3.Vec, jac *mat3) velocity {
 			break
 		}
 	}
-	return velocity{t, v, j, ok && r3.Norm(d) <= closeEnough*a.scale && r3.Norm(v) <= a.most}
+	return velocity{t, v, j, ok && r3.Norm(d) <= closeEnough*a.size+a.rounding() && r3.Norm(v) <= a.most}
 }
 
 // halved takes a step, or as much of it as gains.
@@ -249,7 +259,7 @@ func (a *aim) halved(v, d, step r3.Vec, t float64) (next, miss r3.Vec, gained bo
 // slopes is the derivative of the place reached by the velocity, by central
 // differences.
 func (a *aim) slopes(v r3.Vec, t float64) (j mat3, ok bool) {
-	h := slopeStep * math.Max(r3.Norm(v), a.scale/t*1e-3)
+	h := slopeStep * math.Max(r3.Norm(v), a.size/t*1e-3)
 	for k, e := range [3]r3.Vec{{X: h}, {Y: h}, {Z: h}} {
 		p, ok1 := a.off(r3.Add(v, e), t)
 		q, ok2 := a.off(r3.Sub(v, e), t)

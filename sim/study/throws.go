@@ -46,7 +46,7 @@ type Throws struct {
 	From    model.Place
 	Body    model.Body
 	Longest float64 // s, of the flights looked at
-	Slack   float64 // m, how far off the target an arrival may be
+	Slack   float64 // m, how far off the target an arrival may be, the most of all
 	Aims    []Aimed // one, or one for each distance
 }
 
@@ -106,16 +106,21 @@ func (p *Prepared) ThrowTo(ctx context.Context, t *model.ThrowTo, opt Options) (
 	if i := slices.IndexFunc(errs, func(err error) bool { return err != nil }); i >= 0 {
 		return nil, errs[i]
 	}
-	out.Slack = p.throwSlack(from)
+	for i := range out.Aims {
+		for k := range out.Aims[i].Throws {
+			t := &out.Aims[i].Throws[k]
+			out.Slack = math.Max(out.Slack, p.throwSlack(t.Speed, t.Time, from))
+		}
+	}
 	return out, nil
 }
 
-// throwSlack is how far off its target, m, a throw may be when it arrives: a
-// thousandth of a millimetre, and what the tolerance of the integration leaves
-// of the distances at hand, steps added up.
-func (p *Prepared) throwSlack(from model.Place) float64 {
-	const steps = 1000
-	return 1e-6 + steps*p.Model.Solver.RelTol*math.Max(1, from.R)
+// throwSlack is how far off its target, m, a throw of a speed (m/s) may be when
+// it arrives after a time (s): a thousandth of a millimetre, what a hundred
+// steps of the integration leave of its way, and the roundings of its place.
+func (p *Prepared) throwSlack(speed, time float64, from model.Place) float64 {
+	const steps, roundings = 100, 1000
+	return 1e-6 + steps*p.Model.Solver.RelTol*speed*time + roundings*epsilon*r3.Norm(from.Vec())
 }
 
 func (p *Prepared) aimAt(ctx context.Context, t *model.ThrowTo, i int, place model.Place) (Aimed, error) {
@@ -255,7 +260,7 @@ func (a *aim) shortest(speed, omega float64) float64 {
 	straight := 0.5 * gap / (fast + a.fastest)
 	back := 0.1 * speed / (omega*omega*r + 2*omega*fast + a.fastest/personStep)
 	t := math.Max(straight, 0)
-	if gap < closeEnough*a.scale || t == 0 {
+	if gap < closeEnough || t == 0 {
 		t = back
 	}
 	if math.IsInf(t, 0) || math.IsNaN(t) || t <= 0 {
@@ -291,7 +296,7 @@ func (p *Prepared) fly(a *aim, v r3.Vec, time float64) (Thrown, error) {
 	if err != nil {
 		return Thrown{}, err
 	}
-	out := Thrown{Throw: measure.ThrowOf(p.Model, track, a.target(time), a.target(0).Pos, time, p.throwSlack(let.Place)), Track: track, Target: a.target(time)}
+	out := Thrown{Throw: measure.ThrowOf(p.Model, track, a.target(time), a.target(0).Pos, time, p.throwSlack(r.Start.Speed, time, let.Place)), Track: track, Target: a.target(time)}
 	a.sensitivity(&out.Throw, &r, time)
 	return out, nil
 }

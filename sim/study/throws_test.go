@@ -68,3 +68,25 @@ func TestHalfTurnCatch(t *testing.T) {
 		}
 	}
 }
+
+// TestThrowInHugeHabitat: in a habitat of thousands of km a throw over a few
+// metres is solved as well as in a small one: it is the parabola of the
+// schoolbook, under a gravity of omega^2 R.
+func TestThrowInHugeHabitat(t *testing.T) {
+	const r, far, speed, gravity = 2.3e6, 3.0, 3.0, 2.5
+	spin := math.Sqrt(gravity / r)
+	in := model.Model{Habitat: model.Habitat{Room: model.Room{FloorRadius: r}, Spin: spin}}
+	out := solved(t, hall(t, in, model.ThrowTo{From: model.Station{Height: 1}, Speed: speed, Longest: 60,
+		Target: model.Target{Station: model.Station{Height: 1, Spinward: model.Arc{Value: far}}}}))
+	if out.Slack > 1e-5 || len(out.Aims[0].Throws) != 2 {
+		t.Fatalf("%d throws, slack %g m", len(out.Aims[0].Throws), out.Slack)
+	}
+	low := math.Asin(gravity*far/speed/speed) / 2
+	for i, s := range out.Aims[0].Throws {
+		want := [2]float64{low, math.Pi/2 - low}[i]
+		// The Coriolis acceleration is 2 omega v, 0.3 % of the gravity.
+		if math.Abs(s.Elevation-want) > 0.01 || s.Outcome != measure.ThrowArrives {
+			t.Errorf("throw %d: %g rad up, the parabola's is %g; %s", i, s.Elevation, want, s.Outcome)
+		}
+	}
+}
