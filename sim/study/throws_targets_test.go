@@ -2,6 +2,7 @@ package study_test
 
 import (
 	"math"
+	"math/rand/v2"
 	"testing"
 
 	"offplumb/sim/measure"
@@ -111,5 +112,44 @@ func TestThrowSensitivity(t *testing.T) {
 	}
 	if len(found) < 2 {
 		t.Errorf("%d throws", len(found))
+	}
+}
+
+// TestThrowsJustFastEnough: a little above the least speed two throws reach, one
+// before and one after the slowest, however close together; a little below it
+// none does near that time.
+func TestThrowsJustFastEnough(t *testing.T) {
+	const seed, cases = 36, 60
+	rng := rand.New(rand.NewPCG(seed, 1))
+	tried := 0
+	for i := range cases {
+		in, throw, c := randomCase(rng)
+		throw.Least = true
+		least := solved(t, hall(t, in, throw)).Aims[0]
+		turn := 2 * math.Pi / math.Abs(c.spin)
+		if least.LeastTime > 0.99*turn || least.Least < 1e-3 {
+			continue
+		}
+		tried++
+		throw.Least = false
+		for _, more := range []float64{1e-4, 1e-6, 1e-8, -1e-8} {
+			throw.Speed = least.Least * (1 + more)
+			near := []float64{}
+			for _, s := range solved(t, hall(t, in, throw)).Aims[0].Throws {
+				// The times part as the square root of the speed's excess.
+				if math.Abs(s.Time-least.LeastTime) < 10*turn*math.Sqrt(math.Abs(more)) {
+					near = append(near, s.Time)
+				}
+			}
+			switch {
+			case more < 0 && len(near) > 0:
+				t.Errorf("seed %d, case %d: below the least speed %g m/s throws take %g s", seed, i, least.Least, near)
+			case more > 0 && (len(near) != 2 || near[0] > least.LeastTime || near[1] < least.LeastTime):
+				t.Errorf("seed %d, case %d: %g above the least speed throws take %g s, the slowest %g s", seed, i, more, near, least.LeastTime)
+			}
+		}
+	}
+	if tried < cases/3 {
+		t.Errorf("only %d cases tried", tried)
 	}
 }
