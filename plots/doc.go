@@ -6,8 +6,8 @@
 // the apparent deflection of one or several; DeckPlan one deck unrolled, with landings
 // and crew paths; PathView a crew path with the person on it; LoadsChart what it does to
 // the person; StackChart any panels above one another; ScatterPlan the landings of many
-// samples of one release; MapPlan a figure of each place of a deck, in shades. Each takes
-// a spec of plain
+// samples of one release; MapPlan a figure of each place of a deck, in shades; ThrowView the
+// throws that reach a target and ThrowCard a table of where to point. Each takes a spec of plain
 // numbers, names and outlines, and refuses what cannot be drawn.
 //
 // # The language of the figures
@@ -25,6 +25,8 @@
 //   - a crew path starts at a diamond and ends with an arrowhead. The person is a thin
 //     line with a dot for the head, and a thin arrow from the feet is a force, at a scale
 //     that is stated as that of lengths is;
+//   - what a throw is to reach is a dot in a ring, and a throw that hits something first
+//     ends at a cross;
 //   - a dimension line with arrows and a value gives what the reader came for;
 //   - a chain line is a plumb line, a dashed thin one the uniform-gravity path;
 //   - things are named where they stand, not in a legend, and no name lies on another;

@@ -90,6 +90,9 @@ func (b *builder) build(o *object, files reading) {
 	for _, l := range o.subs("landing_map") {
 		b.in.Maps = append(b.in.Maps, b.landingMap(l))
 	}
+	for _, t := range o.subs("throw_to") {
+		b.in.Throws = append(b.in.Throws, b.throwTo(t))
+	}
 	b.settings(o.sub("solver"), o.sub("output"))
 }
 

@@ -336,8 +336,8 @@ step = "1 m"
 cell = "1 m"
 [[throw_to]]
 name = "t"
-from = {}
-target = {}
+from = { height = "1 m" }
+target = { spinward = "1 m" }
 least_speed = true
 `
 	sc, err := scenarios.Load("dir/my ring.toml", []byte(src), scenarios.Options{})

@@ -277,7 +277,7 @@ var crewPath = &section{name: "a crew path", doc: "A person's motion through sta
 var limit = &section{name: "a limit", doc: "An acceptance criterion of the project.",
 	keys: []key{
 		title(),
-		texts("of", "release.NAME, path.NAME, study.NAME (of a scatter or a landing map) or habitat; * stands for anything; or a list").need(),
+		texts("of", "release.NAME, path.NAME, study.NAME (of a scatter, a landing map or a throw study) or habitat; * stands for anything; or a list").need(),
 		text("measure", "table.column, without the unit").need(),
 		bound("min", "least value"),
 		bound("max", "greatest value"),
@@ -360,15 +360,28 @@ var sweep = &section{name: "a sweep", doc: "A key stepped through a range or a l
 var target = &section{name: "a target", doc: "A station, or a point of a moving person.",
 	keys: append([]key{text("path", "name of a crew path"), table("reach", reach, "the point of the person")}, station.keys...)}
 
-var throwTo = &section{name: "a throw study", doc: "How to throw so as to reach a target.",
+var distanceRange = &section{name: "a range of distances", doc: "Evenly spaced distances.",
+	keys: []key{
+		qty("from", length, anything, "first distance").need(),
+		qty("to", length, anything, "last distance").need(),
+		{name: "count", want: wantInteger, span: span{low: 1, high: maxDistances}, required: true, doc: "how many"},
+	}}
+
+var throwTo = &section{name: "a throw study", doc: "How to throw so as to reach a target: a station, or a point of a person under way, where that is when the throw arrives.",
 	keys: []key{
 		title(),
 		table("from", station, "where it is thrown from").need(),
 		text("body", "name of the body").or("a point, without drag"),
 		table("target", target, "where it is to go").need(),
-		qty("speed", speed, positive, "of the throw").one("throw"),
-		qty("time", duration, positive, "of the flight").one("throw"),
-		flag("least_speed", "the slowest throw").one("throw"),
+		qty("speed", speed, positive, "of the throw, relative to the habitat: all directions that reach are found").one("throw"),
+		qty("time", duration, positive, "of the flight: its velocity is found").one("throw"),
+		flag("least_speed", "the slowest throws: each that is slower than those of a little more or less time").one("throw"),
+		qty("leaves", duration, notNegative, "when it is thrown").or(`"0 s"`),
+		qty("longest", duration, positive, "of the flights that are looked at").or("one turn of the habitat; never more than max_time"),
+		{name: "distances", want: wantList, dims: []*dimension{length}, span: anything, group: "table",
+			doc: "a throw table: targets at these distances along the target's deck from plumb under the thrower, negative ones the other way"},
+		table("range", distanceRange, "a throw table: evenly spaced distances").one("table"),
+		word("along", `"spinward"`, "the way that distances are counted", "spinward", "axial"),
 	},
 	exactly: []string{"throw"}}
 

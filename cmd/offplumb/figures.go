@@ -53,6 +53,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, scatterFigures(j)...)
 	all = append(all, sweepFigures(j)...)
 	all = append(all, mapFigures(j)...)
+	all = append(all, throwFigures(j)...)
 	all = append(all, j.askedFigures()...)
 	return j.withFilms(j.drawn(all)), nil
 }

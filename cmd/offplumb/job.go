@@ -36,6 +36,7 @@ type job struct {
 	sweeps    []sweepResult
 	scatters  []scatterResult
 	maps      []mapResult
+	throws    []*study.Throws // of each throw study; nil: not asked for
 	verdicts  []measure.Verdict
 	unjudged  []string
 	files     []entry
@@ -97,6 +98,9 @@ func (j *job) choose() error {
 	for i := range j.model().Maps {
 		known[j.model().Maps[i].Name] = true
 	}
+	for i := range j.model().Throws {
+		known[j.model().Throws[i].Name] = true
+	}
 	for _, s := range j.Streams {
 		for name := range s.Find(slices.DeleteFunc(slices.Clone(j.flags.only), func(name string) bool { return known[name] })) {
 			known[name] = true
@@ -146,6 +150,9 @@ func (j *job) compute(ctx context.Context, p *progress) error {
 		return err
 	}
 	if err := j.share(ctx, p); err != nil {
+		return err
+	}
+	if err := j.runThrows(ctx, p); err != nil {
 		return err
 	}
 	return j.runMaps(ctx, p)
@@ -227,6 +234,7 @@ func (j *job) judge() {
 	e.Loads = func(i int) ([]measure.Load, bool) { return j.paths[i].loads, !j.paths[i].skipped }
 	e.Map = func(i int) (*measure.LandMap, bool) { return j.landMap(i) }
 	e.Scatter = func(i int) (*measure.Scattered, bool) { return j.scattered(i) }
+	e.Throws = func(i int) ([]measure.Throw, bool) { return j.thrown(i) }
 	for i := range j.Limits {
 		if v, ok := j.judged(i, e); ok {
 			j.verdicts = append(j.verdicts, v)

@@ -36,6 +36,7 @@ type record struct {
 	Paths    []pathRecord    `json:"crew_paths"`
 	Scatters []scatterRecord `json:"scatters,omitempty"`
 	Maps     []mapRecord     `json:"landing_maps,omitempty"`
+	Throws   []throwRecord   `json:"throws,omitempty"`
 	Limits   []limitRecord   `json:"limits"`
 	Warnings []warningRecord `json:"warnings"`
 	Caution  string          `json:"caution"`
@@ -151,6 +152,7 @@ func (j *job) runJSON(w io.Writer, complete bool) error {
 	r.Lists = j.listRecords()
 	r.Scatters = j.scatterRecords()
 	r.Maps = j.mapRecords()
+	r.Throws = j.throwRecords()
 	for i := range j.verdicts {
 		v := &j.verdicts[i]
 		r.Limits = append(r.Limits, limitRecord{v.Limit, v.Of, v.Measure, number(v.Value), v.Unit, v.Verdict, v.Source})

@@ -34,6 +34,7 @@ func (j *job) summary(w io.Writer) error {
 	sumScatter(j, &b)
 	sumSweeps(j, &b)
 	sumMaps(j, &b)
+	sumThrows(j, &b)
 	j.sumLimits(&b)
 	if len(j.notes) > 0 {
 		b.WriteString("\nWarnings\n")

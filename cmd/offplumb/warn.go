@@ -47,6 +47,7 @@ func (j *job) warn() {
 	warnScatters(j)
 	warnSweeps(j)
 	warnMaps(j)
+	warnThrows(j)
 	j.warnReleases()
 	j.warnPaths()
 	if len(j.unjudged) > 0 {
@@ -55,7 +56,7 @@ func (j *job) warn() {
 }
 
 // runStudies are the kinds of studies that run.
-var runStudies = []string{"scatter", "sweep", "landing_map"}
+var runStudies = []string{"scatter", "sweep", "throw_to", "landing_map"}
 
 // idleStudies names the studies that do not run.
 func idleStudies(j *job) (out []string) {

@@ -137,6 +137,7 @@ func (j *job) tables() []task {
 	out = append(out, scatterTables(j)...)
 	out = append(out, sweepTables(j)...)
 	out = append(out, mapTables(j)...)
+	out = append(out, throwTables(j)...)
 	if len(j.Limits) > 0 {
 		out = append(out, tableTask("limits.csv", "limits", "", "A row for each limit.", measure.LimitTable(j.verdicts)))
 	}

@@ -18,6 +18,7 @@ type Evidence struct {
 	Loads     func(path int) ([]Load, bool)
 	Scatter   func(scatter int) (*Scattered, bool)
 	Map       func(landingMap int) (*LandMap, bool)
+	Throws    func(study int) ([]Throw, bool)
 	Decks     []DeckFigure
 
 	PathClearance func(path int) ([]Clearance, bool)
@@ -78,6 +79,9 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 			return Verdict{}, false
 		}
 		return c.landMap(t, l), true
+	case "throws":
+		rows, ok := e.Throws(t.Index)
+		return series(c, t, throwColumns, rows, func(t *Throw) float64 { return t.Time }), ok
 	case "crew":
 		rows, ok := e.Loads(t.Index)
 		return series(c, t, crewColumns, rows, func(l *Load) float64 { return l.Time }), ok

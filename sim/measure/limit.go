@@ -40,7 +40,7 @@ func (t Target) String() string {
 	if t.Name == "" {
 		return t.Kind
 	}
-	if t.Kind == "map" {
+	if t.Kind == "map" || t.Kind == throwStudy {
 		return "study." + t.Name
 	}
 	return t.Kind + "." + t.Name
@@ -106,6 +106,7 @@ func Criteria(m *model.Model) (out []Criterion, problems []model.Problem) {
 	tables := judgedTables()
 	tables["scatter"] = judgedTable("study", scatterColumns)
 	tables["maps"] = judgedMaps(m)
+	tables["throws"] = judgedTable(throwStudy, throwColumns)
 	for i := range m.Limits {
 		c, faults := criterion(m, &m.Limits[i], tables)
 		for _, f := range faults {
@@ -123,7 +124,7 @@ func criterion(m *model.Model, l *model.Limit, tables map[string]judged) (Criter
 	c.Table, key, _ = strings.Cut(l.Measure, ".")
 	t, ok := tables[c.Table]
 	if !ok {
-		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, spin, scatter, maps; got %q", l.Measure)
+		return c, fault("measure", "wants table.column, the table one of landings, rests, tracks, impacts, clearance, crew, decks, habitat, spin, scatter, maps, throws; got %q", l.Measure)
 	}
 	u, num := t.nums[key]
 	if !num && !t.text[key] {
@@ -254,7 +255,7 @@ func targets(m *model.Model, of, kind string) ([]Target, string) {
 		return []Target{{Kind: "habitat"}}, ""
 	}
 	prefix, name, _ := strings.Cut(of, ".")
-	if kind == "map" && prefix == "study" {
+	if prefix == "study" && (kind == "map" || kind == throwStudy) {
 		prefix = kind
 	}
 	if prefix != "release" && prefix != kind && prefix != "path" && (prefix != "study" || kind != "study") {
@@ -311,6 +312,11 @@ func names(m *model.Model, kind string) []string {
 	case "map":
 		for i := range m.Maps {
 			out = append(out, m.Maps[i].Name)
+		}
+		return out
+	case throwStudy:
+		for i := range m.Throws {
+			out = append(out, m.Throws[i].Name)
 		}
 		return out
 	case "study":

@@ -28,6 +28,7 @@ type Model struct {
 	Spacings []Spacing
 	Scatters []Scatter
 	Maps     []LandingMap
+	Throws   []ThrowTo
 	Solver   Solver
 	Output   Output
 
@@ -82,7 +83,7 @@ type Arc struct {
 
 // Angle gives the arc's angle (rad) on a circle of radius r (m).
 func (a Arc) Angle(r float64) float64 {
-	if a.IsAngle {
+	if a.IsAngle || a.Value == 0 { // on the axis too
 		return a.Value
 	}
 	return a.Value / r
@@ -353,7 +354,7 @@ type Quantity struct {
 type Limit struct {
 	Name             string
 	Listed           []bool   // of each name of Of: it stands for a row of a streamed release list
-	Of               []string // release.NAME, path.NAME, habitat; * stands for anything
+	Of               []string // release.NAME, path.NAME, study.NAME, habitat; * stands for anything
 	Measure          string   // table.column, without the unit
 	Min, Max         *Quantity
 	MaxAbs           *Quantity

@@ -43,6 +43,7 @@ func New(in Model) (*Model, []Problem) {
 	c.spacings()
 	c.scatters()
 	c.landingMaps()
+	c.throws()
 	if len(c.problems) > 0 {
 		return nil, c.problems
 	}
