@@ -17,6 +17,6 @@
 //	list.go      release lists in CSV; their rows in listrow.go
 //	sweep.go     sweeps: read in sweep_read.go and sweep_values.go, each point loaded in variant.go
 //	load.go      all of it in order, and the places of later problems
-//	reference.go the format as a table for the README; schema.go as JSON Schema
+//	reference.go the format as a table for FORMAT.md; schema.go as JSON Schema
 //	examples.go  the shipped scenarios
 package scenarios

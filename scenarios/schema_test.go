@@ -335,7 +335,7 @@ func TestFormatIsSound(t *testing.T) {
 	}
 }
 
-// TestReferenceHasEveryKey: the table of the README has every key once in its
+// TestReferenceHasEveryKey: the table of FORMAT.md has every key once in its
 // section, and every section.
 func TestReferenceHasEveryKey(t *testing.T) {
 	lines := strings.Split(strings.TrimSpace(Reference()), "\n")

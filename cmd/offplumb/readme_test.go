@@ -6,6 +6,7 @@ import (
 	"os"
 	"path/filepath"
 	"runtime"
+	"slices"
 	"strings"
 	"testing"
 
@@ -14,7 +15,10 @@ import (
 
 var update = flag.Bool("update", false, "rewrite the generated parts of README.md and the figures that it shows")
 
-const readme = "../../README.md"
+const (
+	readme     = "../../README.md"
+	formatPage = "../../scenarios/FORMAT.md"
+)
 
 // generated replaces what stands between <!-- name --> and <!-- /name -->.
 func generated(t *testing.T, text, name, body string) string {
@@ -23,13 +27,13 @@ func generated(t *testing.T, text, name, body string) string {
 	before, rest, ok := strings.Cut(text, open)
 	_, after, ok2 := strings.Cut(rest, shut)
 	if !ok || !ok2 {
-		t.Fatalf("README.md has no part %q", name)
+		t.Fatalf("the page has no part %q", name)
 	}
 	return before + open + body + shut + after
 }
 
-// TestReadmeIsTrue holds the README against the program: the table of the
-// format, the summary, and the figures that it shows.
+// TestReadmeIsTrue holds the README against the program: the summary, the
+// example, the limits of the models, and the figures that it shows.
 func TestReadmeIsTrue(t *testing.T) {
 	if runtime.GOARCH != "amd64" {
 		t.Skip("bytes are held for one architecture: others may fuse multiply and add")
@@ -45,7 +49,7 @@ func TestReadmeIsTrue(t *testing.T) {
 	}
 	summary := strings.ReplaceAll(stdout.String(), out, "overhead-locker-out")
 	want := generated(t, string(src), "summary", "```\n"+summary+"```\n")
-	want = generated(t, want, "reference", scenarios.Reference())
+	want = generated(t, want, "example", "```toml\n"+excerpt(t, "../../scenarios/shipped/overhead-locker.toml")+"```\n")
 	want = generated(t, want, "limits", modelLimits())
 	same(t, readme, []byte(want))
 	for _, name := range []string{"wrench-slips-out-side.svg", "wrench-slips-out-inertial.svg"} {
@@ -55,6 +59,34 @@ func TestReadmeIsTrue(t *testing.T) {
 		}
 		same(t, filepath.Join("../../testdata/figures", name), figure)
 	}
+}
+
+// excerpt gives the first table of each sort that the README shows.
+func excerpt(t *testing.T, path string) string {
+	t.Helper()
+	src, err := os.ReadFile(path)
+	if err != nil {
+		t.Fatal(err)
+	}
+	var out []string
+	paragraphs := strings.Split(strings.TrimSpace(string(src)), "\n\n")
+	for _, head := range []string{"format", "[habitat]", "[[body]]", "[[release]]", "[[limit]]"} {
+		at := slices.IndexFunc(paragraphs, func(p string) bool { return strings.HasPrefix(p, head) })
+		if at < 0 {
+			t.Fatalf("%s has no %s", path, head)
+		}
+		out = append(out, paragraphs[at])
+	}
+	return strings.Join(out, "\n\n") + "\n"
+}
+
+// TestReadmeFormatPage holds the page of the format against the format.
+func TestReadmeFormatPage(t *testing.T) {
+	src, err := os.ReadFile(formatPage)
+	if err != nil {
+		t.Fatal(err)
+	}
+	same(t, formatPage, []byte(generated(t, string(src), "reference", scenarios.Reference())))
 }
 
 // same holds a file against what it should be, or rewrites it.
