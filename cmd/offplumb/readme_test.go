@@ -3,8 +3,10 @@ package main
 import (
 	"bytes"
 	"flag"
+	"fmt"
 	"os"
 	"path/filepath"
+	"regexp"
 	"runtime"
 	"slices"
 	"strings"
@@ -51,6 +53,8 @@ func TestReadmeIsTrue(t *testing.T) {
 	want := generated(t, string(src), "summary", "```\n"+summary+"```\n")
 	want = generated(t, want, "example", "```toml\n"+excerpt(t, "../../scenarios/shipped/overhead-locker.toml")+"```\n")
 	want = generated(t, want, "limits", modelLimits())
+	want = generated(t, want, "trust", modelTable())
+	want = generated(t, want, "contents", contentsOf(want))
 	same(t, readme, []byte(want))
 	for _, name := range []string{"wrench-slips-out-side.svg", "wrench-slips-out-inertial.svg"} {
 		figure, err := os.ReadFile(filepath.Join(out, name))
@@ -78,6 +82,51 @@ func excerpt(t *testing.T, path string) string {
 		out = append(out, paragraphs[at])
 	}
 	return strings.Join(out, "\n\n") + "\n"
+}
+
+// contentsOf lists the headings of a page that stand outside fenced blocks.
+func contentsOf(page string) string {
+	var out strings.Builder
+	fenced := false
+	for line := range strings.Lines(page) {
+		line = strings.TrimSpace(line)
+		if strings.HasPrefix(line, "```") {
+			fenced = !fenced
+		}
+		level, title, ok := strings.Cut(line, " ")
+		if fenced || !ok || level != "##" && level != "###" {
+			continue
+		}
+		fmt.Fprintf(&out, "%s- [%s](#%s)\n", strings.Repeat("  ", len(level)-2), title, anchor(strings.ReplaceAll(title, " ", "-")))
+	}
+	return out.String()
+}
+
+// TestReadmeLinks: every link of the pages to a file or a heading leads
+// somewhere.
+func TestReadmeLinks(t *testing.T) {
+	link := regexp.MustCompile(`\]\(([^)\s]+)\)`)
+	links := 0
+	for _, page := range []string{readme, "../../DEVELOPERS.md", formatPage, tutorial, columnsPage, filepath.Join(frozenDir, "README.md")} {
+		src, err := os.ReadFile(page)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, m := range link.FindAllStringSubmatch(string(src), -1) {
+			links++
+			file, heading, _ := strings.Cut(m[1], "#")
+			if file == "" {
+				if heading = "(#" + heading + ")"; !strings.Contains(contentsOf(string(src)), heading) {
+					t.Errorf("%s has no heading for %s", page, m[1])
+				}
+			} else if _, err := os.Stat(filepath.Join(filepath.Dir(page), file)); err != nil {
+				t.Errorf("%s: %v", page, err)
+			}
+		}
+	}
+	if links < 20 {
+		t.Errorf("only %d links", links)
+	}
 }
 
 // TestReadmeFormatPage holds the page of the format against the format.
