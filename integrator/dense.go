@@ -27,6 +27,10 @@ type Segment struct {
 	coef   []float64 // Dim coefficients of theta^0, then of theta^1, ...
 }
 
+// Use gives an empty segment the space for its coefficients, five times Dim for
+// DormandPrince54, of which it uses no more than the capacity.
+func (g *Segment) Use(space []float64) { g.coef = space[:0] }
+
 // At fills y with the state at t, which should lie in [T0, T1]. At(T0) is Y0
 // and At(T1) is Y1, bit for bit.
 func (s *Step) At(t float64, y []float64) {
@@ -76,6 +80,7 @@ func (s *Step) Truncate(t float64) {
 	if t == s.T1 {
 		return
 	}
+	s.segment() // while Y1 is the computed one
 	s.At(t, s.Y1)
 	s.T1 = t
 	s.st.moved = true
@@ -89,6 +94,10 @@ func (s *Step) segment() *Segment {
 	s.dense = true
 	g := &s.seg
 	g.T0, g.T1, g.h = s.T0, s.T1, s.h
+	if s.st.six != nil {
+		s.st.six.dense(s.st, s.h, (*[5 * sixDim]float64)(g.coef))
+		return g
+	}
 	copy(g.coef, s.Y0)
 	for p := range s.st.poly {
 		s.st.poly[p].add(g.power(p+1), s.st.zero, s.h, s.st.k)
@@ -162,13 +171,8 @@ const maxDegree = 8
 func (g *Segment) bound(from, to, order int) float64 {
 	d := g.degree() - order
 	most := 0.0
-	var w [maxDegree]float64
 	for i := 0; i <= d; i++ {
-		part := 1.0
-		for m := 0; m <= i; m++ {
-			w[m] = part * falling(m+order, order)
-			part *= float64(i-m) / float64(max(d-m, 1))
-		}
+		w := &bernstein[order-1][d][i]
 		sum := 0.0
 		for c := from; c < to; c++ {
 			b := 0.0
@@ -184,6 +188,24 @@ func (g *Segment) bound(from, to, order int) float64 {
 	}
 	return math.Sqrt(most) / g.h
 }
+
+// bernstein holds the weights of bound: by order less 1, by the degree d of the
+// derivative, by i and m. They are those above times what differentiating
+// theta^(m+order) brings down.
+var bernstein = func() (w [2][maxDegree][maxDegree][maxDegree]float64) {
+	for order := 1; order <= 2; order++ {
+		for d := 0; d <= maxDegree-order; d++ {
+			for i := 0; i <= d; i++ {
+				part := 1.0
+				for m := 0; m <= i; m++ {
+					w[order-1][d][i][m] = part * falling(m+order, order)
+					part *= float64(i-m) / float64(max(d-m, 1))
+				}
+			}
+		}
+	}
+	return w
+}()
 
 // falling returns p for order 1 and p (p-1) for order 2: what differentiating
 // theta^p brings down.

@@ -33,7 +33,10 @@ type track struct {
 // watch is an event under search.
 type watch struct {
 	EventSpec
-	bounded Bounded // nil: a plain event
+	bounded Bounded  // nil: a plain event
+	clear   Clearing // nil: it cannot tell
+	aimed   Aimed    // nil: it cannot tell
+	unknown bool     // g was not looked at in the last step
 	track
 	end     track   // standing at the end of the search
 	reached float64 // time up to which the step was searched
@@ -65,6 +68,8 @@ func (f *Finder) Start(t float64, y []float64, events []EventSpec) error {
 		}
 		w := watch{EventSpec: spec}
 		w.bounded, _ = spec.Event.(Bounded)
+		w.clear, _ = spec.Event.(Clearing)
+		w.aimed, _ = spec.Event.(Aimed)
 		g, err := w.value(t, y)
 		if err != nil {
 			return err
@@ -151,6 +156,7 @@ func (f *Finder) settle() (err error) {
 		if w.g, err = w.value(f.step.T1, f.step.Y1); err != nil {
 			return err
 		}
+		w.unknown = false
 	}
 	return nil
 }
@@ -162,6 +168,13 @@ type look struct{ t, g float64 }
 // hit, a time within the resolution of it.
 func (f *Finder) walk(i int, limit float64) (float64, error) {
 	w := &f.watch[i]
+	if w.mode == armed && w.clear != nil && !w.Rising && w.clear.Clear(f.step) {
+		w.end, w.unknown = track{armed, w.g}, true
+		return limit, nil
+	}
+	if err := f.known(w); err != nil {
+		return 0, err
+	}
 	at, mode := look{f.step.T0, w.g}, w.mode
 	out := at // the last look with g >= 0, or the start
 	for n := 0; at.t < limit; n++ {
@@ -197,6 +210,27 @@ func (f *Finder) walk(i int, limit float64) (float64, error) {
 	}
 	w.end = track{mode, at.g}
 	return limit, nil
+}
+
+// known looks at the start of the step, if the last was not looked at.
+func (f *Finder) known(w *watch) error {
+	if !w.unknown {
+		return nil
+	}
+	at, err := f.look(w, f.step.T0)
+	w.g, w.unknown = at.g, false
+	return err
+}
+
+// aim gives the end of the next step that the events ask for.
+func (f *Finder) aim(t float64, y, dy []float64, next float64) float64 {
+	end := math.Inf(1)
+	for i := range f.watch {
+		if w := &f.watch[i]; w.aimed != nil && w.mode == armed {
+			end = min(end, w.aimed.Aim(t, y, dy, next))
+		}
+	}
+	return end
 }
 
 // next takes the next look after at: as far on as the event's bound lets g be

@@ -4,7 +4,6 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/spatial/r3"
-	"offplumb/integrator"
 	"offplumb/sim/frame"
 	"offplumb/sim/geom"
 )
@@ -22,9 +21,9 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, skids bool) (ending, e
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
 	spin, _ := f.m.Motion.Bounds(s.begin, s.begin)
 	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, tidy: s.tidy,
-		opts:   []integrator.Option{integrator.MaxStep(stepTurn / math.Max(spin, slowest))},
+		most:   stepTurn / math.Max(spin, slowest),
 		events: func(grazed []geom.Patch) *ends { return f.slideEvents(s, now, grazed) }}
-	res, end, err := r.solve(t, &phase, y)
+	res, end, err := f.solve(t, &phase, &r, y)
 	if err != nil {
 		return ending{}, err
 	}

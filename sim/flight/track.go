@@ -84,6 +84,8 @@ type Track struct {
 	Work    Work
 
 	motion frame.Motion
+	steps  []integrator.Segment // of all phases
+	space  []float64            // for their coefficients
 }
 
 // Landing is the first touch, or nil.
@@ -124,7 +126,7 @@ func (p *Phase) at(time float64) frame.State {
 	if p.local {
 		return frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}
 	}
-	return depart(p.base, u, y[:])
+	return depart(&p.base, u, y[:])
 }
 
 // PhaseAt gives the index of the phase under way, the earlier one at a joint.

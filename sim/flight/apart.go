@@ -1,0 +1,143 @@
+package flight
+
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r3"
+	"offplumb/integrator"
+	"offplumb/sim/frame"
+)
+
+// thin is the depth, in m, below which a touch need not be told from a miss:
+// a thousandth of a millimetre.
+const thin = 1e-6
+
+// apart is how a body in flight may end: the gap to what it may touch, how far
+// its centre is from the hull's outer face, within, or the less of both. It
+// depends on its place in the habitat alone, with Lipschitz constant 1. It
+// promises its rate by the velocity u relative to the habitat, whatever its way
+// of turning:
+//
+//	|gap'| <= |u|,  u = r' - omega x r,  |u'| <= |r''| + |domega/dt| |r| + |omega| |r'|
+type apart struct {
+	f           *Flier
+	touch, hull bool // what counts
+
+	seen look
+	step span
+	sure sure
+	due  float64 // s, when a contact is expected
+}
+
+// look is the last place looked at.
+type look struct {
+	known bool
+	t     float64
+	y     [3]float64
+	local r3.Vec
+	gap   float64
+}
+
+// span holds what bounds a step's motion.
+type span struct {
+	t0, t1 float64
+	alpha  float64
+	speed  float64 // m/s, inertial
+	accel  float64 // m/s^2, in the habitat, but for alpha
+}
+
+// sure tells until when (s) the distance surely does not vanish, as long as the
+// acceleration in the habitat stays within accel (m/s^2).
+type sure struct{ until, accel float64 }
+
+// ready begins a flight.
+func (g *apart) ready() {
+	g.seen.known, g.due = false, math.Inf(-1)
+	g.step, g.sure = span{t0: math.Inf(1)}, sure{until: math.Inf(-1)}
+}
+
+// Value implements [integrator.Event].
+func (g *apart) Value(t float64, y []float64) float64 {
+	if l := &g.seen; l.known && l.t == t && l.y == [3]float64(y) {
+		return l.gap
+	}
+	p := g.f.free.place(t, y)
+	g.seen = look{true, t, [3]float64(y), p, g.of(p)}
+	return g.seen.gap
+}
+
+// of is the distance at a place in the habitat.
+func (g *apart) of(p r3.Vec) float64 {
+	d := math.MaxFloat32
+	if g.touch {
+		d = min(g.f.m.Interior.DistBeside(p, &g.f.watch), d) - g.f.wide
+	}
+	if g.hull {
+		d = min(d, -g.f.m.Interior.Beyond(p))
+	}
+	return d
+}
+
+// bound fills step with what bounds the motion along s.
+func (g *apart) bound(s *integrator.Step) {
+	if g.step.t0 == s.T0 && g.step.t1 == s.T1 {
+		return
+	}
+	free := g.f.free
+	omega, alpha := free.forces.motion.Bounds(free.begin+s.T0, free.begin+s.T1)
+	speed := r3.Norm(free.base.Vel) + s.MaxRate(0, 3)
+	g.step = span{s.T0, s.T1, alpha, speed, s.MaxAccel(0, 3) + omega*speed}
+}
+
+// Clear implements [integrator.Clearing].
+func (g *apart) Clear(s *integrator.Step) bool {
+	if !(s.T1 <= g.sure.until) {
+		return false
+	}
+	g.bound(s)
+	return g.step.alpha == 0 && g.step.accel <= g.sure.accel
+}
+
+const (
+	// ahead is for how many steps' length it is asked at once that nothing is
+	// touched. More asks for more of the surroundings, less more often.
+	ahead = 8
+	// aheadAccel is by what factor the acceleration may grow meanwhile. More
+	// makes for shorter times.
+	aheadAccel = 1.25
+)
+
+// Bound implements [integrator.Bounded].
+func (g *apart) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, least float64) {
+	free := g.f.free
+	g.bound(s)
+	gap := g.Value(t, y)
+	var dy [6]float64
+	s.Rate(t, dy[:])
+	at := depart(&free.base, t, y)
+	at.Vel = r3.Add(free.base.Vel, vec(dy[:]))
+	vel := frame.Seen(free.forces.motion, free.begin+t, at).Vel
+	left, acc := s.T1-t, g.step.accel
+	if g.step.alpha > 0 {
+		acc += g.step.alpha * (r3.Norm(at.Pos) + g.step.speed*left)
+	} else {
+		left, acc = ahead*(s.T1-s.T0), aheadAccel*acc
+	}
+	time := g.time(vel, acc, left)
+	g.sure = sure{t + time, acc}
+	return promise(gap, time), 0, thin
+}
+
+// time gives a time (s, at most limit) during which the distance surely does
+// not vanish, at the place last looked at.
+func (g *apart) time(vel r3.Vec, acc, limit float64) float64 {
+	in, p := g.f.m.Interior, g.seen.local
+	if g.touch {
+		limit = in.TimeBeside(p, vel, acc, limit, &g.f.watch)
+	}
+	if g.hull {
+		d, speed := max(-in.Beyond(p), thin), r3.Norm(vel)
+		limit = min(limit, 2*d/(speed+math.Sqrt(speed*speed+2*acc*d)))
+	}
+	return limit
+}
