@@ -85,8 +85,11 @@ func (g *apart) bound(s *integrator.Step) {
 	}
 	free := g.f.free
 	omega, alpha := free.forces.motion.Bounds(free.begin+s.T0, free.begin+s.T1)
-	speed := r3.Norm(free.base.Vel) + s.MaxRate(0, 3)
-	g.step = span{s.T0, s.T1, alpha, speed, s.MaxAccel(0, 3) + omega*speed}
+	accel := s.MaxAccel(0, 3)
+	var dy [6]float64
+	s.Rate(s.T0, dy[:])
+	speed := norm(r3.Add(free.base.Vel, vec(dy[:]))) + accel*(s.T1-s.T0)
+	g.step = span{s.T0, s.T1, alpha, speed, accel + omega*speed}
 }
 
 // Clear implements [integrator.Clearing].
@@ -99,7 +102,7 @@ func (g *apart) Clear(s *integrator.Step) bool {
 }
 
 const (
-	// ahead is for how many steps' length it is asked at once that nothing is
+	// ahead, at the start of a step, is for how many steps' length it is asked at once that nothing is
 	// touched. More asks for more of the surroundings, less more often.
 	ahead = 8
 	// aheadAccel is by what factor the acceleration may grow meanwhile. More
@@ -119,8 +122,8 @@ func (g *apart) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, 
 	vel := frame.Seen(free.forces.motion, free.begin+t, at).Vel
 	left, acc := s.T1-t, g.step.accel
 	if g.step.alpha > 0 {
-		acc += g.step.alpha * (r3.Norm(at.Pos) + g.step.speed*left)
-	} else {
+		acc += g.step.alpha * (norm(at.Pos) + g.step.speed*left)
+	} else if t == s.T0 {
 		left, acc = ahead*(s.T1-s.T0), aheadAccel*acc
 	}
 	time := g.time(vel, acc, left)
@@ -136,8 +139,11 @@ func (g *apart) time(vel r3.Vec, acc, limit float64) float64 {
 		limit = in.TimeBeside(p, vel, acc, limit, &g.f.watch)
 	}
 	if g.hull {
-		d, speed := max(-in.Beyond(p), thin), r3.Norm(vel)
+		d, speed := max(-in.Beyond(p), thin), norm(vel)
 		limit = min(limit, 2*d/(speed+math.Sqrt(speed*speed+2*acc*d)))
 	}
 	return limit
 }
+
+// norm is the length of a vector whose square is in range.
+func norm(v r3.Vec) float64 { return math.Sqrt(r3.Norm2(v)) }

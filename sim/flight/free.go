@@ -59,8 +59,8 @@ func (f *free) relaxation() (time, accel float64) {
 	if f.forces.drag.None() {
 		return 0, 0
 	}
-	speed := r3.Norm(f.forces.relative(f.begin, f.base))
-	accel = r3.Norm(f.forces.Drag(f.begin, f.base))
+	speed := norm(f.forces.relative(f.begin, f.base))
+	accel = norm(f.forces.Drag(f.begin, f.base))
 	if !(accel > 0) {
 		return 0, 0
 	}
