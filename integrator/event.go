@@ -90,6 +90,17 @@ type Clearing interface {
 	Clear(s *Step) bool
 }
 
+// Backed is a bounded event that can tell backward, too, how long its value
+// surely does not vanish. Behind returns a time (not negative) such that g is
+// above zero, but for excursions that stay above -thin, along s from that long
+// before t on, though not before the start of s, until t; y is the state at t,
+// and g is not negative there. So a first contact is proved by looking to both
+// sides: forward from the start of the step, and backward from the contact.
+type Backed interface {
+	Bounded
+	Behind(s *Step, t float64, y []float64) float64
+}
+
 // Aimed is an event that tells where it may happen, so that a step may end
 // there, where its interpolant is at its best. Aim is given time and state, the
 // derivative there, and the length that the next step would have. It returns

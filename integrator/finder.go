@@ -34,6 +34,7 @@ type track struct {
 type watch struct {
 	EventSpec
 	bounded Bounded  // nil: a plain event
+	backed  Backed   // nil: it cannot tell
 	clear   Clearing // nil: it cannot tell
 	aimed   Aimed    // nil: it cannot tell
 	unknown bool     // g was not looked at in the last step
@@ -68,6 +69,7 @@ func (f *Finder) Start(t float64, y []float64, events []EventSpec) error {
 		}
 		w := watch{EventSpec: spec}
 		w.bounded, _ = spec.Event.(Bounded)
+		w.backed, _ = spec.Event.(Backed)
 		w.clear, _ = spec.Event.(Clearing)
 		w.aimed, _ = spec.Event.(Aimed)
 		g, err := w.value(t, y)
@@ -177,6 +179,11 @@ func (f *Finder) walk(i int, limit float64) (float64, error) {
 	}
 	at, mode := look{f.step.T0, w.g}, w.mode
 	out := at // the last look with g >= 0, or the start
+	if mode == armed && w.backed != nil && !w.Rising {
+		if reached, done, err := f.leap(i, at, limit); done || err != nil {
+			return reached, err
+		}
+	}
 	for n := 0; at.t < limit; n++ {
 		if n == maxLooks {
 			return 0, &StepError{T: at.t, H: limit - at.t, Reason: Stalled}
@@ -198,7 +205,8 @@ func (f *Finder) walk(i int, limit float64) (float64, error) {
 			f.hits = append(f.hits, Hit{Event: i, T: hit, Terminal: w.Terminal})
 			next, mode = past, spent
 			if w.Terminal {
-				limit = min(limit, hit+f.res)
+				w.end = track{spent, past.g}
+				return min(limit, hit+f.res), nil
 			}
 		case next.g > w.Slop:
 			mode = armed
@@ -210,6 +218,46 @@ func (f *Finder) walk(i int, limit float64) (float64, error) {
 	}
 	w.end = track{mode, at.g}
 	return limit, nil
+}
+
+// leap searches an armed event up to limit at one go, where bounds forward from
+// the look at and backward from the first contact, or from limit, meet. It
+// reports whether they did; else nothing has happened.
+func (f *Finder) leap(i int, at look, limit float64) (reached float64, done bool, err error) {
+	w := &f.watch[i]
+	u, err := f.trusted(w, armed, at)
+	if err != nil || !(at.t < limit) {
+		return limit, false, err
+	}
+	end, err := f.look(w, limit)
+	if err != nil {
+		return limit, false, err
+	}
+	hit, past := end, end
+	if end.g <= 0 {
+		if hit, past, err = f.secant(w, at, end); err != nil {
+			return limit, false, err
+		}
+		if hit, past, err = f.polish(w, hit, past); err != nil {
+			return limit, false, err
+		}
+	}
+	if at.t+u < hit.t {
+		f.step.At(hit.t, f.y)
+		if back := w.backed.Behind(f.step, hit.t, f.y); !(hit.t-back <= at.t+u) {
+			return limit, false, nil
+		}
+	}
+	switch {
+	case end.g > 0:
+		w.end = track{armed, end.g}
+		return limit, true, nil
+	case !w.Terminal:
+		return limit, false, nil // there may be more
+	}
+	f.hits = append(f.hits, Hit{Event: i, T: hit.t, Terminal: true})
+	w.end = track{spent, past.g}
+	return min(limit, hit.t+f.res), true, nil
 }
 
 // known looks at the start of the step, if the last was not looked at.

@@ -6,6 +6,7 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/integrator"
 	"offplumb/sim/frame"
+	"offplumb/sim/geom"
 )
 
 // thin is the depth, in m, below which a touch need not be told from a miss:
@@ -112,35 +113,52 @@ const (
 
 // Bound implements [integrator.Bounded].
 func (g *apart) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, least float64) {
-	free := g.f.free
 	g.bound(s)
 	gap := g.Value(t, y)
-	var dy [6]float64
-	s.Rate(t, dy[:])
-	at := depart(&free.base, t, y)
-	at.Vel = r3.Add(free.base.Vel, vec(dy[:]))
-	vel := frame.Seen(free.forces.motion, free.begin+t, at).Vel
+	vel, far := g.velocity(s, t, y)
 	left, acc := s.T1-t, g.step.accel
 	if g.step.alpha > 0 {
-		acc += g.step.alpha * (norm(at.Pos) + g.step.speed*left)
+		acc += g.step.alpha * (far + g.step.speed*left)
 	} else if t == s.T0 {
 		left, acc = ahead*(s.T1-s.T0), aheadAccel*acc
 	}
-	time := g.time(vel, acc, left)
+	time := g.time(vel, acc, left, &g.f.watch)
 	g.sure = sure{t + time, acc}
 	return promise(gap, time), 0, thin
 }
 
+// Behind implements [integrator.Backed]: seen backward, the velocity is the
+// opposite, and the acceleration the same.
+func (g *apart) Behind(s *integrator.Step, t float64, y []float64) float64 {
+	g.bound(s)
+	g.Value(t, y)
+	vel, far := g.velocity(s, t, y)
+	left := t - s.T0
+	back := g.f.watch
+	back.Back = true
+	return g.time(r3.Scale(-1, vel), g.step.accel+g.step.alpha*(far+g.step.speed*left), left, &back)
+}
+
+// velocity gives the velocity in the habitat along the interpolant of s, and
+// the distance (m) from the axis' middle.
+func (g *apart) velocity(s *integrator.Step, t float64, y []float64) (vel r3.Vec, far float64) {
+	free := g.f.free
+	var dy [6]float64
+	s.Rate(t, dy[:])
+	at := depart(&free.base, t, y)
+	at.Vel = r3.Add(free.base.Vel, vec(dy[:]))
+	return frame.Seen(free.forces.motion, free.begin+t, at).Vel, norm(at.Pos)
+}
+
 // time gives a time (s, at most limit) during which the distance surely does
 // not vanish, at the place last looked at.
-func (g *apart) time(vel r3.Vec, acc, limit float64) float64 {
+func (g *apart) time(vel r3.Vec, acc, limit float64, watch *geom.Beside) float64 {
 	in, p := g.f.m.Interior, g.seen.local
 	if g.touch {
-		limit = in.TimeBeside(p, vel, acc, limit, &g.f.watch)
+		limit = in.TimeBeside(p, vel, acc, limit, watch)
 	}
 	if g.hull {
-		d, speed := max(-in.Beyond(p), thin), norm(vel)
-		limit = min(limit, 2*d/(speed+math.Sqrt(speed*speed+2*acc*d)))
+		limit = in.TimeWithin(p, vel, acc, limit, thin)
 	}
 	return limit
 }

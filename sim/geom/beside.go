@@ -15,6 +15,9 @@ type Beside struct {
 	// place of a group that it slides on counts from a gap of Slop on: the
 	// sphere, kept on the nearest place of all, would never reach into it.
 	Slop float64
+	// Back says that time is counted backward, from a contact: as the sphere
+	// parts from it then, its rate counts from a gap of nothing on.
+	Back bool
 	// On are the patches that the sphere slides on. Neither they count nor what
 	// goes on from them without an edge.
 	On []Patch
@@ -195,31 +198,24 @@ func (b *Beside) aimed(solid Solid, p, v r3.Vec, gap, speed, acc, most float64) 
 	if around == 0 {
 		return 0
 	}
-	if !math.IsInf(around, 1) {
-		most = min(most, within(around, speed, acc))
-	}
 	_, n, _ := s.Nearest(p)
 	rate := r3.Dot(v, n)
-	if gap < 2*b.Thin {
+	if gap < 2*b.Thin && !b.Back {
 		rate = -math.Abs(rate) // not to pass over the moment when it has opened
 	}
 	if math.IsInf(hollow, 1) {
 		return closes(gap, rate, acc, most)
 	}
-	// The curvature counts by the square of the speed: first by that at p, which
-	// gives a time that is too long, then by that at the end of this time.
-	most = closes(gap, rate, acc+speed*speed/hollow, most)
-	fast, far := speed+acc*most, (speed+acc*most/2)*most
-	return closes(gap, rate, acc+fast*fast/(hollow-min(far, around)), most)
+	return hollowCloses(gap, rate, speed, acc, around, hollow, most)
 }
 
 // closes gives how long, at most most, a gap with a rate takes to close under
 // the acceleration -acc.
 func closes(gap, rate, acc, most float64) float64 {
-	if rate <= 0 {
+	if rate <= 0 && gap <= math.MaxFloat64 {
 		return min(most, within(gap, -rate, acc))
 	}
-	if acc == 0 {
+	if acc == 0 || gap > math.MaxFloat64 {
 		return most
 	}
 	return min(most, (rate+math.Sqrt(rate*rate+2*acc*gap))/acc)
