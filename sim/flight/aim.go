@@ -4,7 +4,6 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/spatial/r3"
-	"offplumb/sim/frame"
 )
 
 // aims tells how far ahead a contact is looked for, in steps to come; what is
@@ -36,11 +35,11 @@ const mends = 1
 // guess is how long (s) the body takes to touch what it is nearest to, by its
 // velocity and acceleration in the habitat; infinite where it does not seem to.
 func (g *apart) guess(t float64, y, dy []float64) float64 {
-	gap, motion, now := g.Value(t, y), g.f.free.forces.motion, g.f.free.begin+t
+	gap := g.Value(t, y)
 	c := g.f.m.Interior.Contact(g.seen.local)
-	s := frame.Seen(motion, now, depart(&g.f.free.base, t, y))
-	w := frame.SeenAt(motion, now, motion.Omega(now))
-	acc := frame.SeenAt(motion, now, vec(dy[3:]))
+	a := g.f.free.forces.motion.At(g.f.free.begin + t)
+	s := a.ToHabitat(depart(&g.f.free.base, t, y))
+	w, acc := a.In(a.Omega), a.In(vec(dy[3:]))
 	acc = r3.Sub(acc, r3.Cross(w, r3.Add(r3.Scale(2, s.Vel), r3.Cross(w, s.Pos))))
 	rate, fall := r3.Dot(s.Vel, c.Normal), -r3.Dot(acc, c.Normal)
 	time := falls(gap, rate, fall)

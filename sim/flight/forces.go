@@ -22,6 +22,7 @@ type Forces struct {
 	motion  frame.Motion
 	steady  bool    // the spin is, and is spin (rad/s) about the axis
 	spin    float64 // so that it need not be asked for at each derivative
+	plain   bool    // drag in a steady spin is all there is
 	drag    air.Drag
 	perMass float64 // 1/kg
 	fields  []Field
@@ -54,6 +55,7 @@ func (f *Forces) set(m *model.Model, b model.Body, law air.Law, fields []Field) 
 	// The Reynolds number is that of the disc of the same area.
 	f.drag = air.NewDrag(m.Air, law, math.Sqrt(4*area/math.Pi), area)
 	f.perMass = 1 / b.Mass
+	f.plain = f.steady && len(fields) == 0 && !f.drag.None()
 }
 
 // Drag gives the acceleration by drag, m/s^2 in inertial components, at an

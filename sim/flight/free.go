@@ -25,6 +25,16 @@ func (f *free) Dim() int { return 6 }
 // Deriv implements [integrator.System].
 func (f *free) Deriv(t float64, y, dy []float64) {
 	y, dy = y[:6], dy[:6]
+	if w := &f.forces; w.plain {
+		// The same, written out: most derivatives are these.
+		b := &f.base
+		vx, vy, vz := b.Vel.X+y[3], b.Vel.Y+y[4], b.Vel.Z+y[5]
+		ux, uy := vx+w.spin*(b.Pos.Y+(t*b.Vel.Y+y[1])), vy-w.spin*(b.Pos.X+(t*b.Vel.X+y[0]))
+		k := -w.perMass * w.drag.PerVelocity2(ux*ux+uy*uy+vz*vz)
+		dy[0], dy[1], dy[2] = y[3], y[4], y[5]
+		dy[3], dy[4], dy[5] = k*ux, k*uy, k*vz
+		return
+	}
 	a := f.forces.Accel(f.begin+t, depart(&f.base, t, y))
 	dy[0], dy[1], dy[2] = y[3], y[4], y[5]
 	dy[3], dy[4], dy[5] = a.X, a.Y, a.Z
