@@ -93,6 +93,9 @@ func (f *Finder) Start(t float64, y []float64, events []EventSpec) error {
 // It fails with a [StepError].
 func (f *Finder) Search(s *Step) (hits []Hit, stop bool, err error) {
 	f.hits, f.step = f.hits[:0], s
+	if len(f.watch) == 1 && f.watch[0].cleared(s) {
+		return f.hits, false, nil
+	}
 	f.res = timeUlps * epsilon * (math.Abs(s.T1) + (s.T1 - s.T0))
 	for i := range f.watch {
 		f.watch[i].reached = math.Inf(1)
@@ -170,8 +173,8 @@ type look struct{ t, g float64 }
 // hit, a time within the resolution of it.
 func (f *Finder) walk(i int, limit float64) (float64, error) {
 	w := &f.watch[i]
-	if w.mode == armed && w.clear != nil && !w.Rising && w.clear.Clear(f.step) {
-		w.end, w.unknown = track{armed, w.g}, true
+	if w.cleared(f.step) {
+		w.end = w.track
 		return limit, nil
 	}
 	if err := f.known(w); err != nil {
@@ -258,6 +261,15 @@ func (f *Finder) leap(i int, at look, limit float64) (reached float64, done bool
 	f.hits = append(f.hits, Hit{Event: i, T: hit.t, Terminal: true})
 	w.end = track{spent, past.g}
 	return min(limit, hit.t+f.res), true, nil
+}
+
+// cleared says whether the event is armed and tells that it remains so.
+func (w *watch) cleared(s *Step) bool {
+	if w.mode == armed && w.clear != nil && !w.Rising && w.clear.Clear(s) {
+		w.unknown = true
+		return true
+	}
+	return false
 }
 
 // known looks at the start of the step, if the last was not looked at.

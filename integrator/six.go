@@ -1,5 +1,7 @@
 package integrator
 
+import "math"
+
 // Six components, a place and a velocity, by a method shaped like
 // DormandPrince54 are what most runs are made of. For them the linear
 // combinations of a step are written out over arrays, in the order of row.add:
@@ -103,7 +105,21 @@ func (z *six) trial(st *Stepper, h, t1 float64) float64 {
 	for i := range err {
 		err[i] = a0*k0[i] + a1*k2[i] + a2*k3[i] + a3*k4[i] + a4*k5[i] + a5*k6[i]
 	}
+	if len(st.norm.end) == 2 && st.norm.end[0] == 3 {
+		return st.norm.halves(err, y, y1)
+	}
 	return st.norm.squared(st.err, st.y0, st.y1)
+}
+
+// halves is squared for a group of the first three components and one of the
+// others, written out.
+func (m *norm) halves(e, a, b *[sixDim]float64) float64 {
+	s0 := m.abs[0] + m.rel*math.Sqrt(max(a[0]*a[0]+a[1]*a[1]+a[2]*a[2], b[0]*b[0]+b[1]*b[1]+b[2]*b[2]))
+	s1 := m.abs[1] + m.rel*math.Sqrt(max(a[3]*a[3]+a[4]*a[4]+a[5]*a[5], b[3]*b[3]+b[4]*b[4]+b[5]*b[5]))
+	if !(s0+s1 <= math.MaxFloat64) {
+		return math.NaN()
+	}
+	return ((e[0]*e[0]+e[1]*e[1]+e[2]*e[2])/(s0*s0) + (e[3]*e[3]+e[4]*e[4]+e[5]*e[5])/(s1*s1)) / 2
 }
 
 // dense fills the coefficients of the interpolant after an accepted step, by

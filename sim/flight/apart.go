@@ -24,10 +24,11 @@ type apart struct {
 	f           *Flier
 	touch, hull bool // what counts
 
-	seen look
-	step span
-	sure sure
-	due  float64 // s, when a contact is expected
+	omega float64 // rad/s, of a steady spin
+	seen  look
+	step  span
+	sure  sure
+	due   float64 // s, when a contact is expected
 }
 
 // look is the last place looked at.
@@ -53,6 +54,7 @@ type sure struct{ until, accel float64 }
 
 // ready begins a flight.
 func (g *apart) ready() {
+	g.omega = math.Abs(g.f.free.forces.spin)
 	g.seen.known, g.due = false, math.Inf(-1)
 	g.step, g.sure = span{t0: math.Inf(1)}, sure{until: math.Inf(-1)}
 }
@@ -85,11 +87,13 @@ func (g *apart) bound(s *integrator.Step) {
 		return
 	}
 	free := g.f.free
-	omega, alpha := free.forces.motion.Bounds(free.begin+s.T0, free.begin+s.T1)
+	omega, alpha := g.omega, 0.0
+	if !free.forces.steady {
+		omega, alpha = free.forces.motion.Bounds(free.begin+s.T0, free.begin+s.T1)
+	}
 	accel := s.MaxAccel(0, 3)
-	var dy [6]float64
-	s.Rate(s.T0, dy[:])
-	speed := norm(r3.Add(free.base.Vel, vec(dy[:]))) + accel*(s.T1-s.T0)
+	// The interpolant leaves with the velocity of the state.
+	speed := norm(r3.Add(free.base.Vel, vec(s.Y0[3:]))) + accel*(s.T1-s.T0)
 	g.step = span{s.T0, s.T1, alpha, speed, accel + omega*speed}
 }
 

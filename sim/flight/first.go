@@ -7,7 +7,7 @@ const (
 	// units of the departure that drag makes in it times the fifth power of the
 	// step's share of the time scale; tried out. It steers the first step alone,
 	// which the control of steps corrects.
-	firstShare = 3e-2
+	firstShare = 0.3
 	// freeTurn is the first step, in rad of the habitat's turning, of a body on
 	// which nothing acts: any would do.
 	freeTurn = 0.5

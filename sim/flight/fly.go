@@ -29,7 +29,8 @@ type Flier struct {
 	hull    *apart
 	both    *apart // touch and hull as one
 	watch   geom.Beside
-	goes    ends // of flights
+	goes    ends         // of flights
+	near    []geom.Touch // space for what it touches
 
 	flightRun run
 	into      *Track // that is flown
@@ -117,9 +118,9 @@ func (f *Flier) beneath(let *Let) (int, float64) {
 // fly integrates one flight, to a touch, the end of its time or its loss. The
 // spin of a body in flight stays in the inertial frame.
 func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) {
-	base := f.inertial(t, now)
-	if now.t == 0 {
-		base = t.First
+	base := t.First
+	if now.t > 0 {
+		base = f.inertial(t, now)
 	}
 	a := f.m.Motion.At(t.Begin + now.t)
 	spin := r3.Add(a.Out(now.w), a.Omega)
