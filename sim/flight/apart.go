@@ -19,7 +19,9 @@ const thin = 1e-6
 // promises its rate by the velocity u relative to the habitat, whatever its way
 // of turning:
 //
-//	|gap'| <= |u|,  u = r' - omega x r,  |u'| <= |r''| + |domega/dt| |r| + |omega| |r'|
+//	|gap'| <= |u|,  u = r' - omega x r,  |u|' <= a = |r''| + |domega/dt| |r| + |omega| |r'|
+//
+// The acceleration in the habitat, as its axes turn too, is at most a + |omega| |u|.
 type apart struct {
 	f           *Flier
 	touch, hull bool // what counts
@@ -45,11 +47,12 @@ type span struct {
 	t0, t1 float64
 	alpha  float64
 	speed  float64 // m/s, inertial
-	accel  float64 // m/s^2, in the habitat, but for alpha
+	omega  float64 // rad/s
+	accel  float64 // m/s^2, the a of apart, but for alpha
 }
 
 // sure tells until when (s) the distance surely does not vanish, as long as the
-// acceleration in the habitat stays within accel (m/s^2).
+// a of apart stays within accel (m/s^2).
 type sure struct{ until, accel float64 }
 
 // ready begins a flight.
@@ -94,17 +97,21 @@ func (g *apart) bound(s *integrator.Step) {
 	accel := s.MaxAccel(0, 3)
 	// The interpolant leaves with the velocity of the state.
 	speed := norm(r3.Add(free.base.Vel, vec(s.Y0[3:]))) + accel*(s.T1-s.T0)
-	g.step = span{s.T0, s.T1, alpha, speed, accel + omega*speed}
+	g.step = span{s.T0, s.T1, alpha, speed, omega, accel + omega*speed}
 }
 
 // Clear implements [integrator.Clearing].
 func (g *apart) Clear(s *integrator.Step) bool {
-	if !(s.T1 <= g.sure.until) {
+	if !(s.T1 <= g.sure.until) || g.grazes() {
 		return false
 	}
 	g.bound(s)
 	return g.step.alpha == 0 && g.step.accel <= g.sure.accel
 }
+
+// grazes says whether the body grazes something: that comes to count when it
+// has parted from it, so that the distance jumps, and no promise holds for long.
+func (g *apart) grazes() bool { return g.touch && len(g.f.watch.Grazed) > 0 }
 
 const (
 	// ahead, at the start of a step, is for how many steps' length it is asked at once that nothing is
@@ -120,27 +127,42 @@ func (g *apart) Bound(s *integrator.Step, t float64, y []float64) (rate, accel, 
 	g.bound(s)
 	gap := g.Value(t, y)
 	vel, far := g.velocity(s, t, y)
-	left, acc := s.T1-t, g.step.accel
-	if g.step.alpha > 0 {
-		acc += g.step.alpha * (far + g.step.speed*left)
-	} else if t == s.T0 {
-		left, acc = ahead*(s.T1-s.T0), aheadAccel*acc
+	speed, left := norm(vel), s.T1-t
+	acc := g.accel(far, left)
+	if g.step.alpha == 0 && t == s.T0 && !g.grazes() {
+		// No farther than the body seems to get, lest the speed that it might
+		// gain until then counts for too much.
+		acc *= aheadAccel
+		left = min(ahead*left, max(left, 2*gap/max(speed, thin)))
 	}
-	time := g.time(vel, acc, left, &g.f.watch)
+	time := g.time(vel, acc+g.step.omega*(speed+acc*left), left, &g.f.watch)
 	g.sure = sure{t + time, acc}
 	return promise(gap, time), 0, thin
+}
+
+// accel bounds the a of apart for the time left (s), at the distance far (m)
+// from the middle of the axis.
+func (g *apart) accel(far, left float64) float64 {
+	if g.step.alpha == 0 {
+		return g.step.accel
+	}
+	return g.step.accel + g.step.alpha*(far+g.step.speed*left)
 }
 
 // Behind implements [integrator.Backed]: seen backward, the velocity is the
 // opposite, and the acceleration the same.
 func (g *apart) Behind(s *integrator.Step, t float64, y []float64) float64 {
+	if g.grazes() {
+		return 0
+	}
 	g.bound(s)
 	g.Value(t, y)
 	vel, far := g.velocity(s, t, y)
 	left := t - s.T0
+	acc := g.accel(far, left)
 	back := g.f.watch
 	back.Back = true
-	return g.time(r3.Scale(-1, vel), g.step.accel+g.step.alpha*(far+g.step.speed*left), left, &back)
+	return g.time(r3.Scale(-1, vel), acc+g.step.omega*(norm(vel)+acc*left), left, &back)
 }
 
 // velocity gives the velocity in the habitat along the interpolant of s, and
