@@ -94,7 +94,7 @@ func (s *teller) along(p *flight.Phase) {
 	if p.Kind == flight.Roll {
 		verb = "rolls"
 	}
-	if way := wayOf(s.m, s.t, p); way > leastWay {
+	if way := wayOf(s.t, p); way > leastWay {
 		s.say("%s %s m on %s", verb, table.Round(way, 3), p.Surface)
 		s.last = ""
 	}

@@ -41,13 +41,13 @@ func (p *Prepared) Run(ctx context.Context, opt Options) ([]Result, error) {
 	var next, done atomic.Int64
 	var tell sync.Mutex
 	work := func() {
-		flier := flight.NewFlier(p.Model)
+		flier, spare := flight.NewFlier(p.Model), &flight.Track{}
 		for {
 			i := int(next.Add(1)) - 1
 			if i >= len(p.Lets) || ctx.Err() != nil {
 				return
 			}
-			results[i], errs[i] = p.one(flier, i, opt.Want)
+			results[i], errs[i] = p.one(flier, spare, i, opt.Want)
 			n := int(done.Add(1))
 			if opt.Done != nil {
 				tell.Lock()
@@ -68,13 +68,17 @@ func (p *Prepared) Run(ctx context.Context, opt Options) ([]Result, error) {
 	return results, nil
 }
 
-func (p *Prepared) one(flier *flight.Flier, i int, want func(*model.Release) bool) (Result, error) {
+// one flies a release, in the space of the spare track if its own is not kept.
+func (p *Prepared) one(flier *flight.Flier, spare *flight.Track, i int, want func(*model.Release) bool) (Result, error) {
 	let := &p.Lets[i]
 	if want != nil && !want(let.Release) {
 		return Result{}, nil
 	}
-	track, err := flier.Fly(let)
-	if err != nil {
+	track := spare
+	if p.keep[i] {
+		track = &flight.Track{}
+	}
+	if err := flier.FlyAgain(track, let); err != nil {
 		return Result{}, err
 	}
 	res := Result{Landing: measure.Land(p.Model, track), Rest: measure.EndOf(p.Model, track), Work: track.Work, done: true}

@@ -67,13 +67,13 @@ func (s *Sweep) point(i int) Point {
 // take runs what some picks depend on and gives their numbers.
 func (p *Prepared) take(picks []measure.Pick) ([]float64, error) {
 	results := make([]Result, len(p.Lets))
-	flier := flight.NewFlier(p.Model)
+	flier, spare := flight.NewFlier(p.Model), &flight.Track{}
 	for i := range p.Lets {
 		if !p.needed(picks, i) {
 			continue
 		}
 		var err error
-		if results[i], err = p.one(flier, i, nil); err != nil {
+		if results[i], err = p.one(flier, spare, i, nil); err != nil {
 			return nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
 		}
 	}
