@@ -10,10 +10,9 @@ const (
 	bias     = 1023 // of its exponent
 )
 
-// roughLog is the natural logarithm of a positive normal x to 1e-4, and -707 or
-// so of 0: the parabola through ln m at m = 1, 3/2 and 2 twice, by m and by 4/3
-// of it, would do; this is the series of ln m = 2 artanh((m-1)/(m+1)) about the
-// middle of the octave.
+// roughLog is the natural logarithm of a positive normal x to 1e-4, and about
+// -709 of 0: by the exponent, and by the series ln m = 2 artanh((m-1)/(m+1)) of
+// the fraction over the middle of its octave.
 func roughLog(x float64) float64 {
 	bits := math.Float64bits(x)
 	m := math.Float64frombits(bits&(1<<fraction-1) | bias<<fraction)

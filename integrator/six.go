@@ -61,7 +61,7 @@ func (tab *Tableau) smooth() bool {
 			return false
 		}
 	}
-	return tab.P[1] == nil || tab.P[1][3] == 0
+	return tab.P[1][3] == 0
 }
 
 // trial is [Stepper.trial] for six components.

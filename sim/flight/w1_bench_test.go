@@ -103,13 +103,12 @@ func BenchmarkW1(b *testing.B) {
 		b.Run(fmt.Sprintf("%.0e", tol), func(b *testing.B) {
 			w := throws(b, tol)
 			off := w.off(b)
-			f := flight.NewFlier(w.m)
+			f, track := flight.NewFlier(w.m), &flight.Track{}
 			var work flight.Work
 			n := 0
 			b.ReportAllocs()
 			for b.Loop() {
-				track, err := f.Fly(&w.lets[n%len(w.lets)])
-				if err != nil {
+				if err := f.FlyAgain(track, &w.lets[n%len(w.lets)]); err != nil {
 					b.Fatal(err)
 				}
 				work.Steps += track.Work.Steps
@@ -122,5 +121,49 @@ func BenchmarkW1(b *testing.B) {
 			b.ReportMetric(float64(work.Steps)/float64(n), "steps/op")
 			b.ReportMetric(float64(work.Rejected)/float64(n), "rejected/op")
 		})
+	}
+}
+
+// TestFlightsAllocateNothingBySteps flies the workload at tolerances that take
+// five and sixty steps a throw, in the space of one track.
+func TestFlightsAllocateNothingBySteps(t *testing.T) {
+	for _, tol := range []float64{1e-6, 1e-12} {
+		w := throws(t, tol)
+		f, track := flight.NewFlier(w.m), &flight.Track{}
+		round := func() {
+			for i := range w.lets {
+				if err := f.FlyAgain(track, &w.lets[i]); err != nil {
+					t.Fatal(err)
+				}
+			}
+		}
+		round() // until the track has the space of the longest
+		const each = 2
+		if got := testing.AllocsPerRun(3, round) / float64(len(w.lets)); got > each {
+			t.Errorf("tolerance %g: %g allocations a throw, want %d at most", tol, got, each)
+		}
+	}
+}
+
+// TestFlyAgainIsFly tries that a track in the space of others is the same.
+func TestFlyAgainIsFly(t *testing.T) {
+	w := throws(t, 1e-9)
+	f, track := flight.NewFlier(w.m), &flight.Track{}
+	for i := range w.lets[:50] {
+		if err := f.FlyAgain(track, &w.lets[i]); err != nil {
+			t.Fatal(err)
+		}
+		other, err := flight.NewFlier(w.m).Fly(&w.lets[i])
+		if err != nil {
+			t.Fatal(err)
+		}
+		if track.Last != other.Last || track.End != other.End || track.Work != other.Work || len(track.Phases) != len(other.Phases) {
+			t.Fatalf("throw %d ends at %v, %g s, alone at %v, %g s", i, track.Last, track.End, other.Last, other.End)
+		}
+		for _, share := range []float64{0.1, 0.5, 0.9} {
+			if at := share * track.End; track.At(at) != other.At(at) {
+				t.Fatalf("throw %d at %g s: %v, alone %v", i, at, track.At(at), other.At(at))
+			}
+		}
 	}
 }

@@ -57,10 +57,17 @@ func endSurface(t *flight.Track) string {
 	return ""
 }
 
-// wayNodes is the order of the quadrature of a way over one integration step,
-// along which the speed is smooth: it is exact to degree 9, where the step's own
-// error, of which no more than the tolerance is left, is of degree 6.
-const wayNodes = 5
+const (
+	// wayNodes is the order of the quadrature of a way. It is exact to degree 9.
+	wayNodes = 5
+	// waySpread is the ratio of the greatest to the least speed up to which a
+	// stretch is taken at once: the next term of the series of a speed that
+	// changes by so much is below 1e-9 of it. Else it is halved.
+	waySpread = 1.3
+	// wayHalves is how often, at most: of a body that turns back, some 1e-5 of
+	// the way of one integration step is left to chance.
+	wayHalves = 8
+)
 
 // wayAt and wayWeight are the nodes on [0, 1] and the weights of the rule of
 // Gauss and Legendre.
@@ -74,14 +81,24 @@ func wayOf(t *flight.Track, p *flight.Phase) float64 {
 	sum := 0.0
 	for k := range p.Steps() {
 		t0, t1 := p.Step(k)
-		part := 0.0
-		for i, x := range wayAt {
-			v := t.Seen(p, k, t0+(t1-t0)*x).Vel
-			part += wayWeight[i] * math.Sqrt(r3.Norm2(v))
-		}
-		sum += (t1 - t0) * part
+		sum += wayIn(t, p, k, t0, t1, wayHalves)
 	}
 	return sum
+}
+
+// wayIn is the way from t0 to t1 (s) in an integration step.
+func wayIn(t *flight.Track, p *flight.Phase, k int, t0, t1 float64, halves int) float64 {
+	part, least, most := 0.0, math.Inf(1), 0.0
+	for i, x := range wayAt {
+		v := math.Sqrt(r3.Norm2(t.Seen(p, k, t0+(t1-t0)*x).Vel))
+		part += wayWeight[i] * v
+		least, most = min(least, v), max(most, v)
+	}
+	if most <= waySpread*least || halves == 0 {
+		return (t1 - t0) * part
+	}
+	mid := t0 + (t1-t0)/2
+	return wayIn(t, p, k, t0, mid, halves-1) + wayIn(t, p, k, mid, t1, halves-1)
 }
 
 // localAt gives the state of a track in habitat components.
