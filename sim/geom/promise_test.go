@@ -49,7 +49,7 @@ func TestPromisesHold(t *testing.T) {
 		}
 		v, along := r3.Scale(8*rng.Float64(), unit()), unit()
 		across := r3.Unit(r3.Cross(along, unit()))
-		acc, limit := 12*rng.Float64(), 0.1+2*rng.Float64()
+		acc, limit := 12*rng.Float64()*float64(rng.IntN(2)), 0.1+2*rng.Float64()
 		way := spun(p, v, along, across, acc, 0.1+4*rng.Float64())
 		clear := in.TimeBeside(p, v, acc, limit, &watch)
 		within := in.TimeWithin(p, v, acc, limit, thin)
