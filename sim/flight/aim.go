@@ -45,7 +45,7 @@ func (g *apart) guess(t float64, y, dy []float64) float64 {
 	time := falls(gap, rate, fall)
 	for k := 0; k < mends && rate < fall*time && time < math.MaxFloat32; k++ {
 		at := r3.Add(s.Pos, r3.Scale(time, r3.Add(s.Vel, r3.Scale(time/2, acc))))
-		time = max(0, time+g.of(at)/(fall*time-rate))
+		time = max(0, time+(g.f.m.Interior.Dist(at)-g.f.wide)/(fall*time-rate))
 	}
 	return time
 }
