@@ -17,7 +17,7 @@ const overshoot = 0.01
 // Aim implements [integrator.Aimed]: the last steps before a contact share the
 // way evenly, and the last one ends shortly after it.
 func (g *apart) Aim(t float64, y, dy []float64, next float64) float64 {
-	if t+aims*next < g.due {
+	if !g.touch || t+aims*next < g.due {
 		return math.Inf(1)
 	}
 	left := g.guess(t, y, dy)

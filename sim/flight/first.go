@@ -31,5 +31,8 @@ func (f *Flier) firstStep() float64 {
 	for range 2 {
 		h = scale * math.Exp(0.2*math.Log((s.RelTol+s.VelTol/(acc*h))/firstShare))
 	}
+	if !(h >= 0 && h <= math.MaxFloat64) {
+		return 0 // beyond the range of numbers
+	}
 	return h
 }

@@ -85,7 +85,10 @@ const spinLength = 0.1
 // computed.
 func (f *Flier) Fly(let *Let) (*Track, error) {
 	t := &Track{}
-	return t, f.FlyAgain(t, let)
+	if err := f.FlyAgain(t, let); err != nil {
+		return nil, err
+	}
+	return t, nil
 }
 
 // FlyAgain is [Flier.Fly] with a track that is no longer wanted, the space of
