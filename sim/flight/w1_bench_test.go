@@ -47,11 +47,12 @@ func rowsOf(t testing.TB, path string) []map[string]float64 {
 }
 
 // throws reads the workload, to be flown at a relative tolerance, and the same
-// in m and m/s.
-func throws(t testing.TB, tol float64) *workload {
+// in m and m/s, in a spin that may change.
+func throws(t testing.TB, tol float64, changes ...frame.Change) *workload {
 	t.Helper()
 	in := ring(30, math.Sqrt(0.5*9.80665/30))
 	in.Air = air.Air{Density: 1.2041, Viscosity: 1.813e-5}
+	in.Habitat.Changes = changes
 	in.Solver.RelTol, in.Solver.PosTol, in.Solver.VelTol = tol, tol, tol
 	for i, v := range rowsOf(t, "../../testdata/reference/w1/throws.csv") {
 		name := fmt.Sprint("w", i)
