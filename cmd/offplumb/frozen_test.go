@@ -24,11 +24,21 @@ const frozenDir = "../../testdata/frozen"
 
 // Frozen numbers may differ by this share of them: 1000 times the tolerance
 // of a step, far less than what anyone designs to. What is 0 but for rounding
-// is held to the second, in the column's unit.
+// is held to the second, in the column's unit; a small angle comes of a cosine
+// near 1, whose rounding of 1e-16 is 1e-6 deg, and is held to the third.
 const (
 	frozenRelative = 1e-6
 	frozenAbsolute = 1e-9
+	frozenDegrees  = 1e-5
 )
+
+// loose says which columns are not held: prose, whose words may change, and
+// what names one of several equals: the time of an approach that lasts, and the flight that is
+// the worst of a cell where another comes from the other side.
+func loose(file, column string) bool {
+	return column == "story" || file == "clearance.csv" && column == "time_s" ||
+		strings.HasPrefix(filepath.ToSlash(file), "maps/") && strings.HasPrefix(column, "from")
+}
 
 // TestFrozen runs the scenarios of testdata/frozen and wants their tables as
 // they were: each file, row and column that is frozen, with its numbers. New
@@ -58,7 +68,7 @@ func TestFrozen(t *testing.T) {
 					t.Errorf("%v: go test ./cmd/offplumb -run Frozen -update writes the tables of a new scenario", err)
 					continue
 				}
-				for _, fault := range thawed(records(t, want), records(t, got)) {
+				for _, fault := range thawed(name, records(t, want), records(t, got)) {
 					t.Errorf("%s: %s", name, fault)
 				}
 			}
@@ -106,7 +116,7 @@ func records(t *testing.T, data []byte) [][]string {
 }
 
 // thawed tells where a table is not what it was.
-func thawed(want, got [][]string) (out []string) {
+func thawed(file string, want, got [][]string) (out []string) {
 	if len(got) != len(want) {
 		return []string{strconv.Itoa(len(got)-1) + " rows, frozen are " + strconv.Itoa(len(want)-1)}
 	}
@@ -116,11 +126,11 @@ func thawed(want, got [][]string) (out []string) {
 			out = append(out, "no column "+column)
 			continue
 		}
-		if column == "story" { // prose: its words may change
+		if loose(file, column) {
 			continue
 		}
 		for r := range want[1:] {
-			if w, g := want[r+1][i], got[r+1][at]; !alike(w, g) {
+			if w, g := want[r+1][i], got[r+1][at]; !alike(column, w, g) {
 				out = append(out, "row "+strconv.Itoa(r+1)+", "+column+": "+g+", frozen is "+w)
 			}
 		}
@@ -128,13 +138,17 @@ func thawed(want, got [][]string) (out []string) {
 	return out
 }
 
-func alike(a, b string) bool {
+func alike(column, a, b string) bool {
 	x, err := strconv.ParseFloat(a, 64)
 	y, err2 := strconv.ParseFloat(b, 64)
 	if err != nil || err2 != nil {
 		return a == b
 	}
-	return math.Abs(x-y) <= frozenAbsolute+frozenRelative*math.Abs(x)
+	floor := frozenAbsolute
+	if strings.HasSuffix(column, "_deg") {
+		floor = frozenDegrees
+	}
+	return math.Abs(x-y) <= floor+frozenRelative*math.Abs(x)
 }
 
 // TestFrozenNotices: a difference of each sort is told, and a new column is
@@ -154,7 +168,7 @@ func TestFrozenNotices(t *testing.T) {
 		{"a column", [][]string{{"release", "story"}, {"a", "x"}, {"b", "y"}}, 1},
 		{"a row", [][]string{{"release", "time_s", "story"}, {"a", "1.5", "x"}}, 1},
 	} {
-		if faults := thawed(want, c.got); len(faults) != c.bad {
+		if faults := thawed("landings.csv", want, c.got); len(faults) != c.bad {
 			t.Errorf("%s: %q", c.what, faults)
 		}
 	}
