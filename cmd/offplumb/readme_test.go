@@ -135,7 +135,8 @@ func TestReadmeFormatPage(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	same(t, formatPage, []byte(generated(t, string(src), "reference", scenarios.Reference())))
+	want := generated(t, string(src), "reference", scenarios.Reference())
+	same(t, formatPage, []byte(generated(t, want, "units", scenarios.Units())))
 }
 
 // same holds a file against what it should be, or rewrites it.
