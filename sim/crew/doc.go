@@ -19,6 +19,5 @@
 //
 //   - Place is continuous over the joints of legs, and velocity too unless a
 //     ramp is 0.
-//   - The work of the support is the change of energy in the inertial frame.
 //   - At rest on a deck apparent gravity is w^2 R along the radius.
 package crew
