@@ -30,6 +30,9 @@ var landingColumns = []column[Landing]{
 	{key: "uniform_time", unit: second, meaning: "duration of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Time) }},
 	{key: "uniform_offset", unit: metre, meaning: "deck offset of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Offset) }},
 	{key: "uniform_speed", unit: speedUnit, meaning: "speed at the end of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Speed) }},
+	{key: errorKey, unit: metre, meaning: "numerical error of the place and of the offsets: a bound, by a second computation; empty where the two touch different things, and without a landing", num: func(l *Landing) float64 { return l.Error.Place }},
+	{key: errorKey, unit: second, meaning: "numerical error of the time", num: func(l *Landing) float64 { return l.Error.Time }},
+	{key: errorKey, unit: speedUnit, meaning: "numerical error of speed and normal speed", num: func(l *Landing) float64 { return l.Error.Speed }},
 }
 
 // restColumns are those of rests.csv.

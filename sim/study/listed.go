@@ -37,10 +37,11 @@ func (j *Judged) Add(o Judged) {
 type RowFlier struct {
 	p     *Prepared
 	flier *flight.Flier
+	surer *surer
 }
 
 // RowFlier makes one; each worker has its own.
-func (p *Prepared) RowFlier() *RowFlier { return &RowFlier{p, flight.NewFlier(p.Model)} }
+func (p *Prepared) RowFlier() *RowFlier { return &RowFlier{p, flight.NewFlier(p.Model), newSurer(p.Model)} }
 
 // Fly flies a row and adds its verdicts to those of the limits.
 func (f *RowFlier) Fly(r *model.Release, verdicts []Judged) (Row, error) {
@@ -55,6 +56,7 @@ func (f *RowFlier) Fly(r *model.Release, verdicts []Judged) (Row, error) {
 	}
 	out := Row{Flown: true, Deck: let.Place.Deck, Outcome: Outcome{measure.Land(m, track), measure.EndOf(m, track), track.Work}}
 	out.Foot = footOf(m, &let)
+	f.surer.sure(&let, track, &out.Landing)
 	e := f.evidence(track, &out)
 	for i := range f.p.Limits {
 		if v, ok := f.p.Limits[i].JudgeRelease(r.Name, e); ok {
