@@ -178,7 +178,7 @@ func landingFacts(l *measure.Landing) []page.Fact {
 	if !math.IsNaN(l.Energy) {
 		out = append(out, page.Fact{Name: "With energy", Value: withUnit(l.Energy, "J")})
 	}
-	return out
+	return append(out, errorFacts(l)...)
 }
 
 func restFacts(r *measure.Rest) []page.Fact {

@@ -167,4 +167,5 @@ var verdictColumns = []column[Verdict]{
 	{key: "at", unit: second, meaning: "time of the value judged, from the release or the start of the path", num: func(v *Verdict) float64 { return v.At }},
 	{key: "source", meaning: "where the limit comes from, in the project's words", text: func(v *Verdict) string { return v.Source }},
 	{key: "found", meaning: "what was found, in words, where it is no number", text: func(v *Verdict) string { return v.Found }},
+	{key: "note", meaning: "what makes the verdict doubtful: the numerical error of a landing", text: func(v *Verdict) string { return v.Note() }},
 }

@@ -27,7 +27,9 @@ type Judged struct {
 // Add takes a verdict on a row behind those before. Of verdicts as bad the first
 // stays.
 func (j *Judged) Add(o Judged) {
-	if o.Any && (!j.Any || o.Verdict.Worse(&j.Verdict)) {
+	if o.Any && j.Any {
+		j.Verdict.Join(&o.Verdict)
+	} else if o.Any {
 		*j = o
 	}
 }
@@ -41,7 +43,9 @@ type RowFlier struct {
 }
 
 // RowFlier makes one; each worker has its own.
-func (p *Prepared) RowFlier() *RowFlier { return &RowFlier{p, flight.NewFlier(p.Model), newSurer(p.Model)} }
+func (p *Prepared) RowFlier() *RowFlier {
+	return &RowFlier{p, flight.NewFlier(p.Model), newSurer(p.Model)}
+}
 
 // Fly flies a row and adds its verdicts to those of the limits.
 func (f *RowFlier) Fly(r *model.Release, verdicts []Judged) (Row, error) {
