@@ -50,6 +50,12 @@ const (
 // dT is the error of the place, and (2 |omega| |v| + (omega^2 + |alpha|) |q|) dT
 // that of the velocity, with roundings.
 func Rounding(m *model.Model, t *flight.Track, l *Landing) Numerical {
+	return off(m, t, l, 0, 0)
+}
+
+// off is what roundings, and errors dq (m) and dv (m/s) beside them, do to a
+// landing.
+func off(m *model.Model, t *flight.Track, l *Landing, dq, dv float64) Numerical {
 	hit := t.Landing()
 	if hit == nil {
 		return unknown()
@@ -58,13 +64,13 @@ func Rounding(m *model.Model, t *flight.Track, l *Landing) Numerical {
 	q, u := r3.Norm(hit.State.Pos), r3.Norm(hit.State.Vel)
 	turned := omega * (math.Abs(t.Begin) + hit.Time)
 	rough := roundings * epsilon
-	dq := rough * (r3.Norm(t.First.Pos) + r3.Norm(t.First.Vel)*hit.Time + q*(1+turned))
+	dq += rough * (r3.Norm(t.First.Pos) + r3.Norm(t.First.Vel)*hit.Time + q*(1+turned))
 	dt := 0.0
 	if hit.Time > 0 {
 		dt = lookRoundings*epsilon*(hit.Time+firstStep) + math.Min(dq/l.NormalSpeed, hit.Time)
 	}
 	return Numerical{Place: wider(m, t, l) * (dq + u*dt), Time: dt,
-		Speed: rough*(r3.Norm(t.First.Vel)+(u+omega*q)*(1+turned)) + (2*omega*u+(omega*omega+alpha)*q)*dt}
+		Speed: dv + omega*dq + rough*(r3.Norm(t.First.Vel)+(u+omega*q)*(1+turned)) + (2*omega*u+(omega*omega+alpha)*q)*dt}
 }
 
 // wider is by how much longer a way along the ground beneath the release is
@@ -77,13 +83,15 @@ func wider(m *model.Model, t *flight.Track, l *Landing) float64 {
 
 // Safety is what the difference of a landing from the one at tolerances that
 // are a hundred times as loose is multiplied by. The difference is about the
-// error of the looser one, so the error proper, in proportion to the
-// tolerances, is some hundredth of it; but it falls more slowly where a flight
-// takes a few steps only. A test tries it at tolerances from 1e-5 to 1e-10.
-const Safety = 2
+// error of the looser one, so the error proper, in proportion to the tolerances,
+// is some hundredth of it: ten times that is taken. A test tries it at tolerances
+// from 1e-5 to 1e-10.
+const Safety = 0.1
 
 // Between is the numerical error of a landing by the same release flown at
-// looser tolerances: the difference of the two, and roundings.
+// looser tolerances: the difference of the two, roundings, and what the
+// tolerances allow a single step, so that two flights of the same few steps do
+// not pass for exact.
 func Between(m *model.Model, fine, rough *flight.Track, l *Landing) Numerical {
 	a, b := fine.Landing(), rough.Landing()
 	switch {
@@ -96,7 +104,7 @@ func Between(m *model.Model, fine, rough *flight.Track, l *Landing) Numerical {
 		}
 		return out
 	}
-	out := Rounding(m, fine, l)
+	out := allowed(m, fine, l)
 	dv := r3.Norm(r3.Sub(a.State.Vel, b.State.Vel))
 	dn := r3.Norm(r3.Sub(a.Contact.Normal, b.Contact.Normal))
 	// The three are off together, and each difference may vanish by accident.
@@ -106,6 +114,17 @@ func Between(m *model.Model, fine, rough *flight.Track, l *Landing) Numerical {
 	out.Time += Safety * time
 	out.Speed += Safety * (dv + l.Speed*dn)
 	return out
+}
+
+// allowed is the numerical error of a landing by what the tolerances allow a
+// step that ends with it: shares of the departure from uniform motion.
+func allowed(m *model.Model, t *flight.Track, l *Landing) Numerical {
+	hit := t.Landing()
+	a := m.Motion.At(t.Begin + hit.Time)
+	end := a.ToInertial(hit.State)
+	s := &m.Solver
+	way := r3.Norm(r3.Sub(end.Pos, r3.Add(t.First.Pos, r3.Scale(hit.Time, t.First.Vel))))
+	return off(m, t, l, s.RelTol*way+s.PosTol, s.RelTol*r3.Norm(r3.Sub(end.Vel, t.First.Vel))+s.VelTol)
 }
 
 // nothing is touched.

@@ -19,7 +19,8 @@ const (
 
 // surer estimates the numerical error of landings, one after another.
 type surer struct {
-	m     *model.Model // with loose tolerances
+	m     *model.Model
+	loose *model.Model // with loose tolerances
 	flier *flight.Flier
 	track flight.Track // the last one's
 }
@@ -29,7 +30,7 @@ func newSurer(m *model.Model) *surer {
 	s := &loose.Solver
 	s.RelTol = math.Max(s.RelTol, math.Min(looser*s.RelTol, loosest))
 	s.PosTol, s.VelTol = looser*s.PosTol, looser*s.VelTol
-	return &surer{m: &loose, flier: flight.NewFlier(&loose)}
+	return &surer{m: m, loose: &loose, flier: flight.NewFlier(&loose)}
 }
 
 // sure puts the numerical error of a landing into it. A flight without forces
@@ -47,7 +48,7 @@ func (s *surer) sure(let *flight.Let, t *flight.Track, l *measure.Landing) {
 	r.Until = model.Until{Kind: model.UntilLanding}
 	again := *let
 	again.Release = &r
-	s.m.Solver.MaxTime = l.Time*(1+laterShare) + later
+	s.loose.Solver.MaxTime = l.Time*(1+laterShare) + later
 	if s.flier.FlyAgain(&s.track, &again) == nil {
 		l.Error = measure.Between(s.m, t, &s.track, l)
 	}

@@ -12,7 +12,6 @@ import (
 	"offplumb/sim/air"
 	"offplumb/sim/flight"
 	"offplumb/sim/frame"
-	"offplumb/sim/geom"
 	"offplumb/sim/measure"
 	"offplumb/sim/model"
 )
@@ -26,13 +25,18 @@ type truth struct {
 type cover struct {
 	what        string
 	all, within int
+	unsure      int     // of which it is said that they are unsure
 	worst       float64 // error by its estimate
 }
 
-// add holds a landing to the truth, which is known to slack, a share of it.
+// add holds a landing to the truth.
 func (c *cover) add(l *measure.Landing, want truth) {
-	c.all++
 	e := &l.Error
+	if e.Unsure != "" {
+		c.unsure++
+		return
+	}
+	c.all++
 	share := math.Max(math.Hypot(l.Offset-want.offset, l.OffsetAxial-want.axial)/e.Place,
 		math.Max(math.Abs(l.Time-want.time)/e.Time, math.Abs(l.Speed-want.speed)/e.Speed))
 	if share <= 1 {
@@ -48,7 +52,7 @@ const mostShare = 0.99
 
 func (c *cover) hold(t *testing.T) {
 	t.Helper()
-	if t.Logf("%s: %d of %d within, worst %.3g", c.what, c.within, c.all, c.worst); c.all == 0 || float64(c.within) < mostShare*float64(c.all) {
+	if t.Logf("%s: %d of %d within, worst %.3g; %d unsure", c.what, c.within, c.all, c.worst, c.unsure); c.all <= 4*c.unsure || float64(c.within) < mostShare*float64(c.all) {
 		t.Errorf("%s: %d of %d landings within their numerical error, the worst %.3g times it", c.what, c.within, c.all, c.worst)
 	}
 }
@@ -76,7 +80,7 @@ func flown(t *testing.T, in model.Model, setup flight.Setup) (*flight.Let, *meas
 		t.Fatal(err)
 	}
 	s := newSurer(m)
-	s.flier = flight.NewFlierWith(s.m, setup)
+	s.flier = flight.NewFlierWith(s.loose, setup)
 	l := measure.Land(m, track)
 	s.sure(&p.Lets[0], track, &l)
 	return &p.Lets[0], &l
@@ -135,7 +139,7 @@ func straightTruth(let *flight.Let, radius, spin float64) truth {
 	fx, _ := px.Float64()
 	fy, _ := py.Float64()
 	turn, _ := mul(num(spin), time).Float64()
-	round := math.Atan2(fy, fx) - turn // a line goes less than half way round
+	round := math.Atan2(fy, fx) - turn                  // a line goes less than half way round
 	if math.Abs(round) < 1e-3 && math.Abs(turn) < 0.1 { // the cancellation, by a series in 200 bits
 		round = tinyAngle(py, px, mul(num(spin), time))
 	}
@@ -170,7 +174,7 @@ func (stokesLaw) CdRe(float64) float64 { return 24 }
 // small spheres, whose drag is proportional to the speed: with z = x + iy in
 // the inertial frame and k the drag for each mass and speed,
 //
-//	z” = -k (z' - i omega z), so z = A e^(p t) + B e^(q t), p, q = (-k +- sqrt(k^2 + 4 i k omega))/2.
+//	z'' = -k (z' - i omega z), so z = A e^(p t) + B e^(q t), p, q = (-k +- sqrt(k^2 + 4 i k omega))/2.
 func TestErrorUnderStokes(t *testing.T) {
 	for _, rel := range tolerances {
 		rng := rand.New(rand.NewPCG(5, 2))
@@ -215,61 +219,84 @@ func stokesTruth(let *flight.Let, radius, spin, k, near float64) truth {
 		axial: -let.Local.Vel.Z * math.Expm1(-k*time) / k, speed: math.Hypot(cmplx.Abs(u), vz)}
 }
 
-// TestErrorOfBeads tries the numerical error of landings after a slide: a bead
+// TestErrorOfBeads tries the numerical error of landings after a slide: a ball
 // on the antispinward wall of a spoke, beside the radius by b, with friction mu,
-// from rest at x0 to the end of the wall,
+// from rest at x0 to the top of a box that reaches into the spoke,
 //
-//	x = mu b + A e^(p t) + B e^(q t), p, q = omega (-mu +- sqrt(1 + mu^2)),
-//
-// and from there straight to the floor.
+//	x = mu b + A e^(p t) + B e^(q t), p, q = omega (-mu +- sqrt(1 + mu^2)).
 func TestErrorOfBeads(t *testing.T) {
+	const width, top = 1.6, 14.5
 	for _, rel := range tolerances {
 		rng := rand.New(rand.NewPCG(5, 3))
 		c := cover{what: fmt.Sprintf("beads at %g (seed 5 3)", rel)}
-		for range 60 {
-			mu, spin, size := 0.6*rng.Float64(), 0.2+0.8*rng.Float64(), 0.0
+		for range 100 {
+			mu, spin, size := 0.6*rng.Float64(), 0.2+0.8*rng.Float64(), 0.06+0.1*rng.Float64()
 			in := ring(18, spin, rel, model.Body{Name: "b", Mass: 1, Diameter: size, Friction: mu})
 			in.Habitat.CeilingRadius, in.Habitat.Length = 15, 10
 			in.Rooms = []model.Room{{Name: "hub", FloorRadius: 3, Length: 10}}
-			in.Passages = []model.Passage{{Name: "spoke", FromRadius: 3, ToRadius: 15, Width: 1.6}}
-			x0, beside := 5+8*rng.Float64(), 0.8-size/2
+			in.Passages = []model.Passage{{Name: "spoke", FromRadius: 3, ToRadius: 15, Width: width}}
+			in.Fixtures = []model.Fixture{{Name: "box", Kind: model.Box, Size: [3]float64{width - 0.04, 1, 18 - top}, Friction: model.None, Restitution: model.None}}
+			x0, beside := 5+8*rng.Float64(), (width-size)/2
 			in.Releases = []model.Release{{Name: "bead", Body: "b", Until: model.Until{Kind: model.UntilLanding},
 				At: model.Station{HasRadius: true, Radius: math.Hypot(x0, beside), Spinward: model.Arc{Value: -math.Atan2(beside, x0), IsAngle: true}}}}
 			_, l := flown(t, in, flight.Setup{})
-			w:= beadTruth(spin, mu, beside, x0, math.Sqrt(15*15-0.8*0.8), 18, size/2)
-			if c.all<5 {t.Logf("%v mu %v x0 %v: %v %v %v %v %v, want %+v err %+v",spin,mu,x0,l.Surface,l.Outcome,l.Time,l.Offset,l.Speed,w,l.Error) }
-			c.add(l, beadTruth(spin, mu, beside, x0, math.Sqrt(15*15-0.8*0.8), 18, size/2))
+			if l.Surface != "box top" {
+				t.Fatalf("%s: it lands on %q", c.what, l.Surface)
+			}
+			c.add(l, beadTruth(spin, mu, beside, x0, top-size/2, 18))
 		}
 		c.hold(t)
 	}
 }
 
-func beadTruth(spin, mu, beside, x0, exit, floor, a float64) truth {
+func beadTruth(spin, mu, beside, x0, end, floor float64) truth {
 	p, q := spin*(-mu+math.Sqrt(1+mu*mu)), spin*(-mu-math.Sqrt(1+mu*mu))
 	start := x0 - mu*beside
 	big, small := -start*q/(p-q), start*p/(p-q)
-	at := func(t float64) (x, v float64) {
-		return mu*beside + big*math.Exp(p*t) + small*math.Exp(q*t), big*p*math.Exp(p*t) + small*q*math.Exp(q*t)
-	}
-	slid := math.Log((exit-mu*beside)/big) / p // without the part that dies away
+	time, v := math.Log((end-mu*beside)/big)/p, 0.0 // without the part that dies away
 	for range 30 {
-		x, v := at(slid)
-		slid -= (x - exit) / v
+		grown, gone := big*math.Exp(p*time), small*math.Exp(q*time)
+		v = p*grown + q*gone
+		time -= (mu*beside + grown + gone - end) / v
 	}
-	_, v := at(slid)
-	// The inertial frame that coincides with the habitat at the exit.
-	pos, vel := r3.Vec{X: exit, Y: -beside}, r3.Vec{X: v + spin*beside, Y: spin * exit}
-	b, rim := r3.Dot(pos, vel), floor-a
-	fly := (-b + math.Sqrt(b*b+r3.Norm2(vel)*(rim*rim-r3.Norm2(pos)))) / r3.Norm2(vel)
-	end := r3.Add(pos, r3.Scale(fly, vel))
-	turn := spin * fly
-	u := r3.Sub(vel, r3.Cross(r3.Vec{Z: spin}, end))
-	phi := frame.Unwind(math.Atan2(end.Y, end.X), turn) - turn
-	return truth{time: slid + fly, offset: floor * (phi - math.Atan2(-beside, x0)), speed: r3.Norm(u)}
+	return truth{time: time, offset: floor * (math.Atan2(beside, x0) - math.Atan2(beside, end)), speed: v}
 }
 
-// TestUnsureTouch tries a throw that grazes the edge of a box: the two
-// computations touch different things, or the same with a great error.
+// TestUnsureTouch tries a throw in air that comes down on the very edge of a
+// box, found by halving: there the looser computation goes by, and both
+// surfaces are named.
 func TestUnsureTouch(t *testing.T) {
-	_ = geom.Patch{}
+	throw := func(up float64) *measure.Landing {
+		in := ring(18, 0.5, 1e-9, model.Body{Name: "b", Mass: 0.05, Diameter: 0.06})
+		in.Air = air.Air{Density: 1.2, Viscosity: 1.8e-5}
+		in.Fixtures = []model.Fixture{{Name: "box", Kind: model.Box, At: model.Station{Spinward: model.Arc{Value: -3}}, Size: [3]float64{1, 1, 1}, Friction: model.None, Restitution: model.None}}
+		thrown(&in, 1.5, r3.Vec{X: -3, Z: up})
+		_, l := flown(t, in, flight.Setup{})
+		return l
+	}
+	low, high := 0.5, 5.0 // into the box, and over it
+	beyond := throw(high).Surface
+	for range 60 {
+		if mid := (low + high) / 2; throw(mid).Surface == beyond {
+			high = mid
+		} else {
+			low = mid
+		}
+	}
+	short, over := throw(low), throw(high)
+	if short.Surface == over.Surface {
+		t.Fatalf("both on %s", over.Surface)
+	}
+	said := 0
+	for _, l := range []*measure.Landing{short, over} {
+		if l.Error.Unsure == "" {
+			continue
+		}
+		if said++; l.Error.Unsure == l.Surface || !math.IsNaN(l.Error.Place) || !math.IsNaN(l.Error.Time) {
+			t.Errorf("on %s: %+v", l.Surface, l.Error)
+		}
+	}
+	if said == 0 {
+		t.Errorf("on %s or %s, at %v m/s: neither is unsure", short.Surface, over.Surface, high)
+	}
 }
