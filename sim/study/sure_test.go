@@ -269,7 +269,7 @@ func TestUnsureTouch(t *testing.T) {
 	throw := func(up float64) *measure.Landing {
 		in := ring(18, 0.5, 1e-9, model.Body{Name: "b", Mass: 0.05, Diameter: 0.06})
 		in.Air = air.Air{Density: 1.2, Viscosity: 1.8e-5}
-		in.Fixtures = []model.Fixture{{Name: "box", Kind: model.Box, At: model.Station{Spinward: model.Arc{Value: -3}}, Size: [3]float64{1, 1, 1}, Friction: model.None, Restitution: model.None}}
+		in.Fixtures = []model.Fixture{{Name: "box", Kind: model.Box, At: model.Station{Spinward: model.Arc{Value: -1.5}}, Size: [3]float64{1, 1, 1}, Friction: model.None, Restitution: model.None}}
 		thrown(&in, 1.5, r3.Vec{X: -3, Z: up})
 		_, l := flown(t, in, flight.Setup{})
 		return l
