@@ -33,6 +33,10 @@ var statements = []statement{
 		how: "Free flight is integrated by the adaptive Dormand-Prince 5(4) pair, as a departure from uniform motion; without forces it is exact. Contacts are located on its continuous extension.",
 		sources: []string{"Dormand & Prince, A family of embedded Runge-Kutta formulae, J. Comp. Appl. Math. 6 (1980) 19-26 (from memory)",
 			"Hairer, Norsett & Wanner, Solving Ordinary Differential Equations I, 2nd ed. 1993, section II.6 (from memory)"}},
+	{topic: "Numerical error", used: (*job).flew,
+		how: "Each release is flown again to its landing at a hundred times the tolerances. A tenth of the difference, what the tolerances allow a step, and roundings bound the error of the landing; " +
+			"without forces roundings alone. Sensitivities are central differences.",
+		holds: "The numerical error is an estimate, tried on answers that are known, and of landings only: not of resting places, and not of what the models leave out."},
 	{topic: "Bodies and air", used: (*job).flew,
 		how: "The drag of a sphere, relative to air that turns with the habitat. Density and viscosity are those given, or of dry air at the pressure and temperature.",
 		holds: "A body is a sphere without lift and without spin of its own in the air. Drag is that of a smooth sphere (Clift & Gauvin), to about 6 % below a Reynolds number of 3e5, " +
