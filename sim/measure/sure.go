@@ -93,11 +93,12 @@ const Safety = 0.1
 // tolerances allow a single step, so that two flights of the same few steps do
 // not pass for exact.
 func Between(m *model.Model, fine, rough *flight.Track, l *Landing) Numerical {
-	a, b := fine.Landing(), rough.Landing()
-	switch {
-	case a == nil && b == nil:
+	a := fine.Landing()
+	if a == nil {
 		return unknown()
-	case b == nil || a == nil || a.Surface != b.Surface:
+	}
+	b := counterpart(rough, a.Surface)
+	if b == nil || a.Surface != b.Surface {
 		out := unknown()
 		if out.Unsure = nothing; b != nil {
 			out.Unsure = b.Surface
@@ -109,11 +110,36 @@ func Between(m *model.Model, fine, rough *flight.Track, l *Landing) Numerical {
 	dn := r3.Norm(r3.Sub(a.Contact.Normal, b.Contact.Normal))
 	// The three are off together, and each difference may vanish by accident.
 	way, time := r3.Norm(r3.Sub(a.State.Pos, b.State.Pos)), math.Abs(a.Time-b.Time)
-	way, time = math.Max(way, l.Speed*time), math.Max(time, way/l.Speed)
+	if l.Speed > 0 {
+		way, time = math.Max(way, l.Speed*time), math.Max(time, way/l.Speed)
+	}
 	out.Place += Safety * wider(m, fine, l) * way
 	out.Time += Safety * time
 	out.Speed += Safety * (dv + l.Speed*dn)
 	return out
+}
+
+// counterpart is the first touch of a looser flight that counts beside a landing
+// on a surface: what slides off an edge at loose tolerances may touch what it
+// has slid on once more, and go on. It is nil where there is none.
+func counterpart(rough *flight.Track, surface string) *flight.Impact {
+	for i := range rough.Impacts {
+		b := &rough.Impacts[i]
+		if b.Surface == surface || !slidOn(rough, b.Surface, b.Time) {
+			return b
+		}
+	}
+	return nil
+}
+
+// slidOn says whether a body has slid or rolled on a surface before a time, s.
+func slidOn(t *flight.Track, surface string, time float64) bool {
+	for i := range t.Phases {
+		if p := &t.Phases[i]; p.Kind != flight.Free && p.T0 < time && p.Surface == surface {
+			return true
+		}
+	}
+	return false
 }
 
 // allowed is the numerical error of a landing by what the tolerances allow a

@@ -40,12 +40,14 @@ func (s *surer) sure(let *flight.Let, t *flight.Track, l *measure.Landing) {
 	switch {
 	case l.Outcome != flight.Landed:
 		return
-	case straight(s.m, t, l.Time):
+	case !slid(t, l.Time) && flight.NewForces(s.m, t.Body, nil).None():
 		l.Error = measure.Rounding(s.m, t, l)
 		return
 	}
 	r := *let.Release
-	r.Until = model.Until{Kind: model.UntilLanding}
+	if r.Until = (model.Until{Kind: model.UntilLanding}); slid(t, l.Time) {
+		r.Until.Kind = model.UntilRest // what it slid off it may touch once more
+	}
 	again := *let
 	again.Release = &r
 	s.loose.Solver.MaxTime = l.Time*(1+laterShare) + later
@@ -54,12 +56,12 @@ func (s *surer) sure(let *flight.Let, t *flight.Track, l *measure.Landing) {
 	}
 }
 
-// straight says whether a release flew without forces up to a time, s.
-func straight(m *model.Model, t *flight.Track, time float64) bool {
+// slid says whether a body was in contact before a time, s.
+func slid(t *flight.Track, time float64) bool {
 	for i := range t.Phases {
 		if p := &t.Phases[i]; p.Kind != flight.Free && p.T0 < time {
-			return false
+			return true
 		}
 	}
-	return flight.NewForces(m, t.Body, nil).None()
+	return false
 }
