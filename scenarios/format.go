@@ -92,15 +92,15 @@ var body = &section{name: "a body", doc: "What is released: a sphere.",
 var throwKeys = &section{name: "a throw", doc: "A speed and its direction, relative to the habitat.",
 	keys: []key{
 		qty("speed", speed, notNegative, "relative to the habitat").need(),
-		qty("heading", angle, anything, "0 spinward, 90 deg toward +axial").or(`"0 deg"`),
-		qty("elevation", angle, span{low: -degrees(90), high: degrees(90)}, "above the deck").or(`"0 deg"`),
+		qty("heading", angle, anything, "0 spinward, 90 deg toward +axial; along a flat floor, over one").or(`"0 deg"`),
+		qty("elevation", angle, span{low: -degrees(90), high: degrees(90)}, "above the deck; from the plane of a flat floor, over one").or(`"0 deg"`),
 	}}
 
 var velocityKeys = &section{name: "a velocity", doc: "Relative to the habitat.",
 	keys: []key{
 		qty("spinward", speed, anything, "spinward").or(`"0 m/s"`),
 		qty("axial", speed, anything, "toward +axial").or(`"0 m/s"`),
-		qty("up", speed, anything, "toward the axis").or(`"0 m/s"`),
+		qty("up", speed, anything, "toward the axis; along the normal of a flat floor, over one").or(`"0 m/s"`),
 	}}
 
 var carriedKeys = &section{name: "a carried release", doc: "Let go by a crew member under way: it has the velocity of that point of the body.",

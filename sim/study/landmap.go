@@ -104,7 +104,7 @@ func (x *mapping) place(ctx context.Context, f *flight.Flier, n, k int) {
 			return
 		}
 		let := flight.Let{Release: &x.release, Body: x.body, Place: p,
-			Local: frame.State{Pos: p.Vec(), Vel: measure.LetVelocity(p, r3.Scale(x.of.Speed, v))}}
+			Local: frame.State{Pos: p.Vec(), Vel: measure.LetVelocity(x.m, p, r3.Scale(x.of.Speed, v))}}
 		slot := &x.slots[k*len(x.directions)+d]
 		if t, err := f.Fly(&let); err != nil {
 			*slot = measure.MapFlight{Fate: measure.ShotFailed, Why: err.Error()}
