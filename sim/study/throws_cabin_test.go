@@ -117,4 +117,3 @@ func pasted(t *testing.T, p *study.Prepared, from model.Station, start model.Sta
 		t.Errorf("pasted back it is %g m off the target", off)
 	}
 }
-
