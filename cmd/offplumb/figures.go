@@ -28,6 +28,7 @@ const (
 type drawing struct {
 	file, of, name string
 	make           func() (*plots.Figure, error)
+	asked          bool // by the scenario
 }
 
 // figures lists the figures of the run, in each of the formats asked for.
@@ -41,8 +42,8 @@ func (j *job) figures() ([]task, error) {
 		name := names.Name(j.Lets[i].Release.Name)
 		if r := &j.results[i]; j.tracked(i) {
 			all = append(all,
-				drawing{name + "-side", "side view", r.Landing.Release, func() (*plots.Figure, error) { return j.sideView(i) }},
-				drawing{name + "-inertial", "inertial view", r.Landing.Release, func() (*plots.Figure, error) { return j.inertialView(i) }})
+				drawing{file: name + "-side", of: "side view", name: r.Landing.Release, make: func() (*plots.Figure, error) { return j.sideView(i) }},
+				drawing{file: name + "-inertial", of: "inertial view", name: r.Landing.Release, make: func() (*plots.Figure, error) { return j.inertialView(i) }})
 		}
 	}
 	all = append(all, j.sharedFigures()...)

@@ -24,7 +24,7 @@ func (j *job) askedFigures() []drawing {
 		made := j.asked(f)
 		for n := range made {
 			d := &made[n]
-			d.file, d.name = file, f.Name
+			d.file, d.name, d.asked = file, f.Name, true
 			if n > 0 {
 				d.file = fmt.Sprintf("%s-%d", file, n+1)
 			}

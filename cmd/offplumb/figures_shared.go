@@ -30,11 +30,11 @@ func (j *job) sharedFigures() []drawing {
 			file = fmt.Sprintf("deflection-%d", n+1)
 		}
 		part := shown[n*seriesShown : min(len(shown), (n+1)*seriesShown)]
-		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart("", part) }})
+		out = append(out, drawing{file: file, of: "apparent deflection", name: "", make: func() (*plots.Figure, error) { return j.deflectionChart("", part) }})
 	}
 	var names table.Namer
 	for _, p := range j.plans() {
-		out = append(out, drawing{"plan-" + names.Name(p.ground.Name), "deck plan", p.ground.Name, func() (*plots.Figure, error) { return j.deckPlan(p.title(), p) }})
+		out = append(out, drawing{file: "plan-" + names.Name(p.ground.Name), of: "deck plan", name: p.ground.Name, make: func() (*plots.Figure, error) { return j.deckPlan(p.title(), p) }})
 	}
 	return out
 }

@@ -28,15 +28,15 @@ func mapFigures(j *job) []drawing {
 			d := &s.land.Decks[k]
 			base := file + "-" + decks.Name(d.Name)
 			if d.Landings > 0 {
-				out = append(out, drawing{base + "-landings", "landing map", name, func() (*plots.Figure, error) { return j.mapLandings(s, d) }})
+				out = append(out, drawing{file: base + "-landings", of: "landing map", name: name, make: func() (*plots.Figure, error) { return j.mapLandings(s, d) }})
 			}
-			out = append(out, drawing{base + "-worst", "landing map, worst", name, func() (*plots.Figure, error) { return j.mapWorst(s, d) }})
+			out = append(out, drawing{file: base + "-worst", of: "landing map, worst", name: name, make: func() (*plots.Figure, error) { return j.mapWorst(s, d) }})
 		}
 		var goals table.Namer
 		for g := range s.of.Goals {
 			base := file + "-reaches-" + goals.Name(s.of.Goals[g].Name)
 			if s.land.Goals[g].Count > 0 && s.land.Patches[0].Count() > 0 {
-				out = append(out, drawing{base, "landing map, reach", name, func() (*plots.Figure, error) { return j.mapReach(s, g) }})
+				out = append(out, drawing{file: base, of: "landing map, reach", name: name, make: func() (*plots.Figure, error) { return j.mapReach(s, g) }})
 			}
 		}
 	}

@@ -21,7 +21,7 @@ func scatterFigures(j *job) []drawing {
 		s := &j.scatters[i]
 		file := "scatter-" + names.Name(s.of.Name)
 		if s.cloud != nil && s.sum.Landed > 0 {
-			out = append(out, drawing{file, "scatter", s.of.Name, func() (*plots.Figure, error) { return j.scatterPlan(s) }})
+			out = append(out, drawing{file: file, of: "scatter", name: s.of.Name, make: func() (*plots.Figure, error) { return j.scatterPlan(s) }})
 		}
 	}
 	return out

@@ -41,7 +41,7 @@ func sweepFigures(j *job) []drawing {
 			if n > 0 {
 				name = fmt.Sprintf("%s-%d", file, n+1)
 			}
-			out = append(out, drawing{name, "sweep", s.Name, func() (*plots.Figure, error) { return plots.StackChart(part) }})
+			out = append(out, drawing{file: name, of: "sweep", name: s.Name, make: func() (*plots.Figure, error) { return plots.StackChart(part) }})
 		}
 	}
 	return out

@@ -227,8 +227,8 @@ func streamFigures(j *job) []drawing {
 	for i := range j.streams {
 		s := &j.streams[i]
 		for _, deck := range s.tally.decks() {
-			out = append(out, drawing{"list-" + names.Name(strings.TrimSuffix(s.of.File, ".csv")+" "+deck), "deck plan", s.of.File,
-				func() (*plots.Figure, error) { return j.streamPlan(s, deck) }})
+			out = append(out, drawing{file: "list-" + names.Name(strings.TrimSuffix(s.of.File, ".csv")+" "+deck), of: "release list", name: s.of.File,
+				make: func() (*plots.Figure, error) { return j.streamPlan(s, deck) }})
 		}
 	}
 	return out

@@ -28,7 +28,7 @@ func throwFigures(j *job) []drawing {
 			continue
 		}
 		if lines := drawnThrows(s); len(lines) > 0 {
-			out = append(out, drawing{file, "throws", name, func() (*plots.Figure, error) { return j.throwView(s, lines) }})
+			out = append(out, drawing{file: file, of: "throws", name: name, make: func() (*plots.Figure, error) { return j.throwView(s, lines) }})
 		}
 		if !s.Of.Table() {
 			continue
@@ -39,7 +39,7 @@ func throwFigures(j *job) []drawing {
 			if n > 0 {
 				card = fmt.Sprintf("%s-%d", card, n+1)
 			}
-			out = append(out, drawing{card, "throw table", name, func() (*plots.Figure, error) { return j.throwCard(s, part) }})
+			out = append(out, drawing{file: card, of: "throw table", name: name, make: func() (*plots.Figure, error) { return j.throwCard(s, part) }})
 		}
 	}
 	return out

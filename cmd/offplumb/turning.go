@@ -26,7 +26,7 @@ func turningFigures(j *job) []drawing {
 	if !j.model().Unsteady() {
 		return nil
 	}
-	return []drawing{{"spin", "spin", "", func() (*plots.Figure, error) { return j.spinChart() }}}
+	return []drawing{{file: "spin", of: "spin", make: func() (*plots.Figure, error) { return j.spinChart() }}}
 }
 
 // spinChart draws the spin and what it does on the floor against time.
