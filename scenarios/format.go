@@ -318,8 +318,8 @@ var output = &section{name: "the output", doc: "What is written.",
 var figure = &section{name: "a figure", doc: "A figure drawn on request: of some things together, or of a choice. A figure of kind side, deflection, plan or loads shows all that it is of in one; one of another kind is drawn for each.",
 	keys: []key{
 		title(),
-		texts("of", "release.NAME (also of a let-go series), path.NAME or study.NAME; * stands for anything; or a list").need(),
-		word("kind", "", "what is drawn: side: the side view; inertial: the view from outside; stack: both above one another, with a ruler of time; deflection: the apparent deflection; plan: the deck plan; loads: what a crew path does to the person; path: the crew path from the side; scatter, sweep, let_go: the figure of the study", figureKindNames()...).need(),
+		texts("of", "release.NAME (also of a let-go series), path.NAME, study.NAME or habitat; * stands for anything; or a list").need(),
+		word("kind", "", "what is drawn: side: the side view; inertial: the view from outside; stack: both above one another, with a ruler of time; deflection: the apparent deflection; plan: the deck plan; loads: what a crew path does to the person; path: the crew path from the side; scatter, sweep, let_go, throws, landing_map: the figures of the study; throw_table: the table to print; spin: how the habitat turns", figureKindNames()...).need(),
 	}}
 
 var scatter = &section{name: "a scatter", doc: "A release many times, its keys varied at random.",

@@ -73,23 +73,40 @@ func (j *job) asked(f *scenarios.Figure) (out []drawing) {
 	return out
 }
 
-// askedStudies are the usual figures of the studies that a figure is of.
+// askedStudies are the usual figures of the studies, or of the habitat, that a
+// figure is of.
 func (j *job) askedStudies(f *scenarios.Figure) (out []drawing) {
-	all := scatterFigures(j)
-	switch f.Kind {
-	case "sweep":
-		all = sweepFigures(j)
-	case "let_go":
-		all = j.studyFigures()
+	k, ok := studyKinds[f.Kind]
+	if !ok {
+		return nil
 	}
-	for _, name := range f.Studies {
+	all, names := k.all(j), f.Studies
+	if f.Kind == "spin" {
+		names = []string{""}
+	}
+	for _, name := range names {
 		for _, d := range all {
-			if d.name == name && d.of != "side view of a let-go series" {
+			if d.name == name && slices.Contains(k.of, d.of) {
 				out = append(out, d)
 			}
 		}
 	}
 	return out
+}
+
+// studyKinds say, for each kind of figure of studies, where its drawings come
+// from and which of them it shows.
+var studyKinds = map[string]struct {
+	all func(*job) []drawing
+	of  []string
+}{
+	"scatter":     {scatterFigures, []string{"scatter"}},
+	"sweep":       {sweepFigures, []string{"sweep", "sweep map"}},
+	"let_go":      {(*job).studyFigures, []string{"let-go series"}},
+	"throws":      {throwFigures, []string{"throws"}},
+	"throw_table": {throwFigures, []string{"throw table"}},
+	"landing_map": {mapFigures, []string{"landing map", "landing map, worst", "landing map, reach"}},
+	"spin":        {turningFigures, []string{"spin"}},
 }
 
 // ranReleases are the releases of a figure that were flown. A let-go series gives

@@ -120,3 +120,32 @@ func turnedAt(m *model.Model, t, phi float64) float64 {
 	out := a.Out(frame.Polar{R: 1, Phi: phi}.Vec())
 	return frame.Unwind(math.Atan2(out.Y, out.X)-phi, turned)
 }
+
+// spinRecord is a change of the spin in run.json, coningRecord the coning: by
+// the keys of the scenario.
+type spinRecord struct {
+	Start number `json:"start_s"`
+	Over  number `json:"over_s"`
+	To    number `json:"to_rad_s"`
+	Ramp  string `json:"ramp"`
+}
+
+type coningRecord struct {
+	HalfAngle number `json:"half_angle_deg"`
+	Period    number `json:"period_s"`
+	Phase     number `json:"phase_deg"`
+}
+
+// habitatOf is the habitat in run.json; what it says of gravity and spin is of
+// the time before any change.
+func habitatOf(m *model.Model) habitatRecord {
+	h := &m.Habitat
+	out := habitatRecord{Spin: number(h.Spin), Radius: number(h.FloorRadius), Gravity: number(m.Gravity(h.FloorRadius))}
+	for _, c := range h.Changes {
+		out.Changes = append(out.Changes, spinRecord{number(c.Start), number(c.Over), number(c.To), rampWords(c.Linear)})
+	}
+	if c := h.Coning; m.Cones() {
+		out.Coning = &coningRecord{number(degreesOf(c.HalfAngle)), number(c.Period), number(degreesOf(c.Phase))}
+	}
+	return out
+}
