@@ -170,10 +170,8 @@ func (j *job) plansOf(releases, paths []int) []*plan {
 		p.over = append(p.over, i)
 	}
 	for _, i := range paths {
-		if d := j.paths[i].plan.Deck; m.FlatDeck(d) == nil {
-			p := on(measure.Ground{Name: m.Decks[d].Name, Radius: m.Decks[d].Radius}, d)
-			p.paths = append(p.paths, i)
-		}
+		p := on(j.groundOfPath(i), j.paths[i].plan.Deck)
+		p.paths = append(p.paths, i)
 	}
 	return out
 }

@@ -37,10 +37,10 @@ func (j *job) scatterPlan(s *scatterResult) (*plots.Figure, error) {
 	spec := plots.ScatterPlanSpec{Foot: footOn(&g, let), Landed: s.sum.Landed}
 	deck := &spec.Deck
 	deck.Title, deck.Spin = fmt.Sprintf("%s: landings on the plan of %q", s.of.Name, g.Name), m.Habitat.Spin
-	deck.Notes = "Deck unrolled, seen from above by someone who stands on it. A mark for each landing, plumb under it, whatever it lands on. " +
+	deck.Notes = fromAbove(g.Flat) + " A mark for each landing, plumb under it, whatever it lands on. " +
 		"Dashed: the ellipse that would hold 95 % of a normal distribution. Heavy line: the smallest area that holds 95 % of these landings, by their density, smoothed. Shares with their 95 % confidence intervals."
 	if f := g.Flat; f != nil {
-		deck.From, deck.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
+		j.flatSheet(deck, f)
 	} else {
 		j.deckSheet(deck, &m.Decks[d], d)
 	}

@@ -271,9 +271,9 @@ func (j *job) streamPlan(s *streamResult, deck string) (*plots.Figure, error) {
 		spec.Groups = append(spec.Groups, plots.ScatterGroup{Name: fmt.Sprintf("on %s", name), Places: places[name]})
 	}
 	spec.Deck.Title, spec.Deck.Spin = fmt.Sprintf("%s: landings on the plan of %q", s.of.File, deck), m.Habitat.Spin
-	spec.Deck.Notes = "Deck unrolled, seen from above by someone who stands on it. A mark for each landing of a release from over this deck, plumb under it, whatever it lands on." + s.thinned()
+	spec.Deck.Notes = fromAbove(m.FlatDeck(d)) + " A mark for each landing of a release from over this deck, plumb under it, whatever it lands on." + s.thinned()
 	if f := m.FlatDeck(d); f != nil {
-		spec.Deck.From, spec.Deck.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
+		j.flatSheet(&spec.Deck, f)
 	} else {
 		j.deckSheet(&spec.Deck, &m.Decks[d], d)
 	}
