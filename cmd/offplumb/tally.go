@@ -3,7 +3,6 @@ package main
 import (
 	"fmt"
 	"math"
-	"slices"
 	"strings"
 
 	"offplumb/plots"
@@ -11,7 +10,6 @@ import (
 	"offplumb/sim/measure"
 	"offplumb/sim/model"
 	"offplumb/sim/study"
-	"offplumb/sim/table"
 )
 
 // tally is what stays of the rows of a long list.
@@ -118,192 +116,6 @@ func (t *tally) add(j *job, number int, r *study.Row) {
 }
 
 func groundName(m *model.Model, r *study.Row) string { return m.Decks[r.Deck].Name }
-
-// top lists things by their number, the most first, as "floor 93 % (930)".
-func (t *tally) top(kind string, names []string, of int) string {
-	list := slices.Clone(names)
-	slices.SortStableFunc(list, func(a, b string) int { return t.counts[kind+b] - t.counts[kind+a] })
-	words := []string{}
-	for i, name := range list {
-		if i == namesTold {
-			words = append(words, fmt.Sprintf("and %d more", len(list)-i))
-			break
-		}
-		n := t.counts[kind+name]
-		words = append(words, fmt.Sprintf("%s %d (%s)", name, n, percent(float64(n)/float64(of))))
-	}
-	return strings.Join(words, ", ")
-}
-
-// sentence tells a long list.
-func (s *streamResult) sentence() string {
-	t := &s.tally
-	words := fmt.Sprintf("%s: %s", s.of.File, count(t.rows, "row"))
-	if t.rows == 0 {
-		return words
-	}
-	if t.landed < t.rows {
-		words += ", " + t.top("outcome ", t.outcomes, t.rows)
-	}
-	if t.landed > 0 {
-		words += ". First touch: " + t.top("surface ", t.surfaces, t.rows)
-	}
-	if len(t.passed) > 0 {
-		words += ". Fallen through: " + t.top("opening ", t.passed, t.rows)
-	}
-	if t.offset.lowName != "" {
-		words += fmt.Sprintf(". Off plumb from %s (%s) to %s (%s)", way(t.offset.low), t.offset.lowName, way(t.offset.high), t.offset.highName)
-	}
-	if t.energy.highName != "" {
-		words += fmt.Sprintf(". Greatest impact energy: %s (%s)", withUnit(t.energy.high, "J"), t.energy.highName)
-	}
-	return words
-}
-
-// sumStreams tells the long lists.
-func sumStreams(j *job, b *strings.Builder) {
-	head := false
-	for i := range j.streams {
-		s := &j.streams[i]
-		if !s.ran {
-			continue
-		}
-		if !head {
-			b.WriteString("\nLong release lists\n")
-			head = true
-		}
-		b.WriteString(wrapped("  "+s.sentence()+".", "    "))
-	}
-}
-
-// warnStreams notes what the reader of a long list must know.
-func warnStreams(j *job) {
-	for i := range j.streams {
-		s := &j.streams[i]
-		if n := &s.tally.late; n.count > 0 {
-			j.note("release_list."+s.of.File, "still move after the longest time, %s s: %s", table.Round(j.model().Solver.MaxTime, 4), n.words())
-		}
-		if n := &s.tally.stuck; n.count > 0 {
-			j.note("release_list."+s.of.File, "are stuck, wedged between surfaces or in a motion that the model cannot resolve: %s", n.words())
-		}
-	}
-}
-
-// listRecord is a long list in run.json.
-type listRecord struct {
-	File     string        `json:"file"`
-	Rows     int           `json:"rows"`
-	Landed   int           `json:"landed"`
-	Outcomes []shareRecord `json:"outcomes"`
-	Surfaces []shareRecord `json:"surfaces"`
-	Openings []shareRecord `json:"openings"`
-}
-
-func (j *job) listRecords() (out []listRecord) {
-	for i := range j.streams {
-		s := &j.streams[i]
-		if !s.ran {
-			continue
-		}
-		t := &s.tally
-		shares := func(kind string, names []string) []shareRecord {
-			out := []shareRecord{}
-			for _, name := range names {
-				n := t.counts[kind+name]
-				out = append(out, shareRecord{Name: name, Count: n, Share: number(float64(n) / float64(t.rows)), Low: number(math.NaN()), High: number(math.NaN())})
-			}
-			return out
-		}
-		out = append(out, listRecord{s.of.File, t.rows, t.landed, shares("outcome ", t.outcomes), shares("surface ", t.surfaces), shares("opening ", t.passed)})
-	}
-	return out
-}
-
-// streamFigures are the plans of the long lists, one for each deck that rows are
-// over.
-func streamFigures(j *job) []drawing {
-	var out []drawing
-	var names table.Namer
-	for i := range j.streams {
-		s := &j.streams[i]
-		for _, deck := range s.tally.decks() {
-			out = append(out, drawing{file: "list-" + names.Name(strings.TrimSuffix(s.of.File, ".csv")+" "+deck), of: "release list", name: s.of.File,
-				make: func() (*plots.Figure, error) { return j.streamPlan(s, deck) }})
-		}
-	}
-	return out
-}
-
-// decks names what dots are over, in the order in which they came.
-func (t *tally) decks() (out []string) {
-	for i := range t.dots {
-		if !slices.Contains(out, t.dots[i].ground) {
-			out = append(out, t.dots[i].ground)
-		}
-	}
-	return out
-}
-
-func (j *job) streamPlan(s *streamResult, deck string) (*plots.Figure, error) {
-	m := j.model()
-	spec := plots.ScatterPlanSpec{NoFoot: true}
-	d := -1
-	var order []string
-	places := map[string][]plots.Point{}
-	for i := range s.tally.dots {
-		p := &s.tally.dots[i]
-		if p.ground != deck {
-			continue
-		}
-		if d = p.deck; places[p.surface] == nil {
-			order = append(order, p.surface)
-		}
-		places[p.surface] = append(places[p.surface], p.at)
-		spec.Landed++
-	}
-	slices.SortStableFunc(order, func(a, b string) int { return len(places[b]) - len(places[a]) })
-	for i, name := range order {
-		if i >= groupsDrawn {
-			g := &spec.Groups[groupsDrawn-1]
-			g.Name, g.Places = "on other surfaces", append(g.Places, places[name]...)
-			continue
-		}
-		spec.Groups = append(spec.Groups, plots.ScatterGroup{Name: fmt.Sprintf("on %s", name), Places: places[name]})
-	}
-	spec.Deck.Title, spec.Deck.Spin = fmt.Sprintf("%s: landings on the plan of %q", s.of.File, deck), m.Habitat.Spin
-	spec.Deck.Notes = fromAbove(m.FlatDeck(d)) + " A mark for each landing of a release from over this deck, plumb under it, whatever it lands on." + s.thinned()
-	if f := m.FlatDeck(d); f != nil {
-		j.flatSheet(&spec.Deck, f)
-	} else {
-		j.deckSheet(&spec.Deck, &m.Decks[d], d)
-	}
-	spec.Deck.Desc = described("Plan of %q with the landings of a release list. %s.", deck, s.sentence())
-	return plots.ScatterPlan(spec)
-}
-
-// thinned says which rows are drawn.
-func (s *streamResult) thinned() string {
-	if s.tally.every == 1 {
-		return ""
-	}
-	return fmt.Sprintf(" Of %d rows every %s is drawn.", s.tally.rows, ordinal(s.tally.every))
-}
-
-// ordinal writes a number as a place in a row.
-func ordinal(n int) string {
-	ending := "th"
-	if n/10%10 != 1 {
-		switch n % 10 {
-		case 1:
-			ending = "st"
-		case 2:
-			ending = "nd"
-		case 3:
-			ending = "rd"
-		}
-	}
-	return fmt.Sprint(n) + ending
-}
 
 // judged gives the verdict on a limit over the scenario's releases and the rows
 // of long lists, in the order of the file.
