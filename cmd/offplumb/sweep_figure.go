@@ -126,7 +126,7 @@ func (s *sweepResult) spins() string {
 	if !(r.low < r.high) {
 		return ""
 	}
-	text := fmt.Sprintf("The spin varies, %s to %s rpm.", given(r.low), given(r.high))
+	text := fmt.Sprintf("The spin varies, %s to %s rpm.", drawnMinus(given(r.low)), drawnMinus(given(r.high)))
 	if r.low < 0 {
 		text += " At negative spin the floor moves antispinward."
 	}

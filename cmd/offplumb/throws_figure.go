@@ -122,7 +122,7 @@ func (j *job) viewTargets(spec *plots.ThrowViewSpec, s *study.Throws, on *side, 
 	default:
 		for i := range s.Aims {
 			if i == 0 || s.Of.Along == model.Spinward {
-				name := given(s.Aims[i].Distance) + " m"
+				name := drawnMinus(given(s.Aims[i].Distance)) + " m"
 				if s.Of.Along != model.Spinward {
 					name = "targets, one behind the other"
 				}
@@ -135,10 +135,13 @@ func (j *job) viewTargets(spec *plots.ThrowViewSpec, s *study.Throws, on *side, 
 // lineName names a throw.
 func lineName(s *study.Throws, l drawnThrow) string {
 	if s.Of.Table() {
-		return given(l.aim.Distance) + " m " + l.Style
+		return drawnMinus(given(l.aim.Distance)) + " m " + l.Style
 	}
 	return fmt.Sprintf("%d %s", l.Solution, l.Style)
 }
+
+// drawnMinus sets the sign of a number as figures do, as long as a plus.
+func drawnMinus(s string) string { return strings.Replace(s, "-", "\u2212", 1) }
 
 func throwTitle(s *study.Throws) string {
 	switch {
@@ -215,7 +218,7 @@ func distanceShort(t *model.ThrowTo, d float64) string {
 }
 
 func throwCardRow(name string, t *measure.Throw) plots.ThrowCardRow {
-	deg := func(rad float64) string { return table.Fixed(degreesOf(rad), 1) + "°" }
+	deg := func(rad float64) string { return drawnMinus(table.Fixed(degreesOf(rad), 1)) + "°" }
 	out := plots.ThrowCardRow{Sight: t.SightElev, Soft: t.Outcome != measure.ThrowArrives}
 	out.Point = math.Atan2(math.Sin(t.Elevation), math.Cos(t.Elevation)*math.Cos(t.LeadHeading))
 	above, aside := deg(t.LeadUp), "-"

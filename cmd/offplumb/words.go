@@ -2,6 +2,7 @@ package main
 
 import (
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -97,7 +98,7 @@ func spaced(unit string) string {
 func wrapped(text, indent string) string {
 	var b strings.Builder
 	col := 0
-	for i, word := range strings.Fields(text) {
+	for i, word := range held(strings.Fields(text)) {
 		switch n := len([]rune(word)); {
 		case i == 0:
 			lead := text[:len(text)-len(strings.TrimLeft(text, " "))]
@@ -113,4 +114,25 @@ func wrapped(text, indent string) string {
 		b.WriteString(word)
 	}
 	return b.String() + "\n"
+}
+
+// held joins numbers to the units behind them, which no line may part.
+func held(words []string) []string {
+	out := words[:0:0]
+	for i, w := range words {
+		if i > 0 && slices.Contains(unitsHeld, strings.TrimRight(w, ".,;:)")) && isNumber(words[i-1]) {
+			out[len(out)-1] += " " + w
+			continue
+		}
+		out = append(out, w)
+	}
+	return out
+}
+
+// unitsHeld are the units of running text.
+var unitsHeld = []string{"m", "mm", "m/s", "mm/s", "s", "J", "mJ", "uJ", "N", "g", "kg", "deg", "rpm", "%", "m^2"}
+
+func isNumber(s string) bool {
+	_, err := strconv.ParseFloat(strings.TrimLeft(s, "("), 64)
+	return err == nil
 }
