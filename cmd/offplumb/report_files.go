@@ -56,8 +56,8 @@ func only(t page.Table, names ...string) page.Table {
 	return t
 }
 
-// noted adds where the rest of a table stands.
-func noted(t page.Table, words string) page.Table {
+// withRest adds where the rest of a table stands.
+func withRest(t page.Table, words string) page.Table {
 	t.Rest = strings.TrimSpace(t.Rest + " " + words)
 	return t
 }

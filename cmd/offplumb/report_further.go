@@ -89,7 +89,7 @@ func changeTable(s *sweepResult) page.Table {
 	rows := slices.DeleteFunc(s.changes(), func(c measure.Change) bool { return c.Kind() == "" })
 	out := only(reported(measure.ChangeTable(rows), "What changed from the first variant", "sweeps/"), "release", "variant", "changed", "surface before", "surface after",
 		"offset before", "offset after", "offset change", "speed before", "speed after", "speed change", "energy before", "energy after", "energy change", "falls through before", "falls through after")
-	return noted(out, "Releases that did not change are left out here; the file of changes has them, and more columns.")
+	return withRest(out, "Releases that did not change are left out here; the file of changes has them, and more columns.")
 }
 
 func mapCards(j *job, s *shelf) (out []page.Card) {
@@ -127,7 +127,7 @@ func throwCards(j *job, s *shelf) (out []page.Card) {
 		}
 		t := only(reported(measure.ThrowTable(rows), "Throws", "throws/"), "distance", "solution", "style", "outcome", "speed", "heading", "elevation", "time",
 			"lead", "lead heading", "lead up", "top", "arrival speed", "miss 1deg heading", "miss 1deg elevation", "miss 1m s speed", "least speed", "surface", "hit time")
-		out = append(out, with(j.studyCard(s, "Throw", name, []string{"throws", "throw table"}, fileKinds.throws, words...), noted(t, "The file has more columns.")))
+		out = append(out, with(j.studyCard(s, "Throw", name, []string{"throws", "throw table"}, fileKinds.throws, words...), withRest(t, "The file has more columns.")))
 	}
 	return out
 }
