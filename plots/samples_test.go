@@ -3,6 +3,7 @@ package plots
 import (
 	"fmt"
 	"math"
+	"slices"
 )
 
 // fall is a release in vacuum by its closed form, in both frames: the straight inertial
@@ -227,7 +228,7 @@ func samples() []sampleFigure {
 	for i := range 18 {
 		long.Legs = append(long.Legs, LegSpan{fmt.Sprintf("climb ladder %d of the spoke", i), float64(i), float64(i + 1)})
 	}
-	return append(append(append(append(pathSamples(), scatterSamples()...), mapSamples()...), throwSamples()...), []sampleFigure{
+	return append(slices.Concat(pathSamples(), scatterSamples(), mapSamples(), throwSamples(), contourSamples()), []sampleFigure{
 		side("drop", sideSpec(18, 1.9, sampleSpin, 0, 0, 0.03)), side("slid", slidSpec()), side("thrown", thrownSpec()),
 		side("half round", sideSpec(18, 1.5, sampleSpin, -7, 3.5, 0.1)), side("near axis", sideSpec(18, 17, sampleSpin, 0, 0, 0.01)),
 		side("hair", hairSpec()), side("flat", flatSpec()), side("through", throughSpec()), side("negative spin", sideSpec(18, 1.9, -sampleSpin, 0, 0, 0)),

@@ -9,12 +9,12 @@ import (
 )
 
 // Figure is a figure that a scenario asks for: a kind of drawing, of releases,
-// crew paths or studies.
+// crew paths, studies or the habitat.
 type Figure struct {
 	Name, Kind string
 	Releases   []int    // index in the model, in the order named; those of a let-go series among them
 	Paths      []int    // index in the model
-	Studies    []string // names of scatters, sweeps or let-go series
+	Studies    []string // names of scatters, sweeps, throw studies, landing maps or let-go series
 
 	node *node
 	path string
@@ -23,7 +23,7 @@ type Figure struct {
 // figureKind says what a kind of figure can be of.
 type figureKind struct {
 	name string
-	of   []string // release, series, path, scatter, sweep
+	of   []string // release, series, path, scatter, sweep, throw, throw table, landing map, habitat
 	most int      // things of one figure; 0: any number
 	each bool     // a figure for each thing, in place of one of all
 }
@@ -44,6 +44,10 @@ var figureKinds = []figureKind{
 	{name: "scatter", of: []string{"scatter"}, each: true},
 	{name: "sweep", of: []string{"sweep"}, each: true},
 	{name: "let_go", of: []string{"series"}, each: true},
+	{name: "throws", of: []string{"throw", "throw table"}, each: true},
+	{name: "throw_table", of: []string{"throw table"}, each: true},
+	{name: "landing_map", of: []string{"landing map"}, each: true},
+	{name: "spin", of: []string{"habitat"}},
 }
 
 func figureKindNamed(name string) *figureKind {
@@ -64,7 +68,8 @@ func figureKindNames() []string {
 }
 
 // plainThings are the things that figures are of, in words for people.
-var plainThings = map[string]string{"release": "releases", "series": "let-go series", "path": "crew paths", "scatter": "scatters", "sweep": "sweeps"}
+var plainThings = map[string]string{"release": "releases", "series": "let-go series", "path": "crew paths", "scatter": "scatters", "sweep": "sweeps",
+	"throw": "throws to a target", "throw table": "throw tables", "landing map": "landing maps", "habitat": "the habitat"}
 
 // wants says what a kind of figure is of.
 func (k *figureKind) wants() string {
@@ -140,6 +145,7 @@ func (f *Figure) take(t thing, m *model.Model) int {
 		f.Releases = append(f.Releases, t.index)
 	case "path":
 		f.Paths = append(f.Paths, t.index)
+	case "habitat":
 	default:
 		f.Studies = append(f.Studies, t.name)
 		if t.kind == "series" {
@@ -152,8 +158,14 @@ func (f *Figure) take(t thing, m *model.Model) int {
 // things finds what a name or pattern stands for, of the kinds that a figure takes.
 func (sc *Scenario) things(of string, kind *figureKind) (out []thing, hint, msg string) {
 	prefix, name, ok := strings.Cut(of, ".")
-	if !ok || prefix != "release" && prefix != "path" && prefix != "study" {
-		return nil, "", fmt.Sprintf("wants release.NAME, path.NAME or study.NAME, got %q", shorten(of))
+	if of == "habitat" {
+		prefix, name, ok = of, "", true
+		if kind.takes(of) && !sc.Model.Unsteady() {
+			return nil, "", "the spin does not change and the axis does not cone: there is nothing to draw"
+		}
+	}
+	if !ok || of != "habitat" && prefix != "release" && prefix != "path" && prefix != "study" {
+		return nil, "", fmt.Sprintf("wants release.NAME, path.NAME, study.NAME or habitat, got %q", shorten(of))
 	}
 	all := sc.drawable(prefix)
 	var names []string
@@ -185,6 +197,8 @@ func (sc *Scenario) things(of string, kind *figureKind) (out []thing, hint, msg 
 func (sc *Scenario) drawable(prefix string) (out []thing) {
 	m := sc.Model
 	switch prefix {
+	case "habitat":
+		out = append(out, thing{kind: "habitat"})
 	case "release":
 		for i := range m.Releases {
 			if r := &m.Releases[i]; !r.NoTrack && r.Series == "" {
@@ -204,6 +218,16 @@ func (sc *Scenario) drawable(prefix string) (out []thing) {
 		}
 		for i, s := range sc.Sweeps {
 			out = append(out, thing{"sweep", s.Name, i})
+		}
+		for i := range m.Throws {
+			kind := "throw"
+			if m.Throws[i].Table() {
+				kind = "throw table"
+			}
+			out = append(out, thing{kind, m.Throws[i].Name, i})
+		}
+		for i := range m.Maps {
+			out = append(out, thing{"landing map", m.Maps[i].Name, i})
 		}
 	}
 	return out

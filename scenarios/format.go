@@ -92,15 +92,15 @@ var body = &section{name: "a body", doc: "What is released: a sphere.",
 var throwKeys = &section{name: "a throw", doc: "A speed and its direction, relative to the habitat.",
 	keys: []key{
 		qty("speed", speed, notNegative, "relative to the habitat").need(),
-		qty("heading", angle, anything, "0 spinward, 90 deg toward +axial").or(`"0 deg"`),
-		qty("elevation", angle, span{low: -degrees(90), high: degrees(90)}, "above the deck").or(`"0 deg"`),
+		qty("heading", angle, anything, "0 spinward, 90 deg toward +axial; along a flat floor, over one").or(`"0 deg"`),
+		qty("elevation", angle, span{low: -degrees(90), high: degrees(90)}, "above the deck; from the plane of a flat floor, over one").or(`"0 deg"`),
 	}}
 
 var velocityKeys = &section{name: "a velocity", doc: "Relative to the habitat.",
 	keys: []key{
 		qty("spinward", speed, anything, "spinward").or(`"0 m/s"`),
 		qty("axial", speed, anything, "toward +axial").or(`"0 m/s"`),
-		qty("up", speed, anything, "toward the axis").or(`"0 m/s"`),
+		qty("up", speed, anything, "toward the axis; along the normal of a flat floor, over one").or(`"0 m/s"`),
 	}}
 
 var carriedKeys = &section{name: "a carried release", doc: "Let go by a crew member under way: it has the velocity of that point of the body.",
@@ -318,8 +318,8 @@ var output = &section{name: "the output", doc: "What is written.",
 var figure = &section{name: "a figure", doc: "A figure drawn on request: of some things together, or of a choice. A figure of kind side, deflection, plan or loads shows all that it is of in one; one of another kind is drawn for each.",
 	keys: []key{
 		title(),
-		texts("of", "release.NAME (also of a let-go series), path.NAME or study.NAME; * stands for anything; or a list").need(),
-		word("kind", "", "what is drawn: side: the side view; inertial: the view from outside; stack: both above one another, with a ruler of time; deflection: the apparent deflection; plan: the deck plan; loads: what a crew path does to the person; path: the crew path from the side; scatter, sweep, let_go: the figure of the study", figureKindNames()...).need(),
+		texts("of", "release.NAME (also of a let-go series), path.NAME, study.NAME or habitat; * stands for anything; or a list").need(),
+		word("kind", "", "what is drawn: side: the side view; inertial: the view from outside; stack: both above one another, with a ruler of time; deflection: the apparent deflection; plan: the deck plan; loads: what a crew path does to the person; path: the crew path from the side; scatter, sweep, let_go, throws, landing_map: the figures of the study; throw_table: the table to print; spin: how the habitat turns", figureKindNames()...).need(),
 	}}
 
 var scatter = &section{name: "a scatter", doc: "A release many times, its keys varied at random.",

@@ -24,7 +24,7 @@ func (j *job) askedFigures() []drawing {
 		made := j.asked(f)
 		for n := range made {
 			d := &made[n]
-			d.file, d.name = file, f.Name
+			d.file, d.name, d.asked = file, f.Name, true
 			if n > 0 {
 				d.file = fmt.Sprintf("%s-%d", file, n+1)
 			}
@@ -73,23 +73,40 @@ func (j *job) asked(f *scenarios.Figure) (out []drawing) {
 	return out
 }
 
-// askedStudies are the usual figures of the studies that a figure is of.
+// askedStudies are the usual figures of the studies, or of the habitat, that a
+// figure is of.
 func (j *job) askedStudies(f *scenarios.Figure) (out []drawing) {
-	all := scatterFigures(j)
-	switch f.Kind {
-	case "sweep":
-		all = sweepFigures(j)
-	case "let_go":
-		all = j.studyFigures()
+	k, ok := studyKinds[f.Kind]
+	if !ok {
+		return nil
 	}
-	for _, name := range f.Studies {
+	all, names := k.all(j), f.Studies
+	if f.Kind == "spin" {
+		names = []string{""}
+	}
+	for _, name := range names {
 		for _, d := range all {
-			if d.name == name && d.of != "side view of a let-go series" {
+			if d.name == name && slices.Contains(k.of, d.of) {
 				out = append(out, d)
 			}
 		}
 	}
 	return out
+}
+
+// studyKinds say, for each kind of figure of studies, where its drawings come
+// from and which of them it shows.
+var studyKinds = map[string]struct {
+	all func(*job) []drawing
+	of  []string
+}{
+	"scatter":     {scatterFigures, []string{"scatter"}},
+	"sweep":       {sweepFigures, []string{"sweep", "sweep map"}},
+	"let_go":      {(*job).studyFigures, []string{"let-go series"}},
+	"throws":      {throwFigures, []string{"throws"}},
+	"throw_table": {throwFigures, []string{"throw table"}},
+	"landing_map": {mapFigures, []string{"landing map", "landing map, worst", "landing map, reach"}},
+	"spin":        {turningFigures, []string{"spin"}},
 }
 
 // ranReleases are the releases of a figure that were flown. A let-go series gives
@@ -153,10 +170,8 @@ func (j *job) plansOf(releases, paths []int) []*plan {
 		p.over = append(p.over, i)
 	}
 	for _, i := range paths {
-		if d := j.paths[i].plan.Deck; m.FlatDeck(d) == nil {
-			p := on(measure.Ground{Name: m.Decks[d].Name, Radius: m.Decks[d].Radius}, d)
-			p.paths = append(p.paths, i)
-		}
+		p := on(j.groundOfPath(i), j.paths[i].plan.Deck)
+		p.paths = append(p.paths, i)
 	}
 	return out
 }

@@ -87,8 +87,8 @@ func (j *job) pathFigures() []drawing {
 		if p.skipped {
 			continue
 		}
-		out = append(out, drawing{"loads-" + name, "loads", p.plan.Path.Name, func() (*plots.Figure, error) { return j.loadsChart(i) }},
-			drawing{"path-" + name, "crew path", p.plan.Path.Name, func() (*plots.Figure, error) { return j.pathView(i) }})
+		out = append(out, drawing{file: "loads-" + name, of: "loads", name: p.plan.Path.Name, make: func() (*plots.Figure, error) { return j.loadsChart(i) }},
+			drawing{file: "path-" + name, of: "crew path", name: p.plan.Path.Name, make: func() (*plots.Figure, error) { return j.pathView(i) }})
 	}
 	return out
 }

@@ -30,11 +30,11 @@ func (j *job) sharedFigures() []drawing {
 			file = fmt.Sprintf("deflection-%d", n+1)
 		}
 		part := shown[n*seriesShown : min(len(shown), (n+1)*seriesShown)]
-		out = append(out, drawing{file, "apparent deflection", "", func() (*plots.Figure, error) { return j.deflectionChart("", part) }})
+		out = append(out, drawing{file: file, of: "apparent deflection", name: "", make: func() (*plots.Figure, error) { return j.deflectionChart("", part) }})
 	}
 	var names table.Namer
 	for _, p := range j.plans() {
-		out = append(out, drawing{"plan-" + names.Name(p.ground.Name), "deck plan", p.ground.Name, func() (*plots.Figure, error) { return j.deckPlan(p.title(), p) }})
+		out = append(out, drawing{file: "plan-" + names.Name(p.ground.Name), of: "deck plan", name: p.ground.Name, make: func() (*plots.Figure, error) { return j.deckPlan(p.title(), p) }})
 	}
 	return out
 }
@@ -119,15 +119,14 @@ func (j *job) deflection(t *flight.Track, l *measure.Landing) plots.DeflectionSe
 	return out
 }
 
-// pathPlans adds the decks that crew paths start on.
+// pathPlans adds the decks and flat floors that crew paths start on.
 func (j *job) pathPlans(out []*plan) []*plan {
-	m := j.model()
 	for i := range j.paths {
-		d := j.paths[i].plan.Deck
-		if j.paths[i].skipped || !j.paths[i].roams() || m.FlatDeck(d) != nil || slices.ContainsFunc(out, func(p *plan) bool { return p.ground.Flat == nil && p.deck == d }) {
+		g := j.groundOfPath(i)
+		if j.paths[i].skipped || !j.paths[i].roams() || slices.ContainsFunc(out, func(p *plan) bool { return p.ground.Name == g.Name }) {
 			continue
 		}
-		out = append(out, &plan{ground: measure.Ground{Name: m.Decks[d].Name, Radius: m.Decks[d].Radius}, deck: d})
+		out = append(out, &plan{ground: g, deck: j.paths[i].plan.Deck})
 	}
 	return out
 }
@@ -135,15 +134,15 @@ func (j *job) pathPlans(out []*plan) []*plan {
 func (j *job) deckPlan(title string, p *plan) (*plots.Figure, error) {
 	m := j.model()
 	spec := plots.DeckPlanSpec{Title: title, Spin: m.Habitat.Spin,
-		Notes: "Deck unrolled, seen from above by someone who stands on it. Open mark: plumb under the release. Numbered mark: plumb under the landing."}
+		Notes: fromAbove(p.ground.Flat) + " Open mark: plumb under the release. Numbered mark: plumb under the landing."}
 	if f := p.ground.Flat; f != nil {
-		spec.From, spec.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
+		j.flatSheet(&spec, f)
 		spec.Paths = j.planPaths(p.deck, f)
 	} else {
 		j.deckSheet(&spec, &m.Decks[p.deck], p.deck)
-		if p.paths != nil {
-			spec.Paths = j.waysOf(p.paths)
-		}
+	}
+	if p.paths != nil {
+		spec.Paths = j.waysOf(p.paths)
 	}
 	words := ""
 	for _, i := range p.over {

@@ -135,7 +135,7 @@ func asking(t *testing.T, path, src string) string {
 			fmt.Fprintf(&b, "\n[[figure]]\nname = \"test %s\"\nkind = %q\nof = [\"%s\"]\n", kind, kind, strings.Join(of, `", "`))
 		}
 	}
-	var releases, paths, scatters, sweeps, series []string
+	var releases, paths, scatters, sweeps, series, throws, cards, maps []string
 	for _, r := range sc.Model.Releases {
 		if r.Series != "" && (len(series) == 0 || series[len(series)-1] != "release."+r.Series) {
 			series = append(series, "release."+r.Series)
@@ -152,6 +152,15 @@ func asking(t *testing.T, path, src string) string {
 	for _, s := range sc.Sweeps {
 		sweeps = append(sweeps, "study."+s.Name)
 	}
+	for i := range sc.Model.Throws {
+		name := "study." + sc.Model.Throws[i].Name
+		if throws = append(throws, name); sc.Model.Throws[i].Table() {
+			cards = append(cards, name)
+		}
+	}
+	for _, m := range sc.Model.Maps {
+		maps = append(maps, "study."+m.Name)
+	}
 	few := func(of []string) []string { return of[:min(len(of), scenarios.MostTogether)] }
 	for _, kind := range []string{"side", "inertial", "stack", "deflection", "plan"} {
 		ask(kind, few(releases))
@@ -161,6 +170,12 @@ func asking(t *testing.T, path, src string) string {
 	ask("scatter", scatters)
 	ask("sweep", sweeps)
 	ask("let_go", series)
+	ask("throws", throws)
+	ask("throw_table", cards)
+	ask("landing_map", maps)
+	if sc.Model.Unsteady() {
+		ask("spin", []string{"habitat"})
+	}
 	if len(releases) == 0 {
 		ask("side", series)
 	}
@@ -204,6 +219,24 @@ name = "heights"
 key = "release.drop.at.height"
 values = ["0.5 m", "1 m", "1.5 m"]
 measures = ["landings.offset"]
+[[habitat.spin_change]]
+start = "5 s"
+over = "2 s"
+to = "4 rpm"
+[[throw_to]]
+name = "tosses"
+body = "mug"
+from = { height = "1 m" }
+target = { height = "1 m" }
+distances = ["2 m", "3 m"]
+speed = "5 m/s"
+[[landing_map]]
+name = "map"
+body = "mug"
+over = { spinward = ["0 m", "0.5 m"], axial = ["0 m", "0.5 m"] }
+heights = ["1 m"]
+step = "0.25 m"
+cell = "0.25 m"
 [output]
 figures = "asked"
 `
@@ -215,7 +248,7 @@ func TestAllKindsInAllFormats(t *testing.T) {
 	blocks := asking(t, path, oneOfEach)
 	put(t, path, oneOfEach+blocks)
 	kinds := strings.Count(blocks, "[[figure]]")
-	if kinds != 10 {
+	if kinds != 14 {
 		t.Errorf("%d kinds of figures are asked for", kinds)
 	}
 	magic := map[string]string{"svg": "<?xml", "png": "\x89PNG", "pdf": "%PDF"}
@@ -229,7 +262,7 @@ func TestAllKindsInAllFormats(t *testing.T) {
 		files := map[string][]byte{}
 		for _, format := range plots.Formats() {
 			names, _ := filepath.Glob(filepath.Join(out, "*."+format))
-			if len(names) != kinds {
+			if len(names) != kinds+1 { // a landing map has two
 				t.Errorf("%d %s files of %d figures: %q", len(names), format, kinds, names)
 			}
 			for _, name := range names {

@@ -28,15 +28,15 @@ func mapFigures(j *job) []drawing {
 			d := &s.land.Decks[k]
 			base := file + "-" + decks.Name(d.Name)
 			if d.Landings > 0 {
-				out = append(out, drawing{base + "-landings", "landing map", name, func() (*plots.Figure, error) { return j.mapLandings(s, d) }})
+				out = append(out, drawing{file: base + "-landings", of: "landing map", name: name, make: func() (*plots.Figure, error) { return j.mapLandings(s, d) }})
 			}
-			out = append(out, drawing{base + "-worst", "landing map, worst", name, func() (*plots.Figure, error) { return j.mapWorst(s, d) }})
+			out = append(out, drawing{file: base + "-worst", of: "landing map, worst", name: name, make: func() (*plots.Figure, error) { return j.mapWorst(s, d) }})
 		}
 		var goals table.Namer
 		for g := range s.of.Goals {
 			base := file + "-reaches-" + goals.Name(s.of.Goals[g].Name)
 			if s.land.Goals[g].Count > 0 && s.land.Patches[0].Count() > 0 {
-				out = append(out, drawing{base, "landing map, reach", name, func() (*plots.Figure, error) { return j.mapReach(s, g) }})
+				out = append(out, drawing{file: base, of: "landing map, reach", name: name, make: func() (*plots.Figure, error) { return j.mapReach(s, g) }})
 			}
 		}
 	}
@@ -53,54 +53,9 @@ func (j *job) mapSheet(name string) plots.DeckPlanSpec {
 		return spec
 	}
 	if f := j.flatNamed(name); f != nil {
-		spec.From, spec.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
 		j.flatSheet(&spec, f)
 	}
 	return spec
-}
-
-// flatSheet adds the openings of a flat floor and the boxes that stand on it.
-func (j *job) flatSheet(spec *plots.DeckPlanSpec, f *model.Flat) {
-	m := j.model()
-	if d := &m.Decks[0]; d.Flat && f.Name == d.Name {
-		for i := range d.Openings {
-			o := &d.Openings[i]
-			spec.Openings = append(spec.Openings, plots.PlanOpening{Name: o.Name, Centre: plots.Point{X: f.Along(o.Spinward), Y: o.Axial - f.Z},
-				Size: plots.Point{X: o.Size[0], Y: o.Size[1]}, Coaming: o.Coaming > 0, Closed: o.Closed})
-		}
-	}
-	for i := range m.Fixtures {
-		b := &m.Fixtures[i]
-		p, err := m.Resolve(b.At)
-		if b.Kind != model.Box || err != nil {
-			continue
-		}
-		name, s, z := measure.Stand(m, p)
-		if name != f.Name {
-			continue
-		}
-		sin, cos := math.Sincos(b.Turn)
-		outline := plots.PlanFixture{Name: b.Name}
-		for _, c := range [][2]float64{{1, 1}, {-1, 1}, {-1, -1}, {1, -1}} {
-			along, across := c[0]*b.Size[0]/2, c[1]*b.Size[1]/2
-			outline.Path = append(outline.Path, plots.Point{X: s + along*cos - across*sin, Y: z + along*sin + across*cos})
-		}
-		spec.Fixtures = append(spec.Fixtures, outline)
-	}
-}
-
-// flatNamed finds a flat floor: that of the habitat or of a cabin.
-func (j *job) flatNamed(name string) *model.Flat {
-	m := j.model()
-	if f := m.FlatDeck(0); f != nil && f.Name == name {
-		return f
-	}
-	for i := range m.Rooms {
-		if f := m.Rooms[i].CabinFloor(); f != nil && f.Name == name {
-			return f
-		}
-	}
-	return nil
 }
 
 // mapLandings draws how the landings spread over a deck.
@@ -158,7 +113,7 @@ func (j *job) finishMap(s *mapResult, d *measure.MapDeck, between string, spec *
 		}
 	}
 	spec.Region = j.mapRegion(s, d.Name)
-	spec.Deck.Notes = fmt.Sprintf("Deck unrolled, seen from above by someone who stands on it. Squares of %s m, by the place plumb under each landing, whatever it lands on%s. "+
+	spec.Deck.Notes = fromAbove(j.flatNamed(d.Name)) + fmt.Sprintf(" Squares of %s m, by the place plumb under each landing, whatever it lands on%s. "+
 		"Strong line: the footprint of all landings.", given(s.of.Cell), s.between(between))
 	if len(spec.Region) > 0 {
 		spec.Deck.Notes += " Dashed: where things are let go."

@@ -39,7 +39,7 @@ func (j *job) mapReach(s *mapResult, goal int) (*plots.Figure, error) {
 	j.zoneOutline(s, goal, deck, &spec)
 	spec.Words = []string{s.reach(goal), s.ways()}
 	spec.Deck.Title = fmt.Sprintf("%s: from where %q is reached", s.of.Name, name)
-	spec.Deck.Notes = fmt.Sprintf("Deck unrolled, seen from above by someone who stands on it. Squares of %s m, each about a place where things are let go. Dashed: all such places. Without shade: not reached.", given(s.of.Step))
+	spec.Deck.Notes = fromAbove(j.flatNamed(deck)) + fmt.Sprintf(" Squares of %s m, each about a place where things are let go. Dashed: all such places. Without shade: not reached.", given(s.of.Step))
 	spec.Deck.Desc = described("Plan of %q with the places from which %s is reached. %s.", deck, name, s.reach(goal))
 	return plots.MapPlan(spec)
 }

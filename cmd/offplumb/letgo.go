@@ -112,11 +112,11 @@ func (j *job) studyFigures() []drawing {
 		s := &j.letgo[i]
 		file := "letgo-" + names.Name(s.name)
 		if n := len(s.rows); n > 1 && s.rows[n-1].Along > s.rows[0].Along {
-			out = append(out, drawing{file, "let-go series", s.name, func() (*plots.Figure, error) { return j.letGoChart(s) }})
+			out = append(out, drawing{file: file, of: "let-go series", name: s.name, make: func() (*plots.Figure, error) { return j.letGoChart(s) }})
 		}
 		shown := j.seriesShown(s.name, scenarios.MostTogether)
 		title := fmt.Sprintf("%s: %d of %d, from the release to where each ends", s.name, len(shown), len(s.rows))
-		out = append(out, drawing{file + "-side", "side view of a let-go series", s.name, func() (*plots.Figure, error) { return j.togetherView(title, shown) }})
+		out = append(out, drawing{file: file + "-side", of: "side view of a let-go series", name: s.name, make: func() (*plots.Figure, error) { return j.togetherView(title, shown) }})
 	}
 	return out
 }

@@ -7,6 +7,7 @@ import (
 
 	"offplumb/sim/measure"
 	"offplumb/sim/model"
+	"offplumb/sim/study"
 )
 
 // statement is what a model of the program is and how far it holds. The words
@@ -97,6 +98,13 @@ var statements = []statement{
 		how:     "Probabilities have the 95 % interval of independent samples. The contour is the smallest area that holds 95 % of the landings, by their smoothed density.",
 		sources: []string{"Wilson, J. Am. Stat. Assoc. 22 (1927) 209-212: intervals of probabilities (from memory)",
 			"Hyndman, The American Statistician 50 (1996): regions of highest density (from memory)"}},
+	{topic: "Throws", used: (*job).threw,
+		how: "In vacuum the throw that takes a time flies a straight line in the inertial frame to where the target is then; in air Newton's method, with Broyden's update, finds it by free flights. Each is then flown among the surfaces.",
+		sources: []string{"Broyden 1965, a class of methods for nonlinear equations (from memory)",
+			"Dowell & Jarratt 1971, false position with the weight of a stale end halved (from memory)"}},
+	{topic: "Landing maps", used: (*job).mapped,
+		how:     "Every place, height and direction is flown once. The directions are spread evenly: the points of an icosahedron whose edges are cut. Shares are of these flights and no probabilities.",
+		sources: []string{"Delsarte, Goethals & Seidel, Geometriae Dedicata 6 (1977) 363-388: spherical designs (from memory)"}},
 	{used: (*job).halton, sources: []string{"Halton, Numerische Mathematik 2 (1960) (from memory)"}},
 }
 
@@ -165,6 +173,16 @@ func (j *job) walked() bool {
 // scattering says whether a scatter ran.
 func (j *job) scattering() bool {
 	return slices.ContainsFunc(j.scatters, func(s scatterResult) bool { return s.cloud != nil })
+}
+
+// threw says whether a throw study ran.
+func (j *job) threw() bool {
+	return slices.ContainsFunc(j.throws, func(s *study.Throws) bool { return s != nil })
+}
+
+// mapped says whether a landing map ran.
+func (j *job) mapped() bool {
+	return slices.ContainsFunc(j.maps, func(s mapResult) bool { return s.land != nil })
 }
 
 // halton says whether one used Halton points.

@@ -50,10 +50,10 @@ func (j *job) report(s *shelf, films map[int]template.HTML) *page.Report {
 	if len(j.notes) > 0 {
 		r.Sections = append(r.Sections, j.warningSection())
 	}
-	r.Sections = append(r.Sections, j.habitatSection())
+	r.Sections = append(r.Sections, j.habitatSection(s))
 	releases := func(s *shelf) page.Section { return j.releaseSection(s, films) }
-	for _, make := range []func(*shelf) page.Section{releases, j.pathSection, j.studySection} {
-		if sec := make(s); len(sec.Cards)+len(sec.Tables) > 0 {
+	for _, make := range []func(*shelf) page.Section{releases, j.pathSection, j.studySection, askedSection} {
+		if sec := make(s); len(sec.Cards)+len(sec.Tables)+len(sec.Figures)+len(sec.Files) > 0 {
 			r.Sections = append(r.Sections, sec)
 		}
 	}
@@ -75,8 +75,9 @@ func (j *job) titleBlock() []page.Fact {
 	if !m.Air.Vacuum() {
 		air = table.Round(m.Air.Density, 3) + " kg/m³"
 	}
-	return []page.Fact{
-		{Name: "Spin", Value: spinShort(h.Spin)},
+	block := []page.Fact{{Name: "Spin", Value: spinShort(m)}}
+	block = append(block, turningFacts(m)...)
+	return append(block, []page.Fact{
 		{Name: "Floor, from the axis", Value: given(h.FloorRadius) + " m"},
 		{Name: "Gravity on the floor", Value: table.Round(m.Gravity(h.FloorRadius)/model.StandardGravity, 3) + " g"},
 		{Name: "Rim speed", Value: table.Round(h.Spin*h.FloorRadius, 3) + " m/s"},
@@ -84,17 +85,28 @@ func (j *job) titleBlock() []page.Fact {
 		{Name: "Scenario", Value: filepath.Base(j.Scenario.Name)},
 		{Name: "SHA-256, first digits", Value: j.Inputs[0].SHA256[:12]},
 		{Name: "Written by", Value: programName + " " + version},
-	}
+	}...)
 }
 
-func spinShort(spin float64) string {
+func spinShort(m *model.Model) string {
+	spin, when := m.Habitat.Spin, ""
+	if m.SpinChanges() {
+		when = " at the beginning"
+	}
 	switch {
 	case spin > 0:
-		return table.Round(rpm(spin), 3) + " rpm: the floor moves spinward"
+		return table.Round(rpm(spin), 3) + " rpm" + when + ": the floor moves spinward"
 	case spin < 0:
-		return table.Round(rpm(spin), 3) + " rpm: the floor moves antispinward"
+		return table.Round(rpm(spin), 3) + " rpm" + when + ": the floor moves antispinward"
 	}
-	return "none"
+	return "none" + when
+}
+
+// askedSection holds the figures that the scenario asks for.
+func askedSection(s *shelf) page.Section {
+	out := page.Section{Name: "Figures asked for"}
+	out.Figures, out.Files = s.asked()
+	return out
 }
 
 func (j *job) verdictSection() page.Section {
@@ -105,7 +117,7 @@ func (j *job) verdictSection() page.Section {
 	}
 	out.Lead = j.tally()
 	if len(j.verdicts) > 0 {
-		out.Tables = []page.Table{j.limitTable()}
+		out.Tables, out.Files = []page.Table{j.limitTable()}, j.filesOf("", "limits")
 	}
 	return out
 }

@@ -15,11 +15,17 @@ import (
 	"offplumb/sim/table"
 )
 
-func (j *job) habitatSection() page.Section {
+func (j *job) habitatSection(s *shelf) page.Section {
 	figures := measure.HabitatOf(j.model(), 0, 0)
-	return page.Section{Name: "Habitat", Words: []string{spinLine(j.model())},
-		Tables: []page.Table{reported(measure.DeckTable(j.decks), "Decks", "decks.csv"),
-			single(measure.HabitatTable(figures), "The habitat as a whole")}}
+	out := page.Section{Name: "Habitat", Words: []string{spinLine(j.model()), turningWords(j.model())}, Files: j.filesOf("", "decks", "habitat", "spin")}
+	if j.model().SpinChanges() {
+		out.Tables = []page.Table{changeOfSpinTable(j.model())}
+	}
+	out.Tables = append(out.Tables, reported(measure.DeckTable(j.decks), "Decks", "decks.csv"), single(measure.HabitatTable(figures), "The habitat as a whole"))
+	var beside []page.File
+	out.Figures, beside = s.take("", "spin")
+	out.Files = append(out.Files, beside...)
+	return out
 }
 
 // single turns a table of one row on its side: what, how much, meaning what.
@@ -48,10 +54,21 @@ func (j *job) releaseSection(s *shelf, films map[int]template.HTML) page.Section
 	if t := j.landingTable(); len(t.Rows) > 0 {
 		out.Tables = []page.Table{t}
 	}
+	out.Cards = append(listCards(j, s), out.Cards...)
 	shared, files := s.take(anyName, "apparent deflection", "deck plan")
 	out.Figures = shared
 	out.Words = j.leftOut(s, tracked, len(files))
+	if j.showsReleases() {
+		out.Files = append(j.filesOf("", "landings", "rests", "clearance"), files...)
+	}
 	return out
+}
+
+// showsReleases says whether the report has a part on releases: those of let-go
+// series stand with the studies.
+func (j *job) showsReleases() bool {
+	return slices.ContainsFunc(j.landings, func(l measure.Landing) bool { return !j.inSeries(l.Release) }) ||
+		slices.ContainsFunc(j.streams, func(s streamResult) bool { return s.ran })
 }
 
 // leftOut says what of the releases stands in files only.
@@ -98,6 +115,7 @@ func (j *job) releaseCard(i int, s *shelf, film template.HTML) page.Card {
 	out.Facts = []page.Group{{Name: "Release", Facts: j.startFacts(i)}, {Name: "Landing", Facts: landingFacts(&r.Landing)}, {Name: "End", Facts: restFacts(&r.Rest)}}
 	out.Motion = film
 	out.Figures, out.Files = s.take(r.Landing.Release, "side view", "inertial view")
+	out.Files = append(out.Files, j.filesOf(r.Landing.Release, fileKinds.release...)...)
 	return out
 }
 
@@ -204,6 +222,9 @@ func (j *job) pathSection(s *shelf) page.Section {
 			out.Cards = append(out.Cards, j.pathCard(p, s))
 		}
 	}
+	if len(out.Cards) > 0 {
+		out.Files = j.filesOf("", "clearance", "gravity")
+	}
 	return out
 }
 
@@ -229,6 +250,7 @@ func (j *job) pathCard(p *pathResult, s *shelf) page.Card {
 		out.Tables = append(out.Tables, reported(measure.GravityTable(p.gravity), "Times below and above levels of apparent gravity", "gravity.csv"))
 	}
 	out.Figures, out.Files = s.take(name, "crew path", "loads")
+	out.Files = append(out.Files, j.filesOf(name, fileKinds.path...)...)
 	return out
 }
 

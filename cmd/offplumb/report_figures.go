@@ -102,7 +102,7 @@ func (j *job) chosen(list []drawing) []int {
 	for _, first := range []bool{true, false} {
 		for i := range list {
 			d := &list[i]
-			isFirst := uneasy["release."+d.name] || uneasy["path."+d.name] || uneasy["study."+d.name]
+			isFirst := d.asked || uneasy["release."+d.name] || uneasy["path."+d.name] || uneasy["study."+d.name]
 			if isFirst == first && taken[d.of] < figuresInReport {
 				taken[d.of]++
 				out = append(out, i)
@@ -119,7 +119,7 @@ func (s *shelf) take(name string, kinds ...string) (figures []page.Figure, files
 	for _, kind := range kinds {
 		for i := range s.list {
 			d := &s.list[i]
-			if s.taken[i] || d.of != kind || d.name != name && name != anyName {
+			if s.taken[i] || d.asked || d.of != kind || d.name != name && name != anyName {
 				continue
 			}
 			s.taken[i] = true
@@ -139,6 +139,24 @@ const anyName = "\x00"
 func (s *shelf) figure(i int) page.Figure {
 	d := &s.list[i]
 	return page.Figure{Name: capital(d.of), SVG: s.svg[i], File: d.file + s.beside}
+}
+
+// asked hands out the figures that the scenario asks for, under its names.
+func (s *shelf) asked() (figures []page.Figure, files []page.File) {
+	for i := range s.list {
+		d := &s.list[i]
+		if !d.asked {
+			continue
+		}
+		if s.taken[i] = true; s.svg[i] == nil {
+			files = append(files, page.File{Name: d.name, Path: d.file + s.beside})
+			continue
+		}
+		f := s.figure(i)
+		f.Name = d.name + ": " + d.of
+		figures = append(figures, f)
+	}
+	return figures, files
 }
 
 // rest hands out what no part has taken.

@@ -72,6 +72,10 @@ func (j *job) scenarioSection() page.Section {
 		t.Rows = append(t.Rows, []page.Cell{{Text: filepath.Base(in.Name)}, {Text: in.SHA256}})
 	}
 	out.Tables = []page.Table{t}
+	out.Files = []page.File{{Name: runFile, Path: runFile}, {Name: "datapackage.json", Path: "datapackage.json"}}
+	if !j.showsReleases() {
+		out.Files = append(j.filesOf("", "landings", "rests"), out.Files...)
+	}
 	for _, s := range j.flags.sets {
 		out.List = append(out.List, page.Item{Of: "Set on the command line", Words: s})
 	}

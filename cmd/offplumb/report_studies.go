@@ -11,7 +11,7 @@ import (
 
 // studyCards makes the cards of each kind of study, in the order of the report.
 // A further kind is one more line.
-var studyCards = []func(*job, *shelf) []page.Card{letGoCards, platformCards, scatterCards, sweepCards}
+var studyCards = []func(*job, *shelf) []page.Card{letGoCards, platformCards, scatterCards, sweepCards, mapCards, throwCards}
 
 func (j *job) studySection(s *shelf) page.Section {
 	out := page.Section{Name: "Studies"}
@@ -21,12 +21,19 @@ func (j *job) studySection(s *shelf) page.Section {
 	return out
 }
 
-// studyCard is a card of what most studies have: sentences, the figures of one
-// kind, tables.
-func studyCard(s *shelf, kind, of, name, words string, tables ...page.Table) page.Card {
-	out := page.Card{Key: "study." + name, Kind: kind, Name: name, Words: []string{words}, Tables: tables}
-	out.Figures, out.Files = s.take(name, of)
+// studyCard is a card of what most studies have: sentences, the figures of some
+// kinds, tables, files.
+func (j *job) studyCard(s *shelf, kind, name string, of, files []string, words ...string) page.Card {
+	out := page.Card{Key: "study." + name, Kind: kind, Name: name, Words: append(words, j.judgedHere("study."+name))}
+	out.Figures, out.Files = s.take(name, of...)
+	out.Files = append(out.Files, j.filesOf(name, files...)...)
 	return out
+}
+
+// with adds tables to a card.
+func with(c page.Card, tables ...page.Table) page.Card {
+	c.Tables = append(c.Tables, tables...)
+	return c
 }
 
 func letGoCards(j *job, s *shelf) (out []page.Card) {
@@ -34,7 +41,7 @@ func letGoCards(j *job, s *shelf) (out []page.Card) {
 	for i := range j.letgo {
 		l := &j.letgo[i]
 		file := "letgo/" + names.Name(l.name) + ".csv"
-		out = append(out, studyCard(s, "Let-go series", "let-go series", l.name, untitled(l.name, l.sentence())+".",
+		out = append(out, with(j.studyCard(s, "Let-go series", l.name, []string{"let-go series", "side view of a let-go series"}, fileKinds.letGo, untitled(l.name, l.sentence())+"."),
 			reported(measure.LetGoTable(l.rows), "Releases of the series", file)))
 	}
 	return out
@@ -44,7 +51,7 @@ func platformCards(j *job, s *shelf) (out []page.Card) {
 	for i, rows := range j.spacings {
 		name := j.model().Spacings[i].Name
 		if rows != nil {
-			out = append(out, studyCard(s, "Platforms", "platforms", name, untitled(name, j.platformWords(i, rows))+".",
+			out = append(out, with(j.studyCard(s, "Platforms", name, nil, fileKinds.platforms, untitled(name, j.platformWords(i, rows))+"."),
 				reported(measure.PlatformTable(rows), "Platforms, outermost first", "platforms/")))
 		}
 	}
@@ -54,7 +61,7 @@ func platformCards(j *job, s *shelf) (out []page.Card) {
 func scatterCards(j *job, s *shelf) (out []page.Card) {
 	for i := range j.scatters {
 		if r := &j.scatters[i]; r.cloud != nil {
-			out = append(out, studyCard(s, "Scatter", "scatter", r.of.Name, untitled(r.of.Name, r.sentence(j.flags.seed)),
+			out = append(out, with(j.studyCard(s, "Scatter", r.of.Name, []string{"scatter"}, fileKinds.scatter, untitled(r.of.Name, r.sentence(j.flags.seed))),
 				scatterTable(r.sum)))
 		}
 	}
@@ -79,8 +86,14 @@ func scatterTable(s *measure.Scattered) page.Table {
 func sweepCards(j *job, s *shelf) (out []page.Card) {
 	for i := range j.sweeps {
 		if r := &j.sweeps[i]; r.points != nil {
-			out = append(out, studyCard(s, "Sweep", "sweep", r.Name, untitled(r.Name, r.sentence())+".",
-				reported(r.table(), "Points", "sweeps/")))
+			card := with(j.studyCard(s, "Sweep", r.Name, []string{"sweep", "sweep map"}, fileKinds.sweep, untitled(r.Name, r.sentence())+"."), reported(r.table(), "Points", "sweeps/"))
+			if r.Variants != nil {
+				card = with(card, changeTable(r))
+				for _, words := range r.changeWords() {
+					card.Words = append(card.Words, capital(words)+".")
+				}
+			}
+			out = append(out, card)
 		}
 	}
 	return out

@@ -73,9 +73,11 @@ type solverRecord struct {
 }
 
 type habitatRecord struct {
-	Spin    number `json:"spin_rad_s"`
-	Radius  number `json:"floor_radius_m"`
-	Gravity number `json:"floor_gravity_m_s2"`
+	Spin    number        `json:"spin_rad_s"`
+	Radius  number        `json:"floor_radius_m"`
+	Gravity number        `json:"floor_gravity_m_s2"`
+	Changes []spinRecord  `json:"spin_changes,omitempty"`
+	Coning  *coningRecord `json:"coning,omitempty"`
 }
 
 type landingRecord struct {
@@ -140,7 +142,7 @@ func (j *job) runJSON(w io.Writer, complete bool) error {
 	m := j.model()
 	r := record{Program: programName, Version: version, Go: runtime.Version(), Complete: complete,
 		Scenario: scenarioOf(j.Scenario), Options: optionRecord{Set: orEmpty(j.flags.sets), Only: orEmpty(j.flags.only), Seed: j.flags.seed},
-		Solver: j.solver(m), Habitat: habitatRecord{number(m.Habitat.Spin), number(m.Habitat.FloorRadius), number(m.Gravity(m.Habitat.FloorRadius))},
+		Solver: j.solver(m), Habitat: habitatOf(m),
 		Landings: []landingRecord{}, Paths: []pathRecord{}, Limits: []limitRecord{}, Warnings: []warningRecord{},
 		Caution: caution, Files: j.files}
 	for i := range j.landings {

@@ -21,7 +21,7 @@ func scatterFigures(j *job) []drawing {
 		s := &j.scatters[i]
 		file := "scatter-" + names.Name(s.of.Name)
 		if s.cloud != nil && s.sum.Landed > 0 {
-			out = append(out, drawing{file, "scatter", s.of.Name, func() (*plots.Figure, error) { return j.scatterPlan(s) }})
+			out = append(out, drawing{file: file, of: "scatter", name: s.of.Name, make: func() (*plots.Figure, error) { return j.scatterPlan(s) }})
 		}
 	}
 	return out
@@ -37,10 +37,10 @@ func (j *job) scatterPlan(s *scatterResult) (*plots.Figure, error) {
 	spec := plots.ScatterPlanSpec{Foot: footOn(&g, let), Landed: s.sum.Landed}
 	deck := &spec.Deck
 	deck.Title, deck.Spin = fmt.Sprintf("%s: landings on the plan of %q", s.of.Name, g.Name), m.Habitat.Spin
-	deck.Notes = "Deck unrolled, seen from above by someone who stands on it. A mark for each landing, plumb under it, whatever it lands on. " +
+	deck.Notes = fromAbove(g.Flat) + " A mark for each landing, plumb under it, whatever it lands on. " +
 		"Dashed: the ellipse that would hold 95 % of a normal distribution. Heavy line: the smallest area that holds 95 % of these landings, by their density, smoothed. Shares with their 95 % confidence intervals."
 	if f := g.Flat; f != nil {
-		deck.From, deck.To = plots.Point{X: -f.Size[0] / 2, Y: -f.Size[1] / 2}, plots.Point{X: f.Size[0] / 2, Y: f.Size[1] / 2}
+		j.flatSheet(deck, f)
 	} else {
 		j.deckSheet(deck, &m.Decks[d], d)
 	}

@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"io"
 	"math"
-	"strconv"
 	"strings"
 
 	"offplumb/sim/flight"
@@ -15,9 +14,6 @@ import (
 
 // rowsShown bounds the rows of each table of the summary; the files have all.
 const rowsShown = 40
-
-// textWidth is how wide running text of the summary is, in characters.
-const textWidth = 100
 
 // summary prints what came out, for people.
 func (j *job) summary(w io.Writer) error {
@@ -48,9 +44,6 @@ func (j *job) summary(w io.Writer) error {
 	_, err := io.WriteString(w, b.String())
 	return err
 }
-
-// rpm is a spin rate (rad/s) in revolutions a minute.
-func rpm(spin float64) float64 { return spin * 30 / math.Pi }
 
 func spinLine(m *model.Model) string {
 	h := &m.Habitat
@@ -130,55 +123,6 @@ func ending(l *measure.Landing) string {
 	return "no landing"
 }
 
-// leastShown is the least magnitude shown, in SI: what is below, no reader
-// cares for.
-const leastShown = 5e-7
-
-// sigfig rounds to significant digits.
-func sigfig(x float64, digits int) string {
-	if math.Abs(x) < leastShown {
-		x = 0
-	}
-	return table.Round(x, digits)
-}
-
-// given writes a number as someone gave it, without zeros at its end.
-func given(x float64) string {
-	rounded, _ := strconv.ParseFloat(strconv.FormatFloat(x, 'g', 6, 64), 64)
-	return strconv.FormatFloat(rounded, 'f', -1, 64)
-}
-
-// smaller are the units for small values of some units: each a thousandth of
-// the one before.
-var smaller = map[string][]string{"m": {"m", "mm"}, "J": {"J", "mJ", "uJ"}, "m/s": {"m/s", "mm/s"}}
-
-// smallFrom is the magnitude below which a smaller unit is taken.
-const smallFrom = 0.0099995
-
-func withUnit(x float64, unit string) string {
-	if math.IsNaN(x) {
-		return "-"
-	}
-	units := smaller[unit]
-	for k := 1; k < len(units) && math.Abs(x) < smallFrom && math.Abs(x) >= leastShown; k++ {
-		x, unit = 1000*x, units[k]
-	}
-	return sigfig(x, 3) + " " + unit
-}
-
-// way says how far and which way along the deck.
-func way(x float64) string {
-	switch {
-	case math.IsNaN(x):
-		return "-"
-	case math.Abs(x) < leastShown:
-		return "0 m"
-	case x > 0:
-		return withUnit(x, "m") + " spinward"
-	}
-	return withUnit(-x, "m") + " antispinward"
-}
-
 // sumStories tells what came after the landing, a line a release.
 func (j *job) sumStories(b *strings.Builder) {
 	var lines []string
@@ -198,72 +142,6 @@ func (j *job) sumStories(b *strings.Builder) {
 		}
 		b.WriteString(line)
 	}
-}
-
-func (j *job) sumPaths(b *strings.Builder) {
-	rows := [][]string{{"crew path", "person", "takes", "gravity at feet", "at head", "weight", "side load up to", "friction demand up to", "clearance"}}
-	for i := range j.paths {
-		if p := &j.paths[i]; !p.skipped {
-			rows = append(rows, p.row())
-		}
-	}
-	if len(rows) > 1 {
-		block(b, "Crew paths", rows, 2, "crew/")
-	}
-	for i := range j.paths {
-		if p := &j.paths[i]; !p.skipped {
-			for _, words := range measure.Ladders(j.model(), p.plan, p.loads) {
-				b.WriteString(wrapped("  "+words+".", "    "))
-			}
-		}
-	}
-}
-
-func (p *pathResult) row() []string {
-	nan := math.NaN()
-	feet, head, weight := newRange(), newRange(), newRange()
-	side, friction := nan, nan
-	for i := range p.loads {
-		l := &p.loads[i]
-		feet.add(l.GravityFeet / model.StandardGravity)
-		head.add(l.GravityHead / model.StandardGravity)
-		weight.add(l.Weight)
-		side = math.Max(orZero(side), math.Hypot(l.SideSpinward, l.SideAxial))
-		if math.IsNaN(l.FrictionDemand) {
-			friction = math.Inf(1)
-		} else {
-			friction = math.Max(orZero(friction), l.FrictionDemand)
-		}
-	}
-	demand := table.Fixed(friction, 2)
-	if math.IsInf(friction, 1) {
-		demand = "none: no weight"
-	}
-	return []string{p.plan.Path.Name, p.plan.Crew.Name, withUnit(p.plan.Duration(), "s"), feet.String() + " g", head.String() + " g",
-		weight.String() + " N", withUnit(side, "N"), demand, withUnit(p.clearance.Gap, "m")}
-}
-
-func orZero(x float64) float64 {
-	if math.IsNaN(x) {
-		return 0
-	}
-	return x
-}
-
-// extent is the least and the greatest of some values.
-type extent struct{ low, high float64 }
-
-func newRange() *extent { return &extent{math.Inf(1), math.Inf(-1)} }
-
-func (r *extent) add(x float64) { r.low, r.high = math.Min(r.low, x), math.Max(r.high, x) }
-
-// String gives one value where both round to the same.
-func (r *extent) String() string {
-	low, high := sigfig(r.low, 3), sigfig(r.high, 3)
-	if low == high {
-		return low
-	}
-	return low + " to " + high
 }
 
 func (j *job) sumLimits(b *strings.Builder) {
@@ -295,13 +173,6 @@ func limitRow(v *measure.Verdict) []string {
 	return []string{v.Limit, strings.ToUpper(v.Verdict[:1]) + v.Verdict[1:], found, allowed(v), v.Of, source}
 }
 
-func spaced(unit string) string {
-	if unit == "" {
-		return ""
-	}
-	return " " + unit
-}
-
 func allowed(v *measure.Verdict) string {
 	low, high := given(v.Min), given(v.Max)
 	none := func(x float64) bool { return math.IsNaN(x) || math.IsInf(x, 0) }
@@ -327,26 +198,4 @@ func (j *job) written() string {
 		s += ", " + count(figures, "figure")
 	}
 	return s + report + ", datapackage.json, run.json"
-}
-
-// wrapped breaks running text, with an indent from the second line on.
-func wrapped(text, indent string) string {
-	var b strings.Builder
-	col := 0
-	for i, word := range strings.Fields(text) {
-		switch n := len([]rune(word)); {
-		case i == 0:
-			lead := text[:len(text)-len(strings.TrimLeft(text, " "))]
-			b.WriteString(lead)
-			col = n + len(lead)
-		case col+1+n > textWidth:
-			b.WriteString("\n" + indent)
-			col = len(indent) + n
-		default:
-			b.WriteByte(' ')
-			col += 1 + n
-		}
-		b.WriteString(word)
-	}
-	return b.String() + "\n"
 }

@@ -34,6 +34,7 @@ func sweepFigures(j *job) []drawing {
 		if !ok {
 			continue
 		}
+		maps := s.maps(j, file)
 		for n := 0; n*panelsDrawn < len(spec.Panels); n++ {
 			part := spec
 			part.Panels = spec.Panels[n*panelsDrawn : min(len(spec.Panels), (n+1)*panelsDrawn)]
@@ -41,8 +42,9 @@ func sweepFigures(j *job) []drawing {
 			if n > 0 {
 				name = fmt.Sprintf("%s-%d", file, n+1)
 			}
-			out = append(out, drawing{name, "sweep", s.Name, func() (*plots.Figure, error) { return plots.StackChart(part) }})
+			out = append(out, drawing{file: name, of: "sweep", name: s.Name, make: func() (*plots.Figure, error) { return plots.StackChart(part) }})
 		}
+		out = append(out, maps...)
 	}
 	return out
 }
@@ -83,10 +85,18 @@ func (s *sweepResult) chart(j *job) (plots.StackChartSpec, bool) {
 		spec.Notes = fmt.Sprintf("Gaps: %s that cannot be; the table says why.", count(n, "point"))
 	}
 	if len(s.Keys) > 1 && len(s.Keys[1].Texts) > curvesDrawn {
-		spec.Notes = strings.TrimSpace(fmt.Sprintf("Lines for %d of the %d values of %s; the table has all. ", curvesDrawn, len(s.Keys[1].Texts), s.Keys[1].Last()) + spec.Notes)
+		spec.Notes = strings.TrimSpace(fmt.Sprintf("Lines for %d of the %d values of %s; the table %s all. ", curvesDrawn, len(s.Keys[1].Texts), s.Keys[1].Last(), s.others()) + spec.Notes)
 	}
 	spec.Desc = described("Sweep %s.", s.sentence())
 	return spec, len(spec.Panels) > 0
+}
+
+// others names what shows all values of the second key.
+func (s *sweepResult) others() string {
+	if s.Keys[1].Words() {
+		return "has"
+	}
+	return "and the maps have"
 }
 
 // over names the keys by their last parts.
@@ -116,7 +126,7 @@ func (s *sweepResult) spins() string {
 	if !(r.low < r.high) {
 		return ""
 	}
-	text := fmt.Sprintf("The spin varies, %s to %s rpm.", given(r.low), given(r.high))
+	text := fmt.Sprintf("The spin varies, %s to %s rpm.", drawnMinus(given(r.low)), drawnMinus(given(r.high)))
 	if r.low < 0 {
 		text += " At negative spin the floor moves antispinward."
 	}

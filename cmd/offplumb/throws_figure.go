@@ -28,7 +28,7 @@ func throwFigures(j *job) []drawing {
 			continue
 		}
 		if lines := drawnThrows(s); len(lines) > 0 {
-			out = append(out, drawing{file, "throws", name, func() (*plots.Figure, error) { return j.throwView(s, lines) }})
+			out = append(out, drawing{file: file, of: "throws", name: name, make: func() (*plots.Figure, error) { return j.throwView(s, lines) }})
 		}
 		if !s.Of.Table() {
 			continue
@@ -39,7 +39,7 @@ func throwFigures(j *job) []drawing {
 			if n > 0 {
 				card = fmt.Sprintf("%s-%d", card, n+1)
 			}
-			out = append(out, drawing{card, "throw table", name, func() (*plots.Figure, error) { return j.throwCard(s, part) }})
+			out = append(out, drawing{file: card, of: "throw table", name: name, make: func() (*plots.Figure, error) { return j.throwCard(s, part) }})
 		}
 	}
 	return out
@@ -122,7 +122,7 @@ func (j *job) viewTargets(spec *plots.ThrowViewSpec, s *study.Throws, on *side, 
 	default:
 		for i := range s.Aims {
 			if i == 0 || s.Of.Along == model.Spinward {
-				name := given(s.Aims[i].Distance) + " m"
+				name := drawnMinus(given(s.Aims[i].Distance)) + " m"
 				if s.Of.Along != model.Spinward {
 					name = "targets, one behind the other"
 				}
@@ -135,10 +135,13 @@ func (j *job) viewTargets(spec *plots.ThrowViewSpec, s *study.Throws, on *side, 
 // lineName names a throw.
 func lineName(s *study.Throws, l drawnThrow) string {
 	if s.Of.Table() {
-		return given(l.aim.Distance) + " m " + l.Style
+		return drawnMinus(given(l.aim.Distance)) + " m " + l.Style
 	}
 	return fmt.Sprintf("%d %s", l.Solution, l.Style)
 }
+
+// drawnMinus sets the sign of a number as figures do, as long as a plus.
+func drawnMinus(s string) string { return strings.Replace(s, "-", "\u2212", 1) }
 
 func throwTitle(s *study.Throws) string {
 	switch {
@@ -215,7 +218,7 @@ func distanceShort(t *model.ThrowTo, d float64) string {
 }
 
 func throwCardRow(name string, t *measure.Throw) plots.ThrowCardRow {
-	deg := func(rad float64) string { return table.Fixed(degreesOf(rad), 1) + "°" }
+	deg := func(rad float64) string { return drawnMinus(table.Fixed(degreesOf(rad), 1)) + "°" }
 	out := plots.ThrowCardRow{Sight: t.SightElev, Soft: t.Outcome != measure.ThrowArrives}
 	out.Point = math.Atan2(math.Sin(t.Elevation), math.Cos(t.Elevation)*math.Cos(t.LeadHeading))
 	above, aside := deg(t.LeadUp), "-"

@@ -26,7 +26,7 @@ func turningFigures(j *job) []drawing {
 	if !j.model().Unsteady() {
 		return nil
 	}
-	return []drawing{{"spin", "spin", "", func() (*plots.Figure, error) { return j.spinChart() }}}
+	return []drawing{{file: "spin", of: "spin", make: func() (*plots.Figure, error) { return j.spinChart() }}}
 }
 
 // spinChart draws the spin and what it does on the floor against time.
@@ -119,4 +119,33 @@ func turnedAt(m *model.Model, t, phi float64) float64 {
 	a := m.Motion.At(t)
 	out := a.Out(frame.Polar{R: 1, Phi: phi}.Vec())
 	return frame.Unwind(math.Atan2(out.Y, out.X)-phi, turned)
+}
+
+// spinRecord is a change of the spin in run.json, coningRecord the coning: by
+// the keys of the scenario.
+type spinRecord struct {
+	Start number `json:"start_s"`
+	Over  number `json:"over_s"`
+	To    number `json:"to_rad_s"`
+	Ramp  string `json:"ramp"`
+}
+
+type coningRecord struct {
+	HalfAngle number `json:"half_angle_deg"`
+	Period    number `json:"period_s"`
+	Phase     number `json:"phase_deg"`
+}
+
+// habitatOf is the habitat in run.json; what it says of gravity and spin is of
+// the time before any change.
+func habitatOf(m *model.Model) habitatRecord {
+	h := &m.Habitat
+	out := habitatRecord{Spin: number(h.Spin), Radius: number(h.FloorRadius), Gravity: number(m.Gravity(h.FloorRadius))}
+	for _, c := range h.Changes {
+		out.Changes = append(out.Changes, spinRecord{number(c.Start), number(c.Over), number(c.To), rampWords(c.Linear)})
+	}
+	if c := h.Coning; m.Cones() {
+		out.Coning = &coningRecord{number(degreesOf(c.HalfAngle)), number(c.Period), number(degreesOf(c.Phase))}
+	}
+	return out
 }

@@ -207,7 +207,7 @@ Drawing.prototype.legend = function (rows) {
 };
 
 function Player(root) {
-  var self = this, film = JSON.parse(root.getAttribute("data-film"));
+  var film = JSON.parse(root.getAttribute("data-film"));
   film.pieces = reel(film.reel);
   rounds(film);
   this.root = root; this.film = film; this.t = 0; this.playing = false; this.rate = film.rate;
@@ -223,9 +223,6 @@ function Player(root) {
   this.thumb = root.querySelector(".f-thumb");
   this.gone = root.querySelector(".f-gone");
   this.controls();
-  Array.prototype.forEach.call(root.querySelectorAll("[data-film-live]"), function (e) { e.hidden = false; });
-  Array.prototype.forEach.call(root.querySelectorAll("[data-film-still]"), function (e) { e.hidden = true; });
-  root.addEventListener("film-seek", function () { self.stop(); self.seek(+root.getAttribute("data-seek")); });
   this.seek(0);
 }
 Player.prototype.spots = function () {
@@ -417,10 +414,35 @@ Player.prototype.legends = function () {
   this.beyond.legend(vel ? [{ name: "velocity", words: "inertial velocity", unit: "m/s", perUnit: this.perVel }] : []);
 };
 
+// begin makes the player of a film, once.
+function begin(root) {
+  if (!root.filmPlayer) root.filmPlayer = new Player(root);
+  return root.filmPlayer;
+}
+
+// ready shows the controls of a film, which take their room from the start, and answers what
+// is asked of it, even before its player is made.
+function ready(root) {
+  if (root.filmReady) return false;
+  root.filmReady = true;
+  Array.prototype.forEach.call(root.querySelectorAll("[data-film-live]"), function (e) { e.hidden = false; });
+  Array.prototype.forEach.call(root.querySelectorAll("[data-film-still]"), function (e) { e.hidden = true; });
+  root.addEventListener("film-seek", function () { var p = begin(root); p.stop(); p.seek(+root.getAttribute("data-seek")); });
+  ["focusin", "pointerdown"].forEach(function (n) { root.addEventListener(n, function () { begin(root); }, true); });
+  return true;
+}
+
+// A page of more films than AT_ONCE makes their players when they come near the screen, so
+// that it opens as fast as one of few.
+var AT_ONCE = 12;
+
 function start() {
-  Array.prototype.forEach.call(document.querySelectorAll("[data-film]"), function (root) {
-    if (!root.filmStarted) { root.filmStarted = true; new Player(root); }
-  });
+  var all = Array.prototype.filter.call(document.querySelectorAll("[data-film]"), ready);
+  if (all.length <= AT_ONCE || !window.IntersectionObserver) { all.forEach(begin); return; }
+  var near = new IntersectionObserver(function (list) {
+    list.forEach(function (e) { if (e.isIntersecting) { near.unobserve(e.target); begin(e.target); } });
+  }, { rootMargin: "600px 0px" });
+  all.forEach(function (root) { near.observe(root); });
 }
 if (document.readyState === "loading") document.addEventListener("DOMContentLoaded", start); else start();
 }());

@@ -28,6 +28,7 @@ type (
 		Figures  []figureView
 		Cards    []cardView
 		Text     string
+		Files    []File
 	}
 	cardView struct {
 		ID, Kind, Name string
@@ -98,6 +99,7 @@ func (l *layer) report(r *Report) (*reportView, error) {
 
 func (l *layer) section(s *Section, n int) (v sectionView, err error) {
 	v = sectionView{ID: "part-" + strconv.Itoa(n), Number: n, Name: clean(s.Name), Lead: clean(s.Lead), Words: cleaned(s.Words), Text: lines(s.Text)}
+	v.Files = files(s.Files)
 	for _, it := range s.List {
 		v.List = append(v.List, Item{clean(it.Of), clean(it.Words)})
 	}
@@ -125,14 +127,19 @@ func (l *layer) card(c *Card) (v cardView, err error) {
 			v.Facts = append(v.Facts, Group{clean(g.Name), list})
 		}
 	}
-	for _, f := range c.Files {
-		v.Files = append(v.Files, File{clean(f.Name), clean(f.Path)})
-	}
+	v.Files = files(c.Files)
 	if v.Tables, err = l.tablesOf(c.Tables); err != nil {
 		return v, err
 	}
 	v.Figures, err = l.figuresOf(c.Figures)
 	return v, err
+}
+
+func files(list []File) (out []File) {
+	for _, f := range list {
+		out = append(out, File{clean(f.Name), clean(f.Path)})
+	}
+	return out
 }
 
 func (l *layer) figuresOf(list []Figure) (out []figureView, err error) {

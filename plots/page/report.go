@@ -37,6 +37,7 @@ type Section struct {
 	Figures []Figure
 	Cards   []Card
 	Text    string // a file as it is written
+	Files   []File // what stands beside the report
 }
 
 // Item is an entry of a list: what it is about, and words.
@@ -52,7 +53,7 @@ type Card struct {
 	Motion  template.HTML // a moving picture, trusted as it is
 	Figures []Figure
 	Tables  []Table
-	Files   []File // what stands beside the report, in place of figures
+	Files   []File // what stands beside the report
 }
 
 // File is a file beside the report, by its relative path.

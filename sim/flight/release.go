@@ -57,9 +57,9 @@ func carried(m *model.Model, let Let, plan *crew.Plan) (Let, model.Problem) {
 // startVelocity gives the velocity relative to the habitat, in habitat
 // components, of a release at p from a support that moves with the velocity
 // base (m/s). Heading counts from spinward toward +axial, elevation from the
-// deck up.
+// deck up: on a flat floor these are its own directions, wherever over it p is.
 func startVelocity(m *model.Model, r *model.Release, begin float64, p frame.Polar, base r3.Vec) r3.Vec {
-	l := frame.LocalAt(p.Phi)
+	l := m.LocalAt(p)
 	s := &r.Start
 	switch s.Kind {
 	case model.Thrown:

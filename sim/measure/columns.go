@@ -89,7 +89,7 @@ var sampleColumns = []column[Sample]{
 	{key: "offset", unit: metre, meaning: "arc gone round since the release on the deck beneath it, spinward positive", num: func(s *Sample) float64 { return s.Offset }},
 	{key: "v_spinward", unit: speedUnit, meaning: "velocity relative to the habitat, spinward", num: func(s *Sample) float64 { return s.VSpinward }},
 	{key: "v_axial", unit: speedUnit, meaning: "velocity relative to the habitat, axial", num: func(s *Sample) float64 { return s.VAxial }},
-	{key: "v_up", unit: speedUnit, meaning: "velocity relative to the habitat, toward the axis", num: func(s *Sample) float64 { return s.VUp }},
+	{key: "v_up", unit: speedUnit, meaning: "velocity relative to the habitat, up: toward the axis, or along the normal of a flat floor", num: func(s *Sample) float64 { return s.VUp }},
 	{key: "x", unit: metre, meaning: "habitat frame: outward through spinward zero", num: func(s *Sample) float64 { return s.Local.Pos.X }},
 	{key: "y", unit: metre, meaning: "habitat frame: spinward at spinward zero", num: func(s *Sample) float64 { return s.Local.Pos.Y }},
 	{key: "z", unit: metre, meaning: "habitat frame: axial", num: func(s *Sample) float64 { return s.Local.Pos.Z }},

@@ -6,7 +6,6 @@ import (
 
 	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/sim/flight"
-	"offplumb/sim/frame"
 	"offplumb/sim/model"
 )
 
@@ -269,9 +268,11 @@ func (c *LandMap) SkippedPlaces() (n int) {
 	return n
 }
 
-// LetVelocity is a velocity (m/s) along the local directions at a place, in
-// habitat components.
-func LetVelocity(p model.Place, v r3.Vec) r3.Vec { return frame.LocalAt(p.Phi).Vec(v.X, v.Y, v.Z) }
+// LetVelocity is a velocity (m/s) along the directions of the floor beneath a
+// place, in habitat components.
+func LetVelocity(m *model.Model, p model.Place, v r3.Vec) r3.Vec {
+	return m.LocalAt(p.Polar).Vec(v.X, v.Y, v.Z)
+}
 
 // Stand describes a place by the deck or flat floor beneath it: its name, and
 // the arc, or straight length, and axial place there, m.

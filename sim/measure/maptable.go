@@ -55,7 +55,7 @@ var cellColumns = []column[cellRow]{
 	{key: "from_height", unit: metre, meaning: "its height above that deck", num: func(r *cellRow) float64 { return r.height }},
 	{key: "from_v_spinward", unit: speedUnit, meaning: "its velocity spinward, relative to the habitat", num: func(r *cellRow) float64 { return r.v.X }},
 	{key: "from_v_axial", unit: speedUnit, meaning: "its velocity toward +axial", num: func(r *cellRow) float64 { return r.v.Y }},
-	{key: "from_v_up", unit: speedUnit, meaning: "its velocity toward the axis", num: func(r *cellRow) float64 { return r.v.Z }},
+	{key: "from_v_up", unit: speedUnit, meaning: "its velocity up: toward the axis, or along the normal of a flat floor", num: func(r *cellRow) float64 { return r.v.Z }},
 	{key: "mean_time", unit: second, meaning: "mean time of the landings", num: func(r *cellRow) float64 { return r.cell.Time / float64(r.cell.Landings) }},
 	{key: "impacts", meaning: "landings, and of maps until rest the impacts after them", num: func(r *cellRow) float64 { return float64(r.cell.Touches) }},
 	{key: "rests", meaning: "how many come to rest there, of maps until rest", num: func(r *cellRow) float64 { return float64(r.cell.Rests) }},

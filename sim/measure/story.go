@@ -22,7 +22,7 @@ func Story(m *model.Model, t *flight.Track) string {
 			s.say("rests on %s until %s", p.Surface, seconds(p.T1))
 			s.last = ""
 		case p.Kind != flight.Free:
-			s.along(p)
+			s.glides(p)
 		}
 	}
 	s.until(t.End)
@@ -51,6 +51,7 @@ type teller struct {
 	parts  []string
 	last   string // surface of the last impact told
 	more   int    // impacts on it since
+	glide  glide  // not told yet
 }
 
 func (s *teller) say(format string, args ...any) {
@@ -58,8 +59,12 @@ func (s *teller) say(format string, args ...any) {
 	s.parts = append(s.parts, fmt.Sprintf(format, args...))
 }
 
-// flush counts the impacts that were not told.
+// flush tells the slide under way and counts the impacts that were not told.
 func (s *teller) flush() {
+	if len(s.glide.ways) > 0 {
+		s.parts = append(s.parts, s.glide.words())
+		s.glide = glide{}
+	}
 	if s.more > 0 {
 		words := "bounces there once more"
 		if s.more > 1 {
@@ -81,6 +86,9 @@ func (s *teller) until(time float64) {
 		case e.Kind == Leaves:
 			s.say("leaves %s at %s with %s", e.Surface, seconds(e.Time), speeds(e.Speed, e.Energy))
 			s.last = ""
+		case e.Time == 0 && e.Speed == 0:
+			s.say("starts on %s", e.Surface)
+			s.last = ""
 		case e.Surface == s.last:
 			s.more++
 		default:
@@ -93,18 +101,6 @@ func (s *teller) until(time float64) {
 // leastTouch is the least speed along the normal, in m/s, of a touch that a
 // story tells after the release: a hundredth of what the least bounce has.
 const leastTouch = 1e-3
-
-// along tells a slide or a roll.
-func (s *teller) along(p *flight.Phase) {
-	verb := "slides"
-	if p.Kind == flight.Roll {
-		verb = "rolls"
-	}
-	if way := wayOf(s.m, s.t, p); way > leastWay {
-		s.say("%s %s m on %s", verb, table.Round(way, 3), p.Surface)
-		s.last = ""
-	}
-}
 
 // leastWay is the least slide, in m, that a story tells.
 const leastWay = 1e-3

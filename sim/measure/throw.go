@@ -32,7 +32,8 @@ const (
 
 // Throw is one solution of a throw study, or a target that no throw reaches.
 // SI units; NaN: none. Headings count from spinward toward +axial, elevations
-// from the deck up, where the body is.
+// from the deck up, where the body is; over a flat floor they are those of the
+// floor.
 type Throw struct {
 	Solution    int     // counts from 1 at each target; 0: none
 	Distance    float64 // m, of a throw table
@@ -88,15 +89,17 @@ func NoThrow(distance, least, leastTime float64) Throw {
 }
 
 // direction gives speed (m/s), heading and elevation (rad) of a velocity in
-// habitat components at an angle (rad).
-func direction(v r3.Vec, phi float64) (speed, heading, elevation float64) {
-	s, a, u := frame.LocalAt(phi).Split(v)
+// habitat components along the directions of a floor.
+func direction(v r3.Vec, l frame.Local) (speed, heading, elevation float64) {
+	s, a, u := l.Split(v)
 	return r3.Norm(v), math.Atan2(a, s), math.Atan2(u, math.Hypot(s, a))
 }
 
 // AimOf gives speed (m/s), heading and elevation (rad) of a velocity (m/s,
 // habitat components) at a place, as a throw of a release has them.
-func AimOf(v r3.Vec, at frame.Polar) (speed, heading, elevation float64) { return direction(v, at.Phi) }
+func AimOf(m *model.Model, v r3.Vec, at frame.Polar) (speed, heading, elevation float64) {
+	return direction(v, m.LocalAt(at))
+}
 
 // ThrowOf measures a throw that was flown until it first touches something, or
 // until it arrives. end is the target's motion at the arrival and sight its
@@ -105,9 +108,10 @@ func AimOf(v r3.Vec, at frame.Polar) (speed, heading, elevation float64) { retur
 func ThrowOf(m *model.Model, t *flight.Track, end frame.State, sight r3.Vec, time, slack float64) Throw {
 	out := NoThrow(math.NaN(), math.NaN(), math.NaN())
 	out.Time, out.Outcome, out.To = time, ThrowArrives, throwPlace(m, end.Pos)
-	out.Speed, out.Heading, out.Elevation = direction(t.Local.Vel, t.Start.Phi)
-	out.V[0], out.V[1], out.V[2] = frame.LocalAt(t.Start.Phi).Split(t.Local.Vel)
-	out.look(t, sight)
+	l := m.LocalAt(t.Start.Polar)
+	out.Speed, out.Heading, out.Elevation = direction(t.Local.Vel, l)
+	out.V[0], out.V[1], out.V[2] = l.Split(t.Local.Vel)
+	out.look(t, l, sight)
 	out.Height, out.Round = throwTop(m, t)
 	a := m.Motion.At(t.Begin + t.End)
 	last := a.ToHabitat(t.Last)
@@ -124,17 +128,17 @@ func ThrowOf(m *model.Model, t *flight.Track, end frame.State, sight r3.Vec, tim
 		return out
 	}
 	out.HitTime, out.Surface, out.Hit = math.NaN(), "", noThrowPlace
-	out.ArriveSpeed, out.ArriveHead, out.ArriveElev = direction(r3.Sub(last.Vel, end.Vel), frame.PolarOf(end.Pos).Phi)
+	out.ArriveSpeed, out.ArriveHead, out.ArriveElev = direction(r3.Sub(last.Vel, end.Vel), m.LocalAt(frame.PolarOf(end.Pos)))
 	return out
 }
 
 // look tells where to point from where the target is seen.
-func (o *Throw) look(t *flight.Track, sight r3.Vec) {
+func (o *Throw) look(t *flight.Track, l frame.Local, sight r3.Vec) {
 	line := r3.Sub(sight, t.Local.Pos)
 	if r3.Norm(line) < model.TouchSlack || o.Speed == 0 {
 		return
 	}
-	_, o.SightHead, o.SightElev = direction(line, t.Start.Phi)
+	_, o.SightHead, o.SightElev = direction(line, l)
 	o.Lead = math.Atan2(r3.Norm(r3.Cross(line, t.Local.Vel)), r3.Dot(line, t.Local.Vel))
 	o.LeadHeading, o.LeadUp = frame.WrapAngle(o.Heading-o.SightHead), o.Elevation-o.SightElev
 }

@@ -82,6 +82,17 @@ func (m *Model) FlatBeneath(pos r3.Vec) *Flat {
 	return m.FlatDeck(0)
 }
 
+// LocalAt gives the directions of the floor beneath a place: those of the flat
+// floor that it lies over, up being its normal, or those of the plumb line. A
+// release's velocity, a throw's heading and elevation and a track's columns are
+// along them.
+func (m *Model) LocalAt(p frame.Polar) frame.Local {
+	if f := m.FlatBeneath(p.Vec()); f != nil {
+		return f.local
+	}
+	return frame.LocalAt(p.Phi)
+}
+
 // Above gives the height (m) of a place above a deck: along the plumb line, or
 // along the normal of a flat one.
 func (m *Model) Above(deck int, p frame.Polar) float64 {

@@ -105,7 +105,7 @@ func (x *mapping) place(ctx context.Context, f *flight.Flier, spare *flight.Trac
 			return
 		}
 		let := flight.Let{Release: &x.release, Body: x.body, Place: p,
-			Local: frame.State{Pos: p.Vec(), Vel: measure.LetVelocity(p, r3.Scale(x.of.Speed, v))}}
+			Local: frame.State{Pos: p.Vec(), Vel: measure.LetVelocity(x.m, p, r3.Scale(x.of.Speed, v))}}
 		slot := &x.slots[k*len(x.directions)+d]
 		if err := f.FlyAgain(spare, &let); err != nil {
 			*slot = measure.MapFlight{Fate: measure.ShotFailed, Why: err.Error()}

@@ -18,7 +18,7 @@ func (p *Prepared) fly(a *aim, v r3.Vec, time float64) (Thrown, error) {
 	r := *a.let.Release
 	r.Until = model.Until{Kind: model.UntilLanding}
 	r.Start.Kind = model.Thrown
-	r.Start.Speed, r.Start.Heading, r.Start.Elevation = measure.AimOf(v, a.let.Place.Polar)
+	r.Start.Speed, r.Start.Heading, r.Start.Elevation = measure.AimOf(p.Model, v, a.let.Place.Polar)
 	let, fault := flight.Release(p.Model, &r, nil)
 	if fault.Msg != "" {
 		return Thrown{}, fmt.Errorf("%s", fault.Msg)
