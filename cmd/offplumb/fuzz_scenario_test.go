@@ -89,7 +89,7 @@ func scenarioOfDice(src []byte) (toml, list string) {
 	t.air()
 	t.things()
 	t.add("[solver]\nmax_time = %s", t.qty(1, 20, "s"))
-	t.add("[output]\nstep = %s", `"`+t.one("50 ms", "10 ms", "1 s", "0.001 ms")+`"`)
+	t.add("[output]\nstep = %s", `"`+t.one("50 ms", "10 ms", "1 s", "0.1 s", "0.2 ms")+`"`)
 	for range t.of(3) {
 		t.body()
 	}
