@@ -291,7 +291,7 @@ func (s *stage) close() {
 // discard removes the folder, unless it was put in place.
 func (s *stage) discard() {
 	if !s.placed {
-		os.RemoveAll(s.aside)
+		removeFolder(s.aside)
 		s.close()
 	}
 }

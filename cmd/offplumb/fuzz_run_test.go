@@ -7,11 +7,13 @@ import (
 	"encoding/json"
 	"encoding/xml"
 	"errors"
+	"flag"
 	"io"
 	"os"
 	"path/filepath"
 	"regexp"
 	"slices"
+	"strconv"
 	"strings"
 	"testing"
 	"time"
@@ -28,24 +30,44 @@ func FuzzRun(f *testing.F) {
 	for _, s := range []string{"", "ring", "torus with a map", "\x01\x02\x03\x04\x05\x06\x07\x08", "\xff\xff\xff\xff\xff\xff\xff\xff\xff\xff"} {
 		f.Add([]byte(s))
 	}
-	f.Fuzz(func(t *testing.T, src []byte) {
-		dir := t.TempDir()
-		toml, list := scenarioOfDice(src)
-		keep(t, filepath.Join(dir, "s.toml"), toml)
-		keep(t, filepath.Join(dir, "list.csv"), list)
-		status, words := runFor(runBudget, "run", filepath.Join(dir, "s.toml"), "--out", filepath.Join(dir, "out"))
-		if t.Failed() || status < exitDone || status > exitIncomplete {
-			t.Fatalf("exit status %d of\n%s\n%s", status, toml, words)
-		}
-		if strings.ContainsFunc(words, func(r rune) bool { return r < ' ' && r != '\n' || r == 0x7f }) {
-			t.Errorf("control characters in %q", words)
-		}
-		t.Logf("status %d", status)
-		inFolder(t, dir, status, words)
-		if err := readable(filepath.Join(dir, "out")); status <= exitBroken && err != nil {
-			t.Errorf("%v\n%s", err, toml)
-		}
-	})
+	f.Fuzz(checkRun)
+}
+
+var diceRuns = flag.Int("dice", 6, "how many random scenarios are run")
+
+// TestRunDice is FuzzRun without a fuzzer, which is many times as fast.
+func TestRunDice(t *testing.T) {
+	for i := range *diceRuns {
+		src := strconv.AppendInt([]byte("run "), int64(i), 10)
+		t.Run(string(src), func(t *testing.T) { checkRun(t, src) })
+	}
+}
+
+func checkRun(t *testing.T, src []byte) {
+	dir := t.TempDir()
+	toml, list := scenarioOfDice(src)
+	keep(t, filepath.Join(dir, "s.toml"), toml)
+	keep(t, filepath.Join(dir, "list.csv"), list)
+	out := filepath.Join(dir, "out")
+	status, words := runFor(runBudget, "run", filepath.Join(dir, "s.toml"), "--out", out)
+	if status < exitDone || status > exitIncomplete {
+		t.Fatalf("exit status %d of\n%s\n%s", status, toml, words)
+	}
+	t.Logf("status %d", status)
+	if strings.ContainsFunc(words, func(r rune) bool { return r < ' ' && r != '\n' || r == 0x7f }) {
+		t.Errorf("control characters in %q", words)
+	}
+	inFolder(t, dir, status, words)
+	if status > exitBroken {
+		return
+	}
+	if err := readable(out); err != nil {
+		t.Errorf("%v\n%s", err, toml)
+	}
+	files, _, _ := knownOfRun(out)
+	if name, err := stranger(out, files); err != nil || name != "" {
+		t.Errorf("run.json does not name %q %v", name, err)
+	}
 }
 
 func keep(t testing.TB, path, text string) {

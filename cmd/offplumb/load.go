@@ -55,7 +55,7 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 	if name == "-" {
 		shown = stdinName
 	}
-	files := &inputs{folder: filepath.Dir(name), stdin: stdin}
+	files := &inputs{folder: filepath.Dir(name), stdin: stdin, beyond: l.allowOutside}
 	if name == "-" {
 		files.stdin = nil
 	}

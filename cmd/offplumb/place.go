@@ -65,7 +65,7 @@ func replace(from, to string) (err error) {
 		err = exchange(from, to)
 		switch {
 		case err == nil:
-			os.RemoveAll(from) // what is left of it, the next run removes
+			removeFolder(from) // what is left of it, the next run removes
 			return nil
 		case errors.Is(err, errors.ErrUnsupported):
 			err = replaceInSteps(from, to)
@@ -93,13 +93,13 @@ func replaceInSteps(from, to string) error {
 			return err
 		}
 		if errors.Is(err, fs.ErrExist) { // another's stands there, newer than the old
-			os.RemoveAll(old)
+			removeFolder(old)
 			return err
 		}
 		return errors.Join(err, os.Rename(old, to))
 	}
 	if had {
-		os.RemoveAll(old)
+		removeFolder(old)
 	}
 	return nil
 }
@@ -116,7 +116,7 @@ func merge(from, to string) error {
 			if err != nil {
 				return err
 			}
-			return put1(path, filepath.Join(to, rel), d.IsDir(), move)
+			return putOne(path, filepath.Join(to, rel), d.IsDir(), move)
 		}); err != nil {
 			return err
 		}
@@ -124,8 +124,8 @@ func merge(from, to string) error {
 	return nil
 }
 
-// put1 moves a file, or makes a folder; without move it only holds that it can.
-func put1(from, to string, folder, move bool) error {
+// putOne moves a file, or makes a folder; without move it only holds that it can.
+func putOne(from, to string, folder, move bool) error {
 	info, err := os.Stat(to)
 	switch {
 	case err == nil && info.IsDir() != folder:
@@ -170,8 +170,23 @@ func tidyOne(dir, final string) {
 		}
 	}
 	if leftBehind(dir) {
-		os.RemoveAll(dir)
+		removeFolder(dir)
 	}
+}
+
+// removeFolder removes a folder, what marks it as ours last: a program that is
+// killed meanwhile leaves what can be told.
+func removeFolder(dir string) {
+	entries, err := os.ReadDir(dir)
+	if err != nil {
+		return
+	}
+	for _, e := range entries {
+		if name := e.Name(); name != markFile && name != runFile && name != partFile {
+			os.RemoveAll(filepath.Join(dir, name))
+		}
+	}
+	os.RemoveAll(dir)
 }
 
 func isMissing(path string) bool {
