@@ -49,7 +49,7 @@ var outside = map[string][]string{
 	"plots":               {"gonum.org/v1/gonum", "gonum.org/v1/plot"},
 	"scenarios":           {"github.com/pelletier/go-toml/v2"},
 	"scenarios/published": {"gonum.org/v1/gonum"},
-	"cmd/offplumb":        {"github.com/spf13/cobra", "github.com/spf13/pflag", "gonum.org/v1/gonum"},
+	"cmd/offplumb":        {"github.com/spf13/cobra", "github.com/spf13/pflag", "golang.org/x/sys", "gonum.org/v1/gonum"},
 }
 
 func TestImportsPointDown(t *testing.T) {

@@ -65,6 +65,7 @@ func interruptible() (context.Context, func()) {
 	signal.Notify(ch, os.Interrupt, syscall.SIGTERM)
 	go func() {
 		if s, ok := <-ch; ok {
+			signal.Stop(ch) // a second one ends the program at once
 			cancel(signalled{s})
 		}
 	}()
@@ -85,16 +86,16 @@ func status(err error, stderr io.Writer) int {
 	case errors.Is(err, errBroken):
 		return exitBroken
 	case errors.As(err, &sig):
-		fmt.Fprintln(stderr, "offplumb:", err)
+		fmt.Fprintln(stderr, calm("offplumb: "+err.Error()))
 		if sig.Signal == syscall.SIGTERM {
 			return exitTerminated
 		}
 		return exitInterrupted
 	case errors.As(err, &f):
-		fmt.Fprintln(stderr, prefixed(f.err))
+		fmt.Fprintln(stderr, calm(prefixed(f.err)))
 		return f.status
 	}
-	fmt.Fprintln(stderr, prefixed(err))
+	fmt.Fprintln(stderr, calm(prefixed(err)))
 	return exitWrong
 }
 

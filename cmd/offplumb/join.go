@@ -72,7 +72,7 @@ func (f *joinFlags) join(ctx context.Context, s streams, dirs []string) error {
 	if sum := sha256.Sum256(src); hex.EncodeToString(sum[:]) != first.Scenario.SHA256 {
 		return wrong(fmt.Errorf("%s: %s is not the scenario that the part was computed from", first.dir, partScenario))
 	}
-	sc, err := f.source(first.Scenario.File, src, &inputs{folder: folder})
+	sc, err := f.source(first.Scenario.File, src, &inputs{folder: folder, beyond: f.allowOutside})
 	if err != nil {
 		return err
 	}

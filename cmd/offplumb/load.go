@@ -55,7 +55,7 @@ func (l *loading) load(name string, stdin io.Reader) (*loaded, error) {
 	if name == "-" {
 		shown = stdinName
 	}
-	files := &inputs{folder: filepath.Dir(name), stdin: stdin}
+	files := &inputs{folder: filepath.Dir(name), stdin: stdin, beyond: l.allowOutside}
 	if name == "-" {
 		files.stdin = nil
 	}
@@ -133,9 +133,9 @@ func newCheck(s streams) *cobra.Command {
 				return err
 			}
 			m := sc.Prepared.Model
-			fmt.Fprintf(s.out, "%s: no problems: %s, %s, %s\n", args[0],
+			_, err = fmt.Fprintf(s.out, "%s: no problems: %s, %s, %s\n", calm(args[0]),
 				count(len(m.Releases)+sc.rows(), "release"), count(len(m.Paths), "crew path"), count(len(m.Limits), "limit"))
-			return nil
+			return incompleteIf(err)
 		},
 	}
 	l.flags(cmd)

@@ -37,6 +37,6 @@ func openReport(folder string, stderr io.Writer) {
 		err = openFile(path)
 	}
 	if err != nil {
-		fmt.Fprintf(stderr, "offplumb: cannot open the report: %v; it is %s\n", err, path)
+		fmt.Fprintln(stderr, calm(fmt.Sprintf("offplumb: cannot open the report: %v; it is %s", err, path)))
 	}
 }

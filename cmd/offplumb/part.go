@@ -132,16 +132,16 @@ func (j *job) runPart(ctx context.Context, s streams, f partFlag) error {
 	if j.flags.out == "" {
 		j.out = fmt.Sprintf("%s-part-%d-of-%d", strings.TrimSuffix(j.out, "-out"), f.part, f.of)
 	}
-	st, err := newStageOf(j.out, j.flags.force, f.String(), func(dir string) bool { return samePart(dir, f) })
+	st, err := newStage(j.out, j.flags.force, folderKind{f.String(), func(dir string) ([]string, bool, bool) { return knownOfPart(dir, f) }})
 	if err != nil {
 		return err
 	}
+	defer st.discard()
 	rec, err := j.doPart(ctx, s, st, f)
 	if err == nil {
 		err = st.commit()
 	}
 	if err != nil {
-		st.discard()
 		if cause := new(signalled); asSignal(err, cause) {
 			return *cause
 		}
@@ -153,10 +153,17 @@ func (j *job) runPart(ctx context.Context, s streams, f partFlag) error {
 	return j.reportPart(s, rec)
 }
 
-// samePart says whether a folder holds the part that is to replace it.
-func samePart(dir string, f partFlag) bool {
+// knownOfPart gives the files of a part that is to be replaced by the same one.
+func knownOfPart(dir string, f partFlag) (files []string, all, ok bool) {
 	r, err := readPartFile(dir)
-	return err == nil && r.Part == f.part && r.Of == f.of
+	if err != nil || r.Part != f.part || r.Of != f.of {
+		return nil, false, false
+	}
+	files = []string{partFile, partScenario}
+	for i := range r.Work {
+		files = append(files, r.Work[i].File)
+	}
+	return files, false, true
 }
 
 func (j *job) doPart(ctx context.Context, s streams, st *stage, f partFlag) (*partRecord, error) {
@@ -227,7 +234,7 @@ func (j *job) reportPart(s streams, rec *partRecord) error {
 			_, err = s.out.Write(src)
 		}
 	case !j.flags.quiet:
-		_, err = io.WriteString(s.out, j.partWords(rec))
+		_, err = io.WriteString(s.out, calm(j.partWords(rec)))
 	}
 	return incompleteIf(err)
 }

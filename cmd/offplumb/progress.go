@@ -19,7 +19,7 @@ const tellEvery = 200 * time.Millisecond
 
 func newProgress(w io.Writer, quiet bool) *progress {
 	f, ok := w.(*os.File)
-	if quiet || !ok {
+	if quiet || !ok || os.Getenv("TERM") == "dumb" { // which cannot wipe a line
 		return &progress{}
 	}
 	if info, err := f.Stat(); err != nil || info.Mode()&os.ModeCharDevice == 0 {
@@ -35,7 +35,7 @@ func (p *progress) tell(what string, done, of int) {
 		return
 	}
 	p.last, p.shown = time.Now(), true
-	fmt.Fprintf(p.w, "\r%s: %d of %d\x1b[K", what, done, of)
+	fmt.Fprintf(p.w, "\r%s: %d of %d\x1b[K", calm(what), done, of)
 }
 
 // clear wipes the line.

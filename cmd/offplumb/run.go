@@ -124,16 +124,16 @@ func (f *runFlags) run(ctx context.Context, s streams, scenario string) error {
 
 // whole does all of a run, puts it in place and tells it.
 func (j *job) whole(ctx context.Context, s streams) error {
-	st, err := newStage(j.out, j.flags.force)
+	st, err := newStage(j.out, j.flags.force, runFolder)
 	if err != nil {
 		return err
 	}
+	defer st.discard()
 	if err := j.do(ctx, s, st); err != nil {
-		return j.giveUp(err, st, s)
+		return j.giveUp(err, "not completed; what was finished is in", st, s)
 	}
 	if err := st.commit(); err != nil {
-		st.discard()
-		return incomplete(fmt.Errorf("cannot put the results in place: %w", plainPath(j.out, err)))
+		return j.giveUp(fmt.Errorf("cannot put the results in place: %w", err), "the results are complete, and are in", st, s)
 	}
 	if j.flags.open {
 		openReport(j.out, s.err)
@@ -156,11 +156,9 @@ func (j *job) do(ctx context.Context, s streams, st *stage) error {
 
 // giveUp keeps what was finished beside the output folder, which stays as it
 // is.
-func (j *job) giveUp(err error, st *stage, s streams) error {
-	where, kerr := st.keepPartial()
-	if kerr == nil && where != "" {
-		fmt.Fprintf(s.err, "offplumb: not completed; what was finished is in %s\n", where)
-	}
+func (j *job) giveUp(err error, words string, st *stage, s streams) error {
+	where := st.keepPartial()
+	fmt.Fprintln(s.err, calm(fmt.Sprintf("offplumb: %s %s", words, where)))
 	if cause := new(signalled); asSignal(err, cause) {
 		return *cause
 	}

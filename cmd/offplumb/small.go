@@ -21,8 +21,8 @@ func newVersion(s streams) *cobra.Command {
 		Use: "version", Short: "print the version, the Go version and the build",
 		Args: exactly(0, "no arguments"),
 		RunE: func(*cobra.Command, []string) error {
-			fmt.Fprintf(s.out, "offplumb %s %s %s/%s%s\n", version, runtime.Version(), runtime.GOOS, runtime.GOARCH, revision())
-			return nil
+			_, err := fmt.Fprintf(s.out, "offplumb %s %s %s/%s%s\n", version, runtime.Version(), runtime.GOOS, runtime.GOARCH, revision())
+			return incompleteIf(err)
 		},
 	}
 }
@@ -75,7 +75,9 @@ func listExamples(s streams) error {
 		wide = max(wide, len(e.Name))
 	}
 	for _, e := range list {
-		fmt.Fprintf(s.out, "%-*s  %s\n", wide, e.Name, e.Title)
+		if _, err := fmt.Fprintf(s.out, "%-*s  %s\n", wide, e.Name, e.Title); err != nil {
+			return incomplete(err)
+		}
 	}
 	return nil
 }
@@ -110,7 +112,9 @@ func writeExample(s streams, name, into string) error {
 		if err != nil {
 			return incomplete(err)
 		}
-		fmt.Fprintln(s.out, to)
+		if _, err := fmt.Fprintln(s.out, calm(to)); err != nil {
+			return incomplete(err)
+		}
 	}
 	return nil
 }

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"io/fs"
 	"os"
 	"path/filepath"
 
@@ -15,6 +16,7 @@ import (
 type inputs struct {
 	folder string
 	stdin  io.Reader // nil: the scenario itself came from it
+	beyond bool      // files outside the folder may be read, through links too
 	once   map[string]*os.File
 	sizes  map[string]int64
 }
@@ -30,11 +32,7 @@ func (n *inputs) open(path string) (io.ReadCloser, error) {
 		}
 		return n.copied(path, n.stdin)
 	}
-	full := path
-	if !filepath.IsAbs(path) {
-		full = filepath.Join(n.folder, path)
-	}
-	f, err := os.Open(full)
+	f, err := n.file(path)
 	if err != nil {
 		return nil, err
 	}
@@ -47,6 +45,31 @@ func (n *inputs) open(path string) (io.ReadCloser, error) {
 		return nil, errors.New("is a folder")
 	}
 	return n.copied(path, f)
+}
+
+// errBeyond refuses a link that a scenario from elsewhere may bring along.
+var errBeyond = errors.New("is a link that leads outside the scenario's folder; --allow-outside permits it")
+
+// file opens a file; only with leave one that lies outside the folder.
+func (n *inputs) file(path string) (*os.File, error) {
+	if n.beyond {
+		if !filepath.IsAbs(path) {
+			path = filepath.Join(n.folder, path)
+		}
+		return os.Open(path)
+	}
+	root, err := os.OpenRoot(n.folder)
+	if err != nil {
+		return nil, err
+	}
+	defer root.Close()
+	f, err := root.Open(filepath.FromSlash(path))
+	if err != nil && !errors.Is(err, fs.ErrPermission) {
+		if _, there := os.Stat(filepath.Join(n.folder, path)); there == nil {
+			return nil, errBeyond
+		}
+	}
+	return f, err
 }
 
 // copied copies what can be read once into a file without a name.

@@ -41,7 +41,7 @@ func (j *job) summary(w io.Writer) error {
 	}
 	b.WriteString("\n" + wrapped("Caution: "+caution, ""))
 	fmt.Fprintf(&b, "\nWritten to %s: %s.\n", j.out, j.written())
-	_, err := io.WriteString(w, b.String())
+	_, err := io.WriteString(w, calm(b.String()))
 	return err
 }
 

@@ -45,6 +45,10 @@ func (l *leg) length() float64 {
 // spot is where feet are: radius (m), angle (rad, not wrapped), axial (m).
 type spot struct{ r, phi, z float64 }
 
+// longestPath bounds a path, s: eleven days. Its work is added up over a quarter
+// of a second at a time, which takes some 20 s of processor time then.
+const longestPath = 1e6
+
 // NewPlan works a path out. The problems are those of its legs, their keys
 // relative to the path ("legs[1].climb").
 func NewPlan(m *model.Model, p *model.Path) (*Plan, []model.Problem) {
@@ -64,6 +68,9 @@ func NewPlan(m *model.Model, p *model.Path) (*Plan, []model.Problem) {
 	}
 	if len(b.plan.legs) == 0 && len(b.problems) == 0 {
 		b.fault("legs", "wants at least one leg")
+	}
+	if lasts := b.plan.Duration(); lasts > longestPath {
+		b.fault("legs", fmt.Sprintf("take %.4g s together, want at most %g s: the work is added up along all of it", lasts, float64(longestPath)))
 	}
 	if len(b.problems) == 0 {
 		b.problems = b.plan.clear(m)

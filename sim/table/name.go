@@ -10,7 +10,7 @@ import (
 const longestName = 100
 
 // devices are the names that some systems keep for devices.
-var devices = []string{"con", "prn", "aux", "nul",
+var devices = []string{"con", "prn", "aux", "nul", "com0", "lpt0",
 	"com1", "com2", "com3", "com4", "com5", "com6", "com7", "com8", "com9",
 	"lpt1", "lpt2", "lpt3", "lpt4", "lpt5", "lpt6", "lpt7", "lpt8", "lpt9"}
 
