@@ -116,6 +116,7 @@ func (b *builder) habitat(o *object) {
 	if c := o.sub("coning"); c != nil {
 		h.Coning = frame.Coning{HalfAngle: c.num("half_angle"), Period: c.num("period"), Phase: c.num("phase")}
 	}
+	b.in.Ambient = b.ambient(o.sub("ambient_gravity"))
 }
 
 var shapes = map[string]model.Shape{"cylinder": model.Cylinder, "torus": model.Torus, "sphere": model.Sphere, "cabin": model.Cabin}

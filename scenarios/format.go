@@ -57,6 +57,7 @@ var habitat = &section{name: "the habitat", doc: "The habitat's own room and its
 		qty("rim_speed", speed, anything, "speed of the reference floor, spinward positive").one("spin"),
 		tables("spin_change", spinChange, "changes of the spin"),
 		table("coning", coning, "precession of the axis"),
+		table("ambient_gravity", ambientKeys, "gravity beside that of the spin"),
 	}, room...),
 	exactly: []string{"spin"}}
 

@@ -25,9 +25,13 @@ type Forces struct {
 	fields  []Field
 }
 
-// NewForces gives the forces on a body. A nil law is the program's own for
+// NewForces gives the forces on a body: drag, the model's ambient gravity and
+// further fields. A nil law is the program's own for
 // spheres, or the body's own drag coefficient.
 func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forces {
+	if !m.Ambient.None() {
+		fields = append([]Field{m.Ambient}, fields...)
+	}
 	f := &Forces{motion: m.Motion, fields: fields}
 	if b.Mass <= 0 {
 		return f

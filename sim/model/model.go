@@ -15,6 +15,7 @@ import (
 type Model struct {
 	Title    string
 	Habitat  Habitat
+	Ambient  Ambient
 	Air      air.Air
 	Decks    []Deck // Decks[0] is the reference floor once the model is made
 	Rooms    []Room // further rooms, beside the habitat's own
