@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"offplumb/sim/frame"
+	"offplumb/sim/measure"
 	"offplumb/sim/model"
 	"offplumb/sim/table"
 )
@@ -12,14 +13,22 @@ import (
 // ambientWords says in a sentence what pulls beside the spin; "" where nothing
 // does.
 func ambientWords(m *model.Model) string {
+	if fact := ambientFact(m); fact != "" {
+		return "Ambient gravity: " + fact + "."
+	}
+	return ""
+}
+
+// ambientFact is the same without the name.
+func ambientFact(m *model.Model) string {
 	g := m.Ambient
 	switch {
 	case g.None():
 		return ""
 	case g.Central():
-		return fmt.Sprintf("Ambient gravity: %s m/s² at the habitat's origin, toward a centre %s m away, %s.", given(g.Strength), given(g.Distance), toward(m))
+		return fmt.Sprintf("%s m/s² at the habitat's origin, toward a centre %s m away, %s", given(g.Strength), given(g.Distance), toward(m))
 	}
-	return fmt.Sprintf("Ambient gravity: %s m/s², %s.", given(g.Strength), toward(m))
+	return fmt.Sprintf("%s m/s², %s", given(g.Strength), toward(m))
 }
 
 // alongAxis is the share of a direction below which it counts as along the axis, or
@@ -46,3 +55,38 @@ func toward(m *model.Model) string {
 
 // underAmbient says whether there is ambient gravity.
 func (j *job) underAmbient() bool { return !j.model().Ambient.None() }
+
+// feltWords says what is felt at rest on the reference floor under the ambient
+// pull and the spin together.
+func feltWords(m *model.Model) string {
+	h := measure.HabitatOf(m, 0, 0)
+	least, most := table.Round(h.Least/model.StandardGravity, 3), table.Round(h.Most/model.StandardGravity, 3)
+	if least != most {
+		least += " to " + most
+	}
+	return fmt.Sprintf("With it the floor has %s g, up to %s deg off its normal.", least, table.Round(h.Tilt*180/math.Pi, 3))
+}
+
+// causes heads the column of apparent deflections.
+func (j *job) causes() string {
+	if j.underAmbient() {
+		return "of it by spin and pull"
+	}
+	return "of it by the spin"
+}
+
+// plumbPart and spinPart say of which part of the apparent gravity a figure
+// tells; "" where it is the whole.
+func (j *job) plumbPart() string {
+	if j.underAmbient() {
+		return ", its part along the plumb line at the release"
+	}
+	return ""
+}
+
+func (j *job) spinPart() string {
+	if j.underAmbient() {
+		return ", of the spin alone"
+	}
+	return ""
+}

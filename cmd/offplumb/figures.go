@@ -243,7 +243,7 @@ func sentence(l *measure.Landing) string {
 }
 
 func (j *job) sideNotes(l *measure.Landing, on *side) string {
-	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on %q: %s g.", on.Name, table.Round(l.Uniform.Gravity/model.StandardGravity, 3))
+	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on %q%s: %s g.", on.Name, j.plumbPart(), table.Round(l.Uniform.Gravity/model.StandardGravity, 3))
 	switch {
 	case !l.Uniform.Lands:
 	case l.Uniform.Top() >= on.Radius:

@@ -23,10 +23,15 @@ type statement struct {
 var statements = []statement{
 	{topic: "Rotation", used: always,
 		how: "Motion is solved in the inertial frame and carried into the frame of the habitat, where centrifugal, Coriolis and Euler acceleration appear.",
-		holds: "Rotation is the only gravity. The spin may change and the axis may cone, as the scenario says: what makes them do so is not computed. " +
+		holds: "The spin may change and the axis may cone, as the scenario says: what makes them do so is not computed. " +
 			"The habitat is rigid and heavy against what moves in it, and the air turns with it at once."},
+	{topic: "Ambient gravity", used: (*job).underAmbient,
+		how: "Ambient gravity is fixed in the inertial frame: uniform, or toward a fixed centre by the inverse square of the distance. It acts in flight and in contact, and on people.",
+		holds: "Ambient gravity, where the scenario has any, pulls on what moves in the habitat alone: the axis stays where it is, as on a bearing. The planet or moon that pulls has no surface here. " +
+			"Drop offset, walk-run speed, head-to-foot difference and Coriolis ratio are empty then. The uniform-gravity path takes the part along the plumb line of what is felt at rest on the deck beneath at the time of the release, " +
+			"so that the apparent deflection holds what the pull does across it. Floors follow the axis: a floor banked to the slope of the pull, a cone, cannot be described."},
 	{topic: "Rest while the spin changes", used: (*job).unsteady,
-		how: "A resting body is watched until the last change of the spin is over, in a coning for one swing after that, and slides when friction does not hold it any more.",
+		how: "A resting body is watched until the last change of the spin is over, in a coning for one swing after that, under ambient gravity that goes round for one turn, and slides when friction does not hold it any more.",
 		holds: "Static friction is taken as sliding friction, though it is often higher. The uniform-gravity path takes the gravity at the time of the release. " +
 			"Platforms are spaced for falls from time 0."},
 	{topic: "Integration", used: (*job).flew,

@@ -7,6 +7,7 @@ import (
 	"html/template"
 	"io"
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"offplumb/plots/motion"
@@ -75,7 +76,7 @@ func (j *job) titleBlock() []page.Fact {
 	if !m.Air.Vacuum() {
 		air = table.Round(m.Air.Density, 3) + " kg/m³"
 	}
-	return []page.Fact{
+	facts := []page.Fact{
 		{Name: "Spin", Value: spinShort(h.Spin)},
 		{Name: "Floor, from the axis", Value: given(h.FloorRadius) + " m"},
 		{Name: "Gravity on the floor", Value: table.Round(m.Gravity(h.FloorRadius)/model.StandardGravity, 3) + " g"},
@@ -85,6 +86,11 @@ func (j *job) titleBlock() []page.Fact {
 		{Name: "SHA-256, first digits", Value: j.Inputs[0].SHA256[:12]},
 		{Name: "Written by", Value: programName + " " + version},
 	}
+	if words := ambientFact(m); words != "" {
+		facts = slices.Insert(facts, 1, page.Fact{Name: "Ambient gravity", Value: words})
+		facts[3].Name += ", by the spin"
+	}
+	return facts
 }
 
 func spinShort(spin float64) string {

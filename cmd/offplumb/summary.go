@@ -26,6 +26,9 @@ func (j *job) summary(w io.Writer) error {
 	if words := turningWords(j.model()); words != "" {
 		b.WriteString(wrapped(words, ""))
 	}
+	if words := ambientWords(j.model()); words != "" {
+		b.WriteString(wrapped(words+" "+feltWords(j.model()), ""))
+	}
 	j.sumLandings(&b)
 	sumStreams(j, &b)
 	j.sumStories(&b)
@@ -89,7 +92,7 @@ func (j *job) sumLandings(b *strings.Builder) {
 	if len(j.landings) == 0 {
 		return
 	}
-	rows := [][]string{{"release", "outcome", "off plumb", "of it by the spin", "axially", "after", "at speed", "with energy"}}
+	rows := [][]string{{"release", "outcome", "off plumb", j.causes(), "axially", "after", "at speed", "with energy"}}
 	for i := range j.landings {
 		if !j.inSeries(j.landings[i].Release) {
 			rows = append(rows, landingRow(&j.landings[i]))

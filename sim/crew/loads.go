@@ -46,7 +46,7 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 	out := Loads{Time: t, Feet: f}
 	in := feeling{m, &a, p.Path.Time + t}
 	out.GravityFeet = r3.Norm(in.felt(f.Point(model.Reach{}))) // they stay where a sitting trunk sinks
-	out.GravityHead = r3.Norm(in.felt(f.Body(p.Crew.Head*p.Crew.Stature)))
+	out.GravityHead = r3.Norm(in.felt(f.Body(p.Crew.Head * p.Crew.Stature)))
 	out.GravityDifference = out.GravityFeet - out.GravityHead
 	waist := f.Body(p.Crew.Waist * p.Crew.Stature)
 	gravity := in.felt(waist)
