@@ -341,7 +341,8 @@ func (q quantity) unit() string {
 }
 
 func (b *builder) settings(s, out *object) {
-	b.in.Solver = model.Solver{RelTol: s.numOr("relative_tolerance", model.DefaultRelTol), PosTol: s.numOr("position_tolerance", model.DefaultPosTol),
+	b.outside(s)
+	b.in.Solver = model.Solver{Outside: b.in.Solver.Outside, RelTol: s.numOr("relative_tolerance", model.DefaultRelTol), PosTol: s.numOr("position_tolerance", model.DefaultPosTol),
 		VelTol: s.numOr("velocity_tolerance", model.DefaultVelTol), MaxTime: s.numOr("max_time", model.DefaultMaxTime)}
 	b.in.Output = model.Output{Step: out.numOr("step", model.DefaultStep)}
 }

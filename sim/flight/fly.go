@@ -27,6 +27,7 @@ type Flier struct {
 	contact *integrator.Stepper // of sliding and rolling
 	touch   *apart
 	hull    *apart
+	out     outer
 	watch   geom.Beside
 	body    model.Body  // in flight
 	wide    float64     // m, its radius
@@ -65,6 +66,7 @@ func (f *Flier) steppers() error {
 		of:   func(p r3.Vec) float64 { return math.Min(in.DistBeside(p, &f.watch), math.MaxFloat32) - f.wide },
 		time: func(p, v r3.Vec, acc, limit float64) float64 { return in.TimeBeside(p, v, acc, limit, &f.watch) }}
 	f.hull = inside(f.free, f.m.Interior)
+	f.out = outerOf(f.free, f.m)
 	return nil
 }
 
@@ -81,7 +83,7 @@ func (f *Flier) Fly(let *Let) (*Track, error) {
 	}
 	a := f.m.Motion.At(let.Begin)
 	t := &Track{Release: let.Release, Body: let.Body, Start: let.Place, Begin: let.Begin,
-		Local: let.Local, First: a.ToInertial(let.Local), motion: f.m.Motion}
+		Left: -1, Local: let.Local, First: a.ToInertial(let.Local), motion: f.m.Motion}
 	if let.Release.Start.Kind == model.Still && let.Release.Carried == nil {
 		// At rest without the roundings of the way to the habitat and back.
 		t.First.Vel = r3.Vec{}
@@ -141,7 +143,7 @@ func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch, rough float6
 	f.touch.step, f.hull.step = never, never
 	e := &ends{}
 	e.add(f.touch, slop(base.Pos)/4, turns)
-	e.add(f.hull, 0, turns)
+	f.leaving(e)
 	e.graze(f, grazed, slop(base.Pos)/4, rough, f.free.local, func(at float64, y []float64) r3.Vec {
 		// What grazes does not go through the end of a stretch of the motion.
 		time := math.Min(f.free.begin+at, f.free.last)
@@ -157,7 +159,7 @@ func (f *Flier) settle(t *Track, now *moving, res integrator.Result) {
 	switch {
 	case !res.Stopped:
 		f.end(t, now, TimeUp)
-	case res.Hits[0].Event == 1:
+	case f.lost(t, now, res.Hits[0].Event):
 		f.end(t, now, Lost)
 	default:
 		return

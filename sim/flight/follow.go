@@ -30,6 +30,7 @@ func (f *Flier) follow(t *Track) error {
 	var last ending
 	since := now.t
 	for k := range mostPhases {
+		f.whereabouts(t, &now)
 		touches := f.touches(&now)
 		f.meet(t, &now, touches, known)
 		if f.over(t, &now) {

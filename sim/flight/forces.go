@@ -23,6 +23,7 @@ type Forces struct {
 	drag    air.Drag
 	perMass float64 // 1/kg
 	fields  []Field
+	calm    bool // the body is outside, where there is no air
 }
 
 // NewForces gives the forces on a body: drag, the model's ambient gravity and
@@ -53,7 +54,7 @@ func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forc
 // inertial state and habitat time t (s). Air at rest in the habitat moves with
 // omega x r.
 func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
-	if f.drag.None() {
+	if f.calm || f.drag.None() {
 		return r3.Vec{}
 	}
 	wind := r3.Cross(f.motion.Omega(t), s.Pos)

@@ -374,6 +374,7 @@ type Solver struct {
 	PosTol  float64 // absolute on position, m
 	VelTol  float64 // absolute on velocity, m/s
 	MaxTime float64 // s, of any release
+	Outside Outside // what leaves the hull
 }
 
 // Output sets what is written.
