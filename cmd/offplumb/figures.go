@@ -47,6 +47,7 @@ func (j *job) figures() ([]task, error) {
 	}
 	all = append(all, j.sharedFigures()...)
 	all = append(all, turningFigures(j)...)
+	all = append(all, outsideFigures(j)...)
 	all = append(all, j.pathFigures()...)
 	all = append(all, j.studyFigures()...)
 	all = append(all, streamFigures(j)...)
@@ -223,11 +224,15 @@ func sideTitle(l *measure.Landing) string { return l.Release + ": " + outcomeWor
 // outcomeWords tells a landing in a few words.
 func outcomeWords(l *measure.Landing) string {
 	switch {
+	case l.Outcome == flight.Lost && l.Away > 0:
+		return "lost outside, " + withUnit(l.Away, "m") + " away after " + withUnit(l.Time, "s")
 	case l.Outcome == flight.Lost:
 		return "leaves the habitat after " + withUnit(l.Time, "s")
 	case l.Outcome == flight.TimeUp:
 		return "no landing within " + withUnit(l.Time, "s")
-	case math.IsNaN(l.Offset) || sigfig(l.Offset, 3) == "0":
+	case math.IsNaN(l.Offset):
+		return "lands on " + l.Surface
+	case sigfig(l.Offset, 3) == "0":
 		return "lands on " + l.Surface + ", on the plumb line"
 	}
 	return "lands on " + l.Surface + ", " + plots.SignedLength(l.Offset) + " off plumb"

@@ -32,6 +32,7 @@ func (j *job) summary(w io.Writer) error {
 	j.sumLandings(&b)
 	sumStreams(j, &b)
 	j.sumStories(&b)
+	j.sumOutside(&b)
 	j.sumPaths(&b)
 	j.sumStudies(&b)
 	sumScatter(j, &b)
@@ -127,6 +128,9 @@ func ending(l *measure.Landing) string {
 		}
 		return s
 	case flight.Lost:
+		if l.Away > 0 {
+			return fmt.Sprintf("lost outside, %s m away", table.Round(l.Away, 3))
+		}
 		return fmt.Sprintf("lost, leaving the hull at %s deg, axial %s m", table.Fixed(l.Place.Phi*180/math.Pi, 1), table.Fixed(l.Place.Z, 1))
 	}
 	return "no landing"

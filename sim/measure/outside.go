@@ -66,7 +66,7 @@ func OutsideOf(m *model.Model, t *flight.Track) (Outside, bool) {
 	s := t.At(t.Left)
 	out.LeftSpeed, out.Leaves = r3.Norm(s.Vel), climbs(s.Pos, s.Vel)
 	for i := range t.Impacts {
-		if hit := &t.Impacts[i]; hit.Time > t.Left && m.IsOutside(hit.Contact.Point) || hit.Time == t.Left && r3.Norm(hit.State.Vel) > 0 {
+		if hit := &t.Impacts[i]; hit.Time >= t.Left && m.IsOutside(hit.State.Pos) && r3.Norm(hit.State.Vel) > 0 {
 			out.Swept, out.SweptTime, out.SweptHit = hit.Surface, hit.Time, r3.Norm(hit.State.Vel)
 			break
 		}
