@@ -26,7 +26,7 @@ type Outside struct {
 	Left, LeftSpeed     float64 // s and m/s, inertial: when it passed the outer face
 	Leaves              float64 // rad, of the inertial velocity then from the tangent, outward positive
 	Distance, Most      float64 // m, from where it was let go: at the end, the greatest
-	Again, AgainTime    float64 // m and s: the closest approach after it had gone away
+	Again, AgainTime    float64 // m and s: the closest approach once it was away
 	AgainTo             string
 	Swept               string  // surface that it first touches outside
 	SweptTime, SweptHit float64 // s and m/s
@@ -84,8 +84,13 @@ func climbs(pos, vel r3.Vec) float64 {
 	return math.Asin(math.Max(-1, math.Min(1, (pos.X*vel.X+pos.Y*vel.Y)/(r*r3.Norm(vel)))))
 }
 
-// approach finds the greatest distance, and the closest approach after the
-// first time that the gap stopped growing.
+// awayGap is the gap, in m, beyond which a body counts as away, so that what
+// comes near it then has come round: the rim of the hatch that it left by has
+// not.
+const awayGap = 1
+
+// approach finds the greatest distance, and the closest approach once the body
+// was away, up to a first touch.
 func (o *Outside) approach(m *model.Model, t *flight.Track) {
 	var times []float64
 	for _, at := range looks(m, t) {
@@ -101,10 +106,10 @@ func (o *Outside) approach(m *model.Model, t *flight.Track) {
 		s := outsideAt(m, t, at)
 		o.Most = math.Max(o.Most, s.Distance)
 		o.Distance = s.Distance
-		if s.Gap < last {
+		if s.Gap < last && last > awayGap {
 			away = true
 		}
-		if away && (best < 0 || s.Gap < o.Again) {
+		if away && !(at >= o.SweptTime) && (best < 0 || s.Gap < o.Again) {
 			best, o.Again, o.AgainTime, o.AgainTo = i, s.Gap, at, s.Nearest
 		}
 		last = s.Gap
@@ -151,7 +156,7 @@ var outsideColumns = []column[Outside]{
 	{key: "left_angle", unit: degree, meaning: "angle of that velocity from the tangent plane, outward positive", num: func(o *Outside) float64 { return o.Leaves }},
 	{key: "distance", unit: metre, meaning: "distance at the end from where it was let go, a place that turns with the habitat", num: func(o *Outside) float64 { return o.Distance }},
 	{key: "distance_most", unit: metre, meaning: "greatest distance from there", num: func(o *Outside) float64 { return o.Most }},
-	{key: "again", unit: metre, meaning: "closest approach to the habitat after the gap had stopped growing for the first time: what comes round again; empty where it only grew", num: func(o *Outside) float64 { return o.Again }},
+	{key: "again", unit: metre, meaning: "closest approach to the habitat once it had been more than 1 m away, up to a touch: what comes round again; empty where it only went away", num: func(o *Outside) float64 { return o.Again }},
 	{key: "again_time", unit: second, meaning: "when that was, from the release", num: func(o *Outside) float64 { return o.AgainTime }},
 	{key: "again_to", meaning: "surface that came closest", text: func(o *Outside) string { return o.AgainTo }},
 	{key: "swept_by", meaning: "surface that it first touches outside; empty where it touches none", text: func(o *Outside) string { return o.Swept }},
