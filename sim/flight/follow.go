@@ -26,12 +26,15 @@ const (
 // pressed on what is left, and slides, rolls or rests there, or it flies.
 func (f *Flier) follow(t *Track) error {
 	now := f.start(t)
-	known := patchesOf(f.touches(&now))
+	touches := f.touches(&now)
+	known := patchesOf(touches)
 	var last ending
 	since := now.t
 	for k := range mostPhases {
 		f.whereabouts(t, &now)
-		touches := f.touches(&now)
+		if k > 0 || len(touches) > 0 {
+			touches = f.touches(&now)
+		}
 		f.meet(t, &now, touches, known)
 		if f.over(t, &now) {
 			return nil

@@ -4,68 +4,81 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/spatial/r3"
-	"offplumb/sim/geom"
-	"offplumb/sim/model"
+	"offplumb/integrator"
 )
 
 // Outside of the hull there is no air. A flight ends where the body's centre
 // passes the hull's outer face, so that its forces are smooth within a phase,
-// and goes on from there. Back in, it counts only once it is deeper than thin:
-// so a passing is never met twice.
+// and goes on from there. Back in, it counts only once it is deeper than a
+// margin: so a passing is never met twice.
 
 // outer is the passing of the hull of a body that is followed outside.
 type outer struct {
-	in       *geom.Interior
-	follow   bool
-	outside  bool   // the body is
-	from     r3.Vec // m, habitat components: where it was let go
-	back     *apart // it comes in again
-	far      *apart // it is too far away
-	distance float64
+	follow    bool
+	outside   bool    // the body is
+	from      r3.Vec  // m, habitat components: where it was let go
+	distance  float64 // m from there, beyond which it is lost
+	margin    float64 // m
+	back, far *apart  // it comes in again; it is too far away
 }
 
-// The places of the events of a flight: the touch, the hull, the distance.
+// The places of the events of a flight that does not have them as one: the
+// touch, the hull, the distance.
 const (
 	hullEvent = 1
 	farEvent  = 2
 )
 
 // outerOf prepares the events of a body outside.
-func outerOf(f *free, m *model.Model) outer {
-	in := m.Interior
-	return outer{in: in, follow: m.Solver.Outside.Follow, distance: m.Solver.Outside.Distance,
-		back: &apart{free: f, step: never, of: func(p r3.Vec) float64 { return in.Beyond(p) + thin }},
-		far:  &apart{free: f, step: never}}
+func outerOf(f *Flier) outer {
+	o := f.m.Solver.Outside
+	return outer{follow: o.Follow, distance: o.Distance, back: &apart{f: f, back: true}, far: &apart{f: f, far: true}}
 }
 
-// leaving adds what ends a flight at the hull: its loss, or where it is
-// followed outside, the passing, and its loss far away. In the hull the
-// distance does not count.
+// outside is the distance of a body outside from coming in again, or from being
+// lost. In the hull how far it is from where it was let go does not count.
+func (g *apart) outside(p r3.Vec) float64 {
+	o := &g.f.out
+	beyond := g.f.m.Interior.Beyond(p)
+	if g.back {
+		return beyond + o.margin
+	}
+	return math.Max(o.distance-r3.Norm(r3.Sub(p, o.from)), -beyond)
+}
+
+// covers is the time, s, that a way (m) takes at the least, from a speed (m/s)
+// that grows by acc (m/s^2) at most.
+func covers(way, speed, acc float64) float64 {
+	return 2 * way / (speed + math.Sqrt(speed*speed+2*acc*way))
+}
+
+// leaving adds what ends a flight at the hull: the passing, and outside the
+// loss far away.
 func (f *Flier) leaving(e *ends) {
 	o := &f.out
-	if !o.follow || !o.outside {
+	if !o.outside {
+		f.hull.ready()
 		e.add(f.hull, 0, turns)
 		return
 	}
-	o.back.step, o.far.step = never, never
-	o.far.of = func(p r3.Vec) float64 {
-		return math.Max(o.distance-r3.Norm(r3.Sub(p, o.from)), -o.in.Beyond(p))
-	}
+	o.back.ready()
+	o.far.ready()
 	e.add(o.back, 0, turns)
 	e.add(o.far, 0, turns)
 }
 
-// lost says whether an event of a flight is the loss of the body; a passing of
-// the hull is noted.
-func (f *Flier) lost(t *Track, now *moving, event int) bool {
-	o := &f.out
+// lost says whether a flight ended with the loss of the body. Of one that is
+// followed outside a passing of the hull is noted, and is none.
+func (f *Flier) lost(t *Track, now *moving, res integrator.Result) bool {
+	event, o := res.Hits[0].Event, &f.out
+	passed := event == hullEvent || len(f.goes.specs) == 1 && f.touch.Value(res.T, res.Y) > slop(f.free.base.Pos)/4
 	switch {
-	case !o.follow:
-		return event == hullEvent
-	case event == hullEvent:
+	case passed && o.follow:
 		o.outside = !o.outside
-		f.passes(t, now)
+		f.airless(t, now)
 		return false
+	case passed:
+		return true
 	}
 	return o.outside && event == farEvent
 }
@@ -78,20 +91,22 @@ func (f *Flier) whereabouts(t *Track, now *moving) {
 		return
 	}
 	if now.t == 0 {
-		o.from, o.outside = now.q, false
+		o.from, o.outside = t.Local.Pos, false
 	}
-	switch depth := o.in.Beyond(now.q); {
-	case depth > thin:
+	o.margin = thin + slop(now.q)
+	switch depth := f.m.Interior.Beyond(now.q); {
+	case depth > o.margin:
 		o.outside = true
-	case depth < -2*thin:
+	case depth < -2*o.margin:
 		o.outside = false
 	}
-	f.passes(t, now)
+	f.airless(t, now)
 }
 
-// passes notes when the body first is outside, and that there is no air.
-func (f *Flier) passes(t *Track, now *moving) {
-	if f.free.forces.calm = f.out.outside; f.out.outside && t.Left < 0 {
+// airless notes when the body first is outside, and that there is no air.
+func (f *Flier) airless(t *Track, now *moving) {
+	f.free.forces.ease(f.out.outside)
+	if f.out.outside && t.Left < 0 {
 		t.Left = now.t
 	}
 }

@@ -24,7 +24,7 @@ type Clearance struct {
 // is looked at mostLooks times, and at least clearParts times an integration
 // step.
 const (
-	clearWay   = 0.2
+	clearWay   = 0.05
 	clearParts = 6
 	mostLooks  = 20_000
 )
