@@ -12,6 +12,9 @@ import (
 // times that of the Earth. No planet or moon has a tenth of it.
 const mostAmbient = 100 * model.StandardGravity
 
+// leastAmbient is the weakest, m/s^2: in an hour it moves a body by 6 m.
+const leastAmbient = 1e-6
+
 var towardKeys = &section{name: "a direction", doc: "A direction in the inertial frame by its parts along those of the habitat at time 0, of any length.",
 	keys: []key{
 		num("outward", anything, "away from the axis, at spinward zero").or("0"),
@@ -31,12 +34,12 @@ var directionKeys = []key{
 
 var uniformPull = &section{name: "a uniform pull", doc: "Gravity of one strength and one direction in the inertial frame.",
 	keys: append([]key{
-		qty("strength", accel, span{low: 0, high: mostAmbient, open: true}, "of the pull").need(),
+		qty("strength", accel, span{low: leastAmbient, high: mostAmbient}, "of the pull").need(),
 	}, directionKeys...), exactly: []string{"direction"}}
 
 var centralPull = &section{name: "a central pull", doc: "Gravity toward a centre that is fixed in the inertial frame, by the inverse square of the distance.",
 	keys: append([]key{
-		qty("strength", accel, span{low: 0, high: mostAmbient, open: true}, "of the pull at the habitat's origin: on the axis at axial zero").need(),
+		qty("strength", accel, span{low: leastAmbient, high: mostAmbient}, "of the pull at the habitat's origin: on the axis at axial zero").need(),
 		qty("distance", length, positive, "from the habitat's origin to the centre, which must stay outside the hull").need(),
 	}, directionKeys...), exactly: []string{"direction"}}
 

@@ -101,20 +101,19 @@ func (o *Outside) approach(m *model.Model, t *flight.Track) {
 	if len(times) == 0 || times[len(times)-1] < t.End {
 		times = append(times, t.End)
 	}
-	away, best, last := false, -1, -1.0
+	best, away, falling := -1, 0.0, false
+	var last OutsideSample
 	for i, at := range times {
 		s := outsideAt(m, t, at)
-		o.Most = math.Max(o.Most, s.Distance)
-		o.Distance = s.Distance
-		if s.Gap < last && last > awayGap {
-			away = true
+		o.Most, o.Distance = math.Max(o.Most, s.Distance), s.Distance
+		// What goes on to a touch is no passing.
+		ends := i+1 == len(times) && o.Swept == ""
+		if falling && away > awayGap && !(last.Time >= o.SweptTime) && (s.Gap > last.Gap || ends) && !(last.Gap >= o.Again) {
+			best, o.Again, o.AgainTime, o.AgainTo = i-1, last.Gap, last.Time, last.Nearest
 		}
-		if away && !(at >= o.SweptTime) && (best < 0 || s.Gap < o.Again) {
-			best, o.Again, o.AgainTime, o.AgainTo = i, s.Gap, at, s.Nearest
-		}
-		last = s.Gap
+		away, falling, last = math.Max(away, s.Gap), i > 0 && s.Gap < last.Gap, s
 	}
-	if best >= 0 && best+1 < len(times) && best > 0 {
+	if best > 0 && best+1 < len(times) {
 		o.narrow(m, t, times[best-1], times[best+1])
 	}
 }
