@@ -30,6 +30,10 @@ var statements = []statement{
 		holds: "Ambient gravity, where the scenario has any, pulls on what moves in the habitat alone: the axis stays where it is, as on a bearing. The planet or moon that pulls has no surface here. " +
 			"Drop offset, walk-run speed, head-to-foot difference and Coriolis ratio are empty then. The uniform-gravity path takes the part along the plumb line of what is felt at rest on the deck beneath at the time of the release, " +
 			"so that the apparent deflection holds what the pull does across it. Floors follow the axis: a floor banked to the slope of the pull, a cone, cannot be described."},
+	{topic: "Outside", used: (*job).outside,
+		how: "What leaves the hull goes on in vacuum, until it is farther from where it was let go than it is followed. Surfaces are solid from outside.",
+		holds: "Outside the hull is vacuum, whatever the air within, and it begins at the hull's outer face: the air that would stream out of an open hatch is not modelled. " +
+			"The outer faces are those of floors, ceilings, walls and bulkheads, 50 mm outside of the inner ones unless the scenario says: what else stands outside is not there."},
 	{topic: "Rest while the spin changes", used: (*job).unsteady,
 		how: "A resting body is watched until the last change of the spin is over, in a coning for one swing after that, under ambient gravity that goes round for one turn, and slides when friction does not hold it any more.",
 		holds: "Static friction is taken as sliding friction, though it is often higher. The uniform-gravity path takes the gravity at the time of the release. " +
