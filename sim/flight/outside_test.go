@@ -102,7 +102,9 @@ func TestArmSweepsUp(t *testing.T) {
 	if hit == nil || hit.Surface != "arm spinward wall" || track.Left != 0 {
 		t.Fatalf("it meets %+v, left at %g s", hit, track.Left)
 	}
-	seen := func(time float64) r3.Vec { return frame.SeenAt(m.Motion, time, r3.Add(track.First.Pos, r3.Scale(time, track.First.Vel))) }
+	seen := func(time float64) r3.Vec {
+		return frame.SeenAt(m.Motion, time, r3.Add(track.First.Pos, r3.Scale(time, track.First.Vel)))
+	}
 	face := 0.6 + model.DefaultThickness + wide
 	lo, hi := 0.0, 3.0
 	for range 60 {
