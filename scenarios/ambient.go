@@ -1,12 +1,6 @@
 package scenarios
 
-import (
-	"math"
-
-	"gonum.org/v1/gonum/spatial/r3"
-
-	"offplumb/sim/model"
-)
+import "offplumb/sim/model"
 
 // mostAmbient is the strongest ambient gravity that is taken, m/s^2: a hundred
 // times that of the Earth. No planet or moon has a tenth of it.
@@ -22,8 +16,9 @@ var towardKeys = &section{name: "a direction", doc: "A direction in the inertial
 		num("axial", anything, "toward +axial").or("0"),
 	}}
 
-// directions are the words for directions, in the inertial frame.
-var directions = map[string]r3.Vec{"+axial": {Z: 1}, "-axial": {Z: -1}, "outward": {X: 1}, "inward": {X: -1}, "spinward": {Y: 1}, "antispinward": {Y: -1}}
+// directions are the words for directions, in the inertial frame: parts
+// outward, spinward and axial.
+var directions = map[string][3]float64{"+axial": {2: 1}, "-axial": {2: -1}, "outward": {1}, "inward": {-1}, "spinward": {1: 1}, "antispinward": {1: -1}}
 
 // directionKeys are those of where a pull leads.
 var directionKeys = []key{
@@ -61,24 +56,14 @@ func (b *builder) ambient(o *object) model.Ambient {
 	if pull == nil {
 		return model.Ambient{}
 	}
-	return model.Ambient{Strength: pull.num("strength"), Distance: pull.num("distance"), Direction: b.toward(pull)}
-}
-
-// toward reads a direction, a unit vector.
-func (b *builder) toward(o *object) r3.Vec {
-	d, ok := directions[o.str("direction")]
-	if ok {
-		return d
+	g := model.Ambient{Strength: pull.num("strength"), Distance: pull.num("distance")}
+	d, named := directions[pull.str("direction")]
+	t := pull.sub("toward")
+	if t != nil {
+		d = [3]float64{t.num("outward"), t.num("spinward"), t.num("axial")}
 	}
-	t := o.sub("toward")
-	if t == nil {
-		return r3.Vec{}
-	}
-	d = r3.Vec{X: t.num("outward"), Y: t.num("spinward"), Z: t.num("axial")}
-	size := math.Max(math.Abs(d.X), math.Max(math.Abs(d.Y), math.Abs(d.Z)))
-	if !(size > 0) {
+	if !g.Lead(d) && t != nil && !named {
 		b.fault(t.node.key, t.path, `write toward = { axial = -1 }`, "wants a direction, and all its parts are 0")
-		return r3.Vec{}
 	}
-	return r3.Unit(r3.Scale(1/size, d))
+	return g
 }

@@ -16,6 +16,17 @@ type Ambient struct {
 	Distance  float64 // m, from the habitat's origin to the centre; 0: the pull is uniform
 }
 
+// Lead sets the direction by its parts outward, spinward and axial, of any
+// length; false where there is none.
+func (g *Ambient) Lead(d [3]float64) bool {
+	size := math.Max(math.Abs(d[0]), math.Max(math.Abs(d[1]), math.Abs(d[2])))
+	if !(size > 0) {
+		return false
+	}
+	g.Direction = r3.Unit(r3.Vec{X: d[0] / size, Y: d[1] / size, Z: d[2] / size})
+	return true
+}
+
 // None says that there is no pull.
 func (g Ambient) None() bool { return g.Strength == 0 }
 
