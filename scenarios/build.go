@@ -116,6 +116,7 @@ func (b *builder) habitat(o *object) {
 	if c := o.sub("coning"); c != nil {
 		h.Coning = frame.Coning{HalfAngle: c.num("half_angle"), Period: c.num("period"), Phase: c.num("phase")}
 	}
+	b.in.Ambient = b.ambient(o.sub("ambient_gravity"))
 }
 
 var shapes = map[string]model.Shape{"cylinder": model.Cylinder, "torus": model.Torus, "sphere": model.Sphere, "cabin": model.Cabin}
@@ -340,7 +341,8 @@ func (q quantity) unit() string {
 }
 
 func (b *builder) settings(s, out *object) {
-	b.in.Solver = model.Solver{RelTol: s.numOr("relative_tolerance", model.DefaultRelTol), PosTol: s.numOr("position_tolerance", model.DefaultPosTol),
+	b.outside(s)
+	b.in.Solver = model.Solver{Outside: b.in.Solver.Outside, RelTol: s.numOr("relative_tolerance", model.DefaultRelTol), PosTol: s.numOr("position_tolerance", model.DefaultPosTol),
 		VelTol: s.numOr("velocity_tolerance", model.DefaultVelTol), MaxTime: s.numOr("max_time", model.DefaultMaxTime)}
 	b.in.Output = model.Output{Step: out.numOr("step", model.DefaultStep)}
 }

@@ -57,6 +57,7 @@ var habitat = &section{name: "the habitat", doc: "The habitat's own room and its
 		qty("rim_speed", speed, anything, "speed of the reference floor, spinward positive").one("spin"),
 		tables("spin_change", spinChange, "changes of the spin"),
 		table("coning", coning, "precession of the axis"),
+		table("ambient_gravity", ambientKeys, "gravity beside that of the spin"),
 	}, room...),
 	exactly: []string{"spin"}}
 
@@ -307,6 +308,8 @@ var solver = &section{name: "the solver", doc: "Accuracy of the integration. The
 		qty("position_tolerance", length, span{low: 1e-18, high: 1}, "of each step").or(`"1e-12 m"`),
 		qty("velocity_tolerance", speed, span{low: 1e-18, high: 1}, "of each step").or(`"1e-12 m/s"`),
 		qty("max_time", duration, positive, "of any release").or(`"1 h"`),
+		word("outside", `"lost"`, "what becomes of what leaves the hull: its release ends there as lost, or is followed outside, in vacuum; then a release may begin there too", "lost", "follow"),
+		qty("max_distance", length, positive, "from where it was let go, a place that turns with the habitat: beyond it, what is followed outside is lost").or(`"1 km"`),
 	}}
 
 var output = &section{name: "the output", doc: "What is written.",

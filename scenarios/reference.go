@@ -37,7 +37,7 @@ func Reference() string {
 			}
 		}
 	}
-	for _, s := range []*section{coning, leg, walkTo, rideTo, carryKeys, station, throwKeys, velocityKeys, carriedKeys, reach, doorway, vary, spreadOf(length), target, distanceRange, region} {
+	for _, s := range []*section{coning, ambientKeys, uniformPull, centralPull, towardKeys, leg, walkTo, rideTo, carryKeys, station, throwKeys, velocityKeys, carriedKeys, reach, doorway, vary, spreadOf(length), target, distanceRange, region} {
 		write("*"+s.name+"*", s)
 	}
 	return b.String()

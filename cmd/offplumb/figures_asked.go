@@ -182,7 +182,7 @@ func (j *job) togetherView(title string, which []int) (*plots.Figure, error) {
 	first := j.results[which[0]].Track
 	s := j.sideOf(first)
 	spec := plots.TogetherViewSpec{Title: title, Spin: m.Habitat.Spin, Deck: s.deck, Outlines: j.section(first.Start.Z, s.turn, s.by),
-		Notes: fmt.Sprintf("Habitat frame. Apparent gravity at rest on %q: %s g. Open mark: release; full mark: landing; square: where it ends.", s.Name, table.Round(s.gravityG(m), 3))}
+		Notes: fmt.Sprintf("Habitat frame. Apparent gravity at rest on %q%s: %s g. Open mark: release; full mark: landing; square: where it ends.", s.Name, j.spinPart(), table.Round(s.gravityG(m), 3))}
 	words := ""
 	for _, i := range which {
 		spec.Tracks = append(spec.Tracks, j.togetherTrack(i, &s))

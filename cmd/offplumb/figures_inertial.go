@@ -56,6 +56,9 @@ func (j *job) inertialNotes(t *flight.Track, l *measure.Landing, turned float64)
 	if !j.model().Air.Vacuum() && t.Body.Diameter > 0 {
 		path = "Air drag, of air that turns with the habitat, bends the path."
 	}
+	if !j.model().Ambient.None() {
+		path = ambientWords(j.model()) + " It bends the path."
+	}
 	return fmt.Sprintf("Inertial frame, seen from the +axial end. %s The habitat turns by %s deg meanwhile.", path,
 		table.Round(math.Abs(turned)*180/math.Pi, 3))
 }

@@ -20,7 +20,7 @@ func (j *job) sharedFigures() []drawing {
 	var out []drawing
 	var shown []int
 	for i := range j.results {
-		if r := &j.results[i]; j.tracked(i) && r.Landing.Uniform.Lands && r.Landing.Time > 0 {
+		if r := &j.results[i]; j.tracked(i) && r.Landing.Uniform.Lands && r.Landing.Time > 0 && r.Track.Left < 0 {
 			shown = append(shown, i)
 		}
 	}
@@ -64,6 +64,9 @@ func (j *job) plans() []*plan {
 			continue
 		}
 		let := &j.Lets[i]
+		if m.IsOutside(let.Local.Pos) {
+			continue // it is over no floor
+		}
 		d := m.DeckBeneath(let.Place.Polar)
 		g := measure.GroundAt(m, let.Place.Polar, d)
 		k := slices.IndexFunc(out, func(p *plan) bool { return p.ground.Name == g.Name })

@@ -108,11 +108,15 @@ func sideTitle(l *measure.Landing) string { return l.Release + ": " + outcomeWor
 // outcomeWords tells a landing in a few words.
 func outcomeWords(l *measure.Landing) string {
 	switch {
+	case l.Outcome == flight.Lost && l.Away > 0:
+		return "lost outside, " + withUnit(l.Away, "m") + " away after " + withUnit(l.Time, "s")
 	case l.Outcome == flight.Lost:
 		return "leaves the habitat after " + withUnit(l.Time, "s")
 	case l.Outcome == flight.TimeUp:
 		return "no landing within " + withUnit(l.Time, "s")
-	case math.IsNaN(l.Offset) || sigfig(l.Offset, 3) == "0":
+	case math.IsNaN(l.Offset):
+		return "lands on " + l.Surface
+	case sigfig(l.Offset, 3) == "0":
 		return "lands on " + l.Surface + ", on the plumb line"
 	}
 	return "lands on " + l.Surface + ", " + plots.SignedLength(l.Offset) + " off plumb"
@@ -128,7 +132,7 @@ func sentence(l *measure.Landing) string {
 }
 
 func (j *job) sideNotes(l *measure.Landing, on *side) string {
-	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on %q: %s g.", on.Name, table.Round(l.Uniform.Gravity/model.StandardGravity, 3))
+	s := fmt.Sprintf("Habitat frame. Apparent gravity at rest on %q%s: %s g.", on.Name, j.plumbPart(), table.Round(l.Uniform.Gravity/model.StandardGravity, 3))
 	switch {
 	case !l.Uniform.Lands:
 	case l.Uniform.Top() >= on.Radius:

@@ -31,13 +31,28 @@ var statements = []statement{
 		within:  "floor radii up to 1e9 m; any spin, either way",
 		off:     "none of its own in a rigid, heavy habitat; it would be of the order of the mass that moves by that of the habitat",
 		how:     "Motion is solved in the inertial frame and carried into the frame of the habitat, where centrifugal, Coriolis and Euler acceleration appear.",
-		holds: "Rotation is the only gravity. The spin may change and the axis may cone, as the scenario says: what makes them do so is not computed. " +
+		holds: "The spin may change and the axis may cone, as the scenario says: what makes them do so is not computed. " +
 			"The habitat is rigid and heavy against what moves in it, and the air turns with it at once."},
+	{topic: "Ambient gravity", used: (*job).underAmbient,
+		against: "Falls on the turning Earth (Kibble & Berkshire, eq. 5.23; Reich 1831, at second hand); parabolas and friction angles of textbooks",
+		within:  "strengths from 1e-6 to 981 m/s^2; centres outside the hull",
+		off:     "the published falls: within the digits printed",
+		how:     "Ambient gravity is fixed in the inertial frame: uniform, or toward a fixed centre by the inverse square of the distance. It acts in flight and in contact, and on people.",
+		holds: "Ambient gravity, where the scenario has any, pulls on what moves in the habitat alone: the axis stays where it is, as on a bearing. The planet or moon that pulls has no surface here. " +
+			"Drop offset, walk-run speed, head-to-foot difference and Coriolis ratio are empty then. The uniform-gravity path takes the part along the plumb line of what is felt at rest on the deck beneath at the time of the release, " +
+			"so that the apparent deflection holds what the pull does across it. Floors follow the axis: a floor banked to the slope of the pull, a cone, cannot be described."},
+	{topic: "Outside", used: (*job).outside,
+		against: "Straight lines seen from the turning habitat (closed form)",
+		within:  "distances up to max_distance",
+		off:     "air that streams out of an open hatch; not quantified",
+		how:     "What leaves the hull goes on in vacuum, until it is farther from where it was let go than it is followed. Surfaces are solid from outside.",
+		holds: "Outside the hull is vacuum, whatever the air within, and it begins at the hull's outer face: the air that would stream out of an open hatch is not modelled. " +
+			"The outer faces are those of floors, ceilings, walls and bulkheads, 50 mm outside of the inner ones unless the scenario says: what else stands outside is not there."},
 	{topic: "Rest while the spin changes", used: (*job).unsteady,
 		against: "Flights integrated in both frames by another program (SciPy, DOP853); the torque-free top for coning (textbook)",
 		within:  "changes of the spin as given; half angles up to 90 deg",
 		off:     "a body starts to slide early where static friction is the higher; not quantified",
-		how:     "A resting body is watched until the last change of the spin is over, in a coning for one swing after that, and slides when friction does not hold it any more.",
+		how:     "A resting body is watched until the last change of the spin is over, in a coning for one swing after that, under ambient gravity that goes round for one turn, and slides when friction does not hold it any more.",
 		holds: "Static friction is taken as sliding friction, though it is often higher. The uniform-gravity path takes the gravity at the time of the release. " +
 			"Platforms are spaced for falls from time 0."},
 	{topic: "Integration", used: (*job).flew,

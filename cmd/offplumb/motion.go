@@ -102,6 +102,9 @@ func (j *job) film(i int) (*motion.Film, error) {
 }
 
 func (j *job) filmNotes(t *flight.Track) string {
+	if !j.model().Ambient.None() {
+		return ambientWords(j.model())
+	}
 	if j.model().Air.Vacuum() || t.Body.Diameter == 0 {
 		return "Without air a flight is a straight line in the inertial frame."
 	}

@@ -54,7 +54,7 @@ func TestReadmeIsTrue(t *testing.T) {
 	want = generated(t, want, "example", "```toml\n"+excerpt(t, "../../scenarios/shipped/overhead-locker.toml")+"```\n")
 	want = generated(t, want, "limits", modelLimits())
 	want = generated(t, want, "trust", modelTable())
-	want = generated(t, want, "contents", contentsOf(want))
+	want = generated(t, want, "contents", headingsOf(want))
 	same(t, readme, []byte(want))
 	for _, name := range []string{"wrench-slips-out-side.svg", "wrench-slips-out-inertial.svg"} {
 		figure, err := os.ReadFile(filepath.Join(out, name))
@@ -84,8 +84,8 @@ func excerpt(t *testing.T, path string) string {
 	return strings.Join(out, "\n\n") + "\n"
 }
 
-// contentsOf lists the headings of a page that stand outside fenced blocks.
-func contentsOf(page string) string {
+// headingsOf lists the headings of a page that stand outside fenced blocks.
+func headingsOf(page string) string {
 	var out strings.Builder
 	fenced := false
 	for line := range strings.Lines(page) {
@@ -116,7 +116,7 @@ func TestReadmeLinks(t *testing.T) {
 			links++
 			file, heading, _ := strings.Cut(m[1], "#")
 			if file == "" {
-				if heading = "(#" + heading + ")"; !strings.Contains(contentsOf(string(src)), heading) {
+				if heading = "(#" + heading + ")"; !strings.Contains(headingsOf(string(src)), heading) {
 					t.Errorf("%s has no heading for %s", page, m[1])
 				}
 			} else if _, err := os.Stat(filepath.Join(filepath.Dir(page), file)); err != nil {

@@ -7,6 +7,7 @@ import (
 	"html/template"
 	"io"
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"offplumb/plots/motion"
@@ -77,7 +78,7 @@ func (j *job) titleBlock() []page.Fact {
 	}
 	block := []page.Fact{{Name: "Spin", Value: spinShort(m)}}
 	block = append(block, turningFacts(m)...)
-	return append(block, []page.Fact{
+	block = append(block, []page.Fact{
 		{Name: "Floor, from the axis", Value: given(h.FloorRadius) + " m"},
 		{Name: "Gravity on the floor", Value: table.Round(m.Gravity(h.FloorRadius)/model.StandardGravity, 3) + " g"},
 		{Name: "Rim speed", Value: table.Round(h.Spin*h.FloorRadius, 3) + " m/s"},
@@ -86,6 +87,15 @@ func (j *job) titleBlock() []page.Fact {
 		{Name: "SHA-256, first digits", Value: j.Inputs[0].SHA256[:12]},
 		{Name: "Written by", Value: programName + " " + version},
 	}...)
+	if words := ambientFact(m); words != "" {
+		block = slices.Insert(block, 1, page.Fact{Name: "Ambient gravity", Value: words})
+		for i := range block {
+			if block[i].Name == "Gravity on the floor" {
+				block[i].Name += ", by the spin"
+			}
+		}
+	}
+	return block
 }
 
 func spinShort(m *model.Model) string {

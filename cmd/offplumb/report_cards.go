@@ -90,7 +90,7 @@ func (j *job) leftOut(s *shelf, tracked, files int) (out []string) {
 }
 
 func (j *job) landingTable() page.Table {
-	t := page.Table{Name: "Landings", Columns: headings(2, "release", "outcome", "off plumb", "of it by the spin", "axially", "after", "at speed", "with energy")}
+	t := page.Table{Name: "Landings", Columns: headings(2, "release", "outcome", "off plumb", j.causes(), "axially", "after", "at speed", "with energy")}
 	for i := range j.landings {
 		l := &j.landings[i]
 		if j.inSeries(l.Release) {

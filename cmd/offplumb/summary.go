@@ -22,10 +22,14 @@ func (j *job) summary(w io.Writer) error {
 	if words := turningWords(j.model()); words != "" {
 		b.WriteString(wrapped(words, ""))
 	}
+	if words := ambientWords(j.model()); words != "" {
+		b.WriteString(wrapped(words+" "+feltWords(j.model()), ""))
+	}
 	j.sumLandings(&b)
 	sumStreams(j, &b)
 	sumDoubts(j, &b)
 	j.sumStories(&b)
+	j.sumOutside(&b)
 	j.sumPaths(&b)
 	j.sumStudies(&b)
 	sumScatter(j, &b)
@@ -83,7 +87,7 @@ func (j *job) sumLandings(b *strings.Builder) {
 	if len(j.landings) == 0 {
 		return
 	}
-	rows := [][]string{{"release", "outcome", "off plumb", "of it by the spin", "axially", "after", "at speed", "with energy"}}
+	rows := [][]string{{"release", "outcome", "off plumb", j.causes(), "axially", "after", "at speed", "with energy"}}
 	for i := range j.landings {
 		if !j.inSeries(j.landings[i].Release) {
 			rows = append(rows, landingRow(&j.landings[i]))
@@ -118,6 +122,9 @@ func ending(l *measure.Landing) string {
 		}
 		return s
 	case flight.Lost:
+		if l.Away > 0 {
+			return fmt.Sprintf("lost outside, %s m away", table.Round(l.Away, 3))
+		}
 		return fmt.Sprintf("lost, leaving the hull at %s deg, axial %s m", table.Fixed(l.Place.Phi*180/math.Pi, 1), table.Fixed(l.Place.Z, 1))
 	}
 	return "no landing"

@@ -34,7 +34,7 @@ func (j *job) noteStep(of string, step float64) {
 // warn gathers what the reader of the results must know.
 func (j *job) warn() {
 	m := j.model()
-	if m.Habitat.Spin == 0 && !m.Unsteady() {
+	if m.Habitat.Spin == 0 && !m.Unsteady() && m.Ambient.None() {
 		j.note("habitat", "there is no spin, so nothing falls")
 	}
 	if names := idleStudies(j); len(names) > 0 {

@@ -134,6 +134,7 @@ func (j *job) tables() []task {
 	out = append(out, tableTask("habitat.csv", "habitat", "", "Figures of the habitat as a whole, a single row.", measure.HabitatTable(measure.HabitatOf(j.model(), 0, 0))))
 	out = append(out, turningTables(j)...)
 	out = append(out, slopeTables(j)...)
+	out = append(out, outsideTables(j)...)
 	out = append(out, j.studyTables()...)
 	out = append(out, scatterTables(j)...)
 	out = append(out, sweepTables(j)...)

@@ -53,7 +53,7 @@ func (r *Result) Held() bool { return r.Err == nil && math.Abs(r.Difference()) <
 // Checks lists the checks, those of a group one after another.
 func Checks() []Check {
 	var out []Check
-	for _, group := range [][]Check{drops(), pucks(), catches(), small(), beads(), wheels(), radii(), people(), airs(), spheres(), raindrops(), globes(), rebounds(), energies()} {
+	for _, group := range [][]Check{drops(), pucks(), catches(), falls(), small(), beads(), wheels(), radii(), people(), airs(), spheres(), raindrops(), globes(), rebounds(), energies()} {
 		out = append(out, group...)
 	}
 	return out

@@ -44,15 +44,16 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 	a := m.Motion.At(p.Path.Time + t)
 	f := p.At(t)
 	out := Loads{Time: t, Feet: f}
-	out.GravityFeet = r3.Norm(felt(&a, f.Point(model.Reach{}))) // they stay where a sitting trunk sinks
-	out.GravityHead = r3.Norm(felt(&a, f.Body(p.Crew.Head*p.Crew.Stature)))
+	in := feeling{m, &a, p.Path.Time + t}
+	out.GravityFeet = r3.Norm(in.felt(f.Point(model.Reach{}))) // they stay where a sitting trunk sinks
+	out.GravityHead = r3.Norm(in.felt(f.Body(p.Crew.Head * p.Crew.Stature)))
 	out.GravityDifference = out.GravityFeet - out.GravityHead
 	waist := f.Body(p.Crew.Waist * p.Crew.Stature)
-	gravity := felt(&a, waist)
+	gravity := in.felt(waist)
 	out.GravityWaist, out.SpeedWaist = r3.Norm(gravity), r3.Norm(waist.Vel)
 	force := r3.Scale(p.Crew.Mass, gravity)
 	out.Power = -r3.Dot(force, waist.Vel)
-	force = r3.Add(force, out.carry(&a, p.Path.Carry, &f))
+	force = r3.Add(force, out.carry(in, p.Path.Carry, &f))
 	ap := a.Apparent(waist.State)
 	out.Coriolis, out.Euler = r3.Norm(ap.Coriolis), r3.Norm(ap.Euler)
 	out.stand(gravity, force, a.Omega, f)
@@ -61,17 +62,27 @@ func (p *Plan) Loads(m *model.Model, t float64) Loads {
 	return out
 }
 
-// felt is the apparent gravity at a point, m/s^2.
-func felt(a *frame.Attitude, p Point) r3.Vec { return r3.Scale(-1, Support(a, p)) }
+// feeling is an instant at which somebody feels apparent gravity.
+type feeling struct {
+	m    *model.Model
+	a    *frame.Attitude
+	time float64 // s
+}
+
+// felt is the apparent gravity at a point, m/s^2: what the structure must give
+// against, and the ambient pull.
+func (in feeling) felt(p Point) r3.Vec {
+	return r3.Sub(in.m.AmbientAt(in.time, p.Pos), Support(in.a, p))
+}
 
 // carry works out the load in the hands, and gives its force, N.
-func (l *Loads) carry(a *frame.Attitude, c model.Carry, f *Feet) r3.Vec {
+func (l *Loads) carry(in feeling, c model.Carry, f *Feet) r3.Vec {
 	l.GravityCarried, l.ForceCarried = math.NaN(), math.NaN()
 	if c.Mass == 0 {
 		return r3.Vec{}
 	}
 	at := f.Point(c.At)
-	gravity := felt(a, at)
+	gravity := in.felt(at)
 	force := r3.Scale(c.Mass, gravity)
 	l.GravityCarried, l.ForceCarried = r3.Norm(gravity), r3.Norm(force)
 	l.Power -= r3.Dot(force, at.Vel)

@@ -70,7 +70,7 @@ func NewPlan(m *model.Model, p *model.Path) (*Plan, []model.Problem) {
 		b.fault("legs", "wants at least one leg")
 	}
 	if lasts := b.plan.Duration(); lasts > longestPath {
-		b.fault("legs", fmt.Sprintf("take %.4g s together, want at most %g s: the work is added up along all of it", lasts, float64(longestPath)))
+		b.fault("legs", "take %.4g s together, want at most %g s: the work is added up along all of it", lasts, float64(longestPath))
 	}
 	if len(b.problems) == 0 {
 		b.problems = b.plan.clear(m)

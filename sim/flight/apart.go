@@ -25,6 +25,7 @@ const thin = 1e-6
 type apart struct {
 	f           *Flier
 	touch, hull bool // what counts
+	back, far   bool // of a body outside the hull
 
 	omega float64 // rad/s, of a steady spin
 	seen  look
@@ -81,6 +82,9 @@ func (g *apart) of(p r3.Vec) float64 {
 	}
 	if g.hull {
 		d = min(d, -g.f.m.Interior.Beyond(p))
+	}
+	if g.back || g.far {
+		d = min(d, g.outside(p))
 	}
 	return d
 }
@@ -186,6 +190,9 @@ func (g *apart) time(vel r3.Vec, acc, limit float64, watch *geom.Beside) float64
 	}
 	if g.hull {
 		limit = in.TimeWithin(p, vel, acc, limit, thin)
+	}
+	if g.back || g.far {
+		limit = min(limit, covers(max(g.seen.gap, thin), norm(vel), acc))
 	}
 	return limit
 }

@@ -27,6 +27,7 @@ type Flier struct {
 	contact *integrator.Stepper // of sliding and rolling
 	touch   *apart
 	hull    *apart
+	out     outer
 	both    *apart // touch and hull as one
 	watch   geom.Beside
 	goes    ends         // of flights
@@ -76,6 +77,7 @@ func (f *Flier) steppers() error {
 	f.flightRun.events = f.flightEvents
 	f.flightRun.on = func(at float64) float64 { return at + f.spanFrom(f.into, f.leaves+at) }
 	f.touch, f.hull, f.both = &apart{f: f, touch: true}, &apart{f: f, hull: true}, &apart{f: f, touch: true, hull: true}
+	f.out = outerOf(f)
 	return nil
 }
 
@@ -103,7 +105,7 @@ func (f *Flier) FlyAgain(t *Track, let *Let) error {
 	}
 	a := f.m.Motion.At(let.Begin)
 	*t = Track{Release: let.Release, Body: let.Body, Start: let.Place, Begin: let.Begin,
-		Local: let.Local, First: a.ToInertial(let.Local), motion: f.m.Motion,
+		Left: -1, Local: let.Local, First: a.ToInertial(let.Local), motion: f.m.Motion,
 		Phases: t.Phases[:0], Impacts: t.Impacts[:0], steps: t.steps[:0], space: t.space}
 	if let.Release.Start.Kind == model.Still && let.Release.Carried == nil {
 		// At rest without the roundings of the way to the habitat and back.
@@ -166,14 +168,13 @@ func (f *Flier) flightEvents(grazed []geom.Patch) *ends {
 	f.touch.ready()
 	e := &f.goes
 	e.clear()
-	if at, y := f.st.State(); len(grazed) == 0 && f.touch.Value(at, y) > least {
+	if at, y := f.st.State(); !f.out.outside && len(grazed) == 0 && f.touch.Value(at, y) > least {
 		f.both.ready()
 		e.add(f.both, least, turns)
 		return e
 	}
-	f.hull.ready()
 	e.add(f.touch, least, turns)
-	e.add(f.hull, 0, turns)
+	f.leaving(e)
 	e.graze(f, grazed, least, f.rough, f.free.local, func(at float64, y []float64) r3.Vec {
 		// What grazes does not go through the end of a stretch of the motion.
 		time := math.Min(f.free.begin+at, f.free.last)
@@ -189,7 +190,7 @@ func (f *Flier) settle(t *Track, now *moving, res integrator.Result) {
 	switch {
 	case !res.Stopped:
 		f.end(t, now, TimeUp)
-	case res.Hits[0].Event == 1 || len(f.goes.specs) == 1 && f.touch.Value(res.T, res.Y) > slop(f.free.base.Pos)/4:
+	case f.lost(t, now, res):
 		f.end(t, now, Lost)
 	default:
 		return

@@ -31,6 +31,7 @@ func (f *Flier) follow(t *Track) error {
 	var last ending
 	since := now.t
 	for k := range mostPhases {
+		f.whereabouts(t, &now)
 		if k > 0 || len(touches) > 0 {
 			touches = f.touches(&now)
 		}

@@ -26,10 +26,12 @@ type Forces struct {
 	drag    air.Drag
 	perMass float64 // 1/kg
 	fields  []Field
+	calm    bool // the body is outside, where there is no air
 }
 
-// NewForces gives the forces on a body. A nil law is the program's own for
-// spheres, or the body's own drag coefficient.
+// NewForces gives the forces on a body: drag, the model's ambient gravity and
+// further fields. A nil law is the program's own for spheres, or the body's own
+// drag coefficient.
 func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forces {
 	f := &Forces{}
 	f.set(m, b, law, fields)
@@ -38,6 +40,9 @@ func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forc
 
 // set makes f the forces on a body.
 func (f *Forces) set(m *model.Model, b model.Body, law air.Law, fields []Field) {
+	if !m.Ambient.None() {
+		fields = append([]Field{m.Ambient}, fields...)
+	}
 	*f = Forces{motion: m.Motion, fields: fields}
 	if w, ok := m.Motion.(frame.Steady); ok {
 		f.steady, f.spin = true, w.Spin
@@ -55,14 +60,20 @@ func (f *Forces) set(m *model.Model, b model.Body, law air.Law, fields []Field) 
 	// The Reynolds number is that of the disc of the same area.
 	f.drag = air.NewDrag(m.Air, law, math.Sqrt(4*area/math.Pi), area)
 	f.perMass = 1 / b.Mass
-	f.plain = f.steady && len(fields) == 0 && !f.drag.None()
+	f.ease(false)
+}
+
+// ease lets drag act, or not: the body is outside, in calm.
+func (f *Forces) ease(calm bool) {
+	f.calm = calm
+	f.plain = f.steady && len(f.fields) == 0 && !f.drag.None() && !calm
 }
 
 // Drag gives the acceleration by drag, m/s^2 in inertial components, at an
 // inertial state and habitat time t (s). Air at rest in the habitat moves with
 // omega x r.
 func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
-	if f.drag.None() {
+	if f.calm || f.drag.None() {
 		return r3.Vec{}
 	}
 	rel := f.relative(t, s)

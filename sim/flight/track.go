@@ -82,6 +82,7 @@ type Track struct {
 	End     float64     // s since the release
 	Last    frame.State // at the end, inertial
 	Work    Work
+	Left    float64 // s, when its centre first passed the hull's outer face; -1: it did not, or is not followed beyond
 
 	motion frame.Motion
 	steps  []integrator.Segment // of all phases

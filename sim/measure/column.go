@@ -48,6 +48,7 @@ type column[T any] struct {
 	num     func(*T) float64
 	text    func(*T) string
 	partly  bool // rows that it says nothing about have no value, and count in no limit
+	pulled  bool // it tells of ambient gravity, and is left out without any
 	later   bool // it tells of the time after a last change of the spin, and is left out without one
 }
 

@@ -143,15 +143,18 @@ var crewColumns = []column[Load]{
 var deckColumns = []column[DeckFigure]{
 	{key: "deck", meaning: "name of the deck", text: func(d *DeckFigure) string { return d.Deck }},
 	{key: "radius", unit: metre, meaning: "distance of its surface from the axis", num: func(d *DeckFigure) float64 { return d.Radius }},
-	{key: "gravity", unit: gravity, meaning: "apparent gravity at rest on it", num: func(d *DeckFigure) float64 { return d.Gravity }},
+	{key: "gravity", unit: gravity, meaning: "apparent gravity at rest on it, of the spin alone", num: func(d *DeckFigure) float64 { return d.Gravity }},
 	{key: "speed", unit: speedUnit, meaning: "speed of its surface, spinward positive", num: func(d *DeckFigure) float64 { return d.Speed }},
 	{key: "coriolis_per_speed", unit: perSecond, meaning: "Coriolis acceleration for each m/s across the axis: twice the spin rate", num: func(d *DeckFigure) float64 { return d.Coriolis }},
-	{key: "drop_1m_offset", unit: metre, meaning: "deck offset of a point dropped from 1 m above it in vacuum, spinward positive; empty where the axis is nearer", num: func(d *DeckFigure) float64 { return d.Drop }},
-	{key: "walk_run", unit: speedUnit, meaning: "speed at which a person of 1.75 m changes from walking to running at rest gravity: Froude number 0.5", num: func(d *DeckFigure) float64 { return WalkRunSpeed(d.Gravity) }},
+	{key: "drop_1m_offset", unit: metre, meaning: "deck offset of a point dropped from 1 m above it in vacuum, spinward positive; empty where the axis is nearer and under ambient gravity", num: func(d *DeckFigure) float64 { return d.emptied(d.Drop) }},
+	{key: "walk_run", unit: speedUnit, meaning: "speed at which a person of 1.75 m changes from walking to running at rest gravity: Froude number 0.5; empty under ambient gravity", num: func(d *DeckFigure) float64 { return d.emptied(WalkRunSpeed(d.Gravity)) }},
+	{key: "gravity_least", unit: gravity, pulled: true, meaning: "least apparent gravity at rest on it, ambient gravity included, as it goes round", num: func(d *DeckFigure) float64 { return d.Least }},
+	{key: "gravity_most", unit: gravity, pulled: true, meaning: "greatest apparent gravity at rest on it, ambient gravity included, as it goes round", num: func(d *DeckFigure) float64 { return d.Most }},
+	{key: "tilt_most", unit: degree, pulled: true, meaning: "greatest angle of that from the normal of it, as it goes round: where a plumb bob hangs", num: func(d *DeckFigure) float64 { return d.Tilt }},
 	{key: "last_gravity", unit: gravity, later: true, meaning: "apparent gravity at rest on it after the last change of the spin", num: func(d *DeckFigure) float64 { return d.LastGravity }},
 	{key: "last_speed", unit: speedUnit, later: true, meaning: "speed of its surface after the last change, spinward positive", num: func(d *DeckFigure) float64 { return d.LastSpeed }},
 	{key: "last_coriolis_per_speed", unit: perSecond, later: true, meaning: "Coriolis acceleration for each m/s across the axis, after the last change", num: func(d *DeckFigure) float64 { return d.LastCoriolis }},
-	{key: "last_drop_1m_offset", unit: metre, later: true, meaning: "deck offset of a point dropped from 1 m above it in vacuum, after the last change; empty without spin", num: func(d *DeckFigure) float64 { return d.LastDrop }},
+	{key: "last_drop_1m_offset", unit: metre, later: true, meaning: "deck offset of a point dropped from 1 m above it in vacuum, after the last change; empty without spin and under ambient gravity", num: func(d *DeckFigure) float64 { return d.emptied(d.LastDrop) }},
 }
 
 // verdictColumns are those of limits.csv.

@@ -14,6 +14,8 @@ type DeckFigure struct {
 	Speed, Coriolis float64
 	Drop            float64
 
+	Pulled
+
 	Changes                                        bool // the spin does
 	LastGravity, LastSpeed, LastCoriolis, LastDrop float64
 }
@@ -28,6 +30,7 @@ func DeckFigures(m *model.Model) []DeckFigure {
 		r := m.Decks[i].Radius
 		out[i] = DeckFigure{Deck: m.Decks[i].Name, Radius: r, Gravity: m.Gravity(r), Speed: m.Habitat.Spin * r,
 			Coriolis: 2 * math.Abs(m.Habitat.Spin), Drop: DropOffset(r, dropHeight, m.Habitat.Spin)}
+		out[i].Pulled = pulledOn(m, r, middleOf(&m.Decks[i]))
 		last := m.SpinAt(m.Settled())
 		d := &out[i]
 		d.Changes = m.SpinChanges()

@@ -26,7 +26,7 @@ func GroundOf(m *model.Model, t *flight.Track) Ground {
 // GroundAt gives the ground of a place whose deck beneath is known.
 func GroundAt(m *model.Model, p frame.Polar, deck int) Ground {
 	g := Ground{Start: model.Place{Polar: p, Deck: deck}, Name: m.Decks[deck].Name, Radius: m.Decks[deck].Radius}
-	if f := m.FlatBeneath(p.Vec()); f != nil {
+	if f := m.FlatBeneath(p.Vec()); f != nil && !m.IsOutside(p.Vec()) {
 		g.Flat, g.Name, g.Radius = f, f.Name, f.Radius
 	}
 	return g

@@ -15,6 +15,8 @@ type HabitatFigure struct {
 	CoriolisRatio           float64 // Coriolis acceleration at the speed, by gravity
 	Stature, Speed          float64
 
+	Pulled
+
 	Changes                             bool // the spin does
 	LastSpin, LastGravity, LastRimSpeed float64
 }
@@ -35,6 +37,7 @@ func HabitatOf(m *model.Model, stature, speed float64) HabitatFigure {
 	if h.Spin == 0 {
 		out.CoriolisRatio = math.NaN()
 	}
+	out.Pulled = pulledOn(m, h.FloorRadius, middleOf(&m.Decks[0]))
 	last := m.SpinAt(m.Settled())
 	out.Changes = m.SpinChanges()
 	out.LastSpin, out.LastGravity, out.LastRimSpeed = last, last*last*h.FloorRadius, last*h.FloorRadius
@@ -58,12 +61,15 @@ func WalkRunSpeed(gravity float64) float64 {
 // habitatColumns are those of habitat.csv.
 var habitatColumns = []column[HabitatFigure]{
 	{key: "spin", unit: turns, meaning: "spin rate, positive: the floor moves spinward", num: func(h *HabitatFigure) float64 { return h.Spin }},
-	{key: "floor_gravity", unit: gravity, meaning: "apparent gravity at rest on the reference floor", num: func(h *HabitatFigure) float64 { return h.Gravity }},
+	{key: "floor_gravity", unit: gravity, meaning: "apparent gravity at rest on the reference floor, of the spin alone", num: func(h *HabitatFigure) float64 { return h.Gravity }},
 	{key: "rim_speed", unit: speedUnit, meaning: "speed of the reference floor", num: func(h *HabitatFigure) float64 { return h.RimSpeed }},
-	{key: "head_to_foot", meaning: "share by which apparent gravity at the head is less than at the feet, standing on the floor", num: func(h *HabitatFigure) float64 { return h.HeadToFoot }},
-	{key: "coriolis_ratio", meaning: "Coriolis acceleration at the speed, by apparent gravity on the floor", num: func(h *HabitatFigure) float64 { return h.CoriolisRatio }},
+	{key: "head_to_foot", meaning: "share by which apparent gravity at the head is less than at the feet, standing on the floor; empty under ambient gravity", num: func(h *HabitatFigure) float64 { return h.emptied(h.HeadToFoot) }},
+	{key: "coriolis_ratio", meaning: "Coriolis acceleration at the speed, by apparent gravity on the floor; empty under ambient gravity", num: func(h *HabitatFigure) float64 { return h.emptied(h.CoriolisRatio) }},
 	{key: "stature", unit: metre, meaning: "stature that head_to_foot is for", num: func(h *HabitatFigure) float64 { return h.Stature }},
 	{key: "speed", unit: speedUnit, meaning: "speed that coriolis_ratio is for", num: func(h *HabitatFigure) float64 { return h.Speed }},
+	{key: "floor_gravity_least", unit: gravity, pulled: true, meaning: "least apparent gravity at rest on the reference floor, ambient gravity included, as it goes round", num: func(h *HabitatFigure) float64 { return h.Least }},
+	{key: "floor_gravity_most", unit: gravity, pulled: true, meaning: "greatest apparent gravity at rest on the reference floor, ambient gravity included, as it goes round", num: func(h *HabitatFigure) float64 { return h.Most }},
+	{key: "floor_tilt_most", unit: degree, pulled: true, meaning: "greatest angle of that from the normal of the reference floor, as it goes round: where a plumb bob hangs", num: func(h *HabitatFigure) float64 { return h.Tilt }},
 	{key: "last_spin", unit: turns, later: true, meaning: "spin rate after its last change", num: func(h *HabitatFigure) float64 { return h.LastSpin }},
 	{key: "last_floor_gravity", unit: gravity, later: true, meaning: "apparent gravity at rest on the reference floor after the last change", num: func(h *HabitatFigure) float64 { return h.LastGravity }},
 	{key: "last_rim_speed", unit: speedUnit, later: true, meaning: "speed of the reference floor after the last change", num: func(h *HabitatFigure) float64 { return h.LastRimSpeed }},

@@ -33,6 +33,7 @@ type Landing struct {
 	FellThrough   []string // openings passed before the touch
 	AllThrough    []string // and after it
 	Error         Numerical
+	Away          float64 // m, of one that is lost outside, from where it was let go; 0: it was not followed there
 }
 
 // Land measures the landing of a track.
@@ -62,6 +63,9 @@ func Land(m *model.Model, t *flight.Track) Landing {
 	a := m.Motion.At(t.Begin + t.End)
 	local := a.ToHabitat(last)
 	out.Speed = r3.Norm(local.Vel)
+	if t.Left >= 0 {
+		out.Away = r3.Norm(r3.Sub(local.Pos, t.Local.Pos))
+	}
 	out.where(m, local)
 	return out
 }
@@ -90,6 +94,9 @@ func energy(mass, speed float64) float64 {
 }
 
 func (l *Landing) offsets(m *model.Model, t *flight.Track, hit *flight.Impact) {
+	if m.IsOutside(hit.State.Pos) {
+		return // plumb is a matter of what is inside
+	}
 	g := GroundOf(m, t)
 	l.Offset = g.Offset(GoneRound(m, t, hit.Time))
 	l.OffsetAxial = hit.State.Pos.Z - t.Local.Pos.Z

@@ -15,6 +15,10 @@ import (
 // missed only together with the return, when both lie in one part.
 const passParts = 8
 
+// fallParts is the same under ambient gravity, where the distance from the axis
+// may rise and fall within a step: one that holds a whole fall.
+const fallParts = 64
+
 // FellThrough names the openings within which a track crossed the surface of
 // their deck outward up to a time (s since the release), in the order of their
 // decks and their passing, each once.
@@ -35,6 +39,9 @@ func FellThrough(m *model.Model, t *flight.Track, until float64) []string {
 // partsOf is into how many parts a stretch of a track is cut. An axis that cones
 // goes round itself meanwhile.
 func partsOf(m *model.Model, t *flight.Track, t0, t1 float64) float64 {
+	if !m.Ambient.None() {
+		return fallParts
+	}
 	if !m.Cones() {
 		return passParts
 	}
@@ -43,7 +50,7 @@ func partsOf(m *model.Model, t *flight.Track, t0, t1 float64) float64 {
 }
 
 func passings(m *model.Model, t *flight.Track, d *model.Deck, t0, t1 float64, out []string) []string {
-	if !m.Cones() && staysWithin(m, t, d.Radius, t0, t1) {
+	if !m.Cones() && m.Ambient.None() && staysWithin(m, t, d.Radius, t0, t1) {
 		return out
 	}
 	before, parts := t0, partsOf(m, t, t0, t1)

@@ -77,6 +77,10 @@ func sampleAt(m *model.Model, t *flight.Track, g *Ground, time, round float64, f
 	out.VSpinward, out.VAxial, out.VUp = g.Split(local.Vel, p.Phi)
 	ap := a.Apparent(local)
 	out.Centrifugal, out.Coriolis, out.Euler = r3.Norm(ap.Centrifugal), r3.Norm(ap.Coriolis), r3.Norm(ap.Euler)
-	out.Drag = r3.Norm(forces.Drag(t.Begin+time, s))
+	if m.IsOutside(local.Pos) {
+		out.Offset = math.NaN()
+	} else {
+		out.Drag = r3.Norm(forces.Drag(t.Begin+time, s))
+	}
 	return out
 }

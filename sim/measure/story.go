@@ -112,13 +112,13 @@ func (s *teller) ending() {
 	case flight.Stuck:
 		s.say("is stuck at %s", seconds(s.t.End))
 	case flight.Lost:
-		s.say("is lost at %s", seconds(s.t.End))
+		s.say("is lost at %s%s", seconds(s.t.End), s.away())
 	case flight.TimeUp:
 		if r3.Norm(localAt(s.m, s.t, s.t.End).Vel) == 0 {
 			s.say("floats where it is at %s, held by nothing", seconds(s.t.End))
 			return
 		}
-		s.say("still moves at %s", seconds(s.t.End))
+		s.say("still moves at %s%s", seconds(s.t.End), s.away())
 	default:
 		s.flush()
 	}

@@ -17,7 +17,7 @@ func CrewTable(rows []Load) *table.Table { return fill(crewColumns, rows) }
 
 // DeckTable is decks.csv: a row for each deck.
 func DeckTable(rows []DeckFigure) *table.Table {
-	return fill(unlessSteady(deckColumns, len(rows) == 0 || !rows[0].Changes), rows)
+	return fill(unlessPulled(unlessSteady(deckColumns, len(rows) == 0 || !rows[0].Changes), len(rows) > 0 && rows[0].Pulls), rows)
 }
 
 // unlessSteady leaves out the columns of the time after the last change of a
@@ -44,5 +44,5 @@ func LetGoTable(rows []LetGo) *table.Table { return fill(letGoColumns, rows) }
 
 // HabitatTable is habitat.csv, of one row.
 func HabitatTable(h HabitatFigure) *table.Table {
-	return fill(unlessSteady(habitatColumns, !h.Changes), []HabitatFigure{h})
+	return fill(unlessPulled(unlessSteady(habitatColumns, !h.Changes), h.Pulls), []HabitatFigure{h})
 }

@@ -46,9 +46,10 @@ func Turnings(m *model.Model, end float64) []Turning {
 func TurningAt(m *model.Model, t float64) Turning {
 	a := m.Motion.At(t)
 	p := a.Apparent(frame.State{Pos: r3.Vec{X: m.Habitat.FloorRadius}})
-	out := Turning{Time: t, Spin: m.SpinAt(t), Turned: m.Turned(t), Euler: r3.Norm(p.Euler), Gravity: r3.Norm(p.Sum()),
+	whole := r3.Add(p.Sum(), m.AmbientAt(t, r3.Vec{X: m.Habitat.FloorRadius}))
+	out := Turning{Time: t, Spin: m.SpinAt(t), Turned: m.Turned(t), Euler: r3.Norm(p.Euler), Gravity: r3.Norm(whole),
 		TiltSpinward: math.NaN(), TiltAxial: math.NaN(), Friction: math.NaN()}
-	s, z, up := frame.LocalAt(0).Split(p.Sum())
+	s, z, up := frame.LocalAt(0).Split(whole)
 	if out.Gravity > 0 {
 		out.TiltSpinward, out.TiltAxial = math.Atan2(s, -up), math.Atan2(z, -up)
 	}
@@ -63,7 +64,7 @@ var turningColumns = []column[Turning]{
 	{key: "time", unit: second, meaning: "time of the scenario", num: func(t *Turning) float64 { return t.Time }},
 	{key: "spin", unit: turns, meaning: "spin rate, positive: the floor moves spinward; where the axis cones, the part of the angular velocity along it", num: func(t *Turning) float64 { return t.Spin }},
 	{key: "turned", unit: degree, meaning: "angle by which the habitat has turned since time 0", num: func(t *Turning) float64 { return t.Turned }},
-	{key: "gravity", unit: gravity, meaning: "apparent gravity at rest on the reference floor, at spinward and axial zero", num: func(t *Turning) float64 { return t.Gravity }},
+	{key: "gravity", unit: gravity, meaning: "apparent gravity at rest on the reference floor, ambient gravity included, at spinward and axial zero", num: func(t *Turning) float64 { return t.Gravity }},
 	{key: "a_euler", unit: accelUnit, meaning: "magnitude of the Euler acceleration there", num: func(t *Turning) float64 { return t.Euler }},
 	{key: "tilt_spinward", unit: degree, partly: true, meaning: "angle from the deck's normal at which a plumb bob there hangs spinward; empty without gravity", num: func(t *Turning) float64 { return t.TiltSpinward }},
 	{key: "tilt_axial", unit: degree, partly: true, meaning: "angle from the deck's normal at which it hangs toward +axial", num: func(t *Turning) float64 { return t.TiltAxial }},

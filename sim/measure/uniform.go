@@ -31,7 +31,7 @@ func UniformGravity(m *model.Model, t *flight.Track) Uniform {
 	u := Uniform{Gravity: math.Max(0, m.GravityAt(t.Begin, at)), Height: foot - t.Start.R}
 	u.VSpinward, u.VAxial, u.VUp = frame.LocalAt(t.Start.Phi).Split(t.Local.Vel)
 	drop := math.Max(0, u.Height-t.Body.Diameter/2)
-	if u.Gravity == 0 {
+	if u.Gravity == 0 || m.IsOutside(t.Local.Pos) {
 		return u
 	}
 	u.Lands = true

@@ -87,6 +87,8 @@ func (m *Model) Obstructed(p Place, a float64) string {
 	deck := m.Decks[p.Deck].Name
 	pos := p.Vec()
 	switch {
+	case p.R >= 0 && m.IsOutside(pos):
+		return m.overlap(pos, a)
 	case p.R < 0:
 		return fmt.Sprintf("lies beyond the axis, which is %.6g m above deck %q", m.Decks[p.Deck].Radius, deck)
 	case p.Height < 0 && (p.Height >= -m.Decks[p.Deck].Thickness || !m.Interior.Inside(pos)):

@@ -34,6 +34,7 @@ import (
 type Model struct {
 	Title    string
 	Habitat  Habitat
+	Ambient  Ambient
 	Air      air.Air
 	Decks    []Deck // Decks[0] is the reference floor once the model is made
 	Rooms    []Room // further rooms, beside the habitat's own
@@ -392,6 +393,7 @@ type Solver struct {
 	PosTol  float64 // absolute on position, m
 	VelTol  float64 // absolute on velocity, m/s
 	MaxTime float64 // s, of any release
+	Outside Outside // what leaves the hull
 }
 
 // Output sets what is written.

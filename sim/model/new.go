@@ -35,6 +35,7 @@ func New(in Model) (*Model, []Problem) {
 		return nil, c.problems
 	}
 	c.interior()
+	c.ambient()
 	if len(c.problems) > 0 {
 		return nil, c.problems
 	}

@@ -156,8 +156,8 @@ func (d *Deck) OpeningAt(phi, z float64) *Opening {
 	return nil
 }
 
-// Gravity is the apparent gravity at rest at a distance r (m) from the axis
-// under the steady spin that the habitat begins with, m/s^2.
+// Gravity is the part of the apparent gravity at rest that comes from turning,
+// at a distance r (m) from the axis, under the steady spin that the habitat begins with, m/s^2.
 func (m *Model) Gravity(r float64) float64 { return m.Habitat.Spin * m.Habitat.Spin * r }
 
 // BodyOf gives the body of a release: a point without mass where it names

@@ -55,6 +55,9 @@ func (c *checker) change(i int, x frame.Change) {
 func (m *Model) turn() {
 	m.rates = frame.NewRates(m.Habitat.Spin, m.Habitat.Changes)
 	m.Motion = frame.NewMotion(m.rates, m.Habitat.Coning)
+	if m.Swings() {
+		m.Motion = pulled{m.Motion}
+	}
 }
 
 // SpinAt is the spin rate at a time (s), rad/s.
@@ -81,7 +84,7 @@ func (m *Model) SpinChanges() bool { return !m.rates.Steady() }
 func (m *Model) Cones() bool { return !m.Habitat.Coning.Still() }
 
 // Unsteady says whether what is at rest feels its loads change.
-func (m *Model) Unsteady() bool { return m.SpinChanges() || m.Cones() }
+func (m *Model) Unsteady() bool { return m.SpinChanges() || m.Cones() || m.Swings() }
 
 // Settled is when the last change of the spin is over, s; 0 without any.
 func (m *Model) Settled() float64 { return m.rates.Settled() }
@@ -89,7 +92,7 @@ func (m *Model) Settled() float64 { return m.rates.Settled() }
 // GravityAt is the part along the plumb line, outward, of the apparent gravity
 // at rest at a place at a time (s), m/s^2.
 func (m *Model) GravityAt(t float64, p frame.Polar) float64 {
-	if !m.Cones() {
+	if !m.Cones() && m.Ambient.None() {
 		rate := m.SpinAt(t)
 		return rate * rate * p.R
 	}
@@ -97,9 +100,9 @@ func (m *Model) GravityAt(t float64, p frame.Polar) float64 {
 	return -up
 }
 
-// GravityVector is the apparent gravity at rest at a point (m) at a time (s),
+// GravityVector is the apparent gravity at rest, the ambient one included, at a point (m) at a time (s),
 // m/s^2, both in habitat components.
 func (m *Model) GravityVector(t float64, pos r3.Vec) r3.Vec {
 	a := m.Motion.At(t)
-	return a.Apparent(frame.State{Pos: pos}).Sum()
+	return r3.Add(a.Apparent(frame.State{Pos: pos}).Sum(), m.AmbientAt(t, pos))
 }

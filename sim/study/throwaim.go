@@ -27,7 +27,7 @@ type aim struct {
 	fastest float64 // m/s, bound on the target's speed relative to the habitat
 	longest float64 // s
 
-	drag    bool
+	drag    bool     // something acts on it in flight
 	most    float64  // m/s, beyond which throws are not looked for
 	scale   float64  // m, of the places
 	size    float64  // m, of the throw, wherever in a large habitat it is
@@ -118,12 +118,17 @@ func (a *aim) follow(plan *crew.Plan, t *model.ThrowTo) {
 // moves: a ramp of the speed takes several.
 const personStep = 0.05
 
-// vacuum is the throw that takes a time t (s) in vacuum: exact.
+// vacuum is the throw that takes a time t (s) in vacuum: exact, under ambient
+// gravity too if that is uniform.
 func (a *aim) vacuum(t float64) r3.Vec {
 	from, to := a.m.Motion.At(a.let.Begin), a.m.Motion.At(a.let.Begin+t)
 	start := from.Out(a.let.Local.Pos)
 	way := r3.Sub(to.Out(a.target(t).Pos), start)
-	return from.In(r3.Sub(r3.Scale(1/t, way), r3.Cross(from.Omega, start)))
+	fall := r3.Vec{}
+	if !a.m.Ambient.None() {
+		fall = r3.Scale(t/2, a.m.Ambient.Accel(0, frame.State{Pos: start}))
+	}
+	return from.In(r3.Sub(r3.Sub(r3.Scale(1/t, way), fall), r3.Cross(from.Omega, start)))
 }
 
 // speed is the speed of the throw that takes a time t (s); see [sample].

@@ -251,14 +251,15 @@ func (a *aim) curve(ctx context.Context, speed float64) []sample {
 // shortest is a flight time, s, that is too short for any throw of a speed
 // (m/s), in a habitat that turns at a rate (rad/s). While it flies a body
 // gets no faster, relative to the habitat, than the spin makes it on its way
-// out: v^2 grows by no more than (omega r)^2. One that comes back must be
+// out, and the ambient pull: v^2 grows by no more than (omega r)^2 + 2 g r. One that comes back must be
 // turned round, at no more than the apparent acceleration.
 func (a *aim) shortest(speed, omega float64) float64 {
 	r := 2 * a.scale
 	gap := r3.Norm(r3.Sub(a.target(0).Pos, a.let.Local.Pos))
-	fast := math.Hypot(speed, omega*r)
+	pull := a.pull()
+	fast := math.Hypot(math.Hypot(speed, omega*r), math.Sqrt(2*pull*r))
 	straight := 0.5 * gap / (fast + a.fastest)
-	back := 0.1 * speed / (omega*omega*r + 2*omega*fast + a.fastest/personStep)
+	back := 0.1 * speed / (omega*omega*r + 2*omega*fast + pull + a.fastest/personStep)
 	t := math.Max(straight, 0)
 	if gap < closeEnough || t == 0 {
 		t = back
@@ -270,15 +271,18 @@ func (a *aim) shortest(speed, omega float64) float64 {
 }
 
 // slowestInVacuum is about the speed, m/s, of the slowest throw in vacuum, and
-// not less than what the spin does to speeds on the way.
+// not less than what spin and ambient gravity do to speeds on the way.
 func (a *aim) slowestInVacuum() float64 {
 	least := math.Inf(1)
 	for t := a.longest; t > a.longest*1e-6; t *= 0.9 {
 		least = math.Min(least, r3.Norm(a.vacuum(t)))
 	}
 	omega, _ := a.m.Motion.Bounds(a.let.Begin, a.let.Begin)
-	return math.Max(10*least, omega*a.scale)
+	return math.Max(10*least, math.Max(omega*a.scale, math.Sqrt(2*a.pull()*a.size)))
 }
+
+// pull is the strength, m/s^2, of the ambient gravity where the body starts.
+func (a *aim) pull() float64 { return r3.Norm(a.m.AmbientAt(a.let.Begin, a.let.Local.Pos)) }
 
 func sorted(times []float64) []float64 {
 	out := slices.Clone(times)
