@@ -30,6 +30,7 @@ type Flier struct {
 	watch   geom.Beside
 	body    model.Body  // in flight
 	wide    float64     // m, its radius
+	quick   Quick       // how fast it takes up the motion of the air
 	ended   bool        // its track is
 	arrival frame.State // inertial, at the end of its last phase, before any impact
 	zero    [6]float64
@@ -89,6 +90,7 @@ func (f *Flier) Fly(let *Let) (*Track, error) {
 	t.Start.Deck, t.Start.Height = f.beneath(let)
 	f.free.forces = NewForces(f.m, let.Body, f.setup.Law, f.setup.Fields...)
 	f.body, f.wide = let.Body, let.Body.Diameter/2
+	f.quick = quickOf(f.m, f.free.forces, let.Body)
 	return t, f.follow(t)
 }
 
@@ -101,6 +103,10 @@ func (f *Flier) beneath(let *Let) (int, float64) {
 // fly integrates one flight, to a touch, the end of its time or its loss. The
 // spin of a body in flight stays in the inertial frame.
 func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) {
+	settles, drifts := f.quickIn(now)
+	if drifts {
+		return f.driftOn(t, now)
+	}
 	base := f.inertial(t, now)
 	if now.t == 0 {
 		base = t.First
@@ -117,6 +123,9 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 		on:     func(at float64) float64 { return at + f.spanFrom(t, now.t+at) },
 		events: func(grazed []geom.Patch) *ends { return f.flightEvents(base, grazed, noise(r3.Vec{}, now.v)) }}
 	r.smooth, f.free.last = f.smoothUntil(t, now)
+	if f.quick.Drifts() {
+		r.smooth, r.on = math.Min(r.smooth, settles), nil
+	}
 	res, end, err := r.solve(t, &phase, f.zero[:])
 	if err != nil {
 		return ending{}, err

@@ -31,6 +31,10 @@ func (f *Flier) follow(t *Track) error {
 	since := now.t
 	for k := range mostPhases {
 		touches := f.touches(&now)
+		if len(touches) > 0 && f.quick.Drifts() {
+			f.sticks(t, &now, &touches[0])
+			return nil
+		}
 		f.meet(t, &now, touches, known)
 		if f.over(t, &now) {
 			return nil

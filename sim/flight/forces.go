@@ -23,6 +23,7 @@ type Forces struct {
 	drag    air.Drag
 	perMass float64 // 1/kg
 	fields  []Field
+	around  *around // nil: the air turns like a solid, is the same everywhere and only drags
 }
 
 // NewForces gives the forces on a body. A nil law is the program's own for
@@ -42,6 +43,7 @@ func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forc
 	// The Reynolds number is that of the disc of the same area.
 	f.drag = air.NewDrag(m.Air, law, math.Sqrt(4*area/math.Pi), area)
 	f.perMass = 1 / b.Mass
+	f.around = newAround(m, b, f)
 	return f
 }
 
@@ -52,6 +54,10 @@ func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
 	if f.drag.None() {
 		return r3.Vec{}
 	}
+	if f.around != nil {
+		h := f.around.at(f, t, s.Pos)
+		return h.drag(f, s.Vel)
+	}
 	wind := r3.Cross(f.motion.Omega(t), s.Pos)
 	rel := r3.Sub(s.Vel, wind)
 	return r3.Scale(-f.perMass*f.drag.PerVelocity2(r3.Norm2(rel)), rel)
@@ -59,6 +65,9 @@ func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
 
 // Accel gives the whole acceleration, m/s^2 in inertial components.
 func (f *Forces) Accel(t float64, s frame.State) r3.Vec {
+	if f.around != nil {
+		return f.around.accel(f, t, s)
+	}
 	a := f.Drag(t, s)
 	for _, g := range f.fields {
 		a = r3.Add(a, g.Accel(t, s))
