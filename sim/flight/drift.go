@@ -81,7 +81,7 @@ func quickOf(m *model.Model, f *Forces, b model.Body) Quick {
 		rate = math.Max(rate, 1/s.Pace)
 	}
 	for _, c := range m.Habitat.Changes {
-		rate = math.Max(rate, 1/c.Over)
+		rate = math.Max(rate, 4/c.Over) // 3u^2 - 2u^3 bends at a rate of 6 over its time
 	}
 	if d := m.Weather.Draft; d != nil {
 		// The fade about the axis, of a slope of 1.5 over the core, and the turning there.

@@ -15,6 +15,7 @@ import (
 type Setup struct {
 	Fields []Field
 	Law    air.Law // nil: the program's own
+	Full   bool    // dust too is flown by the full equations
 }
 
 // Flier flies releases one after another. It serves one goroutine.
@@ -90,7 +91,9 @@ func (f *Flier) Fly(let *Let) (*Track, error) {
 	t.Start.Deck, t.Start.Height = f.beneath(let)
 	f.free.forces = NewForces(f.m, let.Body, f.setup.Law, f.setup.Fields...)
 	f.body, f.wide = let.Body, let.Body.Diameter/2
-	f.quick = quickOf(f.m, f.free.forces, let.Body)
+	if f.quick = (Quick{}); !f.setup.Full {
+		f.quick = quickOf(f.m, f.free.forces, let.Body)
+	}
 	return t, f.follow(t)
 }
 
