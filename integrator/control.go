@@ -35,7 +35,7 @@ func newController(tab *Tableau) controller {
 
 func (c *controller) reset() {
 	c.next, c.max = 0, math.Inf(1)
-	c.logOld = math.Log(leastOld)
+	c.logOld = logLeast
 	c.rejects = 0
 }
 
@@ -65,8 +65,8 @@ func (c *controller) end(t, tEnd float64) (t1 float64, cut bool) {
 // accept sets the next step after one of length h whose squared error passed.
 // A step that the end cut too short to tell anything is forgotten.
 func (c *controller) accept(h, sq float64, cut bool) {
-	log := 0.5 * math.Log(sq)
-	change := safety * math.Exp(c.beta*c.logOld-c.alpha*log)
+	log := 0.5 * roughLog(sq)
+	change := safety * roughExp(c.beta*c.logOld-c.alpha*log)
 	change = min(max(change, leastChange), mostChange)
 	if c.rejects > 0 {
 		change = min(change, 1)
@@ -77,8 +77,11 @@ func (c *controller) accept(h, sq float64, cut bool) {
 		return
 	}
 	c.next = h * change
-	c.logOld = max(log, math.Log(leastOld))
+	c.logOld = max(log, logLeast)
 }
+
+// logLeast is the logarithm of leastOld.
+var logLeast = math.Log(leastOld)
 
 // reject shortens the next step after one of length h from t that failed, or
 // returns the reason to give up.

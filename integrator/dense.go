@@ -27,6 +27,10 @@ type Segment struct {
 	coef   []float64 // Dim coefficients of theta^0, then of theta^1, ...
 }
 
+// Use gives an empty segment the space for its coefficients, five times Dim for
+// DormandPrince54, of which it uses no more than the capacity.
+func (g *Segment) Use(space []float64) { g.coef = space[:0] }
+
 // At fills y with the state at t, which should lie in [T0, T1]. At(T0) is Y0
 // and At(T1) is Y1, bit for bit.
 func (s *Step) At(t float64, y []float64) {
@@ -76,6 +80,7 @@ func (s *Step) Truncate(t float64) {
 	if t == s.T1 {
 		return
 	}
+	s.segment() // while Y1 is the computed one
 	s.At(t, s.Y1)
 	s.T1 = t
 	s.st.moved = true
@@ -89,6 +94,10 @@ func (s *Step) segment() *Segment {
 	s.dense = true
 	g := &s.seg
 	g.T0, g.T1, g.h = s.T0, s.T1, s.h
+	if s.st.six != nil {
+		s.st.six.dense(s.st, s.h, (*[5 * sixDim]float64)(g.coef))
+		return g
+	}
 	copy(g.coef, s.Y0)
 	for p := range s.st.poly {
 		s.st.poly[p].add(g.power(p+1), s.st.zero, s.h, s.st.k)
@@ -131,7 +140,17 @@ func (g *Segment) At(t float64, y []float64) {
 // of time.
 func (g *Segment) Rate(t float64, dy []float64) {
 	theta := (t - g.T0) / g.h
-	dy = dy[:g.dim]
+	n := g.dim
+	dy = dy[:n]
+	if g.degree() == 4 { // as of DormandPrince54, in one pass
+		c1, c2, c3, c4 := g.coef[n:][:n], g.coef[2*n:][:n], g.coef[3*n:][:n], g.coef[4*n:][:n]
+		w := 1 / g.h
+		w2, w3, w4 := 2*w, 3*w, 4*w
+		for i := range dy {
+			dy[i] = w*c1[i] + theta*(w2*c2[i]+theta*(w3*c3[i]+theta*(w4*c4[i])))
+		}
+		return
+	}
 	clear(dy)
 	for p := g.degree(); p >= 1; p-- {
 		w := float64(p) / g.h
@@ -161,14 +180,12 @@ const maxDegree = 8
 //	b_i = sum_{m<=i} binom(i, m)/binom(d, m) q_m
 func (g *Segment) bound(from, to, order int) float64 {
 	d := g.degree() - order
+	if d == 2 && to-from == 3 {
+		return math.Sqrt(g.bound3(from)) / (g.h * g.h)
+	}
 	most := 0.0
-	var w [maxDegree]float64
 	for i := 0; i <= d; i++ {
-		part := 1.0
-		for m := 0; m <= i; m++ {
-			w[m] = part * falling(m+order, order)
-			part *= float64(i-m) / float64(max(d-m, 1))
-		}
+		w := &bernstein[order-1][d][i]
 		sum := 0.0
 		for c := from; c < to; c++ {
 			b := 0.0
@@ -184,6 +201,39 @@ func (g *Segment) bound(from, to, order int) float64 {
 	}
 	return math.Sqrt(most) / g.h
 }
+
+// bound3 is the square of bound, times h^4, for the second derivative of three
+// components of degree 4, written out.
+func (g *Segment) bound3(from int) float64 {
+	n := g.dim
+	c2, c3, c4 := g.coef[2*n+from:][:3], g.coef[3*n+from:][:3], g.coef[4*n+from:][:3]
+	var s0, s1, s2 float64
+	for i := range c2 {
+		b0 := 2 * c2[i]
+		b1 := b0 + 3*c3[i]
+		b2 := b1 + 3*c3[i] + 12*c4[i]
+		s0, s1, s2 = s0+b0*b0, s1+b1*b1, s2+b2*b2
+	}
+	return max(s0, s1, s2)
+}
+
+// bernstein holds the weights of bound: by order less 1, by the degree d of the
+// derivative, by i and m. They are those above times what differentiating
+// theta^(m+order) brings down.
+var bernstein = func() (w [2][maxDegree][maxDegree][maxDegree]float64) {
+	for order := 1; order <= 2; order++ {
+		for d := 0; d <= maxDegree-order; d++ {
+			for i := 0; i <= d; i++ {
+				part := 1.0
+				for m := 0; m <= i; m++ {
+					w[order-1][d][i][m] = part * falling(m+order, order)
+					part *= float64(i-m) / float64(max(d-m, 1))
+				}
+			}
+		}
+	}
+	return w
+}()
 
 // falling returns p for order 1 and p (p-1) for order 2: what differentiating
 // theta^p brings down.

@@ -51,6 +51,9 @@ package integrator
 //     and state. Hits at the same time are reported with it, later ones are
 //     not, and all events are as they stand at that time.
 //
+//  10. Clear. A [Clearing] event that is armed is not looked at in a step that it
+//     clears. It remains armed.
+//
 // The work of a bounded search is at most one look for each thin that g could
 // travel in the step, and near the surface about log(g/thin) rate/(slope of g)
 // looks for each approach and each departure: the better the rate, the fewer.
@@ -76,6 +79,36 @@ type Event interface {
 type Bounded interface {
 	Event
 	Bound(s *Step, t float64, y []float64) (rate, accel, thin float64)
+}
+
+// Clearing is a bounded event that may know beforehand that nothing happens
+// during a step. Clear says whether g, armed at the start of s, surely stays
+// above zero along it, but for excursions that stay above -thin. Then the step
+// is not looked at. Clear may change what the event knows, but not s.
+type Clearing interface {
+	Bounded
+	Clear(s *Step) bool
+}
+
+// Backed is a bounded event that can tell backward, too, how long its value
+// surely does not vanish. Behind returns a time (not negative) such that g is
+// above zero, but for excursions that stay above -thin, along s from that long
+// before t on, though not before the start of s, until t; y is the state at t,
+// and g is not negative there. So a first contact is proved by looking to both
+// sides: forward from the start of the step, and backward from the contact.
+type Backed interface {
+	Bounded
+	Behind(s *Step, t float64, y []float64) float64
+}
+
+// Aimed is an event that tells where it may happen, so that a step may end
+// there, where its interpolant is at its best. Aim is given time and state, the
+// derivative there, and the length that the next step would have. It returns
+// where that step ought to end; beyond its end, or infinite: it makes no odds.
+// It is a guess, of no consequence but for the length of steps.
+type Aimed interface {
+	Event
+	Aim(t float64, y, dy []float64, next float64) float64
 }
 
 // EventSpec is an event and what is to be done about it.

@@ -33,7 +33,11 @@ type track struct {
 // watch is an event under search.
 type watch struct {
 	EventSpec
-	bounded Bounded // nil: a plain event
+	bounded Bounded  // nil: a plain event
+	backed  Backed   // nil: it cannot tell
+	clear   Clearing // nil: it cannot tell
+	aimed   Aimed    // nil: it cannot tell
+	unknown bool     // g was not looked at in the last step
 	track
 	end     track   // standing at the end of the search
 	reached float64 // time up to which the step was searched
@@ -65,6 +69,9 @@ func (f *Finder) Start(t float64, y []float64, events []EventSpec) error {
 		}
 		w := watch{EventSpec: spec}
 		w.bounded, _ = spec.Event.(Bounded)
+		w.backed, _ = spec.Event.(Backed)
+		w.clear, _ = spec.Event.(Clearing)
+		w.aimed, _ = spec.Event.(Aimed)
 		g, err := w.value(t, y)
 		if err != nil {
 			return err
@@ -86,6 +93,9 @@ func (f *Finder) Start(t float64, y []float64, events []EventSpec) error {
 // It fails with a [StepError].
 func (f *Finder) Search(s *Step) (hits []Hit, stop bool, err error) {
 	f.hits, f.step = f.hits[:0], s
+	if len(f.watch) == 1 && f.watch[0].cleared(s) {
+		return f.hits, false, nil
+	}
 	f.res = timeUlps * epsilon * (math.Abs(s.T1) + (s.T1 - s.T0))
 	for i := range f.watch {
 		f.watch[i].reached = math.Inf(1)
@@ -151,6 +161,7 @@ func (f *Finder) settle() (err error) {
 		if w.g, err = w.value(f.step.T1, f.step.Y1); err != nil {
 			return err
 		}
+		w.unknown = false
 	}
 	return nil
 }
@@ -162,8 +173,20 @@ type look struct{ t, g float64 }
 // hit, a time within the resolution of it.
 func (f *Finder) walk(i int, limit float64) (float64, error) {
 	w := &f.watch[i]
+	if w.cleared(f.step) {
+		w.end = w.track
+		return limit, nil
+	}
+	if err := f.known(w); err != nil {
+		return 0, err
+	}
 	at, mode := look{f.step.T0, w.g}, w.mode
 	out := at // the last look with g >= 0, or the start
+	if mode == armed && w.backed != nil && !w.Rising {
+		if reached, done, err := f.leap(i, at, limit); done || err != nil {
+			return reached, err
+		}
+	}
 	for n := 0; at.t < limit; n++ {
 		if n == maxLooks {
 			return 0, &StepError{T: at.t, H: limit - at.t, Reason: Stalled}
@@ -185,7 +208,8 @@ func (f *Finder) walk(i int, limit float64) (float64, error) {
 			f.hits = append(f.hits, Hit{Event: i, T: hit, Terminal: w.Terminal})
 			next, mode = past, spent
 			if w.Terminal {
-				limit = min(limit, hit+f.res)
+				w.end = track{spent, past.g}
+				return min(limit, hit+f.res), nil
 			}
 		case next.g > w.Slop:
 			mode = armed
@@ -197,6 +221,76 @@ func (f *Finder) walk(i int, limit float64) (float64, error) {
 	}
 	w.end = track{mode, at.g}
 	return limit, nil
+}
+
+// leap searches an armed event up to limit at one go, where bounds forward from
+// the look at and backward from the first contact, or from limit, meet. It
+// reports whether they did; else nothing has happened.
+func (f *Finder) leap(i int, at look, limit float64) (reached float64, done bool, err error) {
+	w := &f.watch[i]
+	u, err := f.trusted(w, armed, at)
+	if err != nil || !(at.t < limit) {
+		return limit, false, err
+	}
+	end, err := f.look(w, limit)
+	if err != nil {
+		return limit, false, err
+	}
+	hit, past := end, end
+	if end.g <= 0 {
+		if hit, past, err = f.secant(w, at, end); err != nil {
+			return limit, false, err
+		}
+		if hit, past, err = f.polish(w, hit, past); err != nil {
+			return limit, false, err
+		}
+	}
+	if at.t+u < hit.t {
+		f.step.At(hit.t, f.y)
+		if back := w.backed.Behind(f.step, hit.t, f.y); !(hit.t-back <= at.t+u) {
+			return limit, false, nil
+		}
+	}
+	switch {
+	case end.g > 0:
+		w.end = track{armed, end.g}
+		return limit, true, nil
+	case !w.Terminal:
+		return limit, false, nil // there may be more
+	}
+	f.hits = append(f.hits, Hit{Event: i, T: hit.t, Terminal: true})
+	w.end = track{spent, past.g}
+	return min(limit, hit.t+f.res), true, nil
+}
+
+// cleared says whether the event is armed and tells that it remains so.
+func (w *watch) cleared(s *Step) bool {
+	if w.mode == armed && w.clear != nil && !w.Rising && w.clear.Clear(s) {
+		w.unknown = true
+		return true
+	}
+	return false
+}
+
+// known looks at the start of the step, if the last was not looked at.
+func (f *Finder) known(w *watch) error {
+	if !w.unknown {
+		return nil
+	}
+	at, err := f.look(w, f.step.T0)
+	w.g, w.unknown = at.g, false
+	return err
+}
+
+// aim gives the end of the next step that the events ask for.
+func (f *Finder) aim(t float64, y, dy []float64, next float64) float64 {
+	end := math.Inf(1)
+	for i := range f.watch {
+		if w := &f.watch[i]; w.aimed != nil && w.mode == armed {
+			end = min(end, w.aimed.Aim(t, y, dy, next))
+		}
+	}
+	return end
 }
 
 // next takes the next look after at: as far on as the event's bound lets g be

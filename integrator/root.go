@@ -41,6 +41,49 @@ func (f *Finder) polish(w *watch, a, b look) (look, look, error) {
 	return a, b, nil
 }
 
+const (
+	secants   = 5    // looks that may be spent on the secant's points
+	nearRoots = 1e-3 // a secant's step below this share of the last one is the last
+	astride   = 0.4  // of the resolution: how far aside of the root the looks are that bracket it
+)
+
+// secant narrows a bracket by the secant through the last two looks, which of a
+// smooth g doubles the digits at all but every third look, and in the end looks
+// to both sides of the root. It leaves the bracket to polish where that is no
+// use.
+func (f *Finder) secant(w *watch, a, b look) (look, look, error) {
+	last, now := a, b
+	take := func(t float64) (err error) {
+		if !(t > a.t && t < b.t) {
+			return nil
+		}
+		last = now
+		if now, err = f.look(w, t); now.g > 0 {
+			a = now
+		} else {
+			b = now
+		}
+		return err
+	}
+	for k := 0; k < secants && b.t-a.t > f.res; k++ {
+		move := now.g * (now.t - last.t) / (now.g - last.g)
+		t := now.t - move
+		if !(t > a.t && t < b.t) {
+			break
+		}
+		if math.Abs(move) < math.Sqrt(f.res)*nearRoots {
+			if err := take(t - astride*f.res); err != nil {
+				return a, b, err
+			}
+			return a, b, take(a.t + 2*astride*f.res)
+		}
+		if err := take(t); err != nil {
+			return a, b, err
+		}
+	}
+	return a, b, nil
+}
+
 // itpPoint returns the next time to look at. It moves the secant's point by
 // half of res at the least: where one end is already at the root, a move lost
 // in rounding would leave the other end where it is.

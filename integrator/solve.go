@@ -36,7 +36,7 @@ func Solve(st *Stepper, tEnd float64, events []EventSpec, onStep func(*Step, []H
 		return st.result(), err
 	}
 	for t < tEnd {
-		s, err := st.Step(tEnd)
+		s, err := st.Step(st.aim(tEnd))
 		if err != nil {
 			return st.result(), err
 		}
@@ -59,6 +59,24 @@ func Solve(st *Stepper, tEnd float64, events []EventSpec, onStep func(*Step, []H
 	return st.result(), nil
 }
 
+// aim gives where the next step is to end at the latest: where an event asks
+// for it, within reason, or at tEnd.
+func (st *Stepper) aim(tEnd float64) float64 {
+	st.commit()
+	h := st.NextStep()
+	if !st.aims || h == 0 {
+		return tEnd
+	}
+	end := st.find.aim(st.t, st.y0, st.k[0], h)
+	if end-st.t >= leastAim*h {
+		return min(tEnd, end)
+	}
+	return tEnd
+}
+
+// leastAim is the share of a step below which it is not cut short.
+const leastAim = 0x1p-10
+
 // startEvents starts the events of a run that was not begun yet.
 func (st *Stepper) startEvents(t float64, y []float64, events []EventSpec) error {
 	if !st.fresh {
@@ -70,7 +88,10 @@ func (st *Stepper) startEvents(t float64, y []float64, events []EventSpec) error
 	if err := st.find.Start(t, y, events); err != nil {
 		return err
 	}
-	st.fresh = false
+	st.fresh, st.aims = false, false
+	for i := range st.find.watch {
+		st.aims = st.aims || st.find.watch[i].aimed != nil
+	}
 	return nil
 }
 

@@ -22,6 +22,7 @@ type Stepper struct {
 	last row   // y1
 	diff row   // error
 	poly []row // dense output, one for each power of theta
+	six  *six  // the same written out, or nil
 
 	t      float64     // start of the current step
 	y0, y1 []float64   // state there, and after the trial
@@ -37,6 +38,7 @@ type Stepper struct {
 	pending  bool // step holds an accepted step, which the next one starts from
 	moved    bool // step was truncated, so its last stage is of no use
 	fresh    bool // no Solve since Reset: events start anew
+	aims     bool // an event tells where steps ought to end
 	find     Finder
 }
 
@@ -62,6 +64,7 @@ func NewStepper(tab *Tableau, sys System, tol Tol) (*Stepper, error) {
 		return nil, err
 	}
 	st := &Stepper{tab: tab, sys: sys, norm: newNorm(tol, dim), ctl: newController(tab)}
+	st.six = newSix(tab, dim)
 	st.makeRows()
 	st.makeSpace(dim)
 	return st, nil
@@ -238,6 +241,9 @@ func (st *Stepper) keep(t1, h float64) *Step {
 
 // trial computes y1 at t1 = t + h and returns the square of the error's norm.
 func (st *Stepper) trial(h, t1 float64) float64 {
+	if st.six != nil {
+		return st.six.trial(st, h, t1)
+	}
 	end := len(st.k) - 1
 	for i := 1; i <= end; i++ {
 		arg, t := st.arg, t1

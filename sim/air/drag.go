@@ -91,7 +91,12 @@ func (d *Drag) PerVelocity(speed float64) float64 {
 // as printed: closer than the formula in floats comes.
 func (d *Drag) PerVelocity2(speedSquared float64) float64 {
 	if d.curve != nil {
-		return d.viscous * d.curve.at(d.reynolds2*speedSquared)
+		x := d.reynolds2 * speedSquared
+		bits := math.Float64bits(x)
+		if i := bits>>pieceShift - firstPiece; i < pieceCount { // curve.at, but for the call
+			return d.viscous * d.curve.pieces[i].at(x-middle(bits))
+		}
+		return d.viscous * d.curve.outside(x)
 	}
 	return d.PerVelocity(math.Sqrt(speedSquared))
 }

@@ -72,9 +72,10 @@ func away(in *flight.Track, want frame.State) float64 {
 	return math.Max(r3.Norm(r3.Sub(in.Last.Pos, want.Pos))/way, r3.Norm(r3.Sub(in.Last.Vel, want.Vel))/r3.Norm(want.Vel))
 }
 
-// airTol: some hundred steps of 1e-12, and the differences of the script over 2e-5 s:
-// the rounding of the air's place and speed, 1e-15 of 10 m/s, by that: 1e-9 m/s^2.
-const airTol = 1e-8
+// airTol: some hundred steps of 1e-12, and of the script the differences over
+// 1e-4 s, where they reach over a kink of the draft's slope: of 1/s^2 in 1 m/s, for
+// that long.
+const airTol = 1e-9
 
 // TestAirFlightsAsReference holds flights in drafts, layers and with buoyancy
 // to another integrator, another interpolation and differenced accelerations of

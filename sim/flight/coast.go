@@ -15,16 +15,16 @@ func (f *Flier) Coast(let *Let, time float64) (frame.State, error) {
 	a := f.m.Motion.At(let.Begin)
 	base := a.ToInertial(let.Local)
 	f.free.base, f.free.begin = base, let.Begin
-	f.free.forces = NewForces(f.m, let.Body, f.setup.Law, f.setup.Fields...)
+	f.free.forces.set(f.m, let.Body, f.setup.Law, f.setup.Fields)
 	if f.free.forces.None() {
-		return depart(base, time, f.zero[:]), nil
+		return depart(&base, time, f.zero[:]), nil
 	}
 	f.st.Reset(0, f.zero[:])
 	res, err := integrator.Solve(f.st, time, nil, nil)
 	if err != nil {
 		return frame.State{}, err
 	}
-	return depart(base, time, res.Y), nil
+	return depart(&base, time, res.Y), nil
 }
 
 // None says whether nothing acts on the body: it flies straight on.

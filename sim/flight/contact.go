@@ -43,7 +43,10 @@ func (f *Flier) touches(now *moving) []geom.Touch {
 	if out > 0 {
 		least = f.wide + out/2
 	}
-	var all []geom.Touch
+	if f.m.Interior.Dist(now.q) > f.wide+s {
+		return nil
+	}
+	all := f.near
 	for range mostShoves {
 		all = f.m.Interior.Touching(now.q, f.wide+s, all[:0])
 		if len(all) == 0 || all[0].Gap >= least {
@@ -51,6 +54,7 @@ func (f *Flier) touches(now *moving) []geom.Touch {
 		}
 		now.q = r3.Add(now.q, r3.Scale(f.wide+out-all[0].Gap, all[0].Normal))
 	}
+	f.near = all
 	return eachWay(all)
 }
 

@@ -173,21 +173,22 @@ func (f *Flier) quickIn(now *moving) (in float64, drifts bool) {
 // driftOn lets a body drift to a touch, the end of its time or of the stretch of
 // the habitat's motion, or its loss.
 func (f *Flier) driftOn(t *Track, now *moving) (ending, error) {
-	d := &drift{f: f.free.forces, step: fieldShare * f.quick.Pace, begin: t.Begin + now.t, origin: now.q}
+	forces := f.free.forces // the track keeps it
+	d := &drift{f: &forces, step: fieldShare * f.quick.Pace, begin: t.Begin + now.t, origin: now.q}
 	phase := Phase{Kind: Free, T0: now.t, local: true, drift: d}
 	st, err := integrator.NewStepper(integrator.DormandPrince54(), d,
 		integrator.Tol{Rel: f.m.Solver.RelTol, Abs: []float64{f.m.Solver.PosTol}, Groups: []int{3}})
 	if err != nil {
 		return ending{}, err
 	}
-	r := run{st: st, limit: f.longest(t.Release) - now.t, events: func([]geom.Patch) *ends { return f.driftEvents(d) }}
+	r := &run{st: st, limit: f.longest(t.Release) - now.t, events: func([]geom.Patch) *ends { return f.driftEvents(d) }}
 	r.smooth, d.last = f.smoothUntil(t, now)
 	d.first = math.Inf(-1)
 	if !f.m.Motion.Stretch(d.begin).Steady() {
 		d.first = d.begin
 	}
 	phase.base = frame.State{Pos: now.q, Vel: d.velocity(0, now.q)}
-	res, end, err := r.solve(t, &phase, f.zero[:3])
+	res, end, err := f.solve(t, &phase, r, f.zero[:3])
 	if err != nil {
 		return ending{}, err
 	}
@@ -197,9 +198,17 @@ func (f *Flier) driftOn(t *Track, now *moving) (ending, error) {
 	now.q = r3.Add(d.origin, vec(res.Y))
 	now.v, now.w = d.velocity(res.T, now.q), r3.Vec{}
 	f.arrival = f.inertial(t, now)
-	if !end.breaks {
-		f.settle(t, now, res)
+	switch {
+	case end.breaks:
+		return end, nil
+	case !res.Stopped:
+		f.end(t, now, TimeUp)
+	case res.Hits[0].Event == 1: // of a touch and a loss at one instant the touch counts
+		f.end(t, now, Lost)
+	default:
+		return end, nil
 	}
+	t.Last = f.arrival
 	return end, nil
 }
 

@@ -29,8 +29,15 @@ const (
 func (e *ends) add(ev integrator.Event, slop float64, m meaning, of ...geom.Patch) {
 	e.specs = append(e.specs, integrator.EventSpec{Event: ev, Slop: slop, Terminal: true})
 	e.means = append(e.means, m)
-	e.of = append(e.of, append(of, geom.Patch{})[0])
+	patch := geom.Patch{}
+	if len(of) > 0 {
+		patch = of[0]
+	}
+	e.of = append(e.of, patch)
 }
+
+// clear takes all out.
+func (e *ends) clear() { e.specs, e.means, e.of = e.specs[:0], e.means[:0], e.of[:0] }
 
 func (e *ends) ending(hits []integrator.Hit) ending {
 	var out ending

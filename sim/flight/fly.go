@@ -28,13 +28,24 @@ type Flier struct {
 	contact *integrator.Stepper // of sliding and rolling
 	touch   *apart
 	hull    *apart
+	both    *apart // touch and hull as one
 	watch   geom.Beside
-	body    model.Body  // in flight
-	wide    float64     // m, its radius
-	quick   Quick       // how fast it takes up the motion of the air
-	ended   bool        // its track is
-	arrival frame.State // inertial, at the end of its last phase, before any impact
-	zero    [6]float64
+	goes    ends         // of flights
+	near    []geom.Touch // space for what it touches
+
+	flightRun run
+	into      *Track  // that is flown
+	leaves    float64 // s since the release, when the flight under way began
+	rough     float64 // m/s^2, what an acceleration may be by rounding, in this flight
+	onStep    func(*integrator.Step, []integrator.Hit) error
+	tidy      func(y []float64) bool // of the phase
+	tidied    []float64              // the state corrected
+	body      model.Body             // in flight
+	wide      float64                // m, its radius
+	quick     Quick                  // how fast it takes up the motion of the air
+	ended     bool                   // its track is
+	arrival   frame.State            // inertial, at the end of its last phase, before any impact
+	zero      [6]float64
 }
 
 // NewFlier makes a flier for the releases of a model.
@@ -62,11 +73,11 @@ func (f *Flier) steppers() error {
 		return err
 	}
 	f.st = st
-	in := f.m.Interior
-	f.touch = &apart{free: f.free, step: never,
-		of:   func(p r3.Vec) float64 { return math.Min(in.DistBeside(p, &f.watch), math.MaxFloat32) - f.wide },
-		time: func(p, v r3.Vec, acc, limit float64) float64 { return in.TimeBeside(p, v, acc, limit, &f.watch) }}
-	f.hull = inside(f.free, f.m.Interior)
+	f.onStep = f.keepStep
+	f.flightRun.st = st
+	f.flightRun.events = f.flightEvents
+	f.flightRun.on = func(at float64) float64 { return at + f.spanFrom(f.into, f.leaves+at) }
+	f.touch, f.hull, f.both = &apart{f: f, touch: true}, &apart{f: f, hull: true}, &apart{f: f, touch: true, hull: true}
 	return nil
 }
 
@@ -78,23 +89,35 @@ const spinLength = 0.1
 // habitat. It fails with an [integrator.StepError] where the motion cannot be
 // computed.
 func (f *Flier) Fly(let *Let) (*Track, error) {
-	if err := f.steppers(); err != nil {
+	t := &Track{}
+	if err := f.FlyAgain(t, let); err != nil {
 		return nil, err
 	}
+	return t, nil
+}
+
+// FlyAgain is [Flier.Fly] with a track that is no longer wanted, the space of
+// which it takes for the new one: then a flight allocates nothing that grows
+// with its steps.
+func (f *Flier) FlyAgain(t *Track, let *Let) error {
+	if err := f.steppers(); err != nil {
+		return err
+	}
 	a := f.m.Motion.At(let.Begin)
-	t := &Track{Release: let.Release, Body: let.Body, Start: let.Place, Begin: let.Begin,
-		Local: let.Local, First: a.ToInertial(let.Local), motion: f.m.Motion}
+	*t = Track{Release: let.Release, Body: let.Body, Start: let.Place, Begin: let.Begin,
+		Local: let.Local, First: a.ToInertial(let.Local), motion: f.m.Motion,
+		Phases: t.Phases[:0], Impacts: t.Impacts[:0], steps: t.steps[:0], space: t.space}
 	if let.Release.Start.Kind == model.Still && let.Release.Carried == nil {
 		// At rest without the roundings of the way to the habitat and back.
 		t.First.Vel = r3.Vec{}
 	}
 	t.Start.Deck, t.Start.Height = f.beneath(let)
-	f.free.forces = NewForces(f.m, let.Body, f.setup.Law, f.setup.Fields...)
+	f.free.forces.set(f.m, let.Body, f.setup.Law, f.setup.Fields)
 	f.body, f.wide = let.Body, let.Body.Diameter/2
 	if f.quick = (Quick{}); !f.setup.Full {
-		f.quick = quickOf(f.m, f.free.forces, let.Body)
+		f.quick = quickOf(f.m, &f.free.forces, let.Body)
 	}
-	return t, f.follow(t)
+	return f.follow(t)
 }
 
 // beneath gives the deck beneath a release and the height above it.
@@ -110,33 +133,34 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 	if drifts {
 		return f.driftOn(t, now)
 	}
-	base := f.inertial(t, now)
-	if now.t == 0 {
-		base = t.First
+	base := t.First
+	if now.t > 0 {
+		base = f.inertial(t, now)
 	}
 	a := f.m.Motion.At(t.Begin + now.t)
 	spin := r3.Add(a.Out(now.w), a.Omega)
 	phase := Phase{Kind: Free, T0: now.t, base: base, spin: now.w}
 	f.free.base, f.free.begin = base, t.Begin+now.t
-	var opts []integrator.Option
+	r := &f.flightRun
+	r.limit, r.grazed, r.first, r.most = f.longest(t.Release)-now.t, grazed, f.firstStep(), 0
 	if len(grazed) > 0 {
-		opts = append(opts, integrator.MaxStep(f.longestStep(t.Begin+now.t)))
+		r.most = f.longestStep(t.Begin + now.t)
 	}
-	r := run{st: f.st, limit: f.longest(t.Release) - now.t, grazed: grazed, opts: opts,
-		on:     func(at float64) float64 { return at + f.spanFrom(t, now.t+at) },
-		events: func(grazed []geom.Patch) *ends { return f.flightEvents(base, grazed, noise(r3.Vec{}, now.v)) }}
 	r.smooth, f.free.last = f.smoothUntil(t, now)
 	if f.quick.Drifts() {
-		r.smooth, r.on = math.Min(r.smooth, settles), nil
+		start := *r // which ends where the drift begins
+		start.smooth, start.on = math.Min(r.smooth, settles), nil
+		r = &start
 	}
-	res, end, err := r.solve(t, &phase, f.zero[:])
+	f.leaves, f.rough = now.t, noise(r3.Vec{}, now.v)
+	res, end, err := f.solve(t, &phase, r, f.zero[:])
 	if err != nil {
 		return ending{}, err
 	}
 	now.t += res.T
 	phase.T1 = now.t
 	t.add(phase)
-	last := depart(base, res.T, res.Y)
+	last := depart(&base, res.T, res.Y)
 	a = f.m.Motion.At(t.Begin + now.t)
 	local := a.ToHabitat(last)
 	now.q, now.v, now.w = local.Pos, local.Vel, a.In(r3.Sub(spin, a.Omega))
@@ -147,14 +171,24 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 	return end, nil
 }
 
-// flightEvents lists what ends a flight: a touch, the loss of the body.
-func (f *Flier) flightEvents(base frame.State, grazed []geom.Patch, rough float64) *ends {
+// flightEvents lists what ends a flight: a touch, the loss of the body. One
+// that starts clear of everything has both in one event.
+func (f *Flier) flightEvents(grazed []geom.Patch) *ends {
+	base := f.free.base
+	least := slop(base.Pos) / 4
 	f.watch = geom.Beside{Wide: f.wide, Thin: thin, Slop: slop(base.Pos) / 2, Grazed: grazed}
-	f.touch.step, f.hull.step = never, never
-	e := &ends{}
-	e.add(f.touch, slop(base.Pos)/4, turns)
+	f.touch.ready()
+	e := &f.goes
+	e.clear()
+	if at, y := f.st.State(); len(grazed) == 0 && f.touch.Value(at, y) > least {
+		f.both.ready()
+		e.add(f.both, least, turns)
+		return e
+	}
+	f.hull.ready()
+	e.add(f.touch, least, turns)
 	e.add(f.hull, 0, turns)
-	e.graze(f, grazed, slop(base.Pos)/4, rough, f.free.local, func(at float64, y []float64) r3.Vec {
+	e.graze(f, grazed, least, f.rough, f.free.local, func(at float64, y []float64) r3.Vec {
 		// What grazes does not go through the end of a stretch of the motion.
 		time := math.Min(f.free.begin+at, f.free.last)
 		a := f.m.Motion.At(time)
@@ -169,7 +203,7 @@ func (f *Flier) settle(t *Track, now *moving, res integrator.Result) {
 	switch {
 	case !res.Stopped:
 		f.end(t, now, TimeUp)
-	case res.Hits[0].Event == 1:
+	case res.Hits[0].Event == 1 || len(f.goes.specs) == 1 && f.touch.Value(res.T, res.Y) > slop(f.free.base.Pos)/4:
 		f.end(t, now, Lost)
 	default:
 		return

@@ -26,11 +26,14 @@ const (
 // pressed on what is left, and slides, rolls or rests there, or it flies.
 func (f *Flier) follow(t *Track) error {
 	now := f.start(t)
-	known := patchesOf(f.touches(&now))
+	touches := f.touches(&now)
+	known := patchesOf(touches)
 	var last ending
 	since := now.t
 	for k := range mostPhases {
-		touches := f.touches(&now)
+		if k > 0 || len(touches) > 0 {
+			touches = f.touches(&now)
+		}
 		if len(touches) > 0 && f.quick.Drifts() {
 			f.sticks(t, &now, &touches[0])
 			return nil

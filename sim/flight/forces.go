@@ -20,6 +20,9 @@ type Field interface {
 // turns with the habitat like a solid, and ambient fields.
 type Forces struct {
 	motion  frame.Motion
+	steady  bool    // the spin is, and is spin (rad/s) about the axis
+	spin    float64 // so that it need not be asked for at each derivative
+	plain   bool    // drag in a steady spin is all there is
 	drag    air.Drag
 	perMass float64 // 1/kg
 	fields  []Field
@@ -29,9 +32,19 @@ type Forces struct {
 // NewForces gives the forces on a body. A nil law is the program's own for
 // spheres, or the body's own drag coefficient.
 func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forces {
-	f := &Forces{motion: m.Motion, fields: fields}
+	f := &Forces{}
+	f.set(m, b, law, fields)
+	return f
+}
+
+// set makes f the forces on a body.
+func (f *Forces) set(m *model.Model, b model.Body, law air.Law, fields []Field) {
+	*f = Forces{motion: m.Motion, fields: fields}
+	if w, ok := m.Motion.(frame.Steady); ok {
+		f.steady, f.spin = true, w.Spin
+	}
 	if b.Mass <= 0 {
-		return f
+		return
 	}
 	if law == nil && b.DragCoefficient > 0 {
 		law = air.Constant(b.DragCoefficient)
@@ -44,7 +57,7 @@ func NewForces(m *model.Model, b model.Body, law air.Law, fields ...Field) *Forc
 	f.drag = air.NewDrag(m.Air, law, math.Sqrt(4*area/math.Pi), area)
 	f.perMass = 1 / b.Mass
 	f.around = newAround(m, b, f)
-	return f
+	f.plain = f.steady && len(fields) == 0 && !f.drag.None() && f.around == nil
 }
 
 // Drag gives the acceleration by drag, m/s^2 in inertial components, at an
@@ -58,9 +71,20 @@ func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
 		h := f.around.at(f, t, s.Pos)
 		return h.drag(f, s.Vel)
 	}
-	wind := r3.Cross(f.motion.Omega(t), s.Pos)
-	rel := r3.Sub(s.Vel, wind)
+	rel := f.relative(t, s)
 	return r3.Scale(-f.perMass*f.drag.PerVelocity2(r3.Norm2(rel)), rel)
+}
+
+// relative is the velocity relative to the air, m/s.
+func (f *Forces) relative(t float64, s frame.State) r3.Vec {
+	if f.around != nil {
+		h := f.around.at(f, t, s.Pos)
+		return r3.Sub(s.Vel, h.wind)
+	}
+	if f.steady {
+		return r3.Vec{X: s.Vel.X + f.spin*s.Pos.Y, Y: s.Vel.Y - f.spin*s.Pos.X, Z: s.Vel.Z}
+	}
+	return r3.Sub(s.Vel, r3.Cross(f.motion.Omega(t), s.Pos))
 }
 
 // Accel gives the whole acceleration, m/s^2 in inertial components.

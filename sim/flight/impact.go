@@ -6,6 +6,7 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 	"offplumb/sim/frame"
 	"offplumb/sim/geom"
+	"offplumb/sim/model"
 )
 
 // leastRise is the height, in m, that a rebound must reach: one that would
@@ -165,6 +166,11 @@ func (f *Flier) presses(t float64, now moving, touches []geom.Touch, c geom.Touc
 // meet lets the body rebound and records the impacts, each surface once.
 func (f *Flier) meet(t *Track, now *moving, touches []geom.Touch, known []geom.Patch) {
 	before := *now
+	if t.Release.Until.Kind == model.UntilLanding && len(touches) == 1 && len(known) == 0 && deepest(now.v, touches) == 0 {
+		// It stops as it arrives: what becomes of its motion is of no interest.
+		f.record(t, *now, &touches[0])
+		return
+	}
 	for _, hit := range f.collide(t.Begin+now.t, now, touches) {
 		c := &touches[hit.i]
 		// A slide into its own surface is a matter of the integration's error.

@@ -28,9 +28,9 @@ type run struct {
 	on     func(t float64) float64 // when the next one ends, for what goes on through it; nil: it ends the phase
 	grazed []geom.Patch
 	events func(grazed []geom.Patch) *ends
-	opts   []integrator.Option
+	first  float64                // s, the first step; 0: automatic
+	most   float64                // s, the longest step; 0: no limit
 	tidy   func(y []float64) bool // corrects a state after a step, and tells whether it did
-	y      []float64              // the state corrected
 }
 
 // errTidied stops the integration after a step whose end was corrected.
@@ -38,19 +38,22 @@ var errTidied = errors.New("flight: corrected")
 
 // solve integrates from the state y to the end of the phase. It goes on where
 // the body has only left something that it grazed.
-func (r *run) solve(t *Track, p *Phase, y []float64) (integrator.Result, ending, error) {
-	at, next := 0.0, 0.0
+func (f *Flier) solve(t *Track, p *Phase, r *run, y []float64) (integrator.Result, ending, error) {
+	from := len(t.steps)
+	f.into, f.tidy = t, r.tidy
+	at, next := 0.0, r.first
 	for {
-		r.st.Reset(at, y, append(r.opts, integrator.FirstStep(next))...)
+		r.st.Reset(at, y, integrator.FirstStep(next), integrator.MaxStep(r.most))
 		e := r.events(r.grazed)
-		res, err := r.reach(e, p)
+		res, err := f.reach(r, e)
 		if err != nil && err != errTidied {
 			return res, ending{}, err
 		}
 		t.Work.add(res.Stats)
+		p.steps = t.steps[from:len(t.steps):len(t.steps)]
 		next = r.st.NextStep()
 		if err == errTidied && t.Work.Steps <= mostSteps {
-			at, y = res.T, r.y
+			at, y = res.T, f.tidied
 			continue
 		}
 		end := e.ending(res.Hits)
@@ -66,10 +69,9 @@ func (r *run) solve(t *Track, p *Phase, y []float64) (integrator.Result, ending,
 // reach integrates up to an event, the end of the time, or the end of the
 // stretch of the habitat's motion. What goes through such an end has a step end
 // there: forces in flight change without a jump, but with a kink.
-func (r *run) reach(e *ends, p *Phase) (integrator.Result, error) {
-	keep := r.keep(p)
+func (f *Flier) reach(r *run, e *ends) (integrator.Result, error) {
 	for {
-		res, err := integrator.Solve(r.st, math.Min(r.limit, r.smooth), e.specs, keep)
+		res, err := integrator.Solve(r.st, math.Min(r.limit, r.smooth), e.specs, f.onStep)
 		if err != nil || res.Stopped || r.limit <= r.smooth || r.on == nil || len(r.grazed) > 0 {
 			return res, err
 		}
@@ -94,19 +96,42 @@ func (t *Track) add(p Phase) {
 	}
 }
 
-// keep stores the steps of a phase. Where a step's end was corrected, the
-// integration stops, to go on from there.
-func (r *run) keep(p *Phase) func(*integrator.Step, []integrator.Hit) error {
-	return func(s *integrator.Step, hits []integrator.Hit) error {
-		if s.T1 > s.T0 {
-			p.steps = append(p.steps, s.Clone())
-		}
-		if len(hits) > 0 || r.tidy == nil {
-			return nil
-		}
-		if r.y = append(r.y[:0], s.Y1...); r.tidy(r.y) {
-			return errTidied
-		}
+// keepStep stores a step of the phase under way. Where its end was corrected,
+// the integration stops, to go on from there.
+func (f *Flier) keepStep(s *integrator.Step, hits []integrator.Hit) error {
+	if s.T1 > s.T0 {
+		f.into.keep(s)
+	}
+	if len(hits) > 0 || f.tidy == nil {
 		return nil
 	}
+	if f.tidied = append(f.tidied[:0], s.Y1...); f.tidy(f.tidied) {
+		return errTidied
+	}
+	return nil
 }
+
+// keep adds a copy of a step. A track that is flown again has the space of the
+// last time.
+func (t *Track) keep(s *integrator.Step) {
+	n := len(t.steps)
+	if n < cap(t.steps) {
+		t.steps = t.steps[:n+1]
+	} else {
+		t.steps = append(t.steps, integrator.Segment{})
+	}
+	if g := &t.steps[n]; g.Dim() == 0 {
+		size := (1 + denseDegree) * len(s.Y0)
+		if len(t.space) < size {
+			t.space = make([]float64, size*max(fewSteps, n))
+		}
+		g.Use(t.space[:size:size])
+		t.space = t.space[size:]
+	}
+	s.CopyTo(&t.steps[n])
+}
+
+const (
+	denseDegree = 4 // of the interpolants of steps
+	fewSteps    = 8 // for which space is made at first
+)

@@ -4,7 +4,6 @@ import (
 	"math"
 
 	"gonum.org/v1/gonum/spatial/r3"
-	"offplumb/integrator"
 	"offplumb/sim/frame"
 	"offplumb/sim/geom"
 )
@@ -21,10 +20,10 @@ func (f *Flier) slideOn(t *Track, now *moving, st stance, last ending) (ending, 
 		Surface: f.m.Interior.Surface(st.on[0].Surface).Name}
 	y := []float64{0, 0, 0, now.v.X, now.v.Y, now.v.Z, now.w.X, now.w.Y, now.w.Z}
 	r := run{st: f.contact, limit: f.longest(t.Release) - now.t, grazed: s.grazed, tidy: s.tidy,
-		opts:   []integrator.Option{integrator.MaxStep(f.longestStep(s.begin))},
+		most:   f.longestStep(s.begin),
 		events: func(grazed []geom.Patch) *ends { return f.slideEvents(s, now, grazed) }}
 	r.smooth, s.last = f.smoothUntil(t, now)
-	res, end, err := r.solve(t, &phase, y)
+	res, end, err := f.solve(t, &phase, &r, y)
 	if err != nil {
 		return ending{}, err
 	}

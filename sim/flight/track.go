@@ -85,6 +85,8 @@ type Track struct {
 	Work    Work
 
 	motion frame.Motion
+	steps  []integrator.Segment // of all phases
+	space  []float64            // for their coefficients
 }
 
 // Landing is the first touch, or nil.
@@ -129,7 +131,7 @@ func (p *Phase) at(time float64) frame.State {
 	if p.local {
 		return frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}
 	}
-	return depart(p.base, u, y[:])
+	return depart(&p.base, u, y[:])
 }
 
 // PhaseAt gives the index of the phase under way, the earlier one at a joint.
@@ -160,4 +162,25 @@ func (p *Phase) starts(to []float64) []float64 {
 		to = append(to, p.T0+p.steps[i].T0)
 	}
 	return to
+}
+
+// Steps gives the number of integration steps of a phase.
+func (p *Phase) Steps() int { return len(p.steps) }
+
+// Step gives the start and the end of an integration step, s since the release.
+func (p *Phase) Step(k int) (t0, t1 float64) {
+	s := &p.steps[k]
+	return p.T0 + s.T0, p.T0 + s.T1
+}
+
+// Seen gives the state in the habitat at a time (s since the release) within
+// step k of a phase.
+func (t *Track) Seen(p *Phase, k int, time float64) frame.State {
+	var y [dims]float64
+	u := time - p.T0
+	p.steps[k].At(u, y[:p.steps[k].Dim()])
+	if p.local {
+		return frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}
+	}
+	return frame.Seen(t.motion, t.Begin+time, depart(&p.base, u, y[:]))
 }

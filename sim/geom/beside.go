@@ -15,6 +15,9 @@ type Beside struct {
 	// place of a group that it slides on counts from a gap of Slop on: the
 	// sphere, kept on the nearest place of all, would never reach into it.
 	Slop float64
+	// Back says that time is counted backward, from a contact: as the sphere
+	// parts from it then, its rate counts from a gap of nothing on.
+	Back bool
 	// On are the patches that the sphere slides on. Neither they count nor what
 	// goes on from them without an edge.
 	On []Patch
@@ -94,6 +97,9 @@ func (c *counter) learn() {
 //
 // Law: but for jumps, it changes by no more than p does.
 func (in *Interior) DistBeside(p r3.Vec, b *Beside) float64 {
+	if b.all() {
+		return in.Dist(p)
+	}
 	best := math.Inf(1)
 	c := b.counter(in, p)
 	in.tree.each(in.pieces, p, &best, func(i int, d float64) float64 {
@@ -116,7 +122,10 @@ func (in *Interior) DistBeside(p r3.Vec, b *Beside) float64 {
 // that its second derivative in time is at least -acc, and that to one of
 // hollow curvature k at least -acc - k v^2.
 func (in *Interior) TimeBeside(p, v r3.Vec, acc, limit float64, b *Beside) float64 {
-	speed := r3.Norm(v)
+	speed := norm(v)
+	if b.all() {
+		return in.timeTo(p, v, speed, acc, limit, b)
+	}
 	reach := func(t float64) float64 { return b.Wide + b.Slop + speed*t + acc*t*t/2 }
 	c := b.counter(in, p)
 	best, bound := limit, reach(limit)
@@ -129,12 +138,47 @@ func (in *Interior) TimeBeside(p, v r3.Vec, acc, limit float64, b *Beside) float
 			return bound
 		}
 		t := within(gap, speed, acc)
-		if s, ok := in.pieces[i].Solid.(smooth); ok {
-			t = math.Max(t, c.aimed(s, gap, v, acc, best))
-		}
+		t = math.Max(t, b.aimed(in.pieces[i].Solid, p, v, gap, speed, acc, best))
 		best = math.Min(best, t)
 		return reach(best)
 	})
+	return best
+}
+
+// all says whether everything counts.
+func (b *Beside) all() bool { return len(b.On) == 0 && len(b.Grazed) == 0 }
+
+// timeTo is TimeBeside where everything counts.
+func (in *Interior) timeTo(p, v r3.Vec, speed, acc, limit float64, b *Beside) float64 {
+	t := &in.tree
+	if len(t.nodes) == 0 {
+		return limit
+	}
+	best, near := limit, b.Wide+speed*limit+acc*limit*limit/2
+	var stack [treeDepth]int
+	top := 1
+	for top > 0 {
+		top--
+		n := &t.nodes[stack[top]]
+		if n.left != 0 {
+			stack[top], stack[top+1] = t.sorted(n, p)
+			top += 2
+			continue
+		}
+		if len(t.nodes) > 1 && n.box.Dist(p) > near {
+			continue
+		}
+		for _, k := range t.order[n.first:n.last] {
+			s := in.pieces[k].Solid
+			gap := max(s.Dist(p)-b.Wide, b.Thin)
+			sure := within(gap, speed, acc)
+			if sure >= best {
+				continue
+			}
+			best = min(best, max(sure, b.aimed(s, p, v, gap, speed, acc, best)))
+			near = b.Wide + speed*best + acc*best*best/2
+		}
+	}
 	return best
 }
 
@@ -146,56 +190,61 @@ func within(d, speed, acc float64) float64 { return 2 * d / (speed + math.Sqrt(s
 type smooth interface {
 	Solid
 	// bends gives a distance (m) around p within which the solid's distance is
-	// smooth with no principal curvature below -hollow (1/m).
+	// smooth, and, less than that, how far its middle line of curvature is off:
+	// at the distance x from p no principal curvature is below -1/(hollow - x).
+	// hollow is infinite for a convex solid.
 	bends(p r3.Vec) (around, hollow float64)
 }
 
 // aimed is the time that a gap to a smooth solid surely takes to close, as far
-// as that can be told up to most.
-func (c *counter) aimed(s smooth, gap float64, v r3.Vec, acc, most float64) float64 {
-	speed := r3.Norm(v)
-	around, hollow := s.bends(c.p)
+// as that can be told up to most; 0 for a solid that is not.
+func (b *Beside) aimed(solid Solid, p, v r3.Vec, gap, speed, acc, most float64) float64 {
+	s, ok := solid.(smooth)
+	if !ok {
+		return 0
+	}
+	around, hollow := s.bends(p)
 	if around == 0 {
 		return 0
 	}
-	if !math.IsInf(around, 1) {
-		most = math.Min(most, within(around, speed, acc))
-	}
-	if hollow > 0 && acc > 0 {
-		most = math.Min(most, speed/acc) // the speed doubles at most
-		acc += 4 * speed * speed * hollow
-	} else {
-		acc += speed * speed * hollow
-	}
-	_, n, _ := s.Nearest(c.p)
+	_, n, _ := s.Nearest(p)
 	rate := r3.Dot(v, n)
-	if gap < 2*c.Thin {
+	if gap < 2*b.Thin && !b.Back {
 		rate = -math.Abs(rate) // not to pass over the moment when it has opened
 	}
-	if rate > 0 {
-		if acc == 0 {
-			return most
-		}
-		return math.Min(most, (rate+math.Sqrt(rate*rate+2*acc*gap))/acc)
+	if math.IsInf(hollow, 1) {
+		return closes(gap, rate, acc, most)
 	}
-	return math.Min(most, within(gap, -rate, acc))
+	return hollowCloses(gap, rate, speed, acc, around, hollow, most)
+}
+
+// closes gives how long, at most most, a gap with a rate takes to close under
+// the acceleration -acc.
+func closes(gap, rate, acc, most float64) float64 {
+	if rate <= 0 && gap <= math.MaxFloat64 {
+		return min(most, within(gap, -rate, acc))
+	}
+	if acc == 0 || gap > math.MaxFloat64 {
+		return most
+	}
+	return min(most, (rate+math.Sqrt(rate*rate+2*acc*gap))/acc)
 }
 
 // bends implements smooth: a block is convex.
-func (b *Block) bends(r3.Vec) (around, hollow float64) { return math.Inf(1), 0 }
+func (b *Block) bends(r3.Vec) (around, hollow float64) { return math.Inf(1), math.Inf(1) }
 
 // bends implements smooth. The inner face of a sector is hollow with the
 // radius of the place; beyond the axis, and beyond the half plane opposite to
 // the sector's middle, another part of it may be as near.
 func (s *Sector) bends(p r3.Vec) (around, hollow float64) {
 	if s.Whole && s.R0 == 0 {
-		return math.Inf(1), 0
+		return math.Inf(1), math.Inf(1)
 	}
-	r := math.Hypot(p.X, p.Y)
+	r := fromAxis(p)
 	around = r / 2
 	if !s.Whole {
 		off := math.Abs(math.Remainder(math.Atan2(p.Y, p.X)-(s.Phi0+s.Phi1)/2, 2*math.Pi))
-		around = math.Min(around, r*math.Sin(math.Min(math.Pi/2, math.Pi-off)))
+		around = min(around, r*math.Sin(min(math.Pi/2, math.Pi-off)))
 	}
-	return around, 2 / r
+	return around, r
 }

@@ -177,6 +177,9 @@ func (b *Builder) Add(s Solid, faces ...SurfaceID) {
 	b.in.pieces = append(b.in.pieces, Piece{Solid: s, Faces: faces, Group: b.group()})
 }
 
+// Len gives the number of solids added so far: the index of the next piece.
+func (b *Builder) Len() int { return len(b.in.pieces) }
+
 // AddSpace adds a room or passage.
 func (b *Builder) AddSpace(s Space) { b.in.spaces = append(b.in.spaces, s) }
 

@@ -54,10 +54,10 @@ type cylinderSpace struct {
 
 // Beyond implements [Space].
 func (c *cylinderSpace) Beyond(p r3.Vec) float64 {
-	r := math.Hypot(p.X, p.Y)
-	out := math.Max(r-c.outer, math.Max(c.z0-c.wall-p.Z, p.Z-c.z1-c.wall))
+	r := fromAxis(p)
+	out := max(r-c.outer, c.z0-c.wall-p.Z, p.Z-c.z1-c.wall)
 	if c.r0 > 0 {
-		out = math.Max(out, c.r0-c.wall-r)
+		out = max(out, c.r0-c.wall-r)
 	}
 	return out
 }

@@ -29,7 +29,10 @@ type Sector struct {
 }
 
 // clamp gives the number nearest to x between lo and hi.
-func clamp(x, lo, hi float64) float64 { return math.Min(math.Max(x, lo), hi) }
+func clamp(x, lo, hi float64) float64 { return min(max(x, lo), hi) }
+
+// fromAxis gives the distance (m) of a point from the axis.
+func fromAxis(p r3.Vec) float64 { return math.Sqrt(p.X*p.X + p.Y*p.Y) }
 
 // beside gives how far, in rad, the angle phi lies outside the sector: spin
 // positive beyond Phi1, negative before Phi0, the nearer of the two; 0 within.
@@ -52,24 +55,30 @@ func (s *Sector) beside(phi float64) float64 {
 // point has its angle; for one outside it lies on the nearer end face, since
 // at any r and z the distance grows with the angle between.
 func (s *Sector) Dist(p r3.Vec) float64 {
-	r := math.Hypot(p.X, p.Y)
-	dz := math.Max(s.Z0-p.Z, p.Z-s.Z1)
-	off := s.beside(math.Atan2(p.Y, p.X))
+	r := fromAxis(p)
+	dz := max(s.Z0-p.Z, p.Z-s.Z1)
+	off := 0.0
+	if !s.Whole {
+		off = s.beside(math.Atan2(p.Y, p.X))
+	}
 	if off == 0 {
-		dr := math.Max(s.R0-r, r-s.R1)
+		dr := max(s.R0-r, r-s.R1)
 		if s.R0 == 0 {
 			dr = r - s.R1
 		}
 		if dr <= 0 && dz <= 0 {
-			return math.Max(math.Max(dr, dz), -s.depth(p, r))
+			return max(dr, dz, -s.depth(p, r))
 		}
-		dr, dz = math.Max(0, dr), math.Max(0, dz)
+		if dz <= 0 {
+			return dr
+		}
+		dr = max(0, dr)
 		return math.Sqrt(dr*dr + dz*dz)
 	}
 	sin, cos := math.Sincos(off)
 	x, y := r*cos, r*sin
 	dx := x - clamp(x, s.R0, s.R1)
-	dz = math.Max(0, dz)
+	dz = max(0, dz)
 	return math.Sqrt(dx*dx + y*y + dz*dz)
 }
 
@@ -84,9 +93,15 @@ func (s *Sector) depth(p r3.Vec, r float64) float64 {
 
 // Nearest implements [Solid].
 func (s *Sector) Nearest(p r3.Vec) (point, normal r3.Vec, face int) {
-	r, phi := math.Hypot(p.X, p.Y), math.Atan2(p.Y, p.X)
-	off := s.beside(phi)
+	r := fromAxis(p)
 	radial, axial := r >= s.R0 && r <= s.R1, p.Z >= s.Z0 && p.Z <= s.Z1
+	if s.Whole && axial && r < s.R0 && r > 0 {
+		// The inner face of a whole ring: no angle need be known.
+		n := r3.Vec{X: -p.X / r, Y: -p.Y / r}
+		return r3.Vec{X: -s.R0 * n.X, Y: -s.R0 * n.Y, Z: p.Z}, n, SectorInner
+	}
+	phi := math.Atan2(p.Y, p.X)
+	off := s.beside(phi)
 	if off == 0 && radial && axial {
 		return s.within(p, r, phi)
 	}

@@ -29,9 +29,9 @@ type Box struct{ Min, Max r3.Vec }
 // Dist gives a lower bound on the distance (m) from p to what the box holds: 0
 // within.
 func (b *Box) Dist(p r3.Vec) float64 {
-	dx := math.Max(0, math.Max(b.Min.X-p.X, p.X-b.Max.X))
-	dy := math.Max(0, math.Max(b.Min.Y-p.Y, p.Y-b.Max.Y))
-	dz := math.Max(0, math.Max(b.Min.Z-p.Z, p.Z-b.Max.Z))
+	dx := max(0, b.Min.X-p.X, p.X-b.Max.X)
+	dy := max(0, b.Min.Y-p.Y, p.Y-b.Max.Y)
+	dz := max(0, b.Min.Z-p.Z, p.Z-b.Max.Z)
 	return math.Sqrt(dx*dx + dy*dy + dz*dz)
 }
 
@@ -54,3 +54,6 @@ func nearestOf(p, q, face r3.Vec, flat bool) (point, normal r3.Vec) {
 	}
 	return q, r3.Scale(1/n, d)
 }
+
+// norm is the length of a vector whose square is in range.
+func norm(v r3.Vec) float64 { return math.Sqrt(v.X*v.X + v.Y*v.Y + v.Z*v.Z) }

@@ -108,7 +108,7 @@ func (t *tree) nearest(pieces []Piece, p r3.Vec) (int, float64) {
 	for top > 0 {
 		top--
 		n := &t.nodes[stack[top]]
-		if best >= 0 && n.box.Dist(p) > best || best < 0 && n.box.Dist(p) > 0 {
+		if len(t.nodes) > 1 && n.box.Dist(p) > max(best, 0) {
 			continue
 		}
 		if n.left == 0 {
@@ -119,14 +119,19 @@ func (t *tree) nearest(pieces []Piece, p r3.Vec) (int, float64) {
 			}
 			continue
 		}
-		near, far := n.left, n.left+1
-		if t.nodes[far].box.Dist(p) < t.nodes[near].box.Dist(p) {
-			near, far = far, near
-		}
-		stack[top], stack[top+1] = far, near
+		stack[top], stack[top+1] = t.sorted(n, p)
 		top += 2
 	}
 	return at, best
+}
+
+// sorted gives the children of an inner node, that nearer to p last.
+func (t *tree) sorted(n *node, p r3.Vec) (far, near int) {
+	near, far = n.left, n.left+1
+	if t.nodes[far].box.Dist(p) < t.nodes[near].box.Dist(p) {
+		return near, far
+	}
+	return far, near
 }
 
 // within calls f with each piece whose distance from p is at most reach, in
@@ -160,11 +165,7 @@ func (t *tree) each(pieces []Piece, p r3.Vec, bound *float64, f func(i int, d fl
 			}
 			continue
 		}
-		near, far := n.left, n.left+1
-		if t.nodes[far].box.Dist(p) < t.nodes[near].box.Dist(p) {
-			near, far = far, near
-		}
-		stack[top], stack[top+1] = far, near
+		stack[top], stack[top+1] = t.sorted(n, p)
 		top += 2
 	}
 }

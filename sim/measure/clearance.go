@@ -24,7 +24,7 @@ type Clearance struct {
 // is looked at mostLooks times, and at least clearParts times an integration
 // step.
 const (
-	clearWay   = 0.2
+	clearWay   = 0.05
 	clearParts = 6
 	mostLooks  = 20_000
 )
@@ -97,23 +97,82 @@ func quickest(m *model.Model, t *flight.Track, time, omega float64) float64 {
 // closest finds the least gap to each surface of a group. The track is at some
 // places (m, habitat components) at some times.
 func closest(m *model.Model, t *flight.Track, g geom.Group, times []float64, at []r3.Vec, best map[geom.SurfaceID]Clearance) {
-	gap := func(time float64) geom.Contact { return m.Interior.ContactIn(localAt(m, t, time).Pos, g) }
-	least := map[geom.SurfaceID]int{}
-	gaps := make([]float64, len(times))
+	a := approach{gap: func(time float64) geom.Contact { return m.Interior.ContactIn(localAt(m, t, time).Pos, g) },
+		times: times, at: at, near: make([]geom.Contact, len(times)), least: map[geom.SurfaceID]Clearance{}}
 	for i := range times {
-		c := m.Interior.ContactIn(at[i], g)
-		gaps[i] = c.Gap
-		if old, ok := least[c.Surface]; !ok || c.Gap < gaps[old] {
-			least[c.Surface] = i
+		a.near[i] = m.Interior.ContactIn(at[i], g)
+		a.keep(a.near[i].Surface, a.near[i].Gap, times[i])
+	}
+	for i := range times {
+		a.within(i)
+		if i > 0 && a.near[i-1].Surface != a.near[i].Surface {
+			a.between(i-1, i)
+			a.between(i, i-1)
 		}
 	}
-	for id, i := range least {
-		c := Clearance{Gap: gaps[i], Time: times[i]}
-		refine(gap, id, times[max(0, i-1)], times[min(len(times)-1, i+1)], &c)
+	for id, c := range a.least {
 		c.Gap = math.Max(0, c.Gap-t.Body.Diameter/2)
 		if old, ok := best[id]; !ok || c.Gap < old.Gap {
 			best[id] = c
 		}
+	}
+}
+
+// approach is the search for the closest approaches to the surfaces of a group.
+type approach struct {
+	gap   func(time float64) geom.Contact
+	times []float64
+	at    []r3.Vec
+	near  []geom.Contact // at the times
+	least map[geom.SurfaceID]Clearance
+}
+
+func (a *approach) keep(id geom.SurfaceID, gap, time float64) {
+	if old, ok := a.least[id]; !ok || gap < old.Gap {
+		a.least[id] = Clearance{Gap: gap, Time: time}
+	}
+}
+
+// promises says whether the gap to the surface that is near at a time may be
+// less than the least known, between that time and another one: it changes by
+// no more than the way.
+func (a *approach) promises(i, k int) bool {
+	c := &a.near[i]
+	return c.Gap-r3.Norm(r3.Sub(a.at[k], a.at[i])) < a.least[c.Surface].Gap
+}
+
+// within refines an approach that is closest at the i-th time.
+func (a *approach) within(i int) {
+	lo, hi := max(0, i-1), min(len(a.times)-1, i+1)
+	c := &a.near[i]
+	if a.near[lo].Gap < c.Gap || a.near[hi].Gap < c.Gap || !a.promises(i, lo) && !a.promises(i, hi) {
+		return
+	}
+	best := a.least[c.Surface]
+	refine(a.gap, c.Surface, a.times[lo], a.times[hi], &best)
+	a.least[c.Surface] = best
+}
+
+// between finds where the surface that is near at the i-th time ceases to be,
+// before the k-th: the gap to it is least there, if it falls toward it.
+func (a *approach) between(i, k int) {
+	id := a.near[i].Surface
+	if !a.promises(i, k) {
+		return
+	}
+	in, out := a.times[i], a.times[k]
+	for range clearLooks {
+		mid := in + (out-in)/2
+		if mid == in || mid == out {
+			return
+		}
+		c := a.gap(mid)
+		if c.Surface != id {
+			out = mid
+			continue
+		}
+		in = mid
+		a.keep(id, c.Gap, mid)
 	}
 }
 

@@ -57,22 +57,62 @@ func endSurface(t *flight.Track) string {
 	return ""
 }
 
-// wayNodes is the order of the quadrature of a way over one integration step,
-// along which the speed is smooth: exact to rounding for what steps of a
-// fifth-order method follow.
-const wayNodes = 8
+const (
+	// wayNodes is the order of the quadrature of a way. It is exact to degree 9.
+	wayNodes = 5
+	// waySpread is the ratio of the greatest to the least speed up to which a
+	// stretch is taken at once: the next term of the series of a speed that
+	// changes by so much is below 1e-9 of it. Else it is halved.
+	waySpread = 1.3
+	// wayHalves is how often, at most: of a body that turns back, some 1e-5 of
+	// the way of one integration step is left to chance.
+	wayHalves = 8
+)
+
+// wayAt and wayWeight are the nodes on [0, 1] and the weights of the rule of
+// Gauss and Legendre.
+var wayAt, wayWeight = func() (at, weight [wayNodes]float64) {
+	quad.Legendre{}.FixedLocations(at[:], weight[:], 0, 1)
+	return at, weight
+}()
 
 // wayOf integrates the speed relative to the habitat over a phase.
 func wayOf(m *model.Model, t *flight.Track, p *flight.Phase) float64 {
-	knots := p.Knots()
 	sum := 0.0
-	for i := 1; i < len(knots); i++ {
-		sum += quad.Fixed(func(time float64) float64 {
-			a := m.Motion.At(t.Begin + time)
-			return r3.Norm(a.ToHabitat(t.At(time)).Vel)
-		}, knots[i-1], knots[i], wayNodes, nil, 0)
+	for k := range p.Steps() {
+		t0, t1 := p.Step(k)
+		n := wayParts(m, t.Begin+t0, t1-t0)
+		for i := range n {
+			from, to := t0+(t1-t0)*float64(i)/float64(n), t0+(t1-t0)*float64(i+1)/float64(n)
+			sum += wayIn(t, p, k, from, to, wayHalves)
+		}
 	}
 	return sum
+}
+
+// mostWayParts bounds the stretches of one step.
+const mostWayParts = 10_000
+
+// wayParts is in how many stretches a step from a habitat time on is taken at
+// least, lest the habitat turns to and fro unseen between two nodes.
+func wayParts(m *model.Model, from, over float64) int {
+	s := m.Motion.Stretch(from + over/2) // the middle: no rounding counts
+	return 1 + int(math.Min(over/s.Pace, mostWayParts))
+}
+
+// wayIn is the way from t0 to t1 (s) in an integration step.
+func wayIn(t *flight.Track, p *flight.Phase, k int, t0, t1 float64, halves int) float64 {
+	part, least, most := 0.0, math.Inf(1), 0.0
+	for i, x := range wayAt {
+		v := math.Sqrt(r3.Norm2(t.Seen(p, k, t0+(t1-t0)*x).Vel))
+		part += wayWeight[i] * v
+		least, most = min(least, v), max(most, v)
+	}
+	if most <= waySpread*least || halves == 0 {
+		return (t1 - t0) * part
+	}
+	mid := t0 + (t1-t0)/2
+	return wayIn(t, p, k, t0, mid, halves-1) + wayIn(t, p, k, mid, t1, halves-1)
 }
 
 // localAt gives the state of a track in habitat components.

@@ -66,6 +66,9 @@ func (w *Winding) hop(time float64) {
 // GoneRound gives the angle, rad, that a body has gone round in the habitat
 // frame from its release to a time (s since the release).
 func GoneRound(m *model.Model, t *flight.Track, time float64) float64 {
+	if angle, ok := nearby(m, t, time); ok {
+		return angle
+	}
 	w := NewWinding(m, t)
 	knots := t.Knots()
 	for i := 1; i < len(knots); i++ {
@@ -75,4 +78,42 @@ func GoneRound(m *model.Model, t *flight.Track, time float64) float64 {
 		}
 	}
 	return w.sum
+}
+
+// roomy is the factor by which the way of a step may exceed that at the greater
+// speed of its ends: a step is short enough for the speed to change little.
+const roomy = 2
+
+// nearby gives the angle that a body has gone round, where it has surely not
+// come farther than half its distance from the axis: then there is but one. What
+// its speed is within a step is known of a steady spin alone.
+func nearby(m *model.Model, t *flight.Track, time float64) (float64, bool) {
+	if !m.Motion.Stretch(t.Begin).Steady() {
+		return 0, false
+	}
+	from := t.Local.Pos
+	left, speed := math.Hypot(from.X, from.Y)/2, r3.Norm(t.Local.Vel)
+	at := from
+	for i := range t.Phases {
+		p := &t.Phases[i]
+		for k := range p.Steps() {
+			t0, t1 := p.Step(k)
+			if t0 >= time {
+				break
+			}
+			s := t.Seen(p, k, math.Min(t1, time))
+			now := math.Sqrt(r3.Norm2(s.Vel))
+			left -= roomy * math.Max(speed, now) * (t1 - t0)
+			if left < 0 {
+				return 0, false
+			}
+			at, speed = s.Pos, now
+		}
+		speed = math.Inf(1) // an impact changes it: not less than at its start
+		if k := i + 1; k < len(t.Phases) && t.Phases[k].Steps() > 0 {
+			t0, _ := t.Phases[k].Step(0)
+			speed = math.Sqrt(r3.Norm2(t.Seen(&t.Phases[k], 0, t0).Vel))
+		}
+	}
+	return math.Atan2(from.X*at.Y-from.Y*at.X, from.X*at.X+from.Y*at.Y), true
 }

@@ -20,11 +20,14 @@ func (c *checker) interior() {
 	for i := range rooms[1:] {
 		rooms[1+i].add(b, shafts)
 	}
-	for _, s := range shafts {
+	walls := make([]wallRange, len(shafts))
+	for i, s := range shafts {
+		walls[i].from = b.Len()
 		b.AddPassage(s)
+		walls[i].to = b.Len()
 	}
 	if len(shafts) > 0 {
-		c.blocked(b.SoFar(), shafts, keys)
+		c.blocked(b.SoFar(), shafts, keys, walls)
 	}
 	for i := range m.Fixtures {
 		c.fixture(b, i)

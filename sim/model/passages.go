@@ -151,30 +151,74 @@ const (
 )
 
 // blocked tries that nothing is in the way of the passages: the side of a room
-// that one does not lead into, a wall, another passage.
-func (c *checker) blocked(in *geom.Interior, shafts []geom.Passage, keys []string) {
+// that one does not lead into, a wall, another passage. walls says which pieces
+// are those of each.
+func (c *checker) blocked(in *geom.Interior, shafts []geom.Passage, keys []string, walls []wallRange) {
 	for i := range shafts {
-		if id := obstacle(in, &shafts[i]); id >= 0 {
+		if id := obstacle(in, &shafts[i], walls[i]); id >= 0 {
 			c.fault(keys[i], "", "runs into %q", in.Surface(id).Name)
 		}
 	}
 }
 
-// obstacle gives a surface that stands in a passage, -1 for none.
-func obstacle(in *geom.Interior, p *geom.Passage) geom.SurfaceID {
+// wallRange are the indices of the pieces that wall a passage.
+type wallRange struct{ from, to int }
+
+// obstacle gives a surface that stands in a passage, -1 for none. The walls of
+// the passage themselves stand beside it.
+func obstacle(in *geom.Interior, p *geom.Passage, own wallRange) geom.SurfaceID {
 	w, h, at := p.Ends(), p.Width/2, geom.ShaftAt(p.Phi, p.Z)
 	n := int(math.Min(mostLooks, math.Ceil(looksPerWidth*(w.To-w.From)/p.Width))) + 1
+	near := beside(in, p, own)
+	seen := make([]bool, n+1)
 	for _, look := range looks {
 		if p.Round && look[0]*look[1] != 0 {
 			continue
 		}
 		aside := r3.Add(r3.Scale(look[0]*h, at.Spin), r3.Vec{Z: look[1] * h})
-		for k := range n + 1 {
-			near := in.Contact(r3.Add(p.Point(w.From+(w.To-w.From)*float64(k)/float64(n)), aside))
-			if near.Gap < h && p.Holds(near.Point, TouchSlack) {
-				return near.Surface
+		place := func(k int) r3.Vec {
+			return r3.Add(p.Point(w.From+(w.To-w.From)*float64(k)/float64(n)), aside)
+		}
+		clear(seen)
+		mark(seen, near, place, h, (w.To-w.From)/float64(n))
+		for k := range seen {
+			if !seen[k] {
+				continue
+			}
+			at := in.Contact(place(k))
+			if at.Gap < h && p.Holds(at.Point, TouchSlack) {
+				return at.Surface
 			}
 		}
 	}
 	return -1
+}
+
+// beside gives the solids, but for its own walls, that may come nearer to a
+// line of looks in a passage than half its width.
+func beside(in *geom.Interior, p *geom.Passage, own wallRange) (out []geom.Solid) {
+	w, h := p.Ends(), p.Width/2
+	mid, reach := p.Point((w.From+w.To)/2), (w.To-w.From)/2+(1+math.Sqrt2)*h
+	for i, piece := range in.Pieces() {
+		if box := piece.Solid.Bounds(); (i < own.from || i >= own.to) && box.Dist(mid) <= reach {
+			out = append(out, piece.Solid)
+		}
+	}
+	return out
+}
+
+// mark marks the places of a line from which one of the solids is nearer than h
+// (m). A solid that is farther off stays so for as far as that.
+func mark(seen []bool, solids []geom.Solid, place func(k int) r3.Vec, h, apart float64) {
+	for _, s := range solids {
+		for k := 0; k < len(seen); k++ {
+			d := s.Dist(place(k)) - h
+			if d < 0 {
+				seen[k] = true
+				continue
+			}
+			// One less than the places on the way, lest a rounding counts.
+			k += int(math.Min(math.Max(d/apart-1, 0), float64(len(seen))))
+		}
+	}
 }

@@ -82,19 +82,20 @@ func (x *mapping) block(ctx context.Context, at, n int) {
 		if x.fliers[w] == nil {
 			x.fliers[w] = flight.NewFlier(x.m)
 		}
+		spare := &flight.Track{}
 		for {
 			k := int(next.Add(1)) - 1
 			if k >= n || ctx.Err() != nil {
 				return
 			}
-			x.place(ctx, x.fliers[w], at+k, k)
+			x.place(ctx, x.fliers[w], spare, at+k, k)
 		}
 	})
 }
 
 // place flies in all directions from a place, into the slots of place k of the
-// block.
-func (x *mapping) place(ctx context.Context, f *flight.Flier, n, k int) {
+// block, in the space of the spare track.
+func (x *mapping) place(ctx context.Context, f *flight.Flier, spare *flight.Track, n, k int) {
 	p := x.out.Place(n)
 	if x.why[k] = x.left(p); x.why[k] != "" {
 		return
@@ -106,10 +107,10 @@ func (x *mapping) place(ctx context.Context, f *flight.Flier, n, k int) {
 		let := flight.Let{Release: &x.release, Body: x.body, Place: p,
 			Local: frame.State{Pos: p.Vec(), Vel: measure.LetVelocity(p, r3.Scale(x.of.Speed, v))}}
 		slot := &x.slots[k*len(x.directions)+d]
-		if t, err := f.Fly(&let); err != nil {
+		if err := f.FlyAgain(spare, &let); err != nil {
 			*slot = measure.MapFlight{Fate: measure.ShotFailed, Why: err.Error()}
 		} else {
-			*slot = x.out.Fly(t)
+			*slot = x.out.Fly(spare)
 		}
 	}
 }

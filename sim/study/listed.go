@@ -37,10 +37,11 @@ func (j *Judged) Add(o Judged) {
 type RowFlier struct {
 	p     *Prepared
 	flier *flight.Flier
+	track flight.Track // the last one's
 }
 
 // RowFlier makes one; each worker has its own.
-func (p *Prepared) RowFlier() *RowFlier { return &RowFlier{p, flight.NewFlier(p.Model)} }
+func (p *Prepared) RowFlier() *RowFlier { return &RowFlier{p: p, flier: flight.NewFlier(p.Model)} }
 
 // Fly flies a row and adds its verdicts to those of the limits.
 func (f *RowFlier) Fly(r *model.Release, verdicts []Judged) (Row, error) {
@@ -49,8 +50,8 @@ func (f *RowFlier) Fly(r *model.Release, verdicts []Judged) (Row, error) {
 	if fault.Msg != "" {
 		return Row{}, fmt.Errorf("release %q: %s", r.Name, fault.Msg)
 	}
-	track, err := f.flier.Fly(&let)
-	if err != nil {
+	track := &f.track
+	if err := f.flier.FlyAgain(track, &let); err != nil {
 		return Row{}, fmt.Errorf("release %q: %w", r.Name, err)
 	}
 	out := Row{Flown: true, Deck: let.Place.Deck, Outcome: Outcome{measure.Land(m, track), measure.EndOf(m, track), track.Work}}

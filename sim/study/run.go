@@ -60,13 +60,13 @@ func (p *Prepared) Fly(ctx context.Context, which []int, results []Result, opt O
 	var next, done atomic.Int64
 	var tell sync.Mutex
 	spread(opt.Workers, func() {
-		flier := flight.NewFlier(p.Model)
+		flier, spare := flight.NewFlier(p.Model), &flight.Track{}
 		for {
 			k := int(next.Add(1)) - 1
 			if k >= len(which) || ctx.Err() != nil {
 				return
 			}
-			results[which[k]], errs[k] = p.one(flier, which[k])
+			results[which[k]], errs[k] = p.one(flier, spare, which[k])
 			n := int(done.Add(1))
 			if opt.Done != nil {
 				tell.Lock()
@@ -86,10 +86,14 @@ func (p *Prepared) Fly(ctx context.Context, which []int, results []Result, opt O
 	return nil
 }
 
-func (p *Prepared) one(flier *flight.Flier, i int) (Result, error) {
+// one flies a release, in the space of the spare track if its own is not kept.
+func (p *Prepared) one(flier *flight.Flier, spare *flight.Track, i int) (Result, error) {
 	let := &p.Lets[i]
-	track, err := flier.Fly(let)
-	if err != nil {
+	track := spare
+	if p.keep[i] {
+		track = &flight.Track{}
+	}
+	if err := flier.FlyAgain(track, let); err != nil {
 		return Result{}, err
 	}
 	res := Result{Landing: measure.Land(p.Model, track), Rest: measure.EndOf(p.Model, track), Work: track.Work, done: true}

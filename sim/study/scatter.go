@@ -152,6 +152,7 @@ type thrower struct {
 	*Scattering
 	m     *model.Model
 	flier *flight.Flier
+	track flight.Track
 	drawn []float64
 	work  flight.Work
 }
@@ -178,8 +179,8 @@ func (w *thrower) sample(i int) {
 		w.out.LeaveOut(i, measure.ShotImpossible, why)
 		return
 	}
-	track, err := w.flier.Fly(&let)
-	if err != nil {
+	track := &w.track
+	if err := w.flier.FlyAgain(track, &let); err != nil {
 		w.out.LeaveOut(i, measure.ShotFailed, err.Error())
 		return
 	}

@@ -79,12 +79,12 @@ func (s *Sweep) point(i int) Point {
 // landings if all are wanted.
 func (p *Prepared) take(picks []measure.Pick, all bool) (values []float64, landings []measure.Landing, err error) {
 	results := make([]Result, len(p.Lets))
-	flier := flight.NewFlier(p.Model)
+	flier, spare := flight.NewFlier(p.Model), &flight.Track{}
 	for i := range p.Lets {
 		if !p.needed(picks, i, all) {
 			continue
 		}
-		if results[i], err = p.one(flier, i); err != nil {
+		if results[i], err = p.one(flier, spare, i); err != nil {
 			return nil, nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
 		}
 		if all {

@@ -15,7 +15,7 @@ from scipy.integrate import solve_ivp
 from scipy.interpolate import PchipInterpolator
 
 RTOL, ATOL = 1e-12, 1e-14
-GAS = 8314.32 / 28.964420
+GAS = 287.05287
 CORE = 0.05
 HEIGHTS = [0.0, 1.0, 2.5, 6.0]
 PROFILE = {"spinward": [0.0, 0.8, 1.2, 0.3], "axial": [0.2, -0.1, 0.4, 0.4], "up": [0.0, 0.15, 0.1, 0.0]}
@@ -62,7 +62,7 @@ class Flight:
 
     def gains(self, t, p):
         """Du/Dt by differences of the fourth order along the air's way."""
-        u, h = self.air(t, p), 2e-5
+        u, h = self.air(t, p), 1e-4
         f = lambda k: self.air(t + k * h, p + k * h * u)
         return (8 * (f(1) - f(-1)) - (f(2) - f(-2))) / (12 * h)
 
