@@ -90,7 +90,6 @@ var airKeys = &section{name: "the air", doc: "The air, which turns with the habi
 		table("draft", draftKeys, "a steady motion of the air relative to the habitat").or("none"),
 	}}
 
-
 var body = &section{name: "a body", doc: "What is released: a sphere.",
 	keys: []key{
 		title(),

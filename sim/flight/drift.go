@@ -42,6 +42,9 @@ const (
 	mostBalances = 100
 	// balanced is the change, as a share, at which they end: rounding.
 	balanced = 4e-16
+	// driftTurn is how far, in rad, the habitat turns in a step at most, so that
+	// it is smooth in the inertial frame too.
+	driftTurn = 1
 	// fieldShare is the share of T over which A is differenced: its error,
 	// (1e-3)^2 of it by the cut series, is below what A lacks.
 	fieldShare = 1e-3
@@ -181,7 +184,8 @@ func (f *Flier) driftOn(t *Track, now *moving) (ending, error) {
 	if err != nil {
 		return ending{}, err
 	}
-	r := &run{st: st, limit: f.longest(t.Release) - now.t, events: func([]geom.Patch) *ends { return f.driftEvents(d) }}
+	omega, _ := f.m.Motion.Bounds(d.begin, d.begin)
+	r := &run{st: st, most: driftTurn / math.Max(omega, slowest), limit: f.longest(t.Release) - now.t, events: func([]geom.Patch) *ends { return f.driftEvents(d) }}
 	r.smooth, d.last = f.smoothUntil(t, now)
 	d.first = math.Inf(-1)
 	if !f.m.Motion.Stretch(d.begin).Steady() {
