@@ -67,8 +67,8 @@ func warnAir(j *job) {
 		j.note("air", "the air displaced has up to %s %% of the mass of these bodies, which is left out; buoyancy = true takes it into account: %s", table.Round(100*lift, 2), someNames(swims))
 	}
 	if len(dust) > 0 {
-		j.note("air", "drift like dust, at the velocity at which drag balances all else, after up to %s s; their way is off by a share of %s at most, and they stay where they touch: %s",
-			table.Round(most, 2), table.Round(bound, 2), someNames(dust))
+		j.note("air", "drift like dust, at the velocity at which drag balances all else, after up to %s s; their way is off by %s %% at most, and they stay where they touch: %s",
+			table.Round(most, 2), table.Round(100*bound, 2), someNames(dust))
 	}
 	if len(thin) > 0 {
 		j.note("air", "are so small for this air that slip, which is not modelled, lowers their drag by up to %s %% (Knudsen number %s; the law takes it as 0): %s",
