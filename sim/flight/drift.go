@@ -118,6 +118,10 @@ type drift struct {
 	origin r3.Vec  // m
 }
 
+func (d *drift) stepper(s model.Solver) (*integrator.Stepper, error) {
+	return integrator.NewStepper(integrator.DormandPrince54(), d, integrator.Tol{Rel: s.RelTol, Abs: []float64{s.PosTol}, Groups: []int{3}})
+}
+
 // Dim implements [integrator.System].
 func (d *drift) Dim() int { return 3 }
 
@@ -179,8 +183,7 @@ func (f *Flier) driftOn(t *Track, now *moving) (ending, error) {
 	forces := f.free.forces // the track keeps it
 	d := &drift{f: &forces, step: fieldShare * f.quick.Pace, begin: t.Begin + now.t, origin: now.q}
 	phase := Phase{Kind: Free, T0: now.t, local: true, drift: d}
-	st, err := integrator.NewStepper(integrator.DormandPrince54(), d,
-		integrator.Tol{Rel: f.m.Solver.RelTol, Abs: []float64{f.m.Solver.PosTol}, Groups: []int{3}})
+	st, err := d.stepper(f.m.Solver)
 	if err != nil {
 		return ending{}, err
 	}

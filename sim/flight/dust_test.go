@@ -148,3 +148,22 @@ func TestQuickIsDustOnly(t *testing.T) {
 		t.Errorf("relaxation %g s", got)
 	}
 }
+
+// TestDustCoasts tries that a coast of dust is its flight.
+func TestDustCoasts(t *testing.T) {
+	in := dusty(8e-6, 1.5, 3)
+	in.Weather.Draft = air.UniformDraft(0.1, 0.2, 0.05)
+	in.Releases[0].Start = model.Start{Kind: model.Velocity, VSpinward: 3, VUp: 2}
+	m, track := one(t, in, flight.Setup{})
+	let, problem := flight.Release(m, &m.Releases[0], nil)
+	if problem.Msg != "" {
+		t.Fatal(problem)
+	}
+	for _, time := range []float64{0.005, 3} {
+		s, err := flight.NewFlier(m).Coast(&let, time)
+		want := track.At(time)
+		if off := r3.Norm(r3.Sub(s.Pos, want.Pos)); err != nil || off > 1e-8 || r3.Norm(r3.Sub(s.Vel, want.Vel)) > 1e-8 {
+			t.Errorf("after %g s: %v, want %v (%v)", time, s, want, err)
+		}
+	}
+}
