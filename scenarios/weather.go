@@ -59,7 +59,7 @@ func (b *builder) draft(o *object, files reading) *air.Draft {
 
 // draftTable reads lists by height.
 func (b *builder) draftTable(o *object) *air.Draft {
-	heights := plain(o.list("heights"))
+	heights := bare(o.list("heights"))
 	if heights == nil || !b.grows(heights, func(i int) place { return o.node.kids["heights"].items[i].at }, func(i int) string {
 		return fmt.Sprintf("%s[%d]", join(o.path, "heights"), i)
 	}, o.at("heights"), join(o.path, "heights")) {
@@ -70,7 +70,7 @@ func (b *builder) draftTable(o *object) *air.Draft {
 		if !o.has(k) {
 			continue
 		}
-		speeds[c] = plain(o.list(k))
+		speeds[c] = bare(o.list(k))
 		if speeds[c] == nil {
 			return nil // which is told
 		}
@@ -168,8 +168,8 @@ func (b *builder) draftColumn(o *object, src []byte, name string, heights bool) 
 	return out
 }
 
-// plain gives a list's values, in SI; nil for none.
-func plain(list []quantity) []float64 {
+// bare gives a list's values, in SI; nil for none.
+func bare(list []quantity) []float64 {
 	var out []float64
 	for _, q := range list {
 		out = append(out, q.si)
