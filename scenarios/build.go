@@ -53,6 +53,7 @@ func (b *builder) build(o *object, files reading) {
 	b.in.Title = o.str("title")
 	b.habitat(o.sub("habitat"))
 	b.in.Air = b.air(o.sub("air"))
+	b.in.Weather = b.weather(o.sub("air"), files)
 	for _, d := range o.subs("deck") {
 		b.in.Decks = append(b.in.Decks, b.deck(d))
 	}
@@ -156,11 +157,14 @@ func (b *builder) air(o *object) air.Air {
 	case o == nil:
 		return air.FromPressure(air.DefaultPressure, air.DefaultTemperature)
 	case o.flag("none"):
-		b.refuses(o, "a vacuum has none", "pressure", "temperature", "density", "viscosity")
+		b.refuses(o, "a vacuum has none", "pressure", "temperature", "density", "viscosity", "stratified", "buoyancy", "draft")
 		return air.Air{}
 	case o.has("density") || o.has("viscosity"):
 		b.wants(o, "air given by density and viscosity", "density", "viscosity")
-		b.refuses(o, "wants pressure and temperature, or density and viscosity, not both", "pressure", "temperature")
+		b.refuses(o, "wants pressure and temperature, or density and viscosity, not both", "pressure")
+		if !o.flag("stratified") {
+			b.refuses(o, "wants pressure and temperature, or density and viscosity, not both", "temperature")
+		}
 		return air.Air{Density: o.num("density"), Viscosity: o.num("viscosity")}
 	}
 	return air.FromPressure(o.numOr("pressure", air.DefaultPressure), o.numOr("temperature", air.DefaultTemperature))

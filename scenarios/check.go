@@ -102,6 +102,12 @@ func (c *checker) value(n *node, k *key, path string) *value {
 	switch k.want {
 	case wantQuantity:
 		v.quantity, ok = c.quantity(n, k, path)
+	case wantQuantities:
+		if n.kind == isArray {
+			v.list, ok = c.list(n, k, path)
+		} else if v.quantity, ok = c.quantity(n, k, path); ok {
+			v.list = []quantity{v.quantity}
+		}
 	case wantNumber, wantInteger:
 		v.si, ok = c.number(n, k, path)
 	case wantText, wantName:

@@ -69,6 +69,16 @@ var furtherRoom = &section{name: "a room", doc: "A further room, beside the habi
 		qty("axial", length, anything, "where its middle stands").or(`"0 m"`),
 	}, room...)}
 
+var draftKeys = &section{name: "a draft", doc: "A steady motion of the air relative to the habitat, in the local directions at each place: the same everywhere, or by height from lists or a file.",
+	keys: []key{
+		speeds("spinward", "spinward"),
+		speeds("axial", "toward +axial"),
+		speeds("up", "toward the axis"),
+		{name: "heights", want: wantList, dims: []*dimension{length}, span: anything,
+			doc: "those of the lists of speeds, above the reference floor: its radius less the distance from the axis"},
+		text("file", "CSV file beside the scenario in place of the lists: height_m and one or more of spinward_m_s, axial_m_s, up_m_s"),
+	}}
+
 var airKeys = &section{name: "the air", doc: "The air, which turns with the habitat.",
 	keys: []key{
 		qty("pressure", pressure, positive, "of the air").or(`"101.325 kPa"`).one("pressure"),
@@ -76,6 +86,9 @@ var airKeys = &section{name: "the air", doc: "The air, which turns with the habi
 		qty("density", density, positive, "in place of pressure and temperature, with viscosity"),
 		qty("viscosity", viscosity, positive, "dynamic viscosity, with density"),
 		flag("none", "a vacuum"),
+		flag("stratified", "its density falls toward the axis, from that given at the reference floor; wants the temperature, and a steady spin"),
+		flag("buoyancy", "bodies feel the pressure of the air and the added mass of a sphere"),
+		table("draft", draftKeys, "a steady motion of the air relative to the habitat").or("none"),
 	}}
 
 var body = &section{name: "a body", doc: "What is released: a sphere.",

@@ -19,11 +19,12 @@ const (
 	wantTables               // a list of tables of the section, in double brackets
 
 	wantWordOrQuantity
-	wantBound    // a quantity of any dimension, or a bare number
-	wantOpen     // a table whose keys may hold points
-	wantNumbers  // a list of count bare numbers
-	wantSettings // a table of keys of the scenario, as in --set, and their values
-	wantBounds   // a list of what other keys hold: texts, numbers, true or false
+	wantBound      // a quantity of any dimension, or a bare number
+	wantOpen       // a table whose keys may hold points
+	wantNumbers    // a list of count bare numbers
+	wantSettings   // a table of keys of the scenario, as in --set, and their values
+	wantQuantities // a quantity, or a list of them
+	wantBounds     // a list of what other keys hold: texts, numbers, true or false
 )
 
 // span is a range of values, in SI.
@@ -120,6 +121,10 @@ func texts(name, doc string) key { return key{name: name, want: wantTexts, doc: 
 
 func lengths(name string, n int, s span, doc string) key {
 	return key{name: name, want: wantList, dims: []*dimension{length}, count: n, span: s, doc: doc}
+}
+
+func speeds(name, way string) key {
+	return key{name: name, want: wantQuantities, dims: []*dimension{speed}, span: anything, deflt: `"0 m/s"`, doc: way + "; one for each height where there are heights"}
 }
 
 func table(name string, sub *section, doc string) key {

@@ -37,7 +37,7 @@ func Reference() string {
 			}
 		}
 	}
-	for _, s := range []*section{coning, ambientKeys, uniformPull, centralPull, towardKeys, leg, walkTo, rideTo, carryKeys, station, throwKeys, velocityKeys, carriedKeys, reach, doorway, vary, spreadOf(length), target, distanceRange, region} {
+	for _, s := range []*section{coning, draftKeys, ambientKeys, uniformPull, centralPull, towardKeys, leg, walkTo, rideTo, carryKeys, station, throwKeys, velocityKeys, carriedKeys, reach, doorway, vary, spreadOf(length), target, distanceRange, region} {
 		write("*"+s.name+"*", s)
 	}
 	return b.String()
@@ -80,6 +80,8 @@ func (k *key) holds() string {
 			return "list of " + k.kinds("s")
 		}
 		return fmt.Sprintf("list of %d %s", k.count, k.kinds("s"))
+	case wantQuantities:
+		return k.kinds("") + " or list of " + k.kinds("s")
 	case wantBounds:
 		return "list"
 	case wantTable:

@@ -113,6 +113,9 @@ func valueSchema(k *key) schema {
 			out["minItems"], out["maxItems"] = k.count, k.count
 		}
 		return out
+	case wantQuantities:
+		one := quantitySchema(k.dims, k.span)
+		return schema{"oneOf": []schema{one, {"type": "array", "items": one, "minItems": 1}}}
 	case wantBounds:
 		any := []schema{{"type": "string"}, {"type": "number"}, {"type": "boolean"}}
 		return schema{"type": "array", "items": schema{"oneOf": any}, "minItems": 1}

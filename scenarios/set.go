@@ -97,14 +97,17 @@ func (n *node) moveTo(at place) {
 // in place of.
 var instead = map[*section]map[string][]string{
 	airKeys: {
-		"none":        {"pressure", "temperature", "density", "viscosity"},
+		"none":        {"pressure", "temperature", "density", "viscosity", "stratified", "buoyancy", "draft"},
+		"stratified":  {"none"},
+		"buoyancy":    {"none"},
 		"pressure":    {"none", "density", "viscosity"},
 		"temperature": {"none", "density", "viscosity"},
 		"density":     {"none", "pressure", "temperature"},
 		"viscosity":   {"none", "pressure", "temperature"},
 	},
-	station: {"radius": {"deck", "height"}, "deck": {"radius"}, "height": {"radius"}},
-	target:  {"radius": {"deck", "height"}, "deck": {"radius"}, "height": {"radius"}},
+	draftKeys: {"file": {"heights", "spinward", "axial", "up"}, "heights": {"file"}, "spinward": {"file"}, "axial": {"file"}, "up": {"file"}},
+	station:   {"radius": {"deck", "height"}, "deck": {"radius"}, "height": {"radius"}},
+	target:    {"radius": {"deck", "height"}, "deck": {"radius"}, "height": {"radius"}},
 }
 
 // giveWay drops the keys that a key stands in place of.

@@ -116,7 +116,7 @@ func (k *key) inWords() string { return strings.NewReplacer("*", "", "`", "").Re
 
 // numeric says whether a key holds a number, with a unit or without.
 func (k *key) numeric() bool {
-	return k.want == wantQuantity || k.want == wantNumber || k.want == wantWordOrQuantity
+	return k.want == wantQuantity || k.want == wantNumber || k.want == wantWordOrQuantity || k.want == wantQuantities
 }
 
 // at goes down to a key of the format, which is known to be there; of a free

@@ -37,7 +37,7 @@ var (
 	speed    = &dimension{"a speed", "m/s", "1.2 m/s", []unit{{"m/s", 1, 0}, {"km/h", 1 / 3.6, 0}, {"mph", 0.44704, 0}, {"ft/s", 0.3048, 0},
 		{"cm/s", 1e-2, 0}, {"mm/s", 1e-3, 0}}, 1e6}
 	accel       = &dimension{"an acceleration", "m/s^2", "0.5 g", []unit{{"m/s^2", 1, 0}, {"g", model.StandardGravity, 0}, {"ft/s^2", 0.3048, 0}}, 1e6}
-	mass        = &dimension{"a mass", "kg", "1.4 kg", []unit{{"kg", 1, 0}, {"mg", 1e-6, 0}, {"g", 1e-3, 0}, {"t", 1e3, 0}, {"lb", 0.45359237, 0}}, 1e9}
+	mass        = &dimension{"a mass", "kg", "1.4 kg", []unit{{"kg", 1, 0}, {"mg", 1e-6, 0}, {"ug", 1e-9, 0}, {"ng", 1e-12, 0}, {"g", 1e-3, 0}, {"t", 1e3, 0}, {"lb", 0.45359237, 0}}, 1e9}
 	turnAccel   = &dimension{"an angular acceleration", "rad/s^2", "0.1 rad/s^2", []unit{{"rad/s^2", 1, 0}, {"deg/s^2", math.Pi / 180, 0}}, 1e6}
 	pressure    = &dimension{"a pressure", "Pa", "70 kPa", []unit{{"Pa", 1, 0}, {"hPa", 100, 0}, {"kPa", 1e3, 0}, {"bar", 1e5, 0}, {"psi", 4.4482216152605 / (0.0254 * 0.0254), 0}}, 1e7}
 	temperature = &dimension{"a temperature", "K", "22 °C", []unit{{"°C", 1, 273.15}, {"degC", 1, 273.15}, {"K", 1, 0}}, 2000}

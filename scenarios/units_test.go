@@ -28,7 +28,7 @@ var defined = map[string]map[string]exact{
 	"a speed": {"m/s": {num: "1"}, "km/h": {num: "1000", den: "3600"}, "mph": {num: "1609.344", den: "3600"}, "ft/s": {num: "0.3048"},
 		"cm/s": {num: "1", den: "100"}, "mm/s": {num: "1", den: "1000"}},
 	"an acceleration":         {"m/s^2": {num: "1"}, "g": {num: "9.80665"}, "ft/s^2": {num: "0.3048"}},
-	"a mass":                  {"kg": {num: "1"}, "mg": {num: "1", den: "1000000"}, "g": {num: "1", den: "1000"}, "t": {num: "1000"}, "lb": {num: "0.45359237"}},
+	"a mass":                  {"kg": {num: "1"}, "mg": {num: "1", den: "1000000"}, "ug": {num: "1", den: "1000000000"}, "ng": {num: "1", den: "1000000000000"}, "g": {num: "1", den: "1000"}, "t": {num: "1000"}, "lb": {num: "0.45359237"}},
 	"an angular acceleration": {"rad/s^2": {num: "1"}, "deg/s^2": {num: "1", den: "180", turns: true}},
 	"a pressure": {"Pa": {num: "1"}, "hPa": {num: "100"}, "kPa": {num: "1000"}, "bar": {num: "100000"},
 		"psi": {num: "4.4482216152605", den: "0.00064516"}},

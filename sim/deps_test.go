@@ -40,6 +40,7 @@ var allowed = map[string][]string{
 // library; those not named may import none.
 var outside = map[string][]string{
 	"sim/geom":            {"gonum.org/v1/gonum"},
+	"sim/air":             {"gonum.org/v1/gonum"},
 	"sim/frame":           {"gonum.org/v1/gonum"},
 	"sim/model":           {"gonum.org/v1/gonum"},
 	"sim/crew":            {"gonum.org/v1/gonum"},

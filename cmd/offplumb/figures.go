@@ -47,6 +47,7 @@ func (j *job) figures() ([]task, error) {
 	all = append(all, j.sharedFigures()...)
 	all = append(all, turningFigures(j)...)
 	all = append(all, outsideFigures(j)...)
+	all = append(all, airFigures(j)...)
 	all = append(all, j.pathFigures()...)
 	all = append(all, j.studyFigures()...)
 	all = append(all, streamFigures(j)...)

@@ -72,7 +72,28 @@ var statements = []statement{
 		off:     "about 6 % of the drag of a smooth sphere; more for rough, flat or tumbling things, not quantified",
 		how:     "The drag of a sphere, relative to air that turns with the habitat. Density and viscosity are those given, or of dry air at the pressure and temperature.",
 		holds: "A body is a sphere without lift and without spin of its own in the air. Drag is that of a smooth sphere (Clift & Gauvin), to about 6 % below a Reynolds number of 3e5, " +
-			"or your own drag coefficient. The air turns with the habitat like a solid: drafts and ventilation are not modelled. Water drops above 1.5 mm flatten and fall more slowly."},
+			"or your own drag coefficient. The air turns with the habitat like a solid, but for the draft that the scenario gives. Its density is the same everywhere, and it bears nothing up, unless the scenario asks. " +
+			"Water drops above 1.5 mm flatten and fall more slowly."},
+	{topic: "Drafts", used: (*job).drafty,
+		how: "A draft is steady in the habitat, the same everywhere or by height, and drag is relative to it. Between the heights given each component is a monotone cubic, beyond them it stays as it is there.",
+		holds: "A draft is what the scenario says, up to the surfaces: it knows no walls, no still layer along them, no eddies and no wake of people, and whether it is free of sources is not asked. " +
+			"Height is the floor's radius less the distance from the axis, on a flat floor too. Within 1/20 of the floor's radius of the axis its spinward and upward parts fade to nothing.",
+		sources: []string{"Fritsch & Butland, SIAM J. Sci. Stat. Comput. 5 (1984) 300-304: monotone cubics (from memory)"}},
+	{topic: "Layers of air", used: (*job).layered,
+		how:     "The density falls toward the axis as in air of one temperature that turns like a solid; that given holds at the reference floor.",
+		holds:   "Layers of air have one temperature and a steady spin; with spin changes or a coning they are refused. Viscosity is the same everywhere.",
+		sources: []string{"Landau & Lifshitz, Statistical Physics, on rotating bodies (from memory)"}},
+	{topic: "Buoyancy", used: (*job).buoyant,
+		how: "The pressure of the air accelerates a body as it does the air, toward the axis, and a sphere carries half of the air that it displaces along.",
+		holds: "Buoyancy and added mass are those of a sphere far from surfaces, also in contact: there the added mass is more, and a rolling body turns as a solid one. The history force is left out. " +
+			"The density of the air about the body is that at its centre.",
+		sources: []string{"Maxey & Riley, Phys. Fluids 26 (1983) 883-889: forces on a small sphere (from memory)",
+			"Lamb, Hydrodynamics, section 92: added mass (from memory)"}},
+	{topic: "Dust", used: (*job).dusty,
+		how: "Dust takes up the motion of the air at once: it is flown by the full equations until its start has died out, 25 relaxation times, and from then on at the velocity at which drag balances all else.",
+		holds: "A body whose relaxation time is below a thousandth of the time in which what it feels changes drifts like dust: its way is off by 10 times the square of that share at most, which a warning tells. " +
+			"It stays where it first touches, without rebound or sliding, since adhesion holds it by far more than its weight. Slip in thin air, Brownian motion and electric charge are left out.",
+		sources: []string{"Maxey, J. Fluid Mech. 174 (1987) 441-465: small relaxation times (from memory)", "Hinds, Aerosol Technology, chapters 3 and 6 (from memory)"}},
 	{used: (*job).dragged, sources: []string{
 		"Clift & Gauvin 1970, drag of spheres (from memory)",
 		"US Standard Atmosphere 1976, eq. 51: Sutherland's law of viscosity (from memory)",

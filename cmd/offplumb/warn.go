@@ -50,6 +50,7 @@ func (j *job) warn() {
 	warnMaps(j)
 	warnThrows(j)
 	j.warnReleases()
+	warnAir(j)
 	j.warnPaths()
 	if len(j.unjudged) > 0 {
 		j.note("limits", "not judged, since what they are about did not run or kept no track: %s", someNames(j.unjudged))

@@ -17,7 +17,7 @@ const (
 // error is what the tolerances allow. The motion changes over the time in which
 // drag slows the body, or the habitat turns. 0 where other forces act.
 func (f *Flier) firstStep() float64 {
-	if len(f.free.forces.fields) > 0 {
+	if len(f.free.forces.fields) > 0 || f.free.forces.around != nil {
 		return 0
 	}
 	omega, _ := f.m.Motion.Bounds(f.free.begin, f.free.begin)

@@ -15,6 +15,7 @@ import (
 type Setup struct {
 	Fields []Field
 	Law    air.Law // nil: the program's own
+	Full   bool    // dust too is flown by the full equations
 }
 
 // Flier flies releases one after another. It serves one goroutine.
@@ -42,6 +43,7 @@ type Flier struct {
 	tidied    []float64              // the state corrected
 	body      model.Body             // in flight
 	wide      float64                // m, its radius
+	quick     Quick                  // how fast it takes up the motion of the air
 	ended     bool                   // its track is
 	arrival   frame.State            // inertial, at the end of its last phase, before any impact
 	zero      [6]float64
@@ -114,6 +116,9 @@ func (f *Flier) FlyAgain(t *Track, let *Let) error {
 	t.Start.Deck, t.Start.Height = f.beneath(let)
 	f.free.forces.set(f.m, let.Body, f.setup.Law, f.setup.Fields)
 	f.body, f.wide = let.Body, let.Body.Diameter/2
+	if f.quick = (Quick{}); !f.setup.Full {
+		f.quick = quickOf(f.m, &f.free.forces, let.Body)
+	}
 	return f.follow(t)
 }
 
@@ -126,6 +131,10 @@ func (f *Flier) beneath(let *Let) (int, float64) {
 // fly integrates one flight, to a touch, the end of its time or its loss. The
 // spin of a body in flight stays in the inertial frame.
 func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) {
+	settles, drifts := f.quickIn(now)
+	if drifts {
+		return f.driftOn(t, now)
+	}
 	base := t.First
 	if now.t > 0 {
 		base = f.inertial(t, now)
@@ -140,6 +149,11 @@ func (f *Flier) fly(t *Track, now *moving, grazed []geom.Patch) (ending, error) 
 		r.most = f.longestStep(t.Begin + now.t)
 	}
 	r.smooth, f.free.last = f.smoothUntil(t, now)
+	if f.quick.Drifts() {
+		start := *r // which ends where the drift begins
+		start.smooth, start.on = math.Min(r.smooth, settles), nil
+		r = &start
+	}
 	f.leaves, f.rough = now.t, noise(r3.Vec{}, now.v)
 	res, end, err := f.solve(t, &phase, r, f.zero[:])
 	if err != nil {

@@ -35,6 +35,10 @@ func (f *Flier) follow(t *Track) error {
 		if k > 0 || len(touches) > 0 {
 			touches = f.touches(&now)
 		}
+		if len(touches) > 0 && f.quick.Drifts() {
+			f.sticks(t, &now, &touches[0])
+			return nil
+		}
 		f.meet(t, &now, touches, known)
 		if f.over(t, &now) {
 			return nil

@@ -26,7 +26,8 @@ type Forces struct {
 	drag    air.Drag
 	perMass float64 // 1/kg
 	fields  []Field
-	calm    bool // the body is outside, where there is no air
+	calm    bool    // the body is outside, where there is no air
+	around  *around // nil: the air turns like a solid, is the same everywhere and only drags
 }
 
 // NewForces gives the forces on a body: drag, the model's ambient gravity and
@@ -60,13 +61,14 @@ func (f *Forces) set(m *model.Model, b model.Body, law air.Law, fields []Field) 
 	// The Reynolds number is that of the disc of the same area.
 	f.drag = air.NewDrag(m.Air, law, math.Sqrt(4*area/math.Pi), area)
 	f.perMass = 1 / b.Mass
+	f.around = newAround(m, b, f)
 	f.ease(false)
 }
 
 // ease lets drag act, or not: the body is outside, in calm.
 func (f *Forces) ease(calm bool) {
 	f.calm = calm
-	f.plain = f.steady && len(f.fields) == 0 && !f.drag.None() && !calm
+	f.plain = f.steady && len(f.fields) == 0 && !f.drag.None() && !calm && f.around == nil
 }
 
 // Drag gives the acceleration by drag, m/s^2 in inertial components, at an
@@ -76,12 +78,20 @@ func (f *Forces) Drag(t float64, s frame.State) r3.Vec {
 	if f.calm || f.drag.None() {
 		return r3.Vec{}
 	}
+	if f.around != nil {
+		h := f.around.at(f, t, s.Pos)
+		return h.drag(f, s.Vel)
+	}
 	rel := f.relative(t, s)
 	return r3.Scale(-f.perMass*f.drag.PerVelocity2(r3.Norm2(rel)), rel)
 }
 
 // relative is the velocity relative to the air, m/s.
 func (f *Forces) relative(t float64, s frame.State) r3.Vec {
+	if f.around != nil {
+		h := f.around.at(f, t, s.Pos)
+		return r3.Sub(s.Vel, h.wind)
+	}
 	if f.steady {
 		return r3.Vec{X: s.Vel.X + f.spin*s.Pos.Y, Y: s.Vel.Y - f.spin*s.Pos.X, Z: s.Vel.Z}
 	}
@@ -90,6 +100,9 @@ func (f *Forces) relative(t float64, s frame.State) r3.Vec {
 
 // Accel gives the whole acceleration, m/s^2 in inertial components.
 func (f *Forces) Accel(t float64, s frame.State) r3.Vec {
+	if f.around != nil && !f.calm {
+		return f.around.accel(f, t, s)
+	}
 	a := f.Drag(t, s)
 	for _, g := range f.fields {
 		a = r3.Add(a, g.Accel(t, s))

@@ -45,7 +45,8 @@ type Phase struct {
 	T0, T1  float64 // s since the release
 	Surface string  // of a slide, roll or rest: what it is on at the start
 
-	local bool // steps are in the habitat frame, else inertial
+	drift *drift // of dust, which gives its velocity by its place
+	local bool   // steps are in the habitat frame, else inertial
 	base  frame.State
 	spin  r3.Vec               // rad/s, of a rolling body at the start, relative to the habitat
 	steps []integrator.Segment // from T0: departures from base, in flight from its uniform motion
@@ -124,6 +125,10 @@ func (p *Phase) at(time float64) frame.State {
 	}
 	var y [dims]float64
 	p.steps[i].At(u, y[:p.steps[i].Dim()])
+	if p.drift != nil {
+		q := r3.Add(p.base.Pos, vec(y[:]))
+		return frame.State{Pos: q, Vel: p.drift.velocity(u, q)}
+	}
 	if p.local {
 		return frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}
 	}

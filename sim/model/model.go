@@ -36,6 +36,7 @@ type Model struct {
 	Habitat  Habitat
 	Ambient  Ambient
 	Air      air.Air
+	Weather  Weather
 	Decks    []Deck // Decks[0] is the reference floor once the model is made
 	Rooms    []Room // further rooms, beside the habitat's own
 	Passages []Passage

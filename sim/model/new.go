@@ -30,6 +30,7 @@ func New(in Model) (*Model, []Problem) {
 	m.index()
 	c.habitat()
 	c.turning()
+	c.weather()
 	c.decks(in.Decks)
 	if len(c.problems) > 0 {
 		return nil, c.problems
