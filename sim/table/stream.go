@@ -5,32 +5,16 @@ import (
 	"encoding/csv"
 	"io"
 	"iter"
-	"slices"
 )
 
 // StreamCSV writes rows as they come, by RFC 4180: one header row, fields
 // separated by commas, lines ended by CR LF. It keeps no row.
 func StreamCSV(w io.Writer, columns []Column, rows iter.Seq[[]Cell]) error {
-	return streamCSV(w, columns, rows, true)
-}
-
-// WriteRows writes the rows of a table as StreamCSV does, without the header
-// row: more of a file that has it.
-func (t *Table) WriteRows(w io.Writer) error {
-	return streamCSV(w, t.Columns, slices.Values(t.Rows), false)
-}
-
-// flushAt is how many bytes of a table are gathered before they are written.
-const flushAt = 32 << 10
-
-func streamCSV(w io.Writer, columns []Column, rows iter.Seq[[]Cell], head bool) error {
 	var out []byte
-	if head {
-		for i := range columns {
-			out = appendText(out, columns[i].Name, i == 0)
-		}
-		out = append(out, lineEnd...)
+	for i := range columns {
+		out = appendText(out, columns[i].Name, i == 0)
 	}
+	out = append(out, lineEnd...)
 	for row := range rows {
 		if out = AppendRow(out, columns, row); len(out) >= flushAt {
 			if _, err := w.Write(out); err != nil {
@@ -39,12 +23,12 @@ func streamCSV(w io.Writer, columns []Column, rows iter.Seq[[]Cell], head bool) 
 			out = out[:0]
 		}
 	}
-	if len(out) == 0 {
-		return nil
-	}
 	_, err := w.Write(out)
 	return err
 }
+
+// flushAt is how many bytes of a table are gathered before they are written.
+const flushAt = 32 << 10
 
 const lineEnd = "\r\n"
 
