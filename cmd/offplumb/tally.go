@@ -18,7 +18,7 @@ import (
 type tally struct {
 	rows, landed     int
 	outcomes         []string
-	counts           map[string]int // of outcomes, surfaces and openings, by a key of their kind
+	counts           map[counted]int // of outcomes, surfaces and openings
 	offset, energy   extreme
 	late, stuck      named
 	work             flight.Work
@@ -44,6 +44,9 @@ func (e *extreme) add(x float64, name string) {
 		e.high, e.highName = x, name
 	}
 }
+
+// counted is a thing and its kind.
+type counted struct{ kind, name string }
 
 // named is how many there are of something, with the first names.
 type named struct {
@@ -75,7 +78,7 @@ type dot struct {
 // newTally counts rows, of which as many as can be told apart are drawn: every
 // second, third or so.
 func newTally(rows int, few bool) tally {
-	t := tally{counts: map[string]int{}, every: max(1, (rows+plots.MostDots-1)/plots.MostDots)}
+	t := tally{counts: map[counted]int{}, every: max(1, (rows+plots.MostDots-1)/plots.MostDots)}
 	if few {
 		t.every = 1
 	}
@@ -84,7 +87,8 @@ func newTally(rows int, few bool) tally {
 
 // count counts a thing of a kind, and keeps the order in which things came.
 func (t *tally) count(kind, name string, order *[]string) {
-	if t.counts[kind+name]++; t.counts[kind+name] == 1 {
+	key := counted{kind, name}
+	if t.counts[key]++; t.counts[key] == 1 {
 		*order = append(*order, name)
 	}
 }
@@ -92,13 +96,13 @@ func (t *tally) count(kind, name string, order *[]string) {
 func (t *tally) add(j *job, number int, r *study.Row) {
 	l := &r.Landing
 	t.rows++
-	t.count("outcome ", l.Outcome.String(), &t.outcomes)
+	t.count("outcome", l.Outcome.String(), &t.outcomes)
 	if l.Outcome == flight.Landed {
 		t.landed++
-		t.count("surface ", l.Surface, &t.surfaces)
+		t.count("surface", l.Surface, &t.surfaces)
 	}
 	for _, o := range l.AllThrough {
-		t.count("opening ", o, &t.passed)
+		t.count("opening", o, &t.passed)
 	}
 	t.offset.add(l.Offset, l.Release)
 	t.energy.add(l.Energy, l.Release)
@@ -122,14 +126,14 @@ func groundName(m *model.Model, r *study.Row) string { return m.Decks[r.Deck].Na
 // top lists things by their number, the most first, as "floor 93 % (930)".
 func (t *tally) top(kind string, names []string, of int) string {
 	list := slices.Clone(names)
-	slices.SortStableFunc(list, func(a, b string) int { return t.counts[kind+b] - t.counts[kind+a] })
+	slices.SortStableFunc(list, func(a, b string) int { return t.counts[counted{kind, b}] - t.counts[counted{kind, a}] })
 	words := []string{}
 	for i, name := range list {
 		if i == namesTold {
 			words = append(words, fmt.Sprintf("and %d more", len(list)-i))
 			break
 		}
-		n := t.counts[kind+name]
+		n := t.counts[counted{kind, name}]
 		words = append(words, fmt.Sprintf("%s %d (%s)", name, n, percent(float64(n)/float64(of))))
 	}
 	return strings.Join(words, ", ")
@@ -143,13 +147,13 @@ func (s *streamResult) sentence() string {
 		return words
 	}
 	if t.landed < t.rows {
-		words += ", " + t.top("outcome ", t.outcomes, t.rows)
+		words += ", " + t.top("outcome", t.outcomes, t.rows)
 	}
 	if t.landed > 0 {
-		words += ". First touch: " + t.top("surface ", t.surfaces, t.rows)
+		words += ". First touch: " + t.top("surface", t.surfaces, t.rows)
 	}
 	if len(t.passed) > 0 {
-		words += ". Fallen through: " + t.top("opening ", t.passed, t.rows)
+		words += ". Fallen through: " + t.top("opening", t.passed, t.rows)
 	}
 	if t.offset.lowName != "" {
 		words += fmt.Sprintf(". Off plumb from %s (%s) to %s (%s)", way(t.offset.low), t.offset.lowName, way(t.offset.high), t.offset.highName)
@@ -209,12 +213,12 @@ func (j *job) listRecords() (out []listRecord) {
 		shares := func(kind string, names []string) []shareRecord {
 			out := []shareRecord{}
 			for _, name := range names {
-				n := t.counts[kind+name]
+				n := t.counts[counted{kind, name}]
 				out = append(out, shareRecord{Name: name, Count: n, Share: number(float64(n) / float64(t.rows)), Low: number(math.NaN()), High: number(math.NaN())})
 			}
 			return out
 		}
-		out = append(out, listRecord{s.of.File, t.rows, t.landed, shares("outcome ", t.outcomes), shares("surface ", t.surfaces), shares("opening ", t.passed)})
+		out = append(out, listRecord{s.of.File, t.rows, t.landed, shares("outcome", t.outcomes), shares("surface", t.surfaces), shares("opening", t.passed)})
 	}
 	return out
 }

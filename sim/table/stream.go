@@ -51,7 +51,10 @@ func appendText(dst []byte, s string, first bool) []byte {
 	if !first {
 		dst = append(dst, ',')
 	}
-	if isPlain(s) {
+	switch plain, comma := isPlain(s); {
+	case plain && comma:
+		return append(append(append(dst, '"'), s...), '"')
+	case plain:
 		return append(dst, s...)
 	}
 	var b bytes.Buffer
@@ -62,14 +65,15 @@ func appendText(dst []byte, s string, first bool) []byte {
 	return append(dst, bytes.TrimSuffix(b.Bytes(), []byte(lineEnd))...)
 }
 
-// isPlain says that a text surely wants no quotes: it has letters, digits and a
-// few signs of ASCII only, and blanks but not at its start.
-func isPlain(s string) bool {
+// isPlain says that a text surely wants no quotes unless for a comma: it has
+// letters, digits and a few signs of ASCII only, and blanks but not at its start.
+func isPlain(s string) (plain, comma bool) {
 	for i := range len(s) {
 		c := s[i]
-		if !(c >= 'a' && c <= 'z' || c >= 'A' && c <= 'Z' || c >= '0' && c <= '9' || c == ' ' && i > 0 || c == '_' || c == '-' || c == '.' || c == ';' || c == '/') {
-			return false
+		comma = comma || c == ','
+		if !(c == ',' || c >= 'a' && c <= 'z' || c >= 'A' && c <= 'Z' || c >= '0' && c <= '9' || c == ' ' && i > 0 || c == '_' || c == '-' || c == '.' || c == ';' || c == '/') {
+			return false, comma
 		}
 	}
-	return true
+	return true, comma
 }
