@@ -43,6 +43,15 @@ func Reference() string {
 	return b.String()
 }
 
+// Units lists the units of each kind of quantity, as a Markdown list.
+func Units() string {
+	var b strings.Builder
+	for _, d := range dimensions {
+		fmt.Fprintf(&b, "- %s: %s; such as `\"%s\"`\n", article(d.name), d.list(), d.example)
+	}
+	return b.String()
+}
+
 // header is how a table is headed in a file.
 func (k *key) header(path string) string {
 	if k.want == wantTables {

@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"math"
 	"regexp"
+	"slices"
 	"strings"
 )
 
@@ -36,6 +37,42 @@ func objectSchema(s *section) schema {
 	if required != nil {
 		out["required"] = required
 	}
+	if groups := groupSchemas(s); groups != nil {
+		out["allOf"] = groups
+	}
+	return out
+}
+
+// groupSchemas says of which keys only one may be given, or one must.
+func groupSchemas(s *section) (out []schema) {
+	seen := map[string]bool{}
+	for i := range s.keys {
+		g := s.keys[i].group
+		if g == "" || seen[g] || len(s.group(g)) < 2 {
+			continue
+		}
+		seen[g] = true
+		var given []schema
+		for j := range s.keys {
+			if k := &s.keys[j]; k.group == g {
+				given = append(given, k.given())
+			}
+		}
+		ways := given
+		if !slices.Contains(s.exactly, g) {
+			ways = append(given[:len(given):len(given)], schema{"not": schema{"anyOf": given}})
+		}
+		out = append(out, schema{"oneOf": ways})
+	}
+	return out
+}
+
+// given says that a key is there; a flag only counts where it is set.
+func (k *key) given() schema {
+	out := schema{"required": []string{k.name}}
+	if k.want == wantFlag {
+		out["properties"] = schema{k.name: schema{"enum": []bool{true}}}
+	}
 	return out
 }
 
@@ -56,7 +93,9 @@ func (k *key) describe() string {
 func valueSchema(k *key) schema {
 	switch k.want {
 	case wantQuantity:
-		return quantitySchema(k.dims)
+		return quantitySchema(k.dims, k.span)
+	case wantName:
+		return schema{"type": "string", "pattern": namePattern, "maxLength": longestName}
 	case wantNumber:
 		return k.span.schema("number")
 	case wantInteger:
@@ -69,7 +108,7 @@ func valueSchema(k *key) schema {
 		one := schema{"type": "string"}
 		return schema{"oneOf": []schema{one, {"type": "array", "items": one, "minItems": 1}}}
 	case wantList:
-		out := schema{"type": "array", "items": quantitySchema(k.dims), "minItems": 1}
+		out := schema{"type": "array", "items": quantitySchema(k.dims, k.span), "minItems": 1}
 		if k.count > 0 {
 			out["minItems"], out["maxItems"] = k.count, k.count
 		}
@@ -80,9 +119,13 @@ func valueSchema(k *key) schema {
 	case wantTable:
 		return objectSchema(k.sub)
 	case wantTables:
-		return schema{"type": "array", "items": objectSchema(k.sub)}
+		out := schema{"type": "array", "items": objectSchema(k.sub)}
+		if k.required {
+			out["minItems"] = 1
+		}
+		return out
 	case wantWordOrQuantity:
-		return schema{"anyOf": []schema{{"enum": k.words}, quantitySchema(k.dims)}}
+		return schema{"anyOf": []schema{{"enum": k.words}, quantitySchema(k.dims, k.span)}}
 	case wantBound:
 		return boundSchema()
 	case wantOpen:
@@ -96,7 +139,7 @@ func valueSchema(k *key) schema {
 }
 
 func boundSchema() schema {
-	return schema{"oneOf": []schema{{"type": "number"}, quantitySchema(dimensions)}}
+	return schema{"oneOf": []schema{{"type": "number"}, quantitySchema(dimensions, anything)}}
 }
 
 func (s span) schema(kind string) schema {
@@ -115,13 +158,36 @@ func (s span) schema(kind string) schema {
 // spellings makes patterns of units that take all the ways of writing them.
 var spellings = strings.NewReplacer(`\^2`, `(\^?2|²)`, `\^3`, `(\^?3|³)`, " ", "[ ·]", "µ", "[µ\u03bc]")
 
-func quantitySchema(dims []*dimension) schema {
+// namePattern is what a name may be: printable, without spaces at its ends.
+const namePattern = `^[^\s\x00-\x1f\x7f]([^\x00-\x1f\x7f]*[^\s\x00-\x1f\x7f])?$`
+
+// The numbers in front of a unit: any, those that are not negative (-0 is
+// none), and those above 0.
+const (
+	anyNumber      = `[+-]?([0-9]+\.?[0-9]*|\.[0-9]+)`
+	noNegative     = `(\+?([0-9]+\.?[0-9]*|\.[0-9]+)|-(0+\.?0*|\.0+))`
+	positiveNumber = `\+?([0-9]*[1-9][0-9]*\.?[0-9]*|[0-9]*\.[0-9]*[1-9][0-9]*)`
+)
+
+// quantitySchema takes quantities of some dimensions. Of their range it knows
+// the sign alone, since units differ.
+func quantitySchema(dims []*dimension, within span) schema {
+	number := anyNumber
+	if within.low >= 0 {
+		number = noNegative
+		if within.low > 0 || within.open {
+			number = positiveNumber
+		}
+	}
 	var units []string
 	for _, d := range dims {
 		for _, u := range d.units {
 			units = append(units, spellings.Replace(regexp.QuoteMeta(u.name)))
+			if u.offset != 0 { // its zero is elsewhere
+				number = anyNumber
+			}
 		}
 	}
 	return schema{"type": "string", "examples": []string{dims[0].example},
-		"pattern": `^\s*[+-]?([0-9]+\.?[0-9]*|\.[0-9]+)([eE][+-]?[0-9]+)?\s*(` + strings.Join(units, "|") + `)\s*$`}
+		"pattern": `^\s*` + number + `([eE][+-]?[0-9]+)?\s*(` + strings.Join(units, "|") + `)\s*$`}
 }

@@ -3,9 +3,12 @@ package main
 import (
 	"bytes"
 	"flag"
+	"fmt"
 	"os"
 	"path/filepath"
+	"regexp"
 	"runtime"
+	"slices"
 	"strings"
 	"testing"
 
@@ -14,7 +17,10 @@ import (
 
 var update = flag.Bool("update", false, "rewrite the generated parts of README.md and the figures that it shows")
 
-const readme = "../../README.md"
+const (
+	readme     = "../../README.md"
+	formatPage = "../../scenarios/FORMAT.md"
+)
 
 // generated replaces what stands between <!-- name --> and <!-- /name -->.
 func generated(t *testing.T, text, name, body string) string {
@@ -23,13 +29,13 @@ func generated(t *testing.T, text, name, body string) string {
 	before, rest, ok := strings.Cut(text, open)
 	_, after, ok2 := strings.Cut(rest, shut)
 	if !ok || !ok2 {
-		t.Fatalf("README.md has no part %q", name)
+		t.Fatalf("the page has no part %q", name)
 	}
 	return before + open + body + shut + after
 }
 
-// TestReadmeIsTrue holds the README against the program: the table of the
-// format, the summary, and the figures that it shows.
+// TestReadmeIsTrue holds the README against the program: the summary, the
+// example, the limits of the models, and the figures that it shows.
 func TestReadmeIsTrue(t *testing.T) {
 	if runtime.GOARCH != "amd64" {
 		t.Skip("bytes are held for one architecture: others may fuse multiply and add")
@@ -45,8 +51,10 @@ func TestReadmeIsTrue(t *testing.T) {
 	}
 	summary := strings.ReplaceAll(stdout.String(), out, "overhead-locker-out")
 	want := generated(t, string(src), "summary", "```\n"+summary+"```\n")
-	want = generated(t, want, "reference", scenarios.Reference())
+	want = generated(t, want, "example", "```toml\n"+excerpt(t, "../../scenarios/shipped/overhead-locker.toml")+"```\n")
 	want = generated(t, want, "limits", modelLimits())
+	want = generated(t, want, "trust", modelTable())
+	want = generated(t, want, "contents", contentsOf(want))
 	same(t, readme, []byte(want))
 	for _, name := range []string{"wrench-slips-out-side.svg", "wrench-slips-out-inertial.svg"} {
 		figure, err := os.ReadFile(filepath.Join(out, name))
@@ -55,6 +63,80 @@ func TestReadmeIsTrue(t *testing.T) {
 		}
 		same(t, filepath.Join("../../testdata/figures", name), figure)
 	}
+}
+
+// excerpt gives the first table of each sort that the README shows.
+func excerpt(t *testing.T, path string) string {
+	t.Helper()
+	src, err := os.ReadFile(path)
+	if err != nil {
+		t.Fatal(err)
+	}
+	var out []string
+	paragraphs := strings.Split(strings.TrimSpace(string(src)), "\n\n")
+	for _, head := range []string{"format", "[habitat]", "[[body]]", "[[release]]", "[[limit]]"} {
+		at := slices.IndexFunc(paragraphs, func(p string) bool { return strings.HasPrefix(p, head) })
+		if at < 0 {
+			t.Fatalf("%s has no %s", path, head)
+		}
+		out = append(out, paragraphs[at])
+	}
+	return strings.Join(out, "\n\n") + "\n"
+}
+
+// contentsOf lists the headings of a page that stand outside fenced blocks.
+func contentsOf(page string) string {
+	var out strings.Builder
+	fenced := false
+	for line := range strings.Lines(page) {
+		line = strings.TrimSpace(line)
+		if strings.HasPrefix(line, "```") {
+			fenced = !fenced
+		}
+		level, title, ok := strings.Cut(line, " ")
+		if fenced || !ok || level != "##" && level != "###" {
+			continue
+		}
+		fmt.Fprintf(&out, "%s- [%s](#%s)\n", strings.Repeat("  ", len(level)-2), title, anchor(strings.ReplaceAll(title, " ", "-")))
+	}
+	return out.String()
+}
+
+// TestReadmeLinks: every link of the pages to a file or a heading leads
+// somewhere.
+func TestReadmeLinks(t *testing.T) {
+	link := regexp.MustCompile(`\]\(([^)\s]+)\)`)
+	links := 0
+	for _, page := range []string{readme, "../../DEVELOPERS.md", formatPage, tutorial, columnsPage, filepath.Join(frozenDir, "README.md")} {
+		src, err := os.ReadFile(page)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, m := range link.FindAllStringSubmatch(string(src), -1) {
+			links++
+			file, heading, _ := strings.Cut(m[1], "#")
+			if file == "" {
+				if heading = "(#" + heading + ")"; !strings.Contains(contentsOf(string(src)), heading) {
+					t.Errorf("%s has no heading for %s", page, m[1])
+				}
+			} else if _, err := os.Stat(filepath.Join(filepath.Dir(page), file)); err != nil {
+				t.Errorf("%s: %v", page, err)
+			}
+		}
+	}
+	if links < 20 {
+		t.Errorf("only %d links", links)
+	}
+}
+
+// TestReadmeFormatPage holds the page of the format against the format.
+func TestReadmeFormatPage(t *testing.T) {
+	src, err := os.ReadFile(formatPage)
+	if err != nil {
+		t.Fatal(err)
+	}
+	want := generated(t, string(src), "reference", scenarios.Reference())
+	same(t, formatPage, []byte(generated(t, want, "units", scenarios.Units())))
 }
 
 // same holds a file against what it should be, or rewrites it.

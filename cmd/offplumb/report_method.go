@@ -15,6 +15,7 @@ import (
 func (j *job) methodSection() page.Section {
 	out := page.Section{Name: "Method, models and their limits"}
 	var sources []string
+	trust := page.Table{Name: "How far to trust the models", Fixed: true, Columns: headings(4, "model", "checked against", "range", "known error")}
 	for i := range statements {
 		s := &statements[i]
 		if !s.used(j) {
@@ -23,9 +24,12 @@ func (j *job) methodSection() page.Section {
 		if s.topic != "" {
 			out.List = append(out.List, page.Item{Of: s.topic, Words: strings.TrimSpace(s.how + " " + unquoted(s.holds))})
 		}
+		if s.against != "" {
+			trust.Rows = append(trust.Rows, []page.Cell{{Text: s.topic}, {Text: s.against}, {Text: s.within}, {Text: s.off}})
+		}
 		sources = append(sources, s.sources...)
 	}
-	out.Tables = []page.Table{j.solverTable(), sourceTable(sources)}
+	out.Tables = []page.Table{j.solverTable(), trust, sourceTable(sources)}
 	return out
 }
 

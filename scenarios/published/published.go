@@ -5,6 +5,13 @@
 // The checks are those that the program can run by itself. Its tests try more:
 // other drag laws, independent integrators, laws of motion over random
 // habitats.
+//
+// [Checks] lists them, a group after another; [Run] computes them, and a
+// [Result] is a check beside what the program gives. Each names its source and
+// how far it was seen. A tolerance follows from the digits that the source
+// prints, or from how far measurements of the same thing lie apart, never from
+// what the program happens to give. CHECKS.md is what offplumb selfcheck
+// prints of them.
 package published
 
 import (

@@ -1,5 +1,20 @@
 // Package air gives the density and viscosity of the air in the habitat, and
 // the drag of a sphere in it.
+//
+// An [Air] is a density and a viscosity: those given, or by [FromPressure] those
+// of dry air, by the ideal gas law and Sutherland's law. The zero Air is the
+// vacuum. A [Law] gives the drag coefficient of a sphere times its Reynolds
+// number, which is no singularity at rest: [CliftGauvin] for smooth spheres, or
+// a [Constant]. A [Drag] is a law for one diameter and area in one air; package
+// flight asks it in every step, so that it takes no root, logarithm or power
+// there: the law stands in a table of polynomials (curve.go), made once.
+//
+// # Laws
+//
+//   - Drag acts against the motion relative to the air, and grows with its speed.
+//   - The table departs from the formula by rounding alone.
+//
+// How the air moves is not known here: the caller gives the speed relative to it.
 package air
 
 import "math"

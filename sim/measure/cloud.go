@@ -188,7 +188,11 @@ func spreadColumn(s *model.Spread) table.Column {
 	if s.IsAngle {
 		u = degree
 	}
-	return table.Column{Name: s.Key + u.suffix, Unit: u.name, Scale: u.scale, Kind: table.Number, Meaning: "value of " + s.Key + " in this sample"}
+	name := s.Key
+	if name == "time" { // the landing has a column time_s
+		name = "release.time"
+	}
+	return table.Column{Name: name + u.suffix, Unit: u.name, Scale: u.scale, Kind: table.Number, Meaning: "value of " + s.Key + " in this sample"}
 }
 
 // CloudColumns are those of scatter/NAME.csv.

@@ -53,7 +53,8 @@ func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
 		if !ok {
 			return Verdict{}, false
 		}
-		return judgeEnd(c, t, restColumns, r, r.Time, c.words(r.Surface, nil)), true
+		through, ok := c.passed(t, e)
+		return judgeEnd(c, t, restColumns, r, r.Time, c.words(r.Surface, through)), ok
 	case "impacts":
 		rows, ok := e.Events(t.Index)
 		return c.impacts(t, rows), ok
@@ -156,6 +157,19 @@ func (c *Criterion) among(rows []Clearance) []Clearance {
 		}
 	}
 	return out
+}
+
+// passed lists the openings that a release fell through, for a limit on rests
+// that names any: the landing knows them.
+func (c *Criterion) passed(t Target, e Evidence) ([]string, bool) {
+	if len(c.Limit.FallsThroughNot) == 0 {
+		return nil, true
+	}
+	l, ok := e.Landing(t.Index)
+	if !ok {
+		return nil, false
+	}
+	return l.AllThrough, true
 }
 
 // words says how a landing or a rest breaks a limit on surfaces or openings.

@@ -231,6 +231,16 @@ func TestFallsThrough(t *testing.T) {
 		if !ok || v.Verdict != k.verdict || v.Found != k.found || v.At != 3 {
 			t.Errorf("through %v: %+v, want %s: %q", k.through, v, k.verdict, k.found)
 		}
+		rest := criterion(t, model.Limit{Of: []string{"release.tool a"}, Measure: "rests.surface", FallsThroughNot: []string{"hatch"}})
+		v, ok = rest.Judge(measure.Evidence{
+			Landing: func(int) (*measure.Landing, bool) {
+				return &measure.Landing{Surface: "floor", AllThrough: k.through}, true
+			},
+			Rest: func(int) (*measure.Rest, bool) { return &measure.Rest{Surface: "floor", Time: 5}, true },
+		})
+		if !ok || v.Verdict != k.verdict || v.Found != k.found || v.At != 5 {
+			t.Errorf("resting, through %v: %+v, want %s: %q", k.through, v, k.verdict, k.found)
+		}
 	}
 }
 

@@ -195,7 +195,7 @@ func (c *Criterion) bounds(num bool) (out []model.Problem) {
 	if words && c.Table == "clearance" && len(l.SurfaceNotIn)+len(l.FallsThroughNot) == 0 {
 		words = false // surface_in says which surfaces count
 	} else if words && c.Table != "landings" && c.Table != "rests" {
-		out = append(out, fault("measure", "surface_in and surface_not_in judge landings and rests, falls_through_not landings; got %q", c.Limit.Measure)...)
+		out = append(out, fault("measure", "surface_in, surface_not_in and falls_through_not judge landings and rests; got %q", c.Limit.Measure)...)
 	}
 	if !numeric && !words {
 		out = append(out, fault("name", "wants something to hold against: min, max, max_abs, surface_in, surface_not_in or falls_through_not")...)

@@ -1,8 +1,10 @@
 package measure
 
 import (
+	"maps"
 	"math"
 	"math/rand/v2"
+	"slices"
 	"strings"
 	"testing"
 
@@ -228,5 +230,20 @@ func TestNothingLanded(t *testing.T) {
 				t.Errorf("row %v", row)
 			}
 		}
+	}
+}
+
+// TestCloudColumnsDiffer: whatever is varied, no two columns have one name.
+func TestCloudColumnsDiffer(t *testing.T) {
+	var vary []model.Spread
+	for _, key := range slices.Sorted(maps.Keys(spreadUnits)) {
+		vary = append(vary, model.Spread{Key: key})
+	}
+	seen := map[string]bool{}
+	for _, c := range CloudColumns(&model.Scatter{Vary: vary}) {
+		if seen[c.Name] {
+			t.Errorf("two columns are named %s", c.Name)
+		}
+		seen[c.Name] = true
 	}
 }

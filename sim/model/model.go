@@ -1,6 +1,25 @@
 // Package model holds a validated scenario: the habitat, its decks, the
 // bodies, releases, crew paths and limits, in SI units and radians. A Model is
 // made by [New], which checks it as a whole, and is immutable from then on.
+//
+// Package scenarios fills the plain fields of a Model from a file (any other
+// program may do so too). New then checks what no key can tell by itself: that
+// names are known, that decks lie in rooms, that bodies have room where they
+// start. It builds the interior (package geom) and the turning of the habitat
+// (package frame), and gives the model with them, or every [Problem] that it
+// found, each under the key of the file where it lies. What is allowed but
+// doubtful is a [Warning].
+//
+// A place is said as a [Station], a deck and lengths along it, as people say it;
+// [Model.Resolve] makes a [Place] of it. A [Release] is a body, a place or a hand
+// that carries it, a start and an end. A [Path] is a person's way, a list of
+// legs. Studies ([Scatter], [LandingMap], [ThrowTo], [Spacing]) are many
+// flights of one kind. A [Limit] is a criterion of the project, with its source.
+//
+// # Laws
+//
+//   - A Model is read by many goroutines at once, and nothing changes it.
+//   - Nothing here reads a file, moves a body or prints.
 package model
 
 import (

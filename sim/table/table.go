@@ -1,6 +1,18 @@
 // Package table holds tables: columns with a unit and a meaning each, and rows
 // of numbers and text. It has the program's one CSV writer and its one number
 // formatter. It knows nothing of what the tables are about.
+//
+// A [Column] has a name that ends in its unit, the unit, the SI value of one
+// unit, and a meaning; a [Table] has columns and rows of [Cell] in SI. What is
+// written is in the column's unit. [StreamCSV] writes rows as they come, for
+// tables that are not to be held in memory; [WriteDataPackage] describes the
+// files of a folder for other programs; a [Namer] makes file names that differ.
+//
+// # Laws
+//
+//   - A number is written with the fewest digits that give the same double
+//     back, so that a table read again has the same bits; NaN is an empty field.
+//   - The same table gives the same bytes.
 package table
 
 import "fmt"
