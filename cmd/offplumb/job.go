@@ -36,6 +36,7 @@ type job struct {
 	sweeps    []sweepResult
 	scatters  []scatterResult
 	maps      []mapResult
+	slopes    []measure.Slope // of the landings of releases with tracks
 	throws    []*study.Throws // of each throw study; nil: not asked for
 	verdicts  []measure.Verdict
 	unjudged  []string
@@ -144,6 +145,9 @@ func (j *job) compute(ctx context.Context, p *progress) error {
 		return context.Cause(ctx)
 	}
 	if err != nil {
+		return err
+	}
+	if err := j.runSlopes(ctx); err != nil {
 		return err
 	}
 	if err := j.place(ctx); err != nil {

@@ -46,6 +46,10 @@ var statements = []statement{
 		how:     "Free flight is integrated by the adaptive Dormand-Prince 5(4) pair, as a departure from uniform motion; without forces it is exact. Contacts are located on its continuous extension.",
 		sources: []string{"Dormand & Prince, A family of embedded Runge-Kutta formulae, J. Comp. Appl. Math. 6 (1980) 19-26 (from memory)",
 			"Hairer, Norsett & Wanner, Solving Ordinary Differential Equations I, 2nd ed. 1993, section II.6 (from memory)"}},
+	{topic: "Numerical error", used: (*job).flew,
+		how: "Each release is flown again to its landing at a hundred times the tolerances. A tenth of the difference, what the tolerances allow a step, and roundings bound the error of the landing; " +
+			"without forces roundings alone. Sensitivities are central differences.",
+		holds: "The numerical error is an estimate, tried on answers that are known, and of landings only: not of resting places, and not of what the models leave out."},
 	{topic: "Bodies and air", used: (*job).flew,
 		against: "Drag coefficients of spheres (Pruppacher & Klett, table 10.1, at second hand); water drops (Gunn & Kinzer 1949, at second hand); glass globes dropped 220 ft (Newton, Principia, book II); air (US Standard Atmosphere 1976)",
 		within:  "Reynolds numbers below 3e5; air at 100 K to 1900 K",

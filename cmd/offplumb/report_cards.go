@@ -94,7 +94,7 @@ func (j *job) landingTable() page.Table {
 func (j *job) releaseCard(i int, s *shelf, film template.HTML) page.Card {
 	r := &j.results[i]
 	out := page.Card{Key: "release." + r.Landing.Release, Kind: "Release", Name: r.Landing.Release,
-		Words: []string{untitled(r.Landing.Release, sentence(&r.Landing)) + ".", storyOf(r.Landing.Release, &r.Rest), j.judgedHere("release." + r.Landing.Release)}}
+		Words: []string{untitled(r.Landing.Release, sentence(&r.Landing)) + ".", storyOf(r.Landing.Release, &r.Rest), slopeWords(j.slopesOf(r.Landing.Release)), j.judgedHere("release." + r.Landing.Release)}}
 	out.Facts = []page.Group{{Name: "Release", Facts: j.startFacts(i)}, {Name: "Landing", Facts: landingFacts(&r.Landing)}, {Name: "End", Facts: restFacts(&r.Rest)}}
 	out.Motion = film
 	out.Figures, out.Files = s.take(r.Landing.Release, "side view", "inertial view")
@@ -178,7 +178,7 @@ func landingFacts(l *measure.Landing) []page.Fact {
 	if !math.IsNaN(l.Energy) {
 		out = append(out, page.Fact{Name: "With energy", Value: withUnit(l.Energy, "J")})
 	}
-	return out
+	return append(out, errorFacts(l)...)
 }
 
 func restFacts(r *measure.Rest) []page.Fact {

@@ -87,6 +87,9 @@ type landingRecord struct {
 	Deflection number `json:"deflection_m"`
 	Speed      number `json:"speed_m_s"`
 	Energy     number `json:"energy_J"`
+	ErrorPlace number `json:"error_m"`
+	ErrorTime  number `json:"error_s"`
+	ErrorSpeed number `json:"error_m_s"`
 }
 
 type pathRecord struct {
@@ -104,6 +107,7 @@ type limitRecord struct {
 	Unit    string `json:"unit,omitempty"`
 	Verdict string `json:"verdict"`
 	Source  string `json:"source,omitempty"`
+	Note    string `json:"note,omitempty"`
 }
 
 type scatterRecord struct {
@@ -142,7 +146,8 @@ func (j *job) runJSON(w io.Writer, complete bool) error {
 	for i := range j.landings {
 		l := &j.landings[i]
 		r.Landings = append(r.Landings, landingRecord{l.Release, l.Outcome.String(), l.Surface, number(l.Time),
-			number(l.Offset), number(l.Deflection), number(l.Speed), number(l.Energy)})
+			number(l.Offset), number(l.Deflection), number(l.Speed), number(l.Energy),
+			number(l.Error.Place), number(l.Error.Time), number(l.Error.Speed)})
 	}
 	for i := range j.paths {
 		if p := &j.paths[i]; !p.skipped {
@@ -155,7 +160,7 @@ func (j *job) runJSON(w io.Writer, complete bool) error {
 	r.Throws = j.throwRecords()
 	for i := range j.verdicts {
 		v := &j.verdicts[i]
-		r.Limits = append(r.Limits, limitRecord{v.Limit, v.Of, v.Measure, number(v.Value), v.Unit, v.Verdict, v.Source})
+		r.Limits = append(r.Limits, limitRecord{v.Limit, v.Of, v.Measure, number(v.Value), v.Unit, v.Verdict, v.Source, v.Note()})
 	}
 	for _, n := range j.notes {
 		r.Warnings = append(r.Warnings, warningRecord{n.Of, n.Msg})

@@ -28,6 +28,7 @@ func (j *job) summary(w io.Writer) error {
 	}
 	j.sumLandings(&b)
 	sumStreams(j, &b)
+	sumDoubts(j, &b)
 	j.sumStories(&b)
 	j.sumPaths(&b)
 	j.sumStudies(&b)
@@ -283,6 +284,9 @@ func limitRow(v *measure.Verdict) []string {
 		if !math.IsNaN(v.At) {
 			found += " at " + table.Round(v.At, 3) + " s"
 		}
+	}
+	if note := v.Note(); note != "" {
+		found += ", " + note
 	}
 	source := v.Source
 	if source == "" {

@@ -25,6 +25,7 @@ type tally struct {
 	dots             []dot
 	every            int // row that has a dot
 	surfaces, passed []string
+	doubts           doubts
 }
 
 // extreme is the least and the greatest of a number, and whose it is.
@@ -105,6 +106,7 @@ func (t *tally) add(j *job, number int, r *study.Row) {
 		t.count("opening", o, &t.passed)
 	}
 	t.offset.add(l.Offset, l.Release)
+	t.doubts.add(l)
 	t.energy.add(l.Energy, l.Release)
 	switch {
 	case r.Rest.Outcome == flight.TimeUp && r.Rest.Time >= j.model().Solver.MaxTime:
@@ -201,6 +203,10 @@ type listRecord struct {
 	Outcomes []shareRecord `json:"outcomes"`
 	Surfaces []shareRecord `json:"surfaces"`
 	Openings []shareRecord `json:"openings"`
+
+	ErrorPlace number `json:"greatest_error_m"`
+	ErrorTime  number `json:"greatest_error_s"`
+	ErrorSpeed number `json:"greatest_error_m_s"`
 }
 
 func (j *job) listRecords() (out []listRecord) {
@@ -218,7 +224,8 @@ func (j *job) listRecords() (out []listRecord) {
 			}
 			return out
 		}
-		out = append(out, listRecord{s.of.File, t.rows, t.landed, shares("outcome", t.outcomes), shares("surface", t.surfaces), shares("opening", t.passed)})
+		out = append(out, listRecord{s.of.File, t.rows, t.landed, shares("outcome", t.outcomes), shares("surface", t.surfaces), shares("opening", t.passed),
+			number(t.doubts.most.Place), number(t.doubts.most.Time), number(t.doubts.most.Speed)})
 	}
 	return out
 }

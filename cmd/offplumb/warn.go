@@ -44,6 +44,7 @@ func (j *job) warn() {
 		j.note("habitat", "changes of the spin go on until %s s, longer than any release is followed, %s s", table.Round(late, 4), table.Round(m.Solver.MaxTime, 4))
 	}
 	warnStreams(j)
+	warnDoubts(j)
 	warnScatters(j)
 	warnSweeps(j)
 	warnMaps(j)

@@ -133,6 +133,7 @@ func (j *job) tables() []task {
 	out = append(out, tableTask("decks.csv", "decks", "", "A row for each deck.", measure.DeckTable(j.decks)))
 	out = append(out, tableTask("habitat.csv", "habitat", "", "Figures of the habitat as a whole, a single row.", measure.HabitatTable(measure.HabitatOf(j.model(), 0, 0))))
 	out = append(out, turningTables(j)...)
+	out = append(out, slopeTables(j)...)
 	out = append(out, j.studyTables()...)
 	out = append(out, scatterTables(j)...)
 	out = append(out, sweepTables(j)...)

@@ -30,6 +30,9 @@ var landingColumns = []column[Landing]{
 	{key: "uniform_time", unit: second, meaning: "duration of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Time) }},
 	{key: "uniform_offset", unit: metre, meaning: "deck offset of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Offset) }},
 	{key: "uniform_speed", unit: speedUnit, meaning: "speed at the end of the uniform-gravity path", num: func(l *Landing) float64 { return l.uniform(l.Uniform.Speed) }},
+	{key: errorKey, unit: metre, meaning: "numerical error of the place and of the offsets: a bound, by a second computation; empty where the two touch different things, and without a landing", num: func(l *Landing) float64 { return l.Error.Place }},
+	{key: errorKey, unit: second, meaning: "numerical error of the time", num: func(l *Landing) float64 { return l.Error.Time }},
+	{key: errorKey, unit: speedUnit, meaning: "numerical error of speed and normal speed", num: func(l *Landing) float64 { return l.Error.Speed }},
 }
 
 // restColumns are those of rests.csv.
@@ -164,4 +167,5 @@ var verdictColumns = []column[Verdict]{
 	{key: "at", unit: second, meaning: "time of the value judged, from the release or the start of the path", num: func(v *Verdict) float64 { return v.At }},
 	{key: "source", meaning: "where the limit comes from, in the project's words", text: func(v *Verdict) string { return v.Source }},
 	{key: "found", meaning: "what was found, in words, where it is no number", text: func(v *Verdict) string { return v.Found }},
+	{key: "note", meaning: "what makes the verdict doubtful: the numerical error of a landing", text: func(v *Verdict) string { return v.Note() }},
 }

@@ -33,14 +33,26 @@ func (c *Criterion) Judge(e Evidence) (Verdict, bool) {
 	found := false
 	for _, t := range c.Targets {
 		v, ok := c.one(t, e)
-		if ok && (!found || v.Bad.worse(worst.Bad)) {
+		if ok && !found {
 			worst, found = v, true
+		} else if ok {
+			worst.Join(&v)
 		}
 	}
 	return worst, found
 }
 
 func (c *Criterion) one(t Target, e Evidence) (Verdict, bool) {
+	v, ok := c.certain(t, e)
+	v.Least, v.Most = v.Bad.Rank, v.Bad.Rank
+	if l, landed := c.landing(t, e); landed {
+		c.doubt(&v, l)
+	}
+	return v, ok
+}
+
+// certain gives the verdict as if there were no numerical error.
+func (c *Criterion) certain(t Target, e Evidence) (Verdict, bool) {
 	switch c.Table {
 	case "landings":
 		l, ok := e.Landing(t.Index)
@@ -225,23 +237,32 @@ func numberColumn[T any](cols []column[T], key string, u unit) *column[T] {
 // judge holds one value (in the column's unit) against the bounds and keeps
 // it if it is the worst so far.
 func (c *Criterion) judge(v *Verdict, x, at float64) {
-	now := Badness{Over: over(x, v.Min, v.Max)}
-	warn := over(x, c.unit.of(si(c.Limit.WarnMin)), c.unit.of(si(c.Limit.WarnMax)))
-	verdict, words := Held, ""
-	switch {
-	case math.IsNaN(x):
-		now, verdict, words = Badness{Rank: 2, Over: math.Inf(1)}, Broken, "no value"
-	case now.Over > 0:
-		now.Rank, verdict = 2, Broken
-	case warn > 0:
-		now, verdict = Badness{Rank: 1, Over: warn}, Near
-	case math.IsInf(now.Over, -1):
-		now.Over = warn
+	now, words := c.badness(v, x), ""
+	verdict := ranks[now.Rank]
+	if math.IsNaN(x) {
+		words = "no value"
 	}
 	if v.Seen && !now.worse(v.Bad) {
 		return
 	}
 	v.Bad, v.Value, v.At, v.Verdict, v.Found, v.Seen = now, x, at, verdict, words, true
+}
+
+// badness holds one value (in the column's unit) against the bounds.
+func (c *Criterion) badness(v *Verdict, x float64) Badness {
+	now := Badness{Over: over(x, v.Min, v.Max)}
+	warn := over(x, c.unit.of(si(c.Limit.WarnMin)), c.unit.of(si(c.Limit.WarnMax)))
+	switch {
+	case math.IsNaN(x):
+		now = Badness{Rank: 2, Over: math.Inf(1)}
+	case now.Over > 0:
+		now.Rank = 2
+	case warn > 0:
+		now = Badness{Rank: 1, Over: warn}
+	case math.IsInf(now.Over, -1):
+		now.Over = warn
+	}
+	return now
 }
 
 // Badness orders verdicts: by verdict, then by how far beyond the bound.

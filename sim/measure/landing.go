@@ -32,6 +32,7 @@ type Landing struct {
 	Uniform       Uniform
 	FellThrough   []string // openings passed before the touch
 	AllThrough    []string // and after it
+	Error         Numerical
 }
 
 // Land measures the landing of a track.
@@ -39,7 +40,7 @@ func Land(m *model.Model, t *flight.Track) Landing {
 	nan := math.NaN()
 	out := Landing{Release: t.Release.Name, Body: t.Body.Name, Outcome: t.Outcome, Time: t.End,
 		Offset: nan, Deflection: nan, OffsetAxial: nan, DeflAxial: nan,
-		NormalSpeed: nan, Incidence: nan, Energy: nan, NormalEnergy: nan}
+		NormalSpeed: nan, Incidence: nan, Energy: nan, NormalEnergy: nan, Error: unknown()}
 	out.Uniform = UniformGravity(m, t)
 	last := t.Last
 	hit := t.Landing()

@@ -56,6 +56,8 @@ type Verdict struct {
 	Found              string // in words, where the value is no number
 	Bad                Badness
 	Seen               bool // a value was held against the bounds
+	Least, Most        int  // ranks of the verdicts that are possible within the numerical error
+	Unsure             bool // it is unsure what a landing judged touches
 }
 
 // judged is one table that limits may name.

@@ -43,7 +43,3 @@ func (c *Criterion) JudgeSome(e Evidence, from, to int, others bool) (Verdict, b
 	})
 	return part.Judge(e)
 }
-
-// Worse says whether a verdict is worse than another one of the same limit, so
-// that it takes its place.
-func (v *Verdict) Worse(than *Verdict) bool { return v.Bad.worse(than.Bad) }

@@ -144,6 +144,16 @@ func (v *Variant) Set(s *Spread, x float64) {
 	}
 }
 
+// Get gives a number of the release that Set can change, SI; NaN: there is no
+// such number.
+func (v *Variant) Get(key string) float64 {
+	n := variedNamed(key)
+	if n == nil {
+		return math.NaN()
+	}
+	return *n.to(v)
+}
+
 // Spun is the model with its habitat turning at another rate, rad/s, up to any
 // change of the spin.
 func (m *Model) Spun(spin float64) *Model {

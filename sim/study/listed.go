@@ -27,7 +27,9 @@ type Judged struct {
 // Add takes a verdict on a row behind those before. Of verdicts as bad the first
 // stays.
 func (j *Judged) Add(o Judged) {
-	if o.Any && (!j.Any || o.Verdict.Worse(&j.Verdict)) {
+	if o.Any && j.Any {
+		j.Verdict.Join(&o.Verdict)
+	} else if o.Any {
 		*j = o
 	}
 }
@@ -37,11 +39,14 @@ func (j *Judged) Add(o Judged) {
 type RowFlier struct {
 	p     *Prepared
 	flier *flight.Flier
+	surer *surer
 	track flight.Track // the last one's
 }
 
 // RowFlier makes one; each worker has its own.
-func (p *Prepared) RowFlier() *RowFlier { return &RowFlier{p: p, flier: flight.NewFlier(p.Model)} }
+func (p *Prepared) RowFlier() *RowFlier {
+	return &RowFlier{p: p, flier: flight.NewFlier(p.Model), surer: newSurer(p.Model)}
+}
 
 // Fly flies a row and adds its verdicts to those of the limits.
 func (f *RowFlier) Fly(r *model.Release, verdicts []Judged) (Row, error) {
@@ -56,6 +61,7 @@ func (f *RowFlier) Fly(r *model.Release, verdicts []Judged) (Row, error) {
 	}
 	out := Row{Flown: true, Deck: let.Place.Deck, Outcome: Outcome{measure.Land(m, track), measure.EndOf(m, track), track.Work}}
 	out.Foot = footOf(m, &let)
+	f.surer.sure(&let, track, &out.Landing)
 	if len(f.p.Limits) == 0 {
 		return out, nil
 	}

@@ -60,13 +60,13 @@ func (p *Prepared) Fly(ctx context.Context, which []int, results []Result, opt O
 	var next, done atomic.Int64
 	var tell sync.Mutex
 	spread(opt.Workers, func() {
-		flier, spare := flight.NewFlier(p.Model), &flight.Track{}
+		flier, spare, surer := flight.NewFlier(p.Model), &flight.Track{}, newSurer(p.Model)
 		for {
 			k := int(next.Add(1)) - 1
 			if k >= len(which) || ctx.Err() != nil {
 				return
 			}
-			results[which[k]], errs[k] = p.one(flier, spare, which[k])
+			results[which[k]], errs[k] = p.one(flier, spare, surer, which[k])
 			n := int(done.Add(1))
 			if opt.Done != nil {
 				tell.Lock()
@@ -87,7 +87,8 @@ func (p *Prepared) Fly(ctx context.Context, which []int, results []Result, opt O
 }
 
 // one flies a release, in the space of the spare track if its own is not kept.
-func (p *Prepared) one(flier *flight.Flier, spare *flight.Track, i int) (Result, error) {
+// With a surer the numerical error of its landing is estimated.
+func (p *Prepared) one(flier *flight.Flier, spare *flight.Track, surer *surer, i int) (Result, error) {
 	let := &p.Lets[i]
 	track := spare
 	if p.keep[i] {
@@ -97,6 +98,9 @@ func (p *Prepared) one(flier *flight.Flier, spare *flight.Track, i int) (Result,
 		return Result{}, err
 	}
 	res := Result{Landing: measure.Land(p.Model, track), Rest: measure.EndOf(p.Model, track), Work: track.Work, done: true}
+	if surer != nil {
+		surer.sure(let, track, &res.Landing)
+	}
 	if p.keep[i] {
 		res.Track = track
 		res.Events = measure.Events(p.Model, track)

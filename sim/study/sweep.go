@@ -3,6 +3,7 @@ package study
 import (
 	"context"
 	"fmt"
+	"slices"
 	"sync"
 	"sync/atomic"
 
@@ -80,11 +81,15 @@ func (s *Sweep) point(i int) Point {
 func (p *Prepared) take(picks []measure.Pick, all bool) (values []float64, landings []measure.Landing, err error) {
 	results := make([]Result, len(p.Lets))
 	flier, spare := flight.NewFlier(p.Model), &flight.Track{}
+	var surer *surer
+	if slices.ContainsFunc(picks, measure.Pick.OfError) {
+		surer = newSurer(p.Model)
+	}
 	for i := range p.Lets {
 		if !p.needed(picks, i, all) {
 			continue
 		}
-		if results[i], err = p.one(flier, spare, i); err != nil {
+		if results[i], err = p.one(flier, spare, surer, i); err != nil {
 			return nil, nil, fmt.Errorf("release %q: %w", p.Lets[i].Release.Name, err)
 		}
 		if all {
