@@ -7,6 +7,7 @@ import (
 	"fmt"
 	"io"
 	"path/filepath"
+	"slices"
 	"strings"
 	"unicode"
 	"unicode/utf8"
@@ -175,6 +176,12 @@ func moreFaults(n int) string {
 		return "and 1 more fault"
 	}
 	return fmt.Sprintf("and %d more faults", n)
+}
+
+// room makes room for some rows.
+func (l *listReader) room(rows int) {
+	b := l.b
+	b.in.Releases, b.keys, b.rows = slices.Grow(b.in.Releases, rows), slices.Grow(b.keys, rows), slices.Grow(b.rows, rows)
 }
 
 // rows reads the rows that are left. It gives whether it got to the end.

@@ -32,9 +32,34 @@ func (l *listReader) cell(i int) cell {
 	return cell{int32(at.line), int32(at.col)}
 }
 
-// cellsOf gives the fields of a record by column, numbers in SI.
-func (l *listReader) cellsOf(rec []string) (text map[string]string, nums map[string]float64, at row, ok bool) {
-	text, nums, ok = map[string]string{}, map[string]float64{}, true
+// The places of listColumns.
+const (
+	releaseColumn = iota
+	bodyColumn
+	massColumn
+	diameterColumn
+	deckColumn
+	spinwardColumn
+	axialColumn
+	heightColumn
+	vSpinwardColumn
+	vAxialColumn
+	vUpColumn
+)
+
+// fields are those of a record by column: text, or numbers in SI.
+type fields struct {
+	text [len(listColumns)]string
+	nums [len(listColumns)]float64
+	has  [len(listColumns)]bool // it is not empty
+}
+
+// num gives the number of a column; false: it is empty.
+func (f *fields) num(column int) (float64, bool) { return f.nums[column], f.has[column] }
+
+// cellsOf reads the fields of a record.
+func (l *listReader) cellsOf(rec []string, out *fields) (at row, ok bool) {
+	ok = true
 	at = row{file: l.file, first: l.cell(0)}
 	for i, field := range rec {
 		c := &listColumns[l.cols[i]]
@@ -43,15 +68,16 @@ func (l *listReader) cellsOf(rec []string) (text map[string]string, nums map[str
 		if field == "" {
 			continue
 		}
+		out.has[l.cols[i]] = true
 		if c.dim == nil {
-			text[c.name] = field
+			out.text[l.cols[i]] = field
 			ok = l.word(c.name, field, &at) && ok
 			continue
 		}
 		x, good := l.number(c.name, c.dim, c.span, field, &at)
-		nums[c.name], ok = x, ok && good
+		out.nums[l.cols[i]], ok = x, ok && good
 	}
-	return text, nums, at, ok
+	return at, ok
 }
 
 // word checks a text of a row.
@@ -97,8 +123,9 @@ func (l *listReader) record(rec []string) {
 	if isEmpty(rec) {
 		return
 	}
-	text, nums, at, ok := l.cellsOf(rec)
-	name := text["release"]
+	var f fields
+	at, ok := l.cellsOf(rec, &f)
+	name := f.text[releaseColumn]
 	switch {
 	case name == "":
 		l.fault(at.at("release"), "", "wants a name, got an empty field")
@@ -113,7 +140,7 @@ func (l *listReader) record(rec []string) {
 	if !ok {
 		return
 	}
-	r, ok := l.release(name, text, nums, &at)
+	r, ok := l.release(name, &f, &at)
 	if !ok {
 		return
 	}
@@ -124,38 +151,38 @@ func (l *listReader) record(rec []string) {
 }
 
 // release makes the release of a row.
-func (l *listReader) release(name string, text map[string]string, nums map[string]float64, at *row) (model.Release, bool) {
+func (l *listReader) release(name string, f *fields, at *row) (model.Release, bool) {
 	o := l.o
-	str := func(col, key string) string {
-		if s, ok := text[col]; ok {
-			return s
+	str := func(column int, key string) string {
+		if f.has[column] {
+			return f.text[column]
 		}
 		return o.str(key)
 	}
-	r := model.Release{Name: name, Body: str("body", "body"), Time: o.num("time"), Start: start(o), Until: untilOf(o), NoTrack: !o.flag("tracks")}
-	r.At = model.Station{Deck: str("deck", "deck"), Spinward: o.arc("spinward"), Axial: o.num("axial"), Height: o.num("height")}
-	if x, ok := nums["spinward_m"]; ok {
+	r := model.Release{Name: name, Body: str(bodyColumn, "body"), Time: o.num("time"), Start: start(o), Until: untilOf(o), NoTrack: !o.flag("tracks")}
+	r.At = model.Station{Deck: str(deckColumn, "deck"), Spinward: o.arc("spinward"), Axial: o.num("axial"), Height: o.num("height")}
+	if x, ok := f.num(spinwardColumn); ok {
 		r.At.Spinward = model.Arc{Value: x}
 	}
-	if x, ok := nums["axial_m"]; ok {
+	if x, ok := f.num(axialColumn); ok {
 		r.At.Axial = x
 	}
-	x, ok := nums["height_m"]
+	x, ok := f.num(heightColumn)
 	if ok {
 		r.At.Height = x
 	} else if !o.has("height") {
 		l.fault(at.at("height_m"), "", "height_m: wants a number, got an empty field")
 		return r, false
 	}
-	l.moved(&r, nums)
-	return r, l.ownBody(&r, nums, at)
+	l.moved(&r, f)
+	return r, l.ownBody(&r, f, at)
 }
 
 // moved takes the velocity of a row.
-func (l *listReader) moved(r *model.Release, nums map[string]float64) {
-	vs, ok1 := nums["v_spinward_m_s"]
-	va, ok2 := nums["v_axial_m_s"]
-	vu, ok3 := nums["v_up_m_s"]
+func (l *listReader) moved(r *model.Release, f *fields) {
+	vs, ok1 := f.num(vSpinwardColumn)
+	va, ok2 := f.num(vAxialColumn)
+	vu, ok3 := f.num(vUpColumn)
 	if ok1 || ok2 || ok3 {
 		r.Start = model.Start{Kind: model.Velocity, VSpinward: vs, VAxial: va, VUp: vu}
 	}
@@ -163,9 +190,9 @@ func (l *listReader) moved(r *model.Release, nums map[string]float64) {
 
 // ownBody gives the release a body of its own where the row or the list has a
 // mass or a diameter.
-func (l *listReader) ownBody(r *model.Release, nums map[string]float64, at *row) bool {
-	m, hasMass := nums["mass_kg"]
-	d, hasWidth := nums["diameter_m"]
+func (l *listReader) ownBody(r *model.Release, f *fields, at *row) bool {
+	m, hasMass := f.num(massColumn)
+	d, hasWidth := f.num(diameterColumn)
 	if !hasMass && l.o.has("mass") {
 		m, hasMass = l.o.num("mass"), true
 	}

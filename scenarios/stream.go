@@ -232,6 +232,7 @@ func (s *Stream) read(b block) (l *listReader, broken bool) {
 		l.fault(l.place(bytes.LastIndexByte(l.src[:max(0, len(l.src)-mostRow)], '\n')+1), "is a quote never closed?", "has a row of more than %d MiB", mostRow>>20)
 		return l, true
 	}
+	l.room(bytes.Count(l.src, []byte{'\n'}) + 1)
 	l.csv = csv.NewReader(bytes.NewReader(l.src))
 	l.csv.ReuseRecord = true
 	if b.number > 0 {

@@ -101,7 +101,10 @@ func split(text string) (x float64, name string, err error) {
 	if err != nil || math.IsInf(x, 0) {
 		return 0, "", fmt.Errorf("no number in %q", text)
 	}
-	return x, spelling.Replace(strings.TrimSpace(text[n:])), nil
+	if name = strings.TrimSpace(text[n:]); name != "" {
+		name = spelling.Replace(name)
+	}
+	return x, name, nil
 }
 
 // exponent gives the length of an exponent at the start of a text.

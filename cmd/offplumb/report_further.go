@@ -73,9 +73,9 @@ func tallyTable(t *tally) page.Table {
 	for _, k := range []struct {
 		kind, words string
 		names       []string
-	}{{"outcome ", "outcome", t.outcomes}, {"surface ", "first touch", t.surfaces}, {"opening ", "fallen through", t.passed}} {
+	}{{"outcome", "outcome", t.outcomes}, {"surface", "first touch", t.surfaces}, {"opening", "fallen through", t.passed}} {
 		for _, name := range k.names {
-			n := t.counts[k.kind+name]
+			n := t.counts[counted{k.kind, name}]
 			share := 100 * float64(n) / float64(t.rows)
 			out.Rows = append(out.Rows, []page.Cell{{Text: k.words}, {Text: name}, {Text: fmt.Sprint(n), Value: float64(n)}, {Text: table.Round(share, 3), Value: share}})
 		}

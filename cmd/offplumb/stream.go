@@ -1,7 +1,6 @@
 package main
 
 import (
-	"bytes"
 	"context"
 	"io"
 	"os"
@@ -108,29 +107,26 @@ func (s *streamShare) worker(r span, written bool) func(scenarios.Chunk) (batch,
 			}
 		}
 		if written {
-			err = b.write()
+			b.write()
 		}
-		return b, err
+		return b, nil
 	}
 }
 
 // write makes the lines of the tables.
-func (b *batch) write() error {
-	var landings []measure.Landing
-	var rests []measure.Rest
+func (b *batch) write() {
+	lines := measure.NewLines()
+	b.landings, b.rests = make([]byte, 0, lineSize*len(b.rows)), make([]byte, 0, lineSize*len(b.rows))
 	for i := range b.rows {
 		if r := &b.rows[i]; r.Flown {
-			landings, rests = append(landings, r.Landing), append(rests, r.Rest)
+			b.landings, b.rests = lines.Landing(b.landings, &r.Landing), lines.Rest(b.rests, &r.Rest)
 		}
 	}
-	var l, r bytes.Buffer
-	if err := measure.LandingTable(landings).WriteRows(&l); err != nil {
-		return err
-	}
-	err := measure.RestTable(rests).WriteRows(&r)
-	b.landings, b.rests = l.Bytes(), r.Bytes()
-	return err
 }
+
+// lineSize is about the length of a line of the tables, bytes: a longer one
+// makes them grow.
+const lineSize = 384
 
 // take writes rows to the tables and counts them.
 func (s *streamShare) take(b *batch) error {
@@ -161,9 +157,7 @@ func (s *streamShare) restore(r span, in *study.Unpacker) error {
 		if err := takeItems(in, span{from, min(from+restoredAtOnce, r.to)}, func(_ int, row study.Row) { b.rows = append(b.rows, row) }); err != nil {
 			return err
 		}
-		if err := b.write(); err != nil {
-			return err
-		}
+		b.write()
 		if err := s.take(&b); err != nil {
 			return err
 		}
@@ -230,9 +224,7 @@ func (w *listWriter) upTo(release int) error {
 			b.rows = append(b.rows, study.Row{Outcome: r.Outcome(), Flown: true})
 		}
 	}
-	if err := b.write(); err != nil {
-		return err
-	}
+	b.write()
 	return w.lines(b.landings, b.rests)
 }
 

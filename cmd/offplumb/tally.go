@@ -16,7 +16,7 @@ import (
 type tally struct {
 	rows, landed     int
 	outcomes         []string
-	counts           map[string]int // of outcomes, surfaces and openings, by a key of their kind
+	counts           map[counted]int // of outcomes, surfaces and openings
 	offset, energy   extreme
 	late, stuck      named
 	work             flight.Work
@@ -43,6 +43,9 @@ func (e *extreme) add(x float64, name string) {
 		e.high, e.highName = x, name
 	}
 }
+
+// counted is a thing and its kind.
+type counted struct{ kind, name string }
 
 // named is how many there are of something, with the first names.
 type named struct {
@@ -74,7 +77,7 @@ type dot struct {
 // newTally counts rows, of which as many as can be told apart are drawn: every
 // second, third or so.
 func newTally(rows int, few bool) tally {
-	t := tally{counts: map[string]int{}, every: max(1, (rows+plots.MostDots-1)/plots.MostDots)}
+	t := tally{counts: map[counted]int{}, every: max(1, (rows+plots.MostDots-1)/plots.MostDots)}
 	if few {
 		t.every = 1
 	}
@@ -83,7 +86,8 @@ func newTally(rows int, few bool) tally {
 
 // count counts a thing of a kind, and keeps the order in which things came.
 func (t *tally) count(kind, name string, order *[]string) {
-	if t.counts[kind+name]++; t.counts[kind+name] == 1 {
+	key := counted{kind, name}
+	if t.counts[key]++; t.counts[key] == 1 {
 		*order = append(*order, name)
 	}
 }
@@ -91,13 +95,13 @@ func (t *tally) count(kind, name string, order *[]string) {
 func (t *tally) add(j *job, number int, r *study.Row) {
 	l := &r.Landing
 	t.rows++
-	t.count("outcome ", l.Outcome.String(), &t.outcomes)
+	t.count("outcome", l.Outcome.String(), &t.outcomes)
 	if l.Outcome == flight.Landed {
 		t.landed++
-		t.count("surface ", l.Surface, &t.surfaces)
+		t.count("surface", l.Surface, &t.surfaces)
 	}
 	for _, o := range l.AllThrough {
-		t.count("opening ", o, &t.passed)
+		t.count("opening", o, &t.passed)
 	}
 	t.offset.add(l.Offset, l.Release)
 	t.doubts.add(l)

@@ -12,14 +12,14 @@ import (
 // top lists things by their number, the most first, as "floor 93 % (930)".
 func (t *tally) top(kind string, names []string, of int) string {
 	list := slices.Clone(names)
-	slices.SortStableFunc(list, func(a, b string) int { return t.counts[kind+b] - t.counts[kind+a] })
+	slices.SortStableFunc(list, func(a, b string) int { return t.counts[counted{kind, b}] - t.counts[counted{kind, a}] })
 	words := []string{}
 	for i, name := range list {
 		if i == namesTold {
 			words = append(words, fmt.Sprintf("and %d more", len(list)-i))
 			break
 		}
-		n := t.counts[kind+name]
+		n := t.counts[counted{kind, name}]
 		words = append(words, fmt.Sprintf("%s %d (%s)", name, n, percent(float64(n)/float64(of))))
 	}
 	return strings.Join(words, ", ")
@@ -33,13 +33,13 @@ func (s *streamResult) sentence() string {
 		return words
 	}
 	if t.landed < t.rows {
-		words += ", " + t.top("outcome ", t.outcomes, t.rows)
+		words += ", " + t.top("outcome", t.outcomes, t.rows)
 	}
 	if t.landed > 0 {
-		words += ". First touch: " + t.top("surface ", t.surfaces, t.rows)
+		words += ". First touch: " + t.top("surface", t.surfaces, t.rows)
 	}
 	if len(t.passed) > 0 {
-		words += ". Fallen through: " + t.top("opening ", t.passed, t.rows)
+		words += ". Fallen through: " + t.top("opening", t.passed, t.rows)
 	}
 	if t.offset.lowName != "" {
 		words += fmt.Sprintf(". Off plumb from %s (%s) to %s (%s)", way(t.offset.low), t.offset.lowName, way(t.offset.high), t.offset.highName)
@@ -103,12 +103,12 @@ func (j *job) listRecords() (out []listRecord) {
 		shares := func(kind string, names []string) []shareRecord {
 			out := []shareRecord{}
 			for _, name := range names {
-				n := t.counts[kind+name]
+				n := t.counts[counted{kind, name}]
 				out = append(out, shareRecord{Name: name, Count: n, Share: number(float64(n) / float64(t.rows)), Low: number(math.NaN()), High: number(math.NaN())})
 			}
 			return out
 		}
-		out = append(out, listRecord{s.of.File, t.rows, t.landed, shares("outcome ", t.outcomes), shares("surface ", t.surfaces), shares("opening ", t.passed),
+		out = append(out, listRecord{s.of.File, t.rows, t.landed, shares("outcome", t.outcomes), shares("surface", t.surfaces), shares("opening", t.passed),
 			number(t.doubts.most.Place), number(t.doubts.most.Time), number(t.doubts.most.Speed)})
 	}
 	return out

@@ -106,6 +106,9 @@ func (f *Flier) whereabouts(t *Track, now *moving) {
 // airless notes when the body first is outside, and that there is no air.
 func (f *Flier) airless(t *Track, now *moving) {
 	f.free.forces.ease(f.out.outside)
+	if f.out.outside {
+		f.quick = Quick{} // there is nothing to drift with; what was out may come in fast
+	}
 	if f.out.outside && t.Left < 0 {
 		t.Left = now.t
 	}

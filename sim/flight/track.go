@@ -1,6 +1,7 @@
 package flight
 
 import (
+	"math"
 	"sort"
 
 	"gonum.org/v1/gonum/spatial/r3"
@@ -144,7 +145,11 @@ func (t *Track) PhaseAt(time float64) int {
 // Knots gives the ends of the integration steps, s since the release: between
 // two of them the track is smooth.
 func (t *Track) Knots() []float64 {
-	var out []float64
+	n := 1
+	for i := range t.Phases {
+		n += max(1, len(t.Phases[i].steps))
+	}
+	out := make([]float64, 0, n)
 	for i := range t.Phases {
 		out = t.Phases[i].starts(out)
 	}
@@ -184,4 +189,17 @@ func (t *Track) Seen(p *Phase, k int, time float64) frame.State {
 		return frame.State{Pos: r3.Add(p.base.Pos, vec(y[:])), Vel: vec(y[3:])}
 	}
 	return frame.Seen(t.motion, t.Begin+time, depart(&p.base, u, y[:]))
+}
+
+// SpeedSeen is the speed, m/s, of [Track.Seen], to rounding.
+func (t *Track) SpeedSeen(p *Phase, k int, time float64) float64 {
+	w, ok := t.motion.(frame.Steady)
+	if !ok || p.local {
+		return math.Sqrt(r3.Norm2(t.Seen(p, k, time).Vel))
+	}
+	var y [dims]float64
+	u := time - p.T0
+	p.steps[k].At(u, y[:p.steps[k].Dim()])
+	s := depart(&p.base, u, y[:])
+	return math.Sqrt(r3.Norm2(w.Relative(&s)))
 }

@@ -13,11 +13,15 @@ import (
 func Seen(m Motion, t float64, s State) State {
 	if w, ok := m.(Steady); ok {
 		sin, cos := math.Sincos(w.Spin * t)
-		rel := r3.Vec{X: s.Vel.X + w.Spin*s.Pos.Y, Y: s.Vel.Y - w.Spin*s.Pos.X, Z: s.Vel.Z}
-		return State{Pos: turned(sin, cos, s.Pos), Vel: turned(sin, cos, rel)}
+		return State{Pos: turned(sin, cos, s.Pos), Vel: turned(sin, cos, w.Relative(&s))}
 	}
 	a := m.At(t)
 	return a.ToHabitat(s)
+}
+
+// Relative is the velocity relative to the habitat, m/s, in inertial components.
+func (w Steady) Relative(s *State) r3.Vec {
+	return r3.Vec{X: s.Vel.X + w.Spin*s.Pos.Y, Y: s.Vel.Y - w.Spin*s.Pos.X, Z: s.Vel.Z}
 }
 
 // SeenAt is the place of Seen.

@@ -81,6 +81,11 @@ func fill[T any](cols []column[T], rows []T) *table.Table {
 
 func cells[T any](cols []column[T], row *T) []table.Cell {
 	out := make([]table.Cell, len(cols))
+	cellsInto(out, cols, row)
+	return out
+}
+
+func cellsInto[T any](out []table.Cell, cols []column[T], row *T) {
 	for i := range cols {
 		if c := &cols[i]; c.text != nil {
 			out[i] = table.Str(c.text(row))
@@ -88,5 +93,20 @@ func cells[T any](cols []column[T], row *T) []table.Cell {
 			out[i] = table.Num(c.num(row))
 		}
 	}
-	return out
+}
+
+// liner writes the lines of rows one by one, as those of a table of them.
+type liner[T any] struct {
+	cols    []column[T]
+	columns []table.Column
+	cells   []table.Cell // of a row
+}
+
+func newLiner[T any](cols []column[T]) liner[T] {
+	return liner[T]{cols, headers(cols), make([]table.Cell, len(cols))}
+}
+
+func (l *liner[T]) line(dst []byte, row *T) []byte {
+	cellsInto(l.cells, l.cols, row)
+	return table.AppendRow(dst, l.columns, l.cells)
 }

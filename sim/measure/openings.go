@@ -24,10 +24,13 @@ const fallParts = 64
 // decks and their passing, each once.
 func FellThrough(m *model.Model, t *flight.Track, until float64) []string {
 	var out []string
-	knots := t.Knots()
+	var knots []float64
 	for i := range m.Decks {
 		if len(m.Decks[i].Openings) == 0 {
 			continue
+		}
+		if knots == nil {
+			knots = t.Knots()
 		}
 		for k := 1; k < len(knots) && knots[k-1] < until; k++ {
 			out = passings(m, t, &m.Decks[i], knots[k-1], math.Min(knots[k], until), out)

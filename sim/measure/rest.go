@@ -104,7 +104,7 @@ func wayParts(m *model.Model, from, over float64) int {
 func wayIn(t *flight.Track, p *flight.Phase, k int, t0, t1 float64, halves int) float64 {
 	part, least, most := 0.0, math.Inf(1), 0.0
 	for i, x := range wayAt {
-		v := math.Sqrt(r3.Norm2(t.Seen(p, k, t0+(t1-t0)*x).Vel))
+		v := t.SpeedSeen(p, k, t0+(t1-t0)*x)
 		part += wayWeight[i] * v
 		least, most = min(least, v), max(most, v)
 	}

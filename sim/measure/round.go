@@ -93,7 +93,8 @@ func nearby(m *model.Model, t *flight.Track, time float64) (float64, bool) {
 	}
 	from := t.Local.Pos
 	left, speed := math.Hypot(from.X, from.Y)/2, r3.Norm(t.Local.Vel)
-	at := from
+	var last *flight.Phase // the last step seen
+	step, until := 0, 0.0
 	for i := range t.Phases {
 		p := &t.Phases[i]
 		for k := range p.Steps() {
@@ -101,19 +102,22 @@ func nearby(m *model.Model, t *flight.Track, time float64) (float64, bool) {
 			if t0 >= time {
 				break
 			}
-			s := t.Seen(p, k, math.Min(t1, time))
-			now := math.Sqrt(r3.Norm2(s.Vel))
+			now := t.SpeedSeen(p, k, math.Min(t1, time))
 			left -= roomy * math.Max(speed, now) * (t1 - t0)
 			if left < 0 {
 				return 0, false
 			}
-			at, speed = s.Pos, now
+			last, step, until, speed = p, k, math.Min(t1, time), now
 		}
 		speed = math.Inf(1) // an impact changes it: not less than at its start
 		if k := i + 1; k < len(t.Phases) && t.Phases[k].Steps() > 0 {
 			t0, _ := t.Phases[k].Step(0)
-			speed = math.Sqrt(r3.Norm2(t.Seen(&t.Phases[k], 0, t0).Vel))
+			speed = t.SpeedSeen(&t.Phases[k], 0, t0)
 		}
+	}
+	at := from
+	if last != nil {
+		at = t.Seen(last, step, until).Pos
 	}
 	return math.Atan2(from.X*at.Y-from.Y*at.X, from.X*at.X+from.Y*at.Y), true
 }

@@ -32,15 +32,12 @@ func (t *Table) WriteCSV(w io.Writer) error {
 	return StreamCSV(w, t.Columns, slices.Values(t.Rows))
 }
 
-func (c *Column) field(cell Cell) string {
-	switch x := c.value(cell); {
-	case c.Kind == Text:
-		return guard(cell.Text)
-	case c.Kind == Integer && x == math.Trunc(x) && math.Abs(x) < 1<<53:
-		return strconv.FormatInt(int64(x), 10) // an exponent is no integer to readers of tables
-	default:
-		return Exact(x)
+func (c *Column) appendNumber(dst []byte, cell Cell) []byte {
+	x := c.value(cell)
+	if c.Kind == Integer && x == math.Trunc(x) && math.Abs(x) < 1<<53 {
+		return strconv.AppendInt(dst, int64(x), 10) // an exponent is no integer to readers of tables
 	}
+	return appendExact(dst, x)
 }
 
 // guard keeps a text from being taken for a formula by a spreadsheet, which
