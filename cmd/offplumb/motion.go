@@ -113,7 +113,7 @@ func (j *job) filmNotes(t *flight.Track) string {
 
 // filmParts is how often a track is sampled within an integration step, which is smooth and
 // known to a fourth-order polynomial.
-const filmParts = 12
+const filmParts = 48
 
 // filmPieces gives the states of a track, turned about the axis by an angle (rad). At a
 // joint of phases a track gives the earlier one, at its ends what it began and ended with:

@@ -59,7 +59,7 @@ func (j *job) releaseSection(s *shelf, films map[int]template.HTML) page.Section
 	out.Figures = shared
 	out.Words = j.leftOut(s, tracked, len(files))
 	if j.showsReleases() {
-		out.Files = append(j.filesOf("", "landings", "rests", "clearance"), files...)
+		out.Files = append(j.filesOf("", "landings", "rests", "sensitivity", "clearance", "outside"), files...)
 	}
 	return out
 }

@@ -22,7 +22,7 @@ func (j *job) filesOf(name string, kinds ...string) (out []page.File) {
 
 // fileKinds are the kinds of files about one thing, by what has a card.
 var fileKinds = struct{ release, path, letGo, platforms, scatter, sweep, landMap, throws []string }{
-	release:   []string{"moving picture", "track", "impacts"},
+	release:   []string{"moving picture", "track", "impacts", "outside"},
 	path:      []string{"crew"},
 	letGo:     []string{"let-go series"},
 	platforms: []string{"platforms"},
