@@ -50,15 +50,15 @@ func (j *job) withFilms(all []task) []task {
 	return all
 }
 
-// films are the players of the releases that have a card in the report, by
-// their index.
+// films are the players of the first releases that have a card in the report,
+// by their index. The others have their moving pictures beside it.
 func (j *job) films(ctx context.Context) (map[int]template.HTML, error) {
 	out := map[int]template.HTML{}
 	if j.flags.noFigures {
 		return out, nil
 	}
 	for i := range j.results {
-		if len(out) == cardsInReport {
+		if len(out) == figuresInReport {
 			break
 		}
 		if !j.tracked(i) || j.inSeries(j.Lets[i].Release.Name) {
