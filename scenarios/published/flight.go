@@ -134,24 +134,32 @@ func small() (out []Check) {
 	return out
 }
 
-// bead is a scenario of a ball let go beside the wall of a turning spoke, so
-// that its centre moves on the radial line.
+// beadAside is how far (m) the bead's centre line lies antispinward of the
+// radial one: away from the other wall, so that it stays only if it is pressed
+// to the side that the Coriolis acceleration tells.
+const beadAside = 0.5
+
+// bead is a scenario of a ball let go against the antispinward wall of a turning
+// spoke, at rest, 8 m out along it.
 func bead(friction float64) string {
+	const out = 8.0
 	return fmt.Sprintf(`
 format = 1
 habitat = { floor_radius = "60 m", ceiling_radius = "50 m", length = "10 m", spin = "0.6 rad/s" }
 air = { none = true }
 room = [{ name = "hub", floor_radius = "3 m", length = "8 m" }]
-passage = [{ name = "spoke", from_radius = "3 m", to_radius = "50 m", width = "0.1 m" }]
+passage = [{ name = "spoke", from_radius = "3 m", to_radius = "50 m", width = "1.1 m" }]
 body = [{ name = "bead", mass = "0.3 kg", diameter = "0.1 m", restitution = 0, friction = %g }]
 [[release]]
 name = "bead"
 body = "bead"
-at = { radius = "8 m" }
-`, friction)
+at = { radius = "%.17g m", spinward = "%.17g rad" }
+`, friction, math.Hypot(out, beadAside), math.Atan2(-beadAside, out))
 }
 
-// beads are pressed on the wall of a turning spoke and slide out along it.
+// beads are pressed on the wall of a turning spoke and slide out along it. With
+// the centre line beside the radial one by b, x - mu b follows the closed form
+// of one that is on it (derived).
 func beads() (out []Check) {
 	const spin, r0 = 0.6, 8
 	c := Check{Group: "A bead on a turning rod, from rest", Source: "Kleppner & Kolenkow, An Introduction to Mechanics (statement seen)", toml: bead(0)}
@@ -164,7 +172,10 @@ func beads() (out []Check) {
 	c.Source = "exponents omega(-mu +- sqrt(1 + mu^2)), textbook form (derived)"
 	for _, f := range []struct{ mu, published float64 }{{0, 3.76219569}, {0.1, 3.40854002}, {0.3, 2.87474581}} {
 		c.Name, c.Published, c.toml = fmt.Sprintf("r/r0 at omega t = 2, friction %g", f.mu), f.published, bead(f.mu)
-		c.value = func(r *ran) float64 { return r.local(2/spin).Pos.X / r0 }
+		c.value = func(r *ran) float64 {
+			b := f.mu * beadAside
+			return (r.local(2/spin).Pos.X - b) / (r0 - b)
+		}
 		out = append(out, c)
 	}
 	return out
